@@ -1,0 +1,1 @@
+//! Two-dimensional flow about a section.

@@ -1,0 +1,14 @@
+//! From one design file to a checked pack of workshop files for home-built hydrofoils.
+//!
+//! Data goes one way through the modules, and a module uses only those before it:
+//!
+//! `units` → `geometry` → `section` → `flow` → `wing` → `workshop` → `export`
+//!
+//! [`design`] reads the user's file and builds a [`wing::Wing`] from it; [`pack`] walks the line
+//! from there to the files on disk. Inside, geometry is in millimetres, sections are in unit
+//! chord, flow is dimensionless and angles are in radians; units exist only at the edges.
+
+pub mod flow;
+pub mod geometry;
+pub mod section;
+pub mod units;

@@ -1,0 +1,84 @@
+//! What can be wrong with a section, in the user's words.
+
+/// Why a section cannot be made.
+#[derive(Debug, Clone, PartialEq, thiserror::Error)]
+pub enum SectionError {
+    /// The text is not a designation that is known.
+    #[error(
+        "'{text}' is not a section this program knows: write a NACA four-digit (\"NACA 4412\") or five-digit (\"NACA 23012\") designation"
+    )]
+    Unknown {
+        /// What was given.
+        text: String,
+    },
+    /// The number of digits fits no family.
+    #[error(
+        "'{text}' has {count} digits: a NACA designation has four (\"NACA 4412\") or five (\"NACA 23012\")"
+    )]
+    DigitCount {
+        /// What was given.
+        text: String,
+        /// How many digits it has.
+        count: usize,
+    },
+    /// The last two digits ask for no thickness, or for more than a foil can have.
+    #[error(
+        "the last two digits of '{text}' ask for a thickness of {percent} % of chord: it must lie from 1 % to 40 %"
+    )]
+    Thickness {
+        /// What was given.
+        text: String,
+        /// Percent of chord.
+        percent: u32,
+    },
+    /// Camber without a position, or a position without camber.
+    #[error(
+        "in '{text}' the first digit (camber) is {camber} and the second (its position) is {position}: both are zero for a symmetric section, neither is otherwise"
+    )]
+    CamberPosition {
+        /// What was given.
+        text: String,
+        /// First digit.
+        camber: u8,
+        /// Second digit.
+        position: u8,
+    },
+    /// A five-digit section without design lift.
+    #[error(
+        "the first digit of '{text}' (design lift) is 0: for a symmetric section write four digits, \"NACA 00{thickness:02}\""
+    )]
+    DesignLift {
+        /// What was given.
+        text: String,
+        /// Its thickness digits.
+        thickness: u32,
+    },
+    /// The third of five digits is neither plain nor reflexed.
+    #[error("the third digit of '{text}' is {digit}: it is 0 for a plain or 1 for a reflexed mean line")]
+    FiveDigitKind {
+        /// What was given.
+        text: String,
+        /// Third digit.
+        digit: u8,
+    },
+    /// No five-digit mean line is published at that position.
+    #[error("no {} five-digit mean line is published for position digit {digit}: it goes from {} to 5", if *.reflexed { "reflexed" } else { "plain" }, if *.reflexed { 2 } else { 1 })]
+    FiveDigitPosition {
+        /// Second digit.
+        digit: u8,
+        /// Whether the reflexed lines were asked for.
+        reflexed: bool,
+    },
+    /// The mean line bends so sharply that a surface offset from it folds over.
+    #[error(
+        "{name}: the mean line bends too sharply for this thickness, and the {side} surface folds over itself near {percent:.1} % of chord; take less thickness, less camber, or camber further aft"
+    )]
+    Folds {
+        /// Designation.
+        name: String,
+        /// `upper` or `lower`.
+        side: &'static str,
+        /// Where along the chord.
+        percent: f64,
+    },
+}

@@ -1,0 +1,121 @@
+//! Mean (camber) lines of the NACA four- and five-digit families.
+
+use super::SectionError;
+
+/// Ordinate of a mean line and its derivatives with respect to x, all in unit chord.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Ordinate {
+    /// Height above the chord line.
+    pub y: f64,
+    /// First derivative, the slope.
+    pub slope: f64,
+    /// Second derivative.
+    pub second: f64,
+    /// Third derivative.
+    pub third: f64,
+}
+
+/// The line midway between the surfaces, over x in [0, 1].
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum MeanLine {
+    /// No camber.
+    Straight,
+    /// Two parabolas joined at the highest point.
+    ///
+    /// Source: Jacobs, Ward and Pinkerton, NACA Report 460 (1933).
+    FourDigit {
+        /// Greatest camber, a fraction of the chord.
+        camber: f64,
+        /// Where it lies, a fraction of the chord.
+        position: f64,
+    },
+    /// A cubic ahead of the joint, and a straight line or a second cubic (reflexed) behind it.
+    ///
+    /// Sources: Jacobs and Pinkerton, NACA Report 537 (1935); Jacobs, Pinkerton and Greenberg,
+    /// NACA Report 610 (1937).
+    FiveDigit {
+        /// Where the two pieces join (`m` in the reports), a fraction of the chord.
+        joint: f64,
+        /// Third derivative of the front piece (`k1`).
+        front: f64,
+        /// Third derivative of the rear piece as a multiple of the front's (`k2/k1`); zero for
+        /// the plain lines.
+        rear_ratio: f64,
+    },
+}
+
+/// Constants published for a design lift coefficient of 0.3: position digit, joint, front cubic,
+/// ratio of the rear cubic. NACA Reports 537 and 610, from memory.
+const PLAIN: [(u8, f64, f64, f64); 5] = [
+    (1, 0.0580, 361.400, 0.0),
+    (2, 0.1260, 51.640, 0.0),
+    (3, 0.2025, 15.957, 0.0),
+    (4, 0.2900, 6.643, 0.0),
+    (5, 0.3910, 3.230, 0.0),
+];
+#[expect(clippy::approx_constant, reason = "0.3180 is a published joint, no fraction of pi")]
+const REFLEXED: [(u8, f64, f64, f64); 4] = [
+    (2, 0.1300, 51.990, 0.000_764),
+    (3, 0.2170, 15.793, 0.006_770),
+    (4, 0.3180, 6.520, 0.030_300),
+    (5, 0.4410, 3.191, 0.135_500),
+];
+
+impl MeanLine {
+    /// The published five-digit line of a position digit, scaled to a design lift coefficient.
+    ///
+    /// # Errors
+    /// When no line is published for that digit.
+    pub fn five_digit(design_lift: f64, position_digit: u8, reflexed: bool) -> Result<Self, SectionError> {
+        let table: &[_] = if reflexed { &REFLEXED } else { &PLAIN };
+        let published = table.iter().find(|line| line.0 == position_digit);
+        let &(_, joint, front, rear_ratio) =
+            published.ok_or(SectionError::FiveDigitPosition { digit: position_digit, reflexed })?;
+        Ok(Self::FiveDigit { joint, front: front * design_lift / 0.3, rear_ratio })
+    }
+
+    /// Ordinate and derivatives at `x`; at the joint, those of the rear piece.
+    #[must_use]
+    pub fn at(&self, x: f64) -> Ordinate {
+        match *self {
+            Self::Straight => Ordinate { y: 0.0, slope: 0.0, second: 0.0, third: 0.0 },
+            Self::FourDigit { camber, position: p } => {
+                let (scale, start) = if x < p {
+                    (camber / (p * p), 0.0)
+                } else {
+                    (camber / ((1.0 - p) * (1.0 - p)), 1.0 - 2.0 * p)
+                };
+                Ordinate {
+                    y: scale * (start + 2.0 * p * x - x * x),
+                    slope: 2.0 * scale * (p - x),
+                    second: -2.0 * scale,
+                    third: 0.0,
+                }
+            }
+            Self::FiveDigit { joint: m, front, rear_ratio: ratio } => {
+                // One form serves the plain and the reflexed lines: with a ratio of zero the
+                // reflexed equation of Report 610 becomes the plain one of Report 537.
+                let sixth = front / 6.0;
+                let tilt = ratio * (1.0 - m).powi(3) + m.powi(3);
+                let bend = if x < m { 1.0 } else { ratio };
+                let d = x - m;
+                Ordinate {
+                    y: sixth * (bend * d.powi(3) - tilt * x + m.powi(3)),
+                    slope: sixth * (3.0 * bend * d * d - tilt),
+                    second: sixth * 6.0 * bend * d,
+                    third: sixth * 6.0 * bend,
+                }
+            }
+        }
+    }
+
+    /// Where the line changes from one polynomial to the next, strictly inside (0, 1).
+    #[must_use]
+    pub fn joint(&self) -> Option<f64> {
+        match *self {
+            Self::Straight => None,
+            Self::FourDigit { position, .. } => Some(position),
+            Self::FiveDigit { joint, .. } => Some(joint),
+        }
+    }
+}

@@ -1,0 +1,159 @@
+//! A foil section at unit chord: nose at the origin, trailing edge at x = 1, y upwards.
+
+mod designation;
+mod error;
+mod mean_line;
+mod numbers;
+mod thickness;
+
+pub use error::SectionError;
+pub use mean_line::{MeanLine, Ordinate};
+pub use numbers::Numbers;
+pub use thickness::{ThicknessForm, TrailingEdge};
+
+use crate::geometry::{Curve, Jet, Point, Vec2};
+
+/// One of the two surfaces.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Side {
+    /// The suction side at positive incidence.
+    Upper,
+    /// The other.
+    Lower,
+}
+
+/// A mean line with a thickness laid off perpendicular to it on both sides.
+///
+/// As a [`Curve`] its parameter runs from -1 (upper trailing edge) over 0 (nose) to 1 (lower
+/// trailing edge), anticlockwise; its square is the station on the mean line, so that the round
+/// nose is smooth in it.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Section {
+    name: String,
+    mean_line: MeanLine,
+    thickness: ThicknessForm,
+}
+
+impl Section {
+    /// A section from a mean line and a thickness form.
+    ///
+    /// # Errors
+    /// When a surface folds over itself because the mean line bends too sharply.
+    pub fn new(name: String, mean_line: MeanLine, thickness: ThicknessForm) -> Result<Self, SectionError> {
+        let section = Self { name, mean_line, thickness };
+        section.refuse_folds()?;
+        Ok(section)
+    }
+
+    /// A published section by its designation, such as `NACA 4412` or `NACA 23012`.
+    ///
+    /// # Errors
+    /// When the designation is not one, with what would be.
+    pub fn from_designation(text: &str, trailing_edge: TrailingEdge) -> Result<Self, SectionError> {
+        designation::parse(text, trailing_edge)
+    }
+
+    /// Designation.
+    #[must_use]
+    pub fn name(&self) -> &str {
+        &self.name
+    }
+
+    /// The mean line.
+    #[must_use]
+    pub fn mean_line(&self) -> &MeanLine {
+        &self.mean_line
+    }
+
+    /// The thickness form.
+    #[must_use]
+    pub fn thickness_form(&self) -> &ThicknessForm {
+        &self.thickness
+    }
+
+    /// Height of a surface above the chord line at station `x`, solved on the outline itself.
+    ///
+    /// Ahead of the nose this is the nose, and behind the end of the surface its end.
+    #[must_use]
+    pub fn surface(&self, side: Side, x: f64) -> f64 {
+        if x <= 0.0 {
+            return self.jet(0.0).point.y;
+        }
+        let sign = if side == Side::Upper { -1.0 } else { 1.0 };
+        // The surface reaches a little ahead of x = 0 near the nose and runs aft from there, so
+        // the last station not behind x, counted from the trailing edge, brackets the answer.
+        let station = |root: f64| self.jet(sign * root).point.x;
+        let (mut low, mut high) = (0.0, 1.0);
+        for _ in 0..60 {
+            let middle = 0.5 * (low + high);
+            if station(middle) < x { low = middle } else { high = middle }
+        }
+        self.jet(sign * 0.5 * (low + high)).point.y
+    }
+
+    /// `count` points along the outline (three at least) from the upper trailing edge over the
+    /// nose to the lower one, crowded at the nose and the trailing edge.
+    #[must_use]
+    pub fn points(&self, count: usize) -> Vec<Point> {
+        let last = count.max(3) - 1;
+        (0..=last)
+            .map(|i| {
+                let even = 2.0 * i as f64 / last as f64 - 1.0;
+                self.jet((std::f64::consts::FRAC_PI_2 * even).sin()).point
+            })
+            .collect()
+    }
+
+    fn refuse_folds(&self) -> Result<(), SectionError> {
+        const STATIONS: usize = 2000;
+        for i in 1..=STATIONS {
+            let root = i as f64 / STATIONS as f64;
+            let x = root * root;
+            let half = self.thickness.half_at_root(root)[0];
+            let line = self.mean_line.at(x);
+            // An offset curve turns back where the offset passes the centre of curvature.
+            let reach = half * line.second.abs() / (1.0 + line.slope * line.slope).powf(1.5);
+            if reach >= 1.0 {
+                let side = if line.second < 0.0 { "lower" } else { "upper" };
+                return Err(SectionError::Folds { name: self.name.clone(), side, percent: 100.0 * x });
+            }
+        }
+        Ok(())
+    }
+}
+
+impl Curve for Section {
+    fn jet(&self, t: f64) -> Jet {
+        let x = t * t;
+        let line = self.mean_line.at(x);
+        let [half, half_first, half_second] = self.thickness.half_at_root(t.abs());
+        // Offset along the normal and its derivatives in t: upper side (t < 0) outwards is up.
+        let (offset, offset_first, offset_second) =
+            if t < 0.0 { (half, -half_first, half_second) } else { (-half, -half_first, -half_second) };
+
+        let secant2 = 1.0 + line.slope * line.slope;
+        let (cos, sin) = (1.0 / secant2.sqrt(), line.slope / secant2.sqrt());
+        let (along, normal) = (Vec2::new(cos, sin), Vec2::new(-sin, cos));
+        // Angle of the mean line, differentiated by x and then by t.
+        let turn_x = line.second / secant2;
+        let turn_xx =
+            line.third / secant2 - 2.0 * line.slope * line.second * line.second / (secant2 * secant2);
+        let turn = turn_x * 2.0 * t;
+        let turn_rate = turn_xx * 4.0 * x + turn_x * 2.0;
+
+        Jet {
+            point: Point::new(x, line.y) + offset * normal,
+            first: Vec2::new(2.0 * t, 2.0 * t * line.slope) + offset_first * normal - offset * turn * along,
+            second: Vec2::new(2.0, 2.0 * line.slope + 4.0 * x * line.second) + offset_second * normal
+                - 2.0 * offset_first * turn * along
+                - offset * (turn_rate * along + turn * turn * normal),
+        }
+    }
+
+    fn breaks(&self) -> Vec<f64> {
+        match self.mean_line.joint() {
+            Some(joint) => vec![-1.0, -joint.sqrt(), 0.0, joint.sqrt(), 1.0],
+            None => vec![-1.0, 0.0, 1.0],
+        }
+    }
+}

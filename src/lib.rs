@@ -8,6 +8,7 @@
 //! from there to the files on disk. Inside, geometry is in millimetres, sections are in unit
 //! chord, flow is dimensionless and angles are in radians; units exist only at the edges.
 
+pub mod design;
 pub mod flow;
 pub mod geometry;
 pub mod section;

@@ -1,0 +1,76 @@
+//! A short mark of everything that shapes the parts.
+
+use std::fmt::Write;
+
+use sha2::{Digest, Sha256};
+
+use super::model::Design;
+use crate::units::{Angle, Length};
+
+impl Design {
+    /// Eight hexadecimal digits such as `3f9a-01c7`, the first of a SHA-256 over everything that
+    /// shapes the parts: the kind, the planform, the stations, templates, flap, masks, printer,
+    /// stock and router.
+    ///
+    /// Names, notes, comments, the order of keys, the unit a value was written in, the paper and
+    /// the range of the lift curves do not change it: pieces stay the same without them.
+    #[must_use]
+    pub fn fingerprint(&self) -> String {
+        let digest = Sha256::digest(self.shape().as_bytes());
+        let mut digits = String::with_capacity(9);
+        for (i, byte) in digest.iter().take(4).enumerate() {
+            let dash = if i == 2 { "-" } else { "" };
+            // Writing to a string cannot fail.
+            let _ = write!(digits, "{dash}{byte:02x}");
+        }
+        digits
+    }
+
+    /// The shape as text, one part a line. Changing it changes every fingerprint ever given.
+    fn shape(&self) -> String {
+        let mut lines = vec![
+            "plankform shape 1".to_owned(),
+            format!("kind {}", self.kind.word()),
+            format!("span {}", mm(self.span)),
+        ];
+        lines.extend(self.stations.iter().map(|station| {
+            format!(
+                "station {} chord {} section {} {} twist {} sweep {}",
+                mm(station.at),
+                mm(station.chord),
+                station.section.name(),
+                station.trailing_edge.word(),
+                degrees(station.twist),
+                mm(station.sweep)
+            )
+        }));
+        lines.extend(self.templates.iter().map(|at| format!("template {}", mm(*at))));
+        lines.extend(
+            self.flap.map(|flap| format!("flap {} {} {}", fixed(flap.hinge), mm(flap.from), mm(flap.to))),
+        );
+        let all = |what: &str, lengths: &[Length]| {
+            let each: Vec<String> = lengths.iter().map(|&length| mm(length)).collect();
+            format!("{what} {}", each.join(" "))
+        };
+        let (masks, printer, stock) = (&self.masks, &self.printer, &self.stock);
+        lines.push(all("masks", &[masks.clearance, masks.wall, masks.thickness]));
+        lines.push(all("printer", &[printer.bed_x, printer.bed_y, printer.bed_z, printer.margin]));
+        lines.push(all("stock", &[stock.length, stock.width, stock.thickness, stock.margin]));
+        lines.push(all("router", &[self.router.tolerance]));
+        lines.join("\n")
+    }
+}
+
+/// A nanometre is far below any tool and far above the rounding of another unit.
+fn fixed(value: f64) -> String {
+    let text = format!("{value:.6}");
+    if text == "-0.000000" { "0.000000".to_owned() } else { text }
+}
+
+fn mm(length: Length) -> String {
+    fixed(length.mm())
+}
+
+fn degrees(angle: Angle) -> String {
+    fixed(angle.degrees())
+}

@@ -1,0 +1,390 @@
+//! The registry of what a design file may hold.
+//!
+//! These tables are the only place where a key, its bounds, its default or its meaning is written
+//! down. The reader, its messages, the schema for editors and the page of the hand-book all follow
+//! from them.
+
+use super::model::{Kind, PaperSize};
+
+/// One table of the file.
+pub(super) struct Table {
+    /// Its name in brackets; empty for the keys above all tables.
+    pub(super) name: &'static str,
+    /// How often it may stand.
+    pub(super) times: Times,
+    /// What it is about, one line.
+    pub(super) doc: &'static str,
+    /// Its keys, in the order in which people read about them.
+    pub(super) keys: &'static [Key],
+}
+
+/// How often a table may stand in a file.
+#[derive(Clone, Copy, PartialEq)]
+pub(super) enum Times {
+    /// Exactly once.
+    Once,
+    /// Once or not at all; then all its defaults hold.
+    AtMostOnce,
+    /// Once or not at all; then there is no such thing.
+    Absent,
+    /// In double brackets, as often as these two say.
+    Many(usize, usize),
+}
+
+/// One key of a table.
+pub(super) struct Key {
+    /// As written.
+    pub(super) name: &'static str,
+    /// What it takes.
+    pub(super) takes: Takes,
+    /// What holds when it is left out.
+    pub(super) otherwise: Otherwise,
+    /// What it means, one line.
+    pub(super) doc: &'static str,
+    /// A value as one might write it (without the quotes).
+    pub(super) example: &'static str,
+}
+
+/// What a key takes, with its bounds.
+pub(super) enum Takes {
+    /// A name that files are called by.
+    Name,
+    /// Any text up to so many characters.
+    Text(usize),
+    /// One of these words.
+    Word(&'static [&'static str]),
+    /// A length within these, millimetres.
+    Length(f64, f64),
+    /// Up to so many lengths, each within these, millimetres.
+    Lengths(usize, f64, f64),
+    /// An angle within these, degrees.
+    Angle(f64, f64),
+    /// A number without a unit within these.
+    Number(f64, f64),
+}
+
+/// What holds when a key is left out.
+pub(super) enum Otherwise {
+    /// Nothing: it has to stand there.
+    Required,
+    /// This value, written as in the file without its quotes.
+    Default(&'static str),
+    /// What these words say.
+    Left(&'static str),
+}
+
+use Otherwise::{Default, Left, Required};
+use Takes::{Angle, Length, Lengths, Name, Number, Text, Word};
+
+const fn key(
+    name: &'static str,
+    takes: Takes,
+    otherwise: Otherwise,
+    doc: &'static str,
+    example: &'static str,
+) -> Key {
+    Key { name, takes, otherwise, doc, example }
+}
+
+/// Longest span, and the furthest that a place along it can lie, millimetres.
+const LONGEST: f64 = 10_000.0;
+
+/// The keys above all tables.
+pub(super) static ROOT: Table = Table {
+    name: "",
+    times: Times::Once,
+    doc: "What it is called and what it is.",
+    keys: &[
+        key("name", Name, Required, "What you call it; files are named after it.", "Main foil"),
+        key("kind", Word(Kind::WORDS), Required, "What is built.", "main-foil"),
+        key(
+            "notes",
+            Text(4000),
+            Left("none"),
+            "Your own words; they shape nothing.",
+            "First try, paulownia core",
+        ),
+    ],
+};
+
+/// The planform.
+pub(super) static PLANFORM: Table = Table {
+    name: "planform",
+    times: Times::Once,
+    doc: "The size along the span.",
+    keys: &[key(
+        "span",
+        Length(20.0, LONGEST),
+        Required,
+        "Tip to tip for a main foil or an elevator, made as two mirrored halves; end to end for a strut or a fin.",
+        "900 mm",
+    )],
+};
+
+/// One station.
+pub(super) static STATION: Table = Table {
+    name: "station",
+    times: Times::Many(2, 100),
+    doc: "A section at its place along the span, from the root outwards: the first at 0, the last at half the span (strut and fin: at the span).",
+    keys: &[
+        key(
+            "at",
+            Length(0.0, LONGEST),
+            Required,
+            "Distance from the root (the hull end of a strut) along the span.",
+            "450 mm",
+        ),
+        key("chord", Length(5.0, 2000.0), Required, "From the nose to the trailing edge.", "120 mm"),
+        key("section", Text(60), Required, "Designation of the section.", "NACA 2412"),
+        key(
+            "trailing-edge",
+            Word(&["published", "closed"]),
+            Default("published"),
+            "As wide as the published equation leaves it, or closed to a sharp edge.",
+            "closed",
+        ),
+        key(
+            "twist",
+            Angle(-30.0, 30.0),
+            Default("0 deg"),
+            "Nose-up positive, about the quarter chord.",
+            "-1.5 deg",
+        ),
+        key(
+            "sweep",
+            Length(-2000.0, 2000.0),
+            Default("0 mm"),
+            "How far the quarter chord lies aft of the first station's.",
+            "20 mm",
+        ),
+    ],
+};
+
+/// Where templates are cut.
+pub(super) static TEMPLATES: Table = Table {
+    name: "templates",
+    times: Times::AtMostOnce,
+    doc: "Where templates and masks are made.",
+    keys: &[key(
+        "at",
+        Lengths(200, 0.0, LONGEST),
+        Left("the stations themselves"),
+        "Places from the root outwards, in ascending order.",
+        "0 mm, 150 mm, 300 mm, 450 mm",
+    )],
+};
+
+/// The flap.
+pub(super) static FLAP: Table = Table {
+    name: "flap",
+    times: Times::Absent,
+    doc: "A flap that is planned; this version draws its hinge line for reference and splits nothing.",
+    keys: &[
+        key(
+            "hinge",
+            Number(0.3, 0.95),
+            Required,
+            "Where the hinge lies, as a fraction of the chord from the nose.",
+            "0.7",
+        ),
+        key(
+            "from",
+            Length(0.0, LONGEST),
+            Default("0 mm"),
+            "Where the flap begins, from the root along the span.",
+            "50 mm",
+        ),
+        key(
+            "to",
+            Length(0.0, LONGEST),
+            Left("the far end"),
+            "Where the flap ends, from the root along the span.",
+            "400 mm",
+        ),
+    ],
+};
+
+/// Lift curves.
+pub(super) static LIFT: Table = Table {
+    name: "lift",
+    times: Times::AtMostOnce,
+    doc: "The angles of attack of the lift curves, and the lift that is asked of the sections.",
+    keys: &[
+        key("from", Angle(-20.0, 20.0), Default("-4 deg"), "First angle of attack.", "-4 deg"),
+        key("to", Angle(-20.0, 20.0), Default("10 deg"), "Last angle of attack, above the first.", "10 deg"),
+        key(
+            "step",
+            Angle(0.01, 20.0),
+            Default("1 deg"),
+            "From one angle to the next; at most 500 angles in all.",
+            "0.5 deg",
+        ),
+        key(
+            "design",
+            Number(-3.0, 3.0),
+            Default("0.4"),
+            "Section lift coefficient that every station must reach within those angles.",
+            "0.4",
+        ),
+    ],
+};
+
+/// Masks.
+pub(super) static MASKS: Table = Table {
+    name: "masks",
+    times: Times::AtMostOnce,
+    doc: "The printed masks that guide the sanding.",
+    keys: &[
+        key(
+            "clearance",
+            Length(0.05, 5.0),
+            Default("0.3 mm"),
+            "Gap between the finished skin and the mask.",
+            "0.3 mm",
+        ),
+        key("wall", Length(2.0, 60.0), Default("10 mm"), "Material around the section.", "10 mm"),
+        key("thickness", Length(1.0, 60.0), Default("6 mm"), "Thickness of a mask along the span.", "6 mm"),
+    ],
+};
+
+/// The 3D printer.
+pub(super) static PRINTER: Table = Table {
+    name: "printer",
+    times: Times::AtMostOnce,
+    doc: "The 3D printer that makes the masks.",
+    keys: &[
+        key("bed-x", Length(50.0, 2000.0), Default("220 mm"), "Width of the bed.", "220 mm"),
+        key("bed-y", Length(50.0, 2000.0), Default("220 mm"), "Depth of the bed.", "220 mm"),
+        key("bed-z", Length(50.0, 2000.0), Default("250 mm"), "Greatest height of a print.", "250 mm"),
+        key("margin", Length(0.0, 50.0), Default("5 mm"), "Kept free along every edge of the bed.", "5 mm"),
+    ],
+};
+
+/// Paper.
+pub(super) static PAPER: Table = Table {
+    name: "paper",
+    times: Times::AtMostOnce,
+    doc: "The paper that templates are printed on.",
+    keys: &[
+        key("size", Word(PaperSize::WORDS), Default("A4"), "The sheet.", "A4"),
+        key(
+            "margin",
+            Length(5.0, 40.0),
+            Default("10 mm"),
+            "What the printer leaves white along every edge.",
+            "10 mm",
+        ),
+        key("overlap", Length(0.0, 40.0), Default("10 mm"), "How much neighbouring sheets share.", "10 mm"),
+    ],
+};
+
+/// Sheet stock.
+pub(super) static STOCK: Table = Table {
+    name: "stock",
+    times: Times::AtMostOnce,
+    doc: "The sheet that templates are routed from.",
+    keys: &[
+        key("length", Length(50.0, 5000.0), Default("1200 mm"), "Length of the sheet.", "1200 mm"),
+        key("width", Length(50.0, 5000.0), Default("600 mm"), "Width of the sheet.", "600 mm"),
+        key("thickness", Length(1.0, 200.0), Default("18 mm"), "Thickness of the sheet.", "18 mm"),
+        key(
+            "margin",
+            Length(0.0, 100.0),
+            Default("10 mm"),
+            "Kept free along every edge of the sheet.",
+            "10 mm",
+        ),
+    ],
+};
+
+/// The router.
+pub(super) static ROUTER: Table = Table {
+    name: "router",
+    times: Times::AtMostOnce,
+    doc: "The router that cuts the templates.",
+    keys: &[key(
+        "tolerance",
+        Length(0.001, 0.5),
+        Default("0.01 mm"),
+        "How far the cut line may stray from the section.",
+        "0.01 mm",
+    )],
+};
+
+/// Every table, in the order of the hand-book.
+pub(super) static TABLES: [&Table; 11] =
+    [&ROOT, &PLANFORM, &STATION, &TEMPLATES, &FLAP, &LIFT, &MASKS, &PRINTER, &PAPER, &STOCK, &ROUTER];
+
+impl Table {
+    /// The key of that name.
+    pub(super) fn key(&self, name: &str) -> Option<&'static Key> {
+        self.keys.iter().find(|key| key.name == name)
+    }
+
+    /// The header as written: `[planform]`, `[[station]]`, or what the keys above them are called.
+    pub(super) fn header(&self) -> String {
+        match self.times {
+            _ if self.name.is_empty() => "the head of the file, above all tables".to_owned(),
+            Times::Many(..) => format!("[[{}]]", self.name),
+            _ => format!("[{}]", self.name),
+        }
+    }
+
+    /// Whether a file has to hold it.
+    pub(super) fn required(&self) -> bool {
+        matches!(self.times, Times::Once | Times::Many(..))
+    }
+}
+
+impl Key {
+    /// A value as the file writes it, quotes and all.
+    pub(super) fn quoted(&self, value: &str) -> String {
+        match self.takes {
+            Number(..) => value.to_owned(),
+            Lengths(..) => {
+                let each: Vec<String> = value.split(", ").map(|item| format!("\"{item}\"")).collect();
+                format!("[{}]", each.join(", "))
+            }
+            _ => format!("\"{value}\""),
+        }
+    }
+
+    /// The key with a value to go by: `chord = "120 mm"`.
+    pub(super) fn line(&self) -> String {
+        format!("{} = {}", self.name, self.quoted(self.example))
+    }
+}
+
+impl Takes {
+    /// What it takes as it stands in a sentence: "a length from 5 mm to 2 m".
+    pub(super) fn describe(&self) -> String {
+        let number = crate::units::plain;
+        match *self {
+            Name => {
+                "1 to 60 letters (a to z), digits, spaces, '-' and '_', the first a letter or a digit".into()
+            }
+            Text(most) => format!("text of at most {most} characters"),
+            Word(words) => {
+                let each: Vec<String> = words.iter().map(|word| format!("\"{word}\"")).collect();
+                match each.split_last() {
+                    Some((last, rest)) if !rest.is_empty() => format!("{} or {last}", rest.join(", ")),
+                    _ => each.concat(),
+                }
+            }
+            Length(least, most) => format!("a length from {} to {}", round_length(least), round_length(most)),
+            Lengths(count, least, most) => format!(
+                "a list of up to {count} lengths from {} to {}",
+                round_length(least),
+                round_length(most)
+            ),
+            Angle(least, most) => format!("an angle from {} deg to {} deg", number(least), number(most)),
+            Number(least, most) => format!("a number from {} to {}", number(least), number(most)),
+        }
+    }
+}
+
+/// Bounds of a metre and more read better in metres.
+fn round_length(mm: f64) -> String {
+    let number = crate::units::plain;
+    if mm.abs() >= 1000.0 { format!("{} m", number(mm / 1000.0)) } else { format!("{} mm", number(mm)) }
+}

@@ -1,0 +1,70 @@
+//! The design file: what it may hold, what is wrong with it and where, and the design it makes.
+//!
+//! A file is read in three steps. `reader` and `value` hold each value against the registry in
+//! `keys`; `resolve` holds the values against each other and builds the sections; what any of them
+//! finds wrong is gathered in one [`DesignErrors`], so that a maker mends a file in one go.
+
+mod fingerprint;
+mod keys;
+mod model;
+mod page;
+mod problem;
+mod reader;
+mod resolve;
+mod schema;
+mod starter;
+mod value;
+
+pub use model::{Design, Flap, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
+pub use page::key_tables;
+pub use problem::{DesignErrors, Problem};
+pub use schema::schema;
+pub use starter::starter;
+
+use problem::{Problems, Wrong};
+use toml::de::DeTable;
+
+/// The largest design file that is read, in bytes.
+pub const LARGEST_FILE: usize = 1_000_000;
+
+impl Design {
+    /// Reads a design from the text of its file; `file_name` is only repeated in messages.
+    ///
+    /// # Errors
+    /// Everything that is wrong with the file, each with its place and what would be right: no
+    /// TOML, unknown or missing keys, values of the wrong kind or out of bounds, stations out of
+    /// order, sections that do not exist, files larger than [`LARGEST_FILE`].
+    pub fn parse(text: &str, file_name: &str) -> Result<Self, DesignErrors> {
+        let mut problems = Problems::default();
+        let design = read(text, &mut problems);
+        match design {
+            Some(design) if problems.is_empty() => Ok(design),
+            _ => Err(problems.report(text, file_name)),
+        }
+    }
+}
+
+fn read(text: &str, problems: &mut Problems) -> Option<Design> {
+    if text.len() > LARGEST_FILE {
+        let message = format!("the file has {} bytes: a design has {LARGEST_FILE} at most", text.len());
+        problems.add(0..0, Wrong::new(message));
+        return None;
+    }
+    let root = match DeTable::parse(text) {
+        Ok(root) => root,
+        Err(error) => {
+            let place = error.span().unwrap_or(0..0);
+            let message = format!("this is not TOML, the form of a design file: {}", error.message());
+            problems.add(place, Wrong::new(message.replace(char::is_control, "\u{fffd}")));
+            return None;
+        }
+    };
+    if root.get_ref().is_empty() {
+        let wrong = Wrong::new("the file holds no design: there is not one key in it")
+            .help("`plankform new FILE` writes a design to start from");
+        problems.add(0..0, wrong);
+        return None;
+    }
+    let sheet = reader::Sheet::read(root.get_ref(), problems);
+    resolve::design(&sheet, problems)
+}

@@ -1,0 +1,262 @@
+//! A design as resolved from its file: every default filled in, every bound checked.
+
+use crate::section::{Section, TrailingEdge};
+use crate::units::{Angle, Length};
+
+/// What is built.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum Kind {
+    /// The foil that carries the boat, in two mirrored halves.
+    MainFoil,
+    /// The small foil that trims it, in two mirrored halves.
+    Elevator,
+    /// What holds the foil below the hull, in one piece.
+    Strut,
+    /// A single upright foil under a hull.
+    Fin,
+}
+
+impl Kind {
+    /// Every kind, in the order in which [`Kind::WORDS`] names them.
+    pub const ALL: [Self; 4] = [Self::MainFoil, Self::Elevator, Self::Strut, Self::Fin];
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["main-foil", "elevator", "strut", "fin"];
+
+    /// The word of the design file.
+    #[must_use]
+    pub fn word(self) -> &'static str {
+        match self {
+            Self::MainFoil => "main-foil",
+            Self::Elevator => "elevator",
+            Self::Strut => "strut",
+            Self::Fin => "fin",
+        }
+    }
+
+    /// The kind of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        Self::ALL.into_iter().find(|kind| kind.word() == word)
+    }
+
+    /// Whether it is made of two mirrored halves, so that the span is measured tip to tip.
+    #[must_use]
+    pub fn mirrored(self) -> bool {
+        matches!(self, Self::MainFoil | Self::Elevator)
+    }
+}
+
+/// A checked design.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Design {
+    /// What the maker calls it: 1 to 60 letters, digits, spaces, `-` and `_`.
+    pub name: String,
+    /// What is built.
+    pub kind: Kind,
+    /// The maker's own words; they shape nothing.
+    pub notes: Option<String>,
+    /// Tip to tip for mirrored kinds, from one end to the other for the rest.
+    pub span: Length,
+    /// From the root outwards, two at least: the first at 0, the last at [`Design::reach`].
+    pub stations: Vec<Station>,
+    /// Where templates are cut, ascending; the stations themselves when the file names none.
+    pub templates: Vec<Length>,
+    /// The flap planned, if any.
+    pub flap: Option<Flap>,
+    /// What the lift curves cover.
+    pub lift: Lift,
+    /// The masks that guide the sanding.
+    pub masks: Masks,
+    /// The printer that makes the masks.
+    pub printer: Printer,
+    /// The paper for templates.
+    pub paper: Paper,
+    /// The sheet that templates are routed from.
+    pub stock: Stock,
+    /// The router.
+    pub router: Router,
+}
+
+impl Design {
+    /// Half the span.
+    #[must_use]
+    pub fn half_span(&self) -> Length {
+        Length::from_mm(self.span.mm() / 2.0)
+    }
+
+    /// From the root to the far end of what is built in one piece: half the span for mirrored
+    /// kinds, all of it for the rest. The last station lies here.
+    #[must_use]
+    pub fn reach(&self) -> Length {
+        if self.kind.mirrored() { self.half_span() } else { self.span }
+    }
+
+    /// The name as files carry it: "Main foil" becomes "main-foil".
+    #[must_use]
+    pub fn slug(&self) -> String {
+        let lower = self.name.to_ascii_lowercase();
+        let words: Vec<&str> = lower.split([' ', '-']).filter(|word| !word.is_empty()).collect();
+        words.join("-")
+    }
+}
+
+/// A section at its place along the span.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Station {
+    /// Distance from the root (the hull end of a strut) along the span.
+    pub at: Length,
+    /// Chord, 5 mm to 2 m.
+    pub chord: Length,
+    /// The section at unit chord.
+    pub section: Section,
+    /// The section as the file names it.
+    pub designation: String,
+    /// How its trailing edge is finished.
+    pub trailing_edge: TrailingEdge,
+    /// Nose-up about the quarter chord, -30 to 30 degrees.
+    pub twist: Angle,
+    /// How far the quarter chord lies aft of the first station's.
+    pub sweep: Length,
+}
+
+/// A flap. In this version its hinge line is drawn for reference and nothing is split.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Flap {
+    /// Where the hinge lies, a fraction of the chord from the nose, 0.3 to 0.95.
+    pub hinge: f64,
+    /// Where it begins, from the root along the span.
+    pub from: Length,
+    /// Where it ends, at most at [`Design::reach`].
+    pub to: Length,
+}
+
+/// What the lift curves cover.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Lift {
+    /// First angle of attack.
+    pub from: Angle,
+    /// Last angle of attack, above the first.
+    pub to: Angle,
+    /// From one to the next, positive; at most [`Lift::MOST_POINTS`] in all.
+    pub step: Angle,
+    /// Section lift coefficient that every station must reach within that range, -3 to 3.
+    pub design: f64,
+}
+
+impl Lift {
+    /// The most angles that one curve may have.
+    pub const MOST_POINTS: usize = 500;
+
+    /// The angles of attack, from the first to the last that whole steps reach.
+    #[must_use]
+    pub fn angles(&self) -> Vec<Angle> {
+        let at = |i: usize| Angle::from_degrees(self.from.degrees() + i as f64 * self.step.degrees());
+        (0..self.points().min(Self::MOST_POINTS)).map(at).collect()
+    }
+
+    /// How many angles that is. The small addition lets the last one survive rounding.
+    pub(super) fn points(&self) -> usize {
+        let steps = (self.to.degrees() - self.from.degrees()) / self.step.degrees();
+        if steps >= 0.0 { (steps + 1e-6).floor() as usize + 1 } else { 0 }
+    }
+}
+
+/// The printed masks that guide the sanding.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Masks {
+    /// Gap between the finished skin and the mask, 0.05 to 5 mm.
+    pub clearance: Length,
+    /// Material around the section, 2 to 60 mm.
+    pub wall: Length,
+    /// Thickness along the span, 1 to 60 mm.
+    pub thickness: Length,
+}
+
+/// The printer that makes the masks.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Printer {
+    /// Width of the bed, 50 mm to 2 m.
+    pub bed_x: Length,
+    /// Depth of the bed, 50 mm to 2 m.
+    pub bed_y: Length,
+    /// Greatest height of a print, 50 mm to 2 m.
+    pub bed_z: Length,
+    /// Kept free along every edge of the bed, 0 to 50 mm.
+    pub margin: Length,
+}
+
+/// A sheet of paper.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum PaperSize {
+    /// 210 mm by 297 mm.
+    A4,
+    /// 297 mm by 420 mm.
+    A3,
+    /// 8.5 in by 11 in.
+    Letter,
+}
+
+impl PaperSize {
+    /// Every size, in the order in which [`PaperSize::WORDS`] names them.
+    pub const ALL: [Self; 3] = [Self::A4, Self::A3, Self::Letter];
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["A4", "A3", "Letter"];
+
+    /// The word of the design file.
+    #[must_use]
+    pub fn word(self) -> &'static str {
+        match self {
+            Self::A4 => "A4",
+            Self::A3 => "A3",
+            Self::Letter => "Letter",
+        }
+    }
+
+    /// The size of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        Self::ALL.into_iter().find(|size| size.word() == word)
+    }
+
+    /// Width and height, upright.
+    #[must_use]
+    pub fn dimensions(self) -> (Length, Length) {
+        let (width, height) = match self {
+            Self::A4 => (210.0, 297.0),
+            Self::A3 => (297.0, 420.0),
+            Self::Letter => (215.9, 279.4),
+        };
+        (Length::from_mm(width), Length::from_mm(height))
+    }
+}
+
+/// The paper that templates are printed on.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Paper {
+    /// The sheet.
+    pub size: PaperSize,
+    /// What the printer leaves white along every edge, 5 to 40 mm.
+    pub margin: Length,
+    /// How much neighbouring sheets share, 0 to 40 mm.
+    pub overlap: Length,
+}
+
+/// The sheet that templates are routed from.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Stock {
+    /// One side, 50 mm to 5 m.
+    pub length: Length,
+    /// Other side, 50 mm to 5 m.
+    pub width: Length,
+    /// Thickness, 1 to 200 mm.
+    pub thickness: Length,
+    /// Kept free along every edge, 0 to 100 mm.
+    pub margin: Length,
+}
+
+/// The router.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Router {
+    /// How far the cut line may stray from the section, 0.001 to 0.5 mm.
+    pub tolerance: Length,
+}

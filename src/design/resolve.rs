@@ -1,0 +1,268 @@
+//! From the values of a file to a design: what has to agree between one value and another.
+
+use std::ops::Range;
+
+use super::keys;
+use super::model::{Design, Flap, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
+use super::problem::{Problems, Wrong};
+use super::reader::{Row, Sheet};
+use crate::section::{Section, TrailingEdge};
+use crate::units::{Angle, Length};
+
+/// Two places along the span nearer than this are one, millimetres.
+const SAME: f64 = 0.001;
+
+/// Builds the design, or notes why it cannot be.
+///
+/// Every part is looked at before any is given up, so that one run reports them all.
+pub(super) fn design(sheet: &Sheet, problems: &mut Problems) -> Option<Design> {
+    let root = sheet.one(&keys::ROOT)?;
+    let kind = root.text("kind").and_then(Kind::from_word);
+    let span = sheet.one(&keys::PLANFORM).and_then(|row| row.length("span"));
+    let reach = match (kind, span) {
+        (Some(kind), Some(span)) => Some(Reach::new(kind, span)),
+        _ => None,
+    };
+
+    let stations = stations(sheet.all(&keys::STATION), reach.as_ref(), problems);
+    let templates = templates(sheet.one(&keys::TEMPLATES), reach.as_ref(), problems);
+    let flap = sheet.one(&keys::FLAP).map(|row| flap(row, reach.as_ref(), problems));
+    let lift = lift(sheet.one(&keys::LIFT)?, problems);
+    let masks = masks(sheet.one(&keys::MASKS)?);
+    let printer = printer(sheet.one(&keys::PRINTER)?, problems);
+    let paper = paper(sheet.one(&keys::PAPER)?, problems);
+    let stock = stock(sheet.one(&keys::STOCK)?, problems);
+    let router = router(sheet.one(&keys::ROUTER)?);
+
+    let stations = stations?;
+    Some(Design {
+        name: root.text("name")?.to_owned(),
+        kind: kind?,
+        notes: root.text("notes").map(str::to_owned),
+        span: span?,
+        templates: templates.unwrap_or_else(|| stations.iter().map(|station| station.at).collect()),
+        stations,
+        flap: match flap {
+            Some(flap) => Some(flap?),
+            None => None,
+        },
+        lift: lift?,
+        masks: masks?,
+        printer: printer?,
+        paper: paper?,
+        stock: stock?,
+        router: router?,
+    })
+}
+
+/// How far the built piece reaches, and how to say why.
+struct Reach {
+    to: Length,
+    because: String,
+}
+
+impl Reach {
+    fn new(kind: Kind, span: Length) -> Self {
+        if kind.mirrored() {
+            let to = Length::from_mm(span.mm() / 2.0);
+            Self { to, because: format!("half the span of {span} is {to}") }
+        } else {
+            Self { to: span, because: format!("the span is {span}") }
+        }
+    }
+
+    /// Notes when a place lies beyond the end.
+    fn holds(&self, what: &str, place: Length, span: Range<usize>, problems: &mut Problems) {
+        if place.mm() > self.to.mm() + SAME {
+            let wrong = Wrong::new(format!("{what} lies at {place}, but {}", self.because))
+                .help(format!("it lies at \"{}\" at most", self.to));
+            problems.add(span, wrong);
+        }
+    }
+}
+
+fn stations(rows: &[Row], reach: Option<&Reach>, problems: &mut Problems) -> Option<Vec<Station>> {
+    let places: Vec<(Length, Range<usize>)> =
+        rows.iter().filter_map(|row| Some((row.length("at")?, row.place("at")))).collect();
+    let ordered = ascending("station", &places, problems);
+    // The ends mean nothing while the order is in doubt.
+    if ordered && places.len() == rows.len() {
+        ends(&places, reach, problems);
+    }
+    let stations: Vec<Option<Station>> = rows.iter().map(|row| station(row, problems)).collect();
+    stations.into_iter().collect()
+}
+
+/// Notes every place that does not lie beyond the one before it.
+fn ascending(what: &str, places: &[(Length, Range<usize>)], problems: &mut Problems) -> bool {
+    let mut ordered = true;
+    for pair in places.windows(2) {
+        let [(before, _), (here, span)] = pair else { continue };
+        let step = here.mm() - before.mm();
+        if step > SAME {
+            continue;
+        }
+        ordered = false;
+        let message = if step < -SAME {
+            format!("this {what} lies at {here}, nearer to the root than the one before it at {before}")
+        } else {
+            format!("this {what} lies at {here}, the same place as the one before it")
+        };
+        let help = format!("give each {what} a place of its own, from the root outwards");
+        problems.add(span.clone(), Wrong::new(message).help(help));
+    }
+    ordered
+}
+
+fn ends(places: &[(Length, Range<usize>)], reach: Option<&Reach>, problems: &mut Problems) {
+    if let Some((at, span)) = places.first()
+        && at.mm() > SAME
+    {
+        let wrong = Wrong::new(format!("the first station lies at {at}: the root is at 0"))
+            .help("write at = \"0 mm\"");
+        problems.add(span.clone(), wrong);
+    }
+    if let (Some((at, span)), Some(reach)) = (places.last(), reach)
+        && places.len() > 1
+        && (at.mm() - reach.to.mm()).abs() > SAME
+    {
+        let wrong = Wrong::new(format!("the last station lies at {at}, but {}", reach.because))
+            .help(format!("write at = \"{}\"", reach.to));
+        problems.add(span.clone(), wrong);
+    }
+}
+
+fn station(row: &Row, problems: &mut Problems) -> Option<Station> {
+    let trailing_edge = match row.text("trailing-edge") {
+        Some(word) if word == TrailingEdge::Closed.word() => TrailingEdge::Closed,
+        _ => TrailingEdge::Published,
+    };
+    let section = row.text("section").and_then(|designation| {
+        let made = Section::from_designation(designation, trailing_edge);
+        made.map_err(|error| problems.add(row.place("section"), Wrong::new(printable(&error.to_string()))))
+            .ok()
+    });
+    Some(Station {
+        at: row.length("at")?,
+        chord: row.length("chord")?,
+        section: section?,
+        designation: row.text("section")?.trim().to_owned(),
+        trailing_edge,
+        twist: row.angle("twist")?,
+        sweep: row.length("sweep")?,
+    })
+}
+
+/// The section's own words with nothing in them that a terminal would obey.
+fn printable(text: &str) -> String {
+    text.chars().map(|character| if character.is_control() { '\u{fffd}' } else { character }).collect()
+}
+
+fn templates(row: Option<&Row>, reach: Option<&Reach>, problems: &mut Problems) -> Option<Vec<Length>> {
+    let places = row?.lengths("at")?;
+    ascending("template", places, problems);
+    if let Some(reach) = reach {
+        for (at, span) in places {
+            reach.holds("this template", *at, span.clone(), problems);
+        }
+    }
+    Some(places.iter().map(|(at, _)| *at).collect())
+}
+
+fn flap(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Flap> {
+    let from = row.length("from")?;
+    let to = row.length("to").or(reach.map(|reach| reach.to))?;
+    if let Some(reach) = reach {
+        reach.holds("the flap's end", to, row.place("to"), problems);
+    }
+    if to.mm() <= from.mm() + SAME {
+        let wrong = Wrong::new(format!("the flap runs from {from} to {to}, and leaves nothing between"))
+            .help("from lies nearer to the root than to");
+        problems.add(row.place("from"), wrong);
+    }
+    Some(Flap { hinge: row.number("hinge")?, from, to })
+}
+
+fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
+    let (from, to, step): (Angle, Angle, Angle) = (row.angle("from")?, row.angle("to")?, row.angle("step")?);
+    let lift = Lift { from, to, step, design: row.number("design")? };
+    if to.degrees() <= from.degrees() {
+        let wrong =
+            Wrong::new(format!("the angles run from {from} to {to}: the last must lie above the first"));
+        problems.add(row.place("to"), wrong);
+    } else if lift.points() > Lift::MOST_POINTS {
+        let least = (to.degrees() - from.degrees()) / (Lift::MOST_POINTS - 1) as f64;
+        // Rounded up, so that the value we name is one that we take.
+        let least = Angle::from_degrees((least * 1000.0).ceil() / 1000.0);
+        let message = format!(
+            "{from} to {to} in steps of {step} makes {} angles: {} at most",
+            lift.points(),
+            Lift::MOST_POINTS
+        );
+        problems.add(
+            row.place("step"),
+            Wrong::new(message).help(format!("a step of \"{least}\" or more will do")),
+        );
+    }
+    Some(lift)
+}
+
+fn masks(row: &Row) -> Option<Masks> {
+    Some(Masks {
+        clearance: row.length("clearance")?,
+        wall: row.length("wall")?,
+        thickness: row.length("thickness")?,
+    })
+}
+
+/// Notes when margins on both edges, and what else is lost, leave nothing of a side.
+fn leaves_room(row: &Row, lost: Length, sides: &[(&str, Length)], problems: &mut Problems) {
+    for (name, side) in sides {
+        if side.mm() <= lost.mm() {
+            let wrong =
+                Wrong::new(format!("nothing is left of {name} ({side}): the edges take {lost} of it"))
+                    .help("take less margin or a larger size");
+            problems.add(row.place("margin"), wrong);
+        }
+    }
+}
+
+fn printer(row: &Row, problems: &mut Problems) -> Option<Printer> {
+    let printer = Printer {
+        bed_x: row.length("bed-x")?,
+        bed_y: row.length("bed-y")?,
+        bed_z: row.length("bed-z")?,
+        margin: row.length("margin")?,
+    };
+    let lost = Length::from_mm(2.0 * printer.margin.mm());
+    leaves_room(row, lost, &[("bed-x", printer.bed_x), ("bed-y", printer.bed_y)], problems);
+    Some(printer)
+}
+
+fn paper(row: &Row, problems: &mut Problems) -> Option<Paper> {
+    let paper = Paper {
+        size: row.text("size").and_then(PaperSize::from_word)?,
+        margin: row.length("margin")?,
+        overlap: row.length("overlap")?,
+    };
+    let (width, height) = paper.size.dimensions();
+    let lost = Length::from_mm(2.0 * paper.margin.mm() + paper.overlap.mm());
+    leaves_room(row, lost, &[("the paper's width", width), ("the paper's height", height)], problems);
+    Some(paper)
+}
+
+fn stock(row: &Row, problems: &mut Problems) -> Option<Stock> {
+    let stock = Stock {
+        length: row.length("length")?,
+        width: row.length("width")?,
+        thickness: row.length("thickness")?,
+        margin: row.length("margin")?,
+    };
+    let lost = Length::from_mm(2.0 * stock.margin.mm());
+    leaves_room(row, lost, &[("length", stock.length), ("width", stock.width)], problems);
+    Some(stock)
+}
+
+fn router(row: &Row) -> Option<Router> {
+    Some(Router { tolerance: row.length("tolerance")? })
+}

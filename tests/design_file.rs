@@ -1,0 +1,594 @@
+//! The design file: what is read, and what is said about what cannot be.
+
+#![allow(clippy::unwrap_used, reason = "in a test, a panic is the report")]
+
+use plankform::design::{self, Design, DesignErrors, Kind, LARGEST_FILE, Problem};
+use plankform::units::Length;
+use proptest::prelude::*;
+
+const MAIN_FOIL: &str = include_str!("../demo-sections/main-foil.toml");
+const ELEVATOR: &str = include_str!("../demo-sections/elevator.toml");
+const STRUT: &str = include_str!("../demo-sections/strut.toml");
+const DEMOS: [(&str, &str); 3] =
+    [("main-foil.toml", MAIN_FOIL), ("elevator.toml", ELEVATOR), ("strut.toml", STRUT)];
+
+/// A small valid fin; tests spoil one line of it.
+const FIN: &str = r#"name = "Test fin"
+kind = "fin"
+[planform]
+span = "300 mm"
+[[station]]
+at = "0 mm"
+chord = "120 mm"
+section = "NACA 0012"
+[[station]]
+at = "300 mm"
+chord = "80 mm"
+section = "NACA 0010"
+"#;
+
+fn good(text: &str) -> Design {
+    Design::parse(text, "good.toml").unwrap_or_else(|errors| panic!("{errors}"))
+}
+
+fn bad(text: &str) -> DesignErrors {
+    Design::parse(text, "bad.toml").expect_err(text)
+}
+
+/// The fin with one piece of text put for another, which must be there.
+fn fin_with(from: &str, to: &str) -> String {
+    assert!(FIN.contains(from), "{from}");
+    FIN.replacen(from, to, 1)
+}
+
+/// The one problem of a file.
+fn only(text: &str) -> Problem {
+    let errors = bad(text);
+    assert_eq!(errors.problems().len(), 1, "{errors}");
+    errors.problems()[0].clone()
+}
+
+/// Checks the one problem of the spoilt fin: where it stands, and words of its message and help.
+#[track_caller]
+fn spoilt(from: &str, to: &str, place: (usize, usize), says: &[&str]) {
+    let text = fin_with(from, to);
+    let problem = only(&text);
+    assert_eq!((problem.line, problem.column), place, "{}", bad(&text));
+    let rendered = bad(&text).render(false);
+    assert!(rendered.contains(&format!("bad.toml:{}:{}", place.0, place.1)), "{rendered}");
+    let said = format!("{} {}", problem.message, problem.help.unwrap_or_default());
+    for words in says {
+        assert!(said.contains(words), "{words:?} is not in {said:?}");
+    }
+}
+
+#[test]
+fn demonstration_files_are_designs() {
+    for (file, text) in DEMOS {
+        let design = Design::parse(text, file).unwrap_or_else(|errors| panic!("{errors}"));
+        let last = design.stations.last().unwrap();
+        assert_eq!(last.at, design.reach(), "{file}");
+        // A mask goes around the whole chord and has to lie on the bed.
+        let bed = design.printer.bed_x.mm() - 2.0 * design.printer.margin.mm();
+        for station in &design.stations {
+            let mask = station.chord.mm() + 2.0 * (design.masks.wall.mm() + design.masks.clearance.mm());
+            assert!(mask <= bed, "{file}: {mask} mm on {bed} mm");
+        }
+    }
+    let foil = good(MAIN_FOIL);
+    assert_eq!((foil.kind, foil.span.mm(), foil.half_span().mm()), (Kind::MainFoil, 900.0, 450.0));
+    assert_eq!(foil.slug(), "scow-main-foil");
+    assert_eq!(foil.stations[2].twist.degrees(), -1.5);
+    assert_eq!(foil.stations[2].section.name(), "NACA 2412");
+    let flap = foil.flap.unwrap();
+    assert_eq!((flap.hinge, flap.from.mm(), flap.to.mm()), (0.7, 40.0, 420.0));
+    assert_eq!(foil.lift.angles().len(), 33);
+    assert_eq!(foil.lift.angles().last().unwrap().degrees(), 11.0);
+}
+
+#[test]
+fn what_is_left_out_takes_its_default() {
+    let fin = good(FIN);
+    assert_eq!((fin.lift.from.degrees(), fin.lift.to.degrees(), fin.lift.design), (-4.0, 10.0, 0.4));
+    assert_eq!(fin.lift.angles().len(), 15);
+    assert_eq!((fin.masks.clearance.mm(), fin.masks.wall.mm(), fin.masks.thickness.mm()), (0.3, 10.0, 6.0));
+    assert_eq!(
+        (fin.printer.bed_x.mm(), fin.printer.bed_z.mm(), fin.printer.margin.mm()),
+        (220.0, 250.0, 5.0)
+    );
+    assert_eq!((fin.paper.size.word(), fin.paper.overlap.mm()), ("A4", 10.0));
+    assert_eq!(
+        (fin.stock.length.mm(), fin.stock.width.mm(), fin.stock.thickness.mm()),
+        (1200.0, 600.0, 18.0)
+    );
+    assert_eq!(fin.router.tolerance.mm(), 0.01);
+    assert_eq!((fin.stations[1].twist.degrees(), fin.stations[1].sweep.mm()), (0.0, 0.0));
+    assert_eq!(fin.stations[1].trailing_edge.word(), "published");
+    assert_eq!(fin.templates, [Length::from_mm(0.0), Length::from_mm(300.0)]);
+    assert_eq!((fin.flap, fin.notes.clone()), (None, None));
+    // A flap without ends takes the whole piece.
+    let flap = good(&format!("{FIN}[flap]\nhinge = 0.7\n")).flap.unwrap();
+    assert_eq!((flap.from.mm(), flap.to.mm()), (0.0, 300.0));
+}
+
+#[test]
+fn starters_are_valid_and_their_marked_lines_are_the_defaults() {
+    for kind in Kind::ALL {
+        let text = design::starter(kind);
+        let design = good(&text);
+        assert_eq!(design.kind, kind);
+        let (_, marked) = text.split_once("change one.").unwrap();
+        let defaults: String = marked
+            .lines()
+            .filter(|line| line.starts_with("# [") || line.contains(" = "))
+            .fold(String::new(), |all, line| all + line.trim_start_matches("# ") + "\n");
+        assert!(defaults.contains("bed-x = \"220 mm\""), "{defaults}");
+        assert_eq!(good(&format!("{text}\n{defaults}")), design);
+        // The places suggested for templates fit the span, and are more than the two stations.
+        let places = text.replace("# [templates]", "[templates]").replace("# at =", "at =");
+        assert!(good(&places).templates.len() > 2);
+    }
+}
+
+#[test]
+fn quantities_need_their_units() {
+    spoilt("\"120 mm\"", "120", (7, 9), &["120 has no unit", "mm, cm, m, in or ft", "\"120 mm\""]);
+    spoilt("\"120 mm\"", "\"120\"", (7, 9), &["120 has no unit", "mm, cm, m, in or ft"]);
+    spoilt("\"120 mm\"", "\"120 mmm\"", (7, 9), &["'mmm' is not a unit", "did you mean mm?"]);
+    spoilt("\"120 mm\"", "nan", (7, 9), &["'nan' is not a finite number"]);
+    spoilt("\"120 mm\"", "-inf", (7, 9), &["'-inf' is not a finite number"]);
+    spoilt("\"120 mm\"", "\"NaN mm\"", (7, 9), &["'NaN mm' is not a finite number"]);
+    spoilt("\"120 mm\"", "\"1e999 mm\"", (7, 9), &["not a finite number"]);
+    spoilt("\"120 mm\"", "\"\"", (7, 9), &["a length is wanted here, and nothing is written"]);
+    spoilt("\"120 mm\"", "\"wide\"", (7, 9), &["'wide' does not start with a number"]);
+    spoilt("\"120 mm\"", "true", (7, 9), &["a length from 5 mm to 2 m", "this is true or false"]);
+    spoilt("\"120 mm\"", "[1]", (7, 9), &["a length from 5 mm to 2 m", "this is a list"]);
+    spoilt("\"120 mm\"", "0x78", (7, 9), &["a length from 5 mm to 2 m", "this is a number"]);
+    spoilt(
+        "\"NACA 0012\"",
+        "\"NACA 0012\"\ntwist = 3",
+        (9, 9),
+        &["3 has no unit", "deg or rad", "\"3 deg\""],
+    );
+}
+
+#[test]
+fn bounds_are_kept_and_named() {
+    for chord in ["0 mm", "-3 mm", "4.9 mm", "2001 mm", "1e6 m"] {
+        spoilt("\"120 mm\"", &format!("\"{chord}\""), (7, 9), &["chord is ", "a length from 5 mm to 2 m"]);
+    }
+    // The bounds themselves are inside, in every unit.
+    for chord in ["5 mm", "0.5 cm", "2 m", "2000 mm"] {
+        good(&fin_with("\"120 mm\"", &format!("\"{chord}\"")));
+    }
+    spoilt(
+        "\"300 mm\"",
+        "\"19 mm\"",
+        (4, 8),
+        &["span is 19 mm: it takes a length from 20 mm to 10 m"].as_slice(),
+    )
+}
+
+#[test]
+fn keys_are_known_or_guessed_at() {
+    spoilt(
+        "chord = \"120 mm\"",
+        "chord = \"120 mm\"\nswep = \"3 mm\"",
+        (8, 1),
+        &["'swep'", "did you mean sweep?"],
+    );
+    spoilt("kind = \"fin\"", "kind = \"fin\"\nzzz = 1", (3, 1), &["'zzz' is not a key", "name, kind, notes"]);
+    spoilt("kind = \"fin\"", "kind = \"fin\"\nchord = 1", (3, 1), &["chord is a key of [[station]]"]);
+    spoilt("[planform]", "[maks]\n[planform]", (3, 2), &["'maks'", "did you mean masks?"]);
+    spoilt(
+        "\"fin\"",
+        "\"fim\"",
+        (2, 8),
+        &["'fim'", "\"main-foil\", \"elevator\", \"strut\" or \"fin\"", "mean \"fin\""],
+    );
+    spoilt("span = \"300 mm\"\n", "", (3, 1), &["span of [planform] is missing", "from 20 mm to 10 m"]);
+    spoilt("kind = \"fin\"\n", "", (1, 1), &["kind is missing", "kind = \"main-foil\""]);
+    spoilt("chord = \"80 mm\"\n", "", (9, 1), &["chord of [[station]] is missing"]);
+}
+
+#[test]
+fn tables_stand_as_often_as_they_may() {
+    spoilt("[planform]\nspan = \"300 mm\"\n", "", (1, 1), &["[planform] is missing", "span = \"900 mm\""]);
+    spoilt(
+        "[planform]",
+        "[[planform]]",
+        (3, 1),
+        &["planform is a table, and this is a list", "write [planform]"],
+    );
+    let one = &FIN[..FIN.rfind("[[station]]").unwrap()];
+    let problem = only(one);
+    assert_eq!((problem.line, problem.column), (5, 1));
+    assert!(problem.message.contains("two") || problem.message.contains("2 times"), "{}", problem.message);
+    let single = one.replace("[[station]]", "[station]");
+    assert!(only(&single).help.unwrap().contains("write [[station]]"));
+    let none = &FIN[..FIN.find("[[station]]").unwrap()];
+    assert!(only(none).message.starts_with("[[station]] is missing"));
+    let mut many = FIN[..FIN.find("[[station]]").unwrap()].to_owned();
+    for i in 0..101 {
+        many += &format!("[[station]]\nat = \"{} mm\"\nchord = \"90 mm\"\nsection = \"NACA 0012\"\n", 3 * i);
+    }
+    // Only the count is wrong; the hundredth lies 3 mm short of the end.
+    let errors = bad(&many);
+    assert!(errors.problems().iter().any(|problem| problem.message.contains("at most 100")), "{errors}");
+}
+
+#[test]
+fn sections_are_looked_up_where_they_stand() {
+    spoilt("\"NACA 0012\"", "\"NACA 44\"", (8, 11), &["'NACA 44' has 2 digits"]);
+    spoilt("\"NACA 0012\"", "\"NACA 99999\"", (8, 11), &["99"]);
+    spoilt("\"NACA 0012\"", "\"flat plate\"", (8, 11), &["'flat plate' is not a section"]);
+    spoilt("\"NACA 0012\"", "12", (8, 11), &["section takes text", "this is a number"]);
+    spoilt("\"NACA 0012\"", &format!("\"{}\"", "9".repeat(61)), (8, 11), &["61 characters"]);
+    let closed = good(&fin_with("\"NACA 0012\"", "\"naca0012\"\ntrailing-edge = \"closed\""));
+    assert_eq!(closed.stations[0].section.name(), "NACA 0012");
+    assert_eq!(closed.stations[0].designation, "naca0012");
+    assert!(closed.stations[0].section.numbers().trailing_edge_thickness < 1e-15);
+}
+
+#[test]
+fn stations_run_from_the_root_to_the_end() {
+    spoilt("at = \"0 mm\"", "at = \"10 mm\"", (6, 6), &["first station lies at 10 mm", "at = \"0 mm\""]);
+    spoilt(
+        "at = \"300 mm\"",
+        "at = \"290 mm\"",
+        (10, 6),
+        &["last station lies at 290 mm", "at = \"300 mm\""],
+    );
+    spoilt("at = \"300 mm\"", "at = \"0 mm\"", (10, 6), &["the same place"]);
+    let middle = "[[station]]\nat = \"400 mm\"\nchord = \"90 mm\"\nsection = \"NACA 0012\"\n[[station]]\nat = \"300 mm\"";
+    spoilt(
+        "[[station]]\nat = \"300 mm\"",
+        middle,
+        (14, 6),
+        &["lies at 300 mm, nearer to the root", "400 mm"],
+    );
+    // A micrometre either way is the rounding of another unit.
+    good(&fin_with("at = \"300 mm\"", "at = \"300.0009 mm\""));
+    only(&fin_with("at = \"300 mm\"", "at = \"300.002 mm\""));
+    // The mirrored kinds end at half the span.
+    let errors = bad(&fin_with("\"fin\"", "\"main-foil\""));
+    assert_eq!(errors.problems()[0].help.as_deref(), Some("write at = \"150 mm\""), "{errors}");
+    assert!(errors.problems()[0].message.contains("half the span of 300 mm is 150 mm"), "{errors}");
+}
+
+#[test]
+fn names_are_safe_to_call_files_by() {
+    for name in ["../x", "a/b", "a..b", "C:\\\\x"] {
+        spoilt(
+            "\"Test fin\"",
+            &format!("\"{name}\""),
+            (1, 8),
+            &["files are named after it", "other folders"],
+        );
+    }
+    for name in ["", " x", "-x", ".x", "a\\u0000b", "a:b", "füß", "x\\n"] {
+        spoilt("\"Test fin\"", &format!("\"{name}\""), (1, 8), &["1 to 60 letters"]);
+    }
+    spoilt("\"Test fin\"", &format!("\"{}\"", "x".repeat(61)), (1, 8), &["61 characters"]);
+    let long = "x".repeat(60);
+    assert_eq!(good(&fin_with("Test fin", &long)).slug(), long);
+    assert_eq!(good(&fin_with("Test fin", "Main  foil - No_2 ")).slug(), "main-foil-no_2");
+}
+
+#[test]
+fn further_tables_agree_with_themselves() {
+    let with = |tables: &str| format!("{FIN}{tables}\n");
+    let says = |tables: &str, line: usize, words: &str| {
+        let problem = only(&with(tables));
+        let said = format!("{} {}", problem.message, problem.help.clone().unwrap_or_default());
+        assert!(said.contains(words), "{words:?} is not in {said:?}");
+        assert_eq!(problem.line, line, "{}", bad(&with(tables)));
+    };
+    says("[templates]\nat = [\"0 mm\", \"200 mm\", \"100 mm\"]", 14, "nearer to the root");
+    says("[templates]\nat = [\"0 mm\", \"0 mm\"]", 14, "the same place");
+    says("[templates]\nat = [\n\"0 mm\",\n\"301 mm\"]", 16, "301 mm, but the span is 300 mm");
+    says("[templates]\nat = []", 14, "has 0 places");
+    says("[templates]\nat = \"0 mm\"", 14, "a list of up to 200 lengths");
+    says("[templates]\nat = [\"0 mm\", 10]", 14, "10 has no unit");
+    says("[flap]\nhinge = 0.2", 14, "hinge is 0.2: it takes a number from 0.3 to 0.95");
+    says("[flap]\nhinge = \"0.7\"", 14, "stands without quotes");
+    says("[flap]\nhinge = nan", 14, "not a finite number");
+    says("[flap]", 13, "hinge of [flap] is missing");
+    says("[flap]\nhinge = 0.7\nto = \"400 mm\"", 15, "400 mm, but the span is 300 mm");
+    says("[flap]\nhinge = 0.7\nfrom = \"300 mm\"", 15, "leaves nothing between");
+    says("[lift]\nfrom = \"5 deg\"\nto = \"5 deg\"", 15, "the last must lie above the first");
+    says("[lift]\nstep = \"0 deg\"", 14, "an angle from 0.01 deg to 20 deg");
+    says("[lift]\nstep = \"0.02 deg\"", 14, "701 angles: 500 at most");
+    says("[lift]\nto = \"21 deg\"", 14, "an angle from -20 deg to 20 deg");
+    says("[lift]\ndesign = 4", 14, "a number from -3 to 3");
+    says("[masks]\nclearance = \"0 mm\"", 14, "from 0.05 mm to 5 mm");
+    says("[paper]\nsize = \"a4\"", 14, "did you mean \"A4\"?");
+    says("[stock]\nwidth = \"200 mm\"\nmargin = \"100 mm\"", 15, "nothing is left of width");
+    assert_eq!(
+        bad(&with("[printer]\nbed-x = \"60 mm\"\nbed-y = \"60 mm\"\nmargin = \"30 mm\"")).problems().len(),
+        2
+    );
+    // The step that the message names is one that is taken.
+    good(&with("[lift]\nstep = \"0.029 deg\""));
+}
+
+#[test]
+fn files_that_are_no_designs_are_refused_once() {
+    for text in ["", "\n\n", "# only a comment\n"] {
+        assert!(only(text).message.contains("holds no design"), "{text:?}");
+    }
+    let problem = only("name = \"x\"\nkind = = 3\n");
+    assert_eq!((problem.line, problem.column), (2, 8));
+    assert!(problem.message.contains("not TOML"), "{}", problem.message);
+    let twice = only("name = \"x\"\nname = \"y\"\n");
+    assert_eq!((twice.line, twice.column), (2, 1));
+    assert!(only("%PDF-1.4 \u{0}\u{1}").message.contains("not TOML"));
+    for deep in ["[", "a = [", "a = {b = ", "a.", "[[", "a = [[{x=[", "[a.", "\n[x]\na = ["] {
+        let errors = bad(&deep.repeat(100_000 / deep.len()));
+        assert!(!errors.render(false).is_empty());
+    }
+    let large = format!("{FIN}# {}\n", "x".repeat(LARGEST_FILE));
+    assert!(only(&large).message.contains("1000000 at most"));
+    let just = format!("{FIN}# {}\n", "x".repeat(LARGEST_FILE - FIN.len() - 3));
+    assert_eq!((just.len(), good(&just)), (LARGEST_FILE, good(FIN)));
+}
+
+#[test]
+fn a_flood_of_problems_is_cut_short() {
+    let flood: String = (0..90_000).map(|i| format!("k{i}=1\n")).collect();
+    let errors = bad(&flood);
+    assert_eq!(errors.problems().len(), 100);
+    assert!(errors.more() > 80_000, "{}", errors.more());
+    assert!(errors.render(true).len() < 100_000);
+    // The end of an endless line is not led up to a hundred times either.
+    let keys: String = (0..200).map(|i| format!(", k{i} = 1")).collect();
+    let errors = bad(&format!("planform = {{ z = \"{}\"{keys} }}\n", "x".repeat(900_000)));
+    let last = errors.problems().last().unwrap();
+    assert!(last.column > 900_000, "{last:?}");
+    let rendered = errors.render(false);
+    assert!(rendered.contains(&format!("bad.toml:1:{}\n", last.column)));
+    assert!(rendered.len() < 100_000, "{}", rendered.len());
+}
+
+#[test]
+fn all_problems_are_reported_together_in_order() {
+    let text = r#"name = "a/b"
+kind = "foil"
+colour = "red"
+[planform]
+span = 900
+	[[station]]
+	at = "0 mm" # tab before
+chord = "0 mm"
+section = "NACA 44"
+[[station]]
+at = "450 mm"
+section = "NACA 0012"
+é = "1 mm"
+"#
+    .replace("é = ", "\"é\" = 1\ntwist = \"45°\" # ");
+    let errors = bad(&text);
+    let places: Vec<(usize, usize)> =
+        errors.problems().iter().map(|problem| (problem.line, problem.column)).collect();
+    let expected = [(1, 8), (2, 8), (3, 1), (5, 8), (8, 9), (9, 11), (10, 1), (13, 1), (14, 9)];
+    assert_eq!(places, expected, "{errors}");
+    let rendered = errors.render(false);
+    for (line, column) in expected {
+        assert!(rendered.contains(&format!("bad.toml:{line}:{column}\n")), "{line}:{column} in {rendered}");
+    }
+    assert!(!rendered.contains('\u{1b}'));
+    assert!(errors.render(true).contains("\u{1b}["));
+    assert_eq!(errors.to_string(), rendered);
+    for problem in errors.problems() {
+        assert!(text.get(problem.span.clone()).is_some(), "{problem:?}");
+    }
+    assert_eq!(&text[errors.problems()[4].span.clone()], "\"0 mm\"");
+}
+
+#[test]
+fn columns_count_characters_after_wide_ones() {
+    let text =
+        fin_with("chord = \"120 mm\"", "\t\"sweep\" = \"3 mm\"\n \"twist\"\t= \"ü\"\nchord = \"120 mm\"");
+    let problem = only(&text);
+    assert_eq!((problem.line, problem.column), (8, 12));
+    let text = fin_with("[planform]", "planform = { \"ü\" = 1, span = \"300 mm\" }").replacen(
+        "span = \"300 mm\"\n",
+        "",
+        1,
+    );
+    let problem = only(&text);
+    assert_eq!((problem.line, problem.column), (3, 14));
+}
+
+#[test]
+fn nothing_of_the_file_reaches_the_terminal_as_a_command() {
+    let hostile = r#""\u001b[31mred\u0007""#;
+    for from in ["\"Test fin\"", "\"fin\"", "\"300 mm\"", "\"NACA 0012\""] {
+        let rendered = bad(&fin_with(from, hostile)).render(false);
+        assert!(!rendered.chars().any(|c| c.is_control() && c != '\n'), "{rendered:?}");
+    }
+    let errors = Design::parse("x = \u{1b}[31m", "a\u{1b}[31m.toml").unwrap_err();
+    assert!(!errors.render(false).contains('\u{1b}'));
+}
+
+#[test]
+fn the_fingerprint_follows_the_shape_and_nothing_else() {
+    let fin = good(FIN).fingerprint();
+    assert_eq!(fin.len(), 9);
+    assert!(fin.bytes().enumerate().all(|(i, b)| if i == 4 { b == b'-' } else { b.is_ascii_hexdigit() }));
+
+    let same = [
+        fin_with("\"300 mm\"", "\"30 cm\""),
+        fin_with("\"120 mm\"", "\"0.12 m\""),
+        fin_with("Test fin", "Another name"),
+        fin_with("kind = \"fin\"", "# a comment\nkind = \"fin\"\nnotes = \"words\""),
+        fin_with("at = \"0 mm\"\nchord = \"120 mm\"", "chord = \"120 mm\"\nat = \"0 mm\""),
+        fin_with("\"NACA 0012\"", "\"naca0012\"\ntwist = \"-0 rad\""),
+        format!("{FIN}[templates]\nat = [\"0 mm\", \"300 mm\"]\n"),
+        format!("{FIN}[masks]\nwall = \"1 cm\"\n[lift]\nto = \"8 deg\"\n[paper]\nsize = \"A3\"\n"),
+    ];
+    for text in same {
+        assert_eq!(good(&text).fingerprint(), fin, "{text}");
+    }
+    let inches = fin_with("\"120 mm\"", "\"5 in\"");
+    assert_eq!(good(&inches).fingerprint(), good(&fin_with("\"120 mm\"", "\"127 mm\"")).fingerprint());
+
+    let other = [
+        fin_with("\"120 mm\"", "\"120.001 mm\""),
+        fin_with("\"fin\"", "\"strut\""),
+        fin_with("\"NACA 0012\"", "\"NACA 0013\""),
+        fin_with("\"NACA 0012\"", "\"NACA 0012\"\ntrailing-edge = \"closed\""),
+        fin_with("\"NACA 0012\"", "\"NACA 0012\"\ntwist = \"0.1 deg\""),
+        fin_with("\"NACA 0012\"", "\"NACA 0012\"\nsweep = \"1 mm\""),
+        FIN.replace("\"300 mm\"", "\"301 mm\""),
+        format!("{FIN}[templates]\nat = [\"0 mm\", \"150 mm\", \"300 mm\"]\n"),
+        format!("{FIN}[flap]\nhinge = 0.7\n"),
+        format!("{FIN}[masks]\nclearance = \"0.4 mm\"\n"),
+        format!("{FIN}[printer]\nbed-y = \"200 mm\"\n"),
+        format!("{FIN}[stock]\nthickness = \"12 mm\"\n"),
+        format!("{FIN}[router]\ntolerance = \"0.02 mm\"\n"),
+    ];
+    let mut seen = vec![fin];
+    for text in other {
+        let fingerprint = good(&text).fingerprint();
+        assert!(!seen.contains(&fingerprint), "{text}");
+        seen.push(fingerprint);
+    }
+}
+
+#[test]
+fn the_schema_names_every_key_with_its_bounds() {
+    let schema = design::schema();
+    assert_eq!(schema["$schema"], "http://json-schema.org/draft-07/schema#");
+    assert_eq!(schema["additionalProperties"], false);
+    assert_eq!(schema["required"], serde_json::json!(["name", "kind", "planform", "station"]));
+    let station = &schema["properties"]["station"];
+    assert_eq!((station["minItems"].as_u64(), station["maxItems"].as_u64()), (Some(2), Some(100)));
+    assert_eq!(station["items"]["required"], serde_json::json!(["at", "chord", "section"]));
+    let chord = &station["items"]["properties"]["chord"];
+    assert!(chord["description"].as_str().unwrap().contains("a length from 5 mm to 2 m"));
+    assert!(chord["pattern"].as_str().unwrap().contains("mm|cm|m|in"));
+    assert_eq!(schema["properties"]["flap"]["properties"]["hinge"]["maximum"], 0.95);
+    assert_eq!(
+        schema["properties"]["paper"]["properties"]["size"]["enum"],
+        serde_json::json!(["A4", "A3", "Letter"])
+    );
+    assert_eq!(schema["properties"]["lift"]["properties"]["design"]["default"], 0.4);
+}
+
+/// Puts every example and every default of the schema into a file: they must be read as they stand.
+#[test]
+fn examples_and_defaults_of_the_schema_are_read() {
+    let schema = design::schema();
+    let mut tried = 0;
+    for (table, about) in schema["properties"].as_object().unwrap() {
+        let inner =
+            if about["type"] == "array" { &about["items"]["properties"] } else { &about["properties"] };
+        for (key, about) in inner.as_object().into_iter().flatten() {
+            let examples = about["examples"].as_array().unwrap().iter().chain(about.get("default"));
+            for value in examples {
+                let header = if table == "station" { "[[station]]" } else { &format!("[{table}]") };
+                let text = format!("{header}\n{key} = {value}\n");
+                let errors = bad(&text);
+                // A station by itself is rightly told that it does not lie at the root.
+                let about_it = errors
+                    .problems()
+                    .iter()
+                    .find(|problem| problem.line == 2 && !problem.message.starts_with("the first station"));
+                assert!(about_it.is_none(), "{errors}");
+                tried += 1;
+            }
+        }
+    }
+    assert!(tried > 40, "{tried}");
+}
+
+#[test]
+fn the_hand_book_shows_the_registry() {
+    let page = include_str!("../docs/design-file.md").replace("\r\n", "\n");
+    let (_, tables) = page.split_once("<!-- keys -->\n").expect("the mark before the tables");
+    let (tables, _) = tables.split_once("<!-- end of keys -->").expect("the mark behind them");
+    assert_eq!(
+        tables.trim(),
+        design::key_tables().trim(),
+        "docs/design-file.md is stale: put key_tables() there"
+    );
+}
+
+#[test]
+fn the_worked_example_of_the_hand_book_is_a_design() {
+    let page = include_str!("../docs/design-file.md").replace("\r\n", "\n");
+    let (_, rest) = page.split_once("```toml\n").unwrap();
+    let (example, rest) = rest.split_once("```").unwrap();
+    good(example);
+    // The page goes on with a slip in it and with what is said then.
+    let (_, rest) = rest.split_once("```text\n").unwrap();
+    let (said, _) = rest.split_once("```").unwrap();
+    let errors = Design::parse(&example.replace("chord = \"80 mm\"", "chrod = 80"), "fin.toml").unwrap_err();
+    assert_eq!(said.trim(), errors.to_string().trim());
+}
+
+proptest! {
+    #![proptest_config(ProptestConfig { cases: 400, failure_persistence: None, ..ProptestConfig::default() })]
+
+    #[test]
+    fn any_bytes_are_read_or_refused(bytes in proptest::collection::vec(any::<u8>(), 0..400)) {
+        let text = String::from_utf8_lossy(&bytes);
+        if let Err(errors) = Design::parse(&text, "any.toml") {
+            prop_assert!(!errors.problems().is_empty());
+            prop_assert!(errors.render(false).contains("any.toml:"));
+        }
+    }
+
+    #[test]
+    fn a_design_with_bytes_put_anywhere_is_read_or_refused(
+        at in 0..MAIN_FOIL.len(),
+        length in 0..40_usize,
+        put in "[\\PC\t\r\n\\[\\]{}='\"#,.0-9]{0,12}",
+    ) {
+        let start = MAIN_FOIL.floor_char_boundary(at);
+        let end = MAIN_FOIL.floor_char_boundary((start + length).min(MAIN_FOIL.len()));
+        let text = format!("{}{put}{}", &MAIN_FOIL[..start], &MAIN_FOIL[end..]);
+        if let Err(errors) = Design::parse(&text, "spoilt.toml") {
+            prop_assert!(!errors.problems().is_empty());
+            let rendered = errors.render(false);
+            for problem in errors.problems() {
+                let place = format!("spoilt.toml:{}:{}", problem.line, problem.column);
+                prop_assert!(rendered.contains(&place), "{} in {}", place, rendered);
+            }
+        }
+    }
+
+    #[test]
+    fn valid_designs_come_back_in_every_unit(
+        half_span in 20.0..4000.0_f64,
+        chords in proptest::collection::vec(5.0..2000.0_f64, 2..12),
+        twist in -30.0..30.0_f64,
+    ) {
+        let write = |scale: f64, unit: &str, angle: (f64, &str)| {
+            let mut text = format!("name = \"x\"\nkind = \"elevator\"\n[planform]\nspan = \"{} {unit}\"\n", 2.0 * half_span / scale);
+            for (i, chord) in chords.iter().enumerate() {
+                let at = half_span * i as f64 / (chords.len() - 1) as f64;
+                text += &format!(
+                    "[[station]]\nat = \"{} {unit}\"\nchord = \"{} {unit}\"\nsection = \"NACA 0012\"\ntwist = \"{} {}\"\n",
+                    at / scale, chord / scale, twist / angle.0, angle.1
+                );
+            }
+            text
+        };
+        let plain = good(&write(1.0, "mm", (1.0, "deg")));
+        prop_assert_eq!(plain.span.mm(), 2.0 * half_span);
+        for (station, chord) in plain.stations.iter().zip(&chords) {
+            prop_assert_eq!(station.chord.mm(), *chord);
+            prop_assert_eq!(station.twist.degrees(), twist);
+        }
+        for (scale, unit) in [(10.0, "cm"), (1000.0, "m"), (25.4, "in"), (304.8, "ft")] {
+            let other = good(&write(scale, unit, (1_f64.to_degrees(), "rad")));
+            for (a, b) in plain.stations.iter().zip(&other.stations) {
+                prop_assert!((a.at.mm() - b.at.mm()).abs() < 1e-9 * half_span.max(1.0));
+                prop_assert!((a.chord.mm() - b.chord.mm()).abs() < 1e-8);
+                prop_assert!((a.twist.degrees() - b.twist.degrees()).abs() < 1e-12);
+            }
+        }
+    }
+}

@@ -179,6 +179,14 @@ fn keys_are_known_or_guessed_at() {
     );
     spoilt("kind = \"fin\"", "kind = \"fin\"\nzzz = 1", (3, 1), &["'zzz' is not a key", "name, kind, notes"]);
     spoilt("kind = \"fin\"", "kind = \"fin\"\nchord = 1", (3, 1), &["chord is a key of [[station]]"]);
+    // One slip is one problem: what is misspelt is not missing as well.
+    spoilt(
+        "chord = \"120 mm\"",
+        "chrod = \"120 mm\"",
+        (7, 1),
+        &["'chrod' is not a key of [[station]]", "mean chord?"],
+    );
+    spoilt("[planform]", "[plan-form]", (3, 2), &["'plan-form'", "did you mean planform?"]);
     spoilt("[planform]", "[maks]\n[planform]", (3, 2), &["'maks'", "did you mean masks?"]);
     spoilt(
         "\"fin\"",
@@ -407,6 +415,8 @@ fn nothing_of_the_file_reaches_the_terminal_as_a_command() {
         let rendered = bad(&fin_with(from, hostile)).render(false);
         assert!(!rendered.chars().any(|c| c.is_control() && c != '\n'), "{rendered:?}");
     }
+    let turned = bad(&fin_with("\"NACA 0012\"", "\"NACA \u{202e}0012\"")).render(false);
+    assert!(!turned.contains('\u{202e}'), "{turned:?}");
     let errors = Design::parse("x = \u{1b}[31m", "a\u{1b}[31m.toml").unwrap_err();
     assert!(!errors.render(false).contains('\u{1b}'));
 }
@@ -524,7 +534,8 @@ fn the_worked_example_of_the_hand_book_is_a_design() {
     // The page goes on with a slip in it and with what is said then.
     let (_, rest) = rest.split_once("```text\n").unwrap();
     let (said, _) = rest.split_once("```").unwrap();
-    let errors = Design::parse(&example.replace("chord = \"80 mm\"", "chrod = 80"), "fin.toml").unwrap_err();
+    let errors =
+        Design::parse(&example.replace("chord = \"80 mm\"", "chrod = \"80 mm\""), "fin.toml").unwrap_err();
     assert_eq!(said.trim(), errors.to_string().trim());
 }
 

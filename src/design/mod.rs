@@ -55,7 +55,7 @@ fn read(text: &str, problems: &mut Problems) -> Option<Design> {
         Err(error) => {
             let place = error.span().unwrap_or(0..0);
             let message = format!("this is not TOML, the form of a design file: {}", error.message());
-            problems.add(place, Wrong::new(message.replace(char::is_control, "\u{fffd}")));
+            problems.add(place, Wrong::new(message));
             return None;
         }
     };

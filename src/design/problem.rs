@@ -6,7 +6,7 @@ use std::ops::Range;
 use annotate_snippets::renderer::DecorStyle;
 use annotate_snippets::{AnnotationKind, Level, Origin, Renderer, Snippet};
 
-use crate::units::clipped;
+use crate::units::harmless;
 
 /// The most problems that are kept of one file; nobody reads more, and a hostile file could ask
 /// for hundreds of thousands.
@@ -125,14 +125,14 @@ pub(super) struct Wrong {
 }
 
 impl Wrong {
-    /// Something wrong of which the message says all.
-    pub(super) fn new(message: impl Into<String>) -> Self {
-        Self { message: message.into(), help: None }
+    /// Something wrong of which the message says all. What it repeats of the file is made harmless.
+    pub(super) fn new(message: impl AsRef<str>) -> Self {
+        Self { message: message.as_ref().chars().map(harmless).collect(), help: None }
     }
 
     /// The same with what would be right.
-    pub(super) fn help(self, help: impl Into<String>) -> Self {
-        Self { help: Some(help.into()), ..self }
+    pub(super) fn help(self, help: impl AsRef<str>) -> Self {
+        Self { help: Some(help.as_ref().chars().map(harmless).collect()), ..self }
     }
 }
 
@@ -160,7 +160,7 @@ impl Problems {
             lines.push(place.shown(span.end));
             problems.push(Problem { span, line: place.line, column: place.column(), message, help });
         }
-        DesignErrors { file: clipped_path(file), problems, lines, more }
+        DesignErrors { file: file.chars().map(harmless).collect(), problems, lines, more }
     }
 }
 
@@ -212,11 +212,7 @@ impl<'a> Place<'a> {
     }
 }
 
-/// Nothing of the file may reach the terminal as a command; the tab is drawn as blanks anyway.
+/// Nothing of the file may reach the terminal as a command; a tab is drawn as blanks anyway.
 fn printable(character: char) -> char {
-    if character.is_control() && character != '\t' { '\u{fffd}' } else { character }
-}
-
-fn clipped_path(file: &str) -> String {
-    if file.chars().any(char::is_control) { clipped(file) } else { file.to_owned() }
+    if character == '\t' { character } else { harmless(character) }
 }

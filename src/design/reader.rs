@@ -4,7 +4,7 @@ use std::collections::BTreeMap;
 use std::ops::Range;
 
 use toml::Spanned;
-use toml::de::{DeArray, DeTable, DeValue};
+use toml::de::{DeArray, DeString, DeTable, DeValue};
 
 use super::keys::{Key, Otherwise, ROOT, TABLES, Table, Times};
 use super::problem::{Problems, Wrong};
@@ -28,10 +28,12 @@ impl Sheet {
     /// Reads every table of the registry out of a file.
     pub(super) fn read(root: &DeTable<'_>, problems: &mut Problems) -> Self {
         let mut rows = BTreeMap::new();
+        let meant = guesses(&ROOT, root);
         rows.insert(ROOT.name, vec![Row::read(&ROOT, 0..0, root, problems)]);
         for table in TABLES.into_iter().filter(|table| !table.name.is_empty()) {
             let found = match root.get(table.name) {
                 Some(raw) => read_table(table, raw, problems),
+                None if meant.contains(&table.name) => Vec::new(),
                 None => absent(table, problems),
             };
             rows.insert(table.name, found);
@@ -136,12 +138,11 @@ impl Row {
         found: &DeTable<'_>,
         problems: &mut Problems,
     ) -> Self {
-        for (name, _) in found.iter() {
-            let is_table = table.name.is_empty() && TABLES.iter().any(|table| table.name == name.get_ref());
-            if table.key(name.get_ref()).is_none() && !is_table {
-                problems.add(name.span(), unknown(table, name.get_ref()));
-            }
+        for name in unknown_names(table, found) {
+            problems.add(name.span(), unknown(table, name.get_ref()));
         }
+        // A key that is only misspelt is not reported a second time as missing.
+        let meant = guesses(table, found);
         let mut values = BTreeMap::new();
         for key in table.keys {
             if let Some(raw) = found.get(key.name) {
@@ -151,6 +152,7 @@ impl Row {
                 continue;
             }
             match key.otherwise {
+                Otherwise::Required if meant.contains(&key.name) => {}
                 Otherwise::Required => {
                     let wrong =
                         Wrong::new(format!("{}{} is missing: {}", key.name, place_of(table), key.doc)).help(
@@ -228,20 +230,44 @@ fn place_of(table: &Table) -> String {
     if table.name.is_empty() { String::new() } else { format!(" of {}", table.header()) }
 }
 
+/// The names in a table of the file that its registry does not know.
+fn unknown_names<'a, 'i>(
+    table: &'static Table,
+    found: &'a DeTable<'i>,
+) -> impl Iterator<Item = &'a Spanned<DeString<'i>>> {
+    let known = here(table);
+    found.iter().map(|(name, _)| name).filter(move |name| !known.contains(&name.get_ref().as_ref()))
+}
+
+/// What the unknown names in a table of the file were probably meant to be. Past a hundred of them
+/// it is no design with slips in it, and guessing on would only cost time.
+fn guesses(table: &'static Table, found: &DeTable<'_>) -> Vec<&'static str> {
+    unknown_names(table, found).take(100).filter_map(|name| guess(table, name.get_ref())).collect()
+}
+
+/// The name that stands here and is spelt most like `name`. A key that stands in the wrong table is
+/// spelt right, so nothing is guessed for it.
+fn guess(table: &'static Table, name: &str) -> Option<&'static str> {
+    let misplaced = TABLES.iter().any(|other| other.key(name).is_some());
+    if misplaced { None } else { nearest(name, here(table).into_iter()) }
+}
+
+/// Every name that can stand in a table: its keys, and above all tables the tables too.
+fn here(table: &'static Table) -> Vec<&'static str> {
+    let tables = TABLES.iter().map(|other| other.name);
+    let tables = tables.filter(|other| table.name.is_empty() && !other.is_empty());
+    table.keys.iter().map(|key| key.name).chain(tables).collect()
+}
+
 fn unknown(table: &'static Table, name: &str) -> Wrong {
     let wrong = Wrong::new(format!("'{}' is not a key{}", clipped(name), place_of(table)));
-    // A key that stands in the wrong place is spelt right, so no guess beats that.
     let homes: Vec<String> =
         TABLES.iter().filter(|other| other.key(name).is_some()).map(|other| other.header()).collect();
     if !homes.is_empty() {
         return wrong.help(format!("{name} is a key of {}", homes.join(", ")));
     }
-    let keys = table.keys.iter().map(|key| key.name);
-    let tables =
-        TABLES.iter().map(|other| other.name).filter(|other| table.name.is_empty() && !other.is_empty());
-    let here: Vec<&'static str> = keys.chain(tables).collect();
-    match nearest(name, here.iter().copied()) {
+    match guess(table, name) {
         Some(near) => wrong.help(format!("did you mean {near}?")),
-        None => wrong.help(format!("what can stand here: {}", here.join(", "))),
+        None => wrong.help(format!("what can stand here: {}", here(table).join(", "))),
     }
 }

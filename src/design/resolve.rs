@@ -139,8 +139,7 @@ fn station(row: &Row, problems: &mut Problems) -> Option<Station> {
     };
     let section = row.text("section").and_then(|designation| {
         let made = Section::from_designation(designation, trailing_edge);
-        made.map_err(|error| problems.add(row.place("section"), Wrong::new(printable(&error.to_string()))))
-            .ok()
+        made.map_err(|error| problems.add(row.place("section"), Wrong::new(error.to_string()))).ok()
     });
     Some(Station {
         at: row.length("at")?,
@@ -151,11 +150,6 @@ fn station(row: &Row, problems: &mut Problems) -> Option<Station> {
         twist: row.angle("twist")?,
         sweep: row.length("sweep")?,
     })
-}
-
-/// The section's own words with nothing in them that a terminal would obey.
-fn printable(text: &str) -> String {
-    text.chars().map(|character| if character.is_control() { '\u{fffd}' } else { character }).collect()
 }
 
 fn templates(row: Option<&Row>, reach: Option<&Reach>, problems: &mut Problems) -> Option<Vec<Length>> {

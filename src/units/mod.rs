@@ -15,4 +15,4 @@ pub use quantity::{ANGLE, LENGTH, Quantity, Unit};
 pub use values::{Angle, Length};
 
 pub(crate) use number::plain;
-pub(crate) use spelling::{clipped, nearest};
+pub(crate) use spelling::{clipped, harmless, nearest};

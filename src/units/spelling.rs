@@ -30,7 +30,7 @@ pub(crate) fn clipped(text: &str) -> String {
 }
 
 /// Controls, and the marks that turn the direction of writing round, as a visible stand-in.
-fn harmless(character: char) -> char {
+pub(crate) fn harmless(character: char) -> char {
     match character {
         '\u{200e}' | '\u{200f}' | '\u{202a}'..='\u{202e}' | '\u{2066}'..='\u{2069}' => '\u{fffd}',
         _ if character.is_control() => '\u{fffd}',

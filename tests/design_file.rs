@@ -157,6 +157,15 @@ fn bounds_are_kept_and_named() {
     for chord in ["0 mm", "-3 mm", "4.9 mm", "2001 mm", "1e6 m"] {
         spoilt("\"120 mm\"", &format!("\"{chord}\""), (7, 9), &["chord is ", "a length from 5 mm to 2 m"]);
     }
+    // What rounding puts a hair beyond a bound is brought back onto it.
+    let twisted = good(&fin_with("\"NACA 0012\"", "\"NACA 0012\"\ntwist = \"0.5235987755983 rad\""));
+    assert_eq!(twisted.stations[0].twist.degrees(), 30.0);
+    spoilt(
+        "\"NACA 0012\"",
+        "\"NACA 0012\"\ntwist = \"30.001 deg\"",
+        (9, 9),
+        &["30.001 deg: it takes an angle"],
+    );
     // The bounds themselves are inside, in every unit.
     for chord in ["5 mm", "0.5 cm", "2 m", "2000 mm"] {
         good(&fin_with("\"120 mm\"", &format!("\"{chord}\"")));

@@ -1,1 +1,13 @@
 //! Two-dimensional flow about a section.
+
+mod edge;
+mod error;
+mod far_field;
+mod influence;
+mod loads;
+mod panelling;
+mod potential;
+
+pub use error::FlowError;
+pub use panelling::{DEFAULT_PANELS, LEAST_PANELS, MOST_PANELS, Panelling};
+pub use potential::{PotentialFlow, PressurePoint, Solution};

@@ -9,7 +9,11 @@
 //! chord, flow is dimensionless and angles are in radians; units exist only at the edges.
 
 pub mod design;
+pub mod export;
 pub mod flow;
 pub mod geometry;
+pub mod pack;
 pub mod section;
 pub mod units;
+pub mod wing;
+pub mod workshop;

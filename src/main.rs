@@ -1,3 +1,9 @@
 //! The command line of Plankform.
 
-fn main() {}
+mod cli;
+
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    cli::run()
+}

@@ -14,6 +14,7 @@ mod resolve;
 mod schema;
 mod starter;
 mod value;
+mod wing;
 
 pub use model::{Design, Flap, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
 pub use page::key_tables;

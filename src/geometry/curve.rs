@@ -57,3 +57,21 @@ impl<C: Curve + ?Sized> Curve for &C {
         (**self).breaks()
     }
 }
+
+/// Height of the branch of `curve` from parameter `nose` to parameter `end` at `x`.
+///
+/// The branch must run towards greater x but for a bulge ahead of the nose; then the answer is
+/// the point furthest along that has not passed `x`. Before the nose this is the nose, and behind
+/// the end the end.
+#[must_use]
+pub fn height_at<C: Curve + ?Sized>(curve: &C, nose: f64, end: f64, x: f64) -> f64 {
+    if x <= curve.jet(nose).point.x {
+        return curve.jet(nose).point.y;
+    }
+    let (mut low, mut high) = (nose, end);
+    for _ in 0..60 {
+        let middle = 0.5 * (low + high);
+        if curve.jet(middle).point.x < x { low = middle } else { high = middle }
+    }
+    curve.jet(0.5 * (low + high)).point.y
+}

@@ -1,6 +1,17 @@
 //! Plane and solid geometry that knows no foil: curves, arcs, polygons, solids.
 
+mod arc_path;
+mod biarcs;
 pub mod curve;
+mod error;
+mod outline;
+pub mod polygon;
+mod solid;
 
-pub use curve::{Curve, Jet};
-pub use kurbo::{Point, Vec2};
+pub use arc_path::{ArcPath, ArcVertex, Segment};
+pub use biarcs::follow_with_arcs;
+pub use curve::{Curve, Jet, height_at};
+pub use error::GeometryError;
+pub use kurbo::{Affine, BezPath, Point, Rect, Vec2};
+pub use outline::fitted_outline;
+pub use solid::Solid;

@@ -71,7 +71,7 @@ impl MeanLine {
         let published = table.iter().find(|line| line.0 == position_digit);
         let &(_, joint, front, rear_ratio) =
             published.ok_or(SectionError::FiveDigitPosition { digit: position_digit, reflexed })?;
-        Ok(Self::FiveDigit { joint, front: front * design_lift / 0.3, rear_ratio })
+        Ok(Self::FiveDigit { joint, front: front * (design_lift / 0.3), rear_ratio })
     }
 
     /// Ordinate and derivatives at `x`; at the joint, those of the rear piece.

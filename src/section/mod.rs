@@ -11,7 +11,7 @@ pub use mean_line::{MeanLine, Ordinate};
 pub use numbers::Numbers;
 pub use thickness::{ThicknessForm, TrailingEdge};
 
-use crate::geometry::{Curve, Jet, Point, Vec2};
+use crate::geometry::{Curve, Jet, Point, Vec2, height_at};
 
 /// One of the two surfaces.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -76,19 +76,7 @@ impl Section {
     /// Ahead of the nose this is the nose, and behind the end of the surface its end.
     #[must_use]
     pub fn surface(&self, side: Side, x: f64) -> f64 {
-        if x <= 0.0 {
-            return self.jet(0.0).point.y;
-        }
-        let sign = if side == Side::Upper { -1.0 } else { 1.0 };
-        // The surface reaches a little ahead of x = 0 near the nose and runs aft from there, so
-        // the last station not behind x, counted from the trailing edge, brackets the answer.
-        let station = |root: f64| self.jet(sign * root).point.x;
-        let (mut low, mut high) = (0.0, 1.0);
-        for _ in 0..60 {
-            let middle = 0.5 * (low + high);
-            if station(middle) < x { low = middle } else { high = middle }
-        }
-        self.jet(sign * 0.5 * (low + high)).point.y
+        height_at(self, 0.0, if side == Side::Upper { -1.0 } else { 1.0 }, x)
     }
 
     /// `count` points along the outline (three at least) from the upper trailing edge over the

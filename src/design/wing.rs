@@ -1,0 +1,22 @@
+//! From the design to the foil it describes.
+
+use super::Design;
+use crate::wing::{Station, Wing, WingError};
+
+impl Design {
+    /// The foil that the design describes.
+    ///
+    /// # Errors
+    /// Never for a design read by [`Design::parse`], whose stations are in order; one put together
+    /// by hand may break that.
+    pub fn wing(&self) -> Result<Wing, WingError> {
+        let stations = self.stations.iter().map(|station| Station {
+            at: station.at.mm(),
+            chord: station.chord.mm(),
+            section: station.section.clone(),
+            twist: station.twist.radians(),
+            sweep: station.sweep.mm(),
+        });
+        Wing::new(stations.collect(), self.kind.mirrored())
+    }
+}

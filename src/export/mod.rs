@@ -1,0 +1,33 @@
+//! Writers that know a file format and nothing of foils. Each gives the bytes of one file, the
+//! same for the same input.
+
+pub mod chart;
+pub mod csv;
+mod dxf;
+pub mod html;
+mod pdf;
+mod stl;
+mod svg;
+
+pub use dxf::dxf;
+pub use pdf::pdf;
+pub use stl::stl;
+pub use svg::{picture, svg_page};
+
+/// Why a file cannot be made from what it was given.
+#[derive(Debug, Clone, PartialEq, Eq, thiserror::Error)]
+#[error("the {format} file cannot be written: {why}")]
+pub struct ExportError {
+    /// Name of the format.
+    pub format: &'static str,
+    /// What its library said.
+    pub why: String,
+}
+
+/// A number as short as it can be with `places` decimals, and never "-0".
+#[must_use]
+pub fn number(value: f64, places: usize) -> String {
+    let text = format!("{value:.places$}");
+    let short = if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.') } else { &text };
+    if short == "-0" { "0".to_owned() } else { short.to_owned() }
+}

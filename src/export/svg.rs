@@ -1,0 +1,122 @@
+//! Drawings for paper and screen: SVG in millimetres.
+
+use svg::Document;
+use svg::node::element::{ClipPath, Definitions, Group, Path, Rectangle, Text};
+
+use super::number;
+use crate::geometry::{ArcPath, Point, Segment};
+use crate::workshop::{Drawing, Label, Page};
+
+/// Decimals of a coordinate, in mm.
+const PLACES: usize = 4;
+/// A capital's height as a fraction of the font size, for the shipped font.
+pub(super) const CAPITAL: f64 = 0.729;
+
+/// A page at true size.
+#[must_use]
+pub fn svg_page(page: &Page) -> String {
+    let window = Rectangle::new()
+        .set("x", number(page.window.x0, PLACES))
+        .set("y", number(page.height - page.window.y1, PLACES))
+        .set("width", number(page.window.width(), PLACES))
+        .set("height", number(page.window.height(), PLACES));
+    let clip = Definitions::new().add(ClipPath::new().set("id", "window").add(window));
+    let drawing = group(&page.drawing, page.height, 1.0).set("clip-path", "url(#window)");
+    let document = document(page.width, page.height)
+        .add(svg::node::element::Title::new(page.drawing.title.clone()))
+        .add(clip)
+        .add(drawing)
+        .add(group(&page.furniture, page.height, 1.0));
+    format!("{document}\n")
+}
+
+/// Width up to which a picture shows at true size inside a document, mm.
+const PICTURE_WIDTH: f64 = 240.0;
+
+/// A drawing alone, `margin` mm of white round it, to be shown inside other documents: it takes
+/// the width it is given, but never more than its true size. Letters and lines of a wider drawing
+/// grow, so that they can still be read when it is shrunk to fit.
+#[must_use]
+pub fn picture(drawing: &Drawing, margin: f64) -> String {
+    let bounds = drawing.bounds();
+    let growth = (bounds.width() / PICTURE_WIDTH).max(1.0);
+    let bounds = bounds.inflate(margin * growth, margin * growth);
+    let mut moved = drawing.moved(kurbo::Affine::translate((-bounds.x0, -bounds.y0)));
+    for label in &mut moved.labels {
+        label.height *= growth;
+    }
+    document(bounds.width(), bounds.height())
+        .set("style", "max-width:100%;height:auto")
+        .add(group(&moved, bounds.height(), growth))
+        .to_string()
+}
+
+fn document(width: f64, height: f64) -> Document {
+    let size = |v: f64| format!("{}mm", number(v, PLACES));
+    Document::new()
+        .set("width", size(width))
+        .set("height", size(height))
+        .set("viewBox", format!("0 0 {} {}", number(width, PLACES), number(height, PLACES)))
+}
+
+fn group(drawing: &Drawing, height: f64, growth: f64) -> Group {
+    let mut group = Group::new().set("fill", "none").set("stroke", "black");
+    for line in &drawing.lines {
+        let (width, dashes) = line.role.stroke();
+        let mut path = Path::new()
+            .set("class", line.role.layer())
+            .set("stroke-width", number(width * growth, 3))
+            .set("d", outline(&line.path, height));
+        if !dashes.is_empty() {
+            let lengths: Vec<String> = dashes.iter().map(|d| number(d * growth, 2)).collect();
+            path = path.set("stroke-dasharray", lengths.join(" "));
+        }
+        group = group.add(path);
+    }
+    for label in &drawing.labels {
+        group = group.add(text(label, height));
+    }
+    group
+}
+
+/// Path data; `height` turns y upwards into y downwards.
+fn outline(path: &ArcPath, height: f64) -> String {
+    let place = |p: Point| format!("{} {}", number(p.x, PLACES), number(height - p.y, PLACES));
+    let mut data = path.vertices().first().map_or(String::new(), |v| format!("M{}", place(v.point)));
+    for segment in path.segments() {
+        data.push_str(&piece(&segment, &place));
+    }
+    if path.is_closed() {
+        data.push('Z');
+    }
+    data
+}
+
+fn piece(segment: &Segment, place: &impl Fn(Point) -> String) -> String {
+    match segment.radius() {
+        Some(radius) => {
+            let radius = number(radius, PLACES);
+            let large = u8::from(segment.bulge.abs() > 1.0);
+            let clockwise = u8::from(segment.bulge < 0.0);
+            format!("A{radius} {radius} 0 {large} {clockwise} {}", place(segment.to))
+        }
+        None => format!("L{}", place(segment.to)),
+    }
+}
+
+fn text(label: &Label, height: f64) -> Text {
+    let (x, y) = (number(label.at.x, PLACES), number(height - label.at.y, PLACES));
+    let mut text = Text::new(label.text.clone())
+        .set("class", label.role.layer())
+        .set("x", x.clone())
+        .set("y", y.clone())
+        .set("fill", "black")
+        .set("stroke", "none")
+        .set("font-family", "DejaVu Sans, Verdana, sans-serif")
+        .set("font-size", number(label.height / CAPITAL, PLACES));
+    if label.turn != 0.0 {
+        let degrees = number(-label.turn.to_degrees(), PLACES);
+        text = text.set("transform", format!("rotate({degrees} {x} {y})"));
+    }
+    text
+}

@@ -1,0 +1,76 @@
+//! Everything that a design's pack and its checks are made from, worked out once.
+
+use super::PackError;
+use crate::design::Design;
+use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow};
+use crate::section::Section;
+use crate::wing::{Planform, StationShape, Wing};
+use crate::workshop::{Drawing, HingeLine, Mask, MaskSettings, Stamp, planform_pattern, station_template};
+
+/// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
+const PRINT_TOLERANCE: f64 = 0.02;
+
+/// The aids of one template station.
+pub(super) struct StationAids<'a> {
+    pub(super) shape: StationShape<'a>,
+    pub(super) template: Drawing,
+    pub(super) mask: Mask,
+}
+
+/// The flow about one of the design's sections, and the stations that use it.
+pub(super) struct SectionFlow<'a> {
+    pub(super) section: &'a Section,
+    pub(super) stations: Vec<f64>,
+    pub(super) flow: PotentialFlow,
+}
+
+pub(super) fn stamp(design: &Design) -> Stamp {
+    Stamp { design: design.name.clone(), fingerprint: design.fingerprint() }
+}
+
+fn hinge(design: &Design) -> Option<HingeLine> {
+    let flap = design.flap?;
+    Some(HingeLine { chord_fraction: flap.hinge, from: flap.from.mm(), to: flap.to.mm() })
+}
+
+/// Shapes, templates and masks of every template station.
+pub(super) fn station_aids<'a>(design: &Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
+    let (stamp, hinge) = (stamp(design), hinge(design));
+    let settings = MaskSettings {
+        clearance: design.masks.clearance.mm(),
+        wall: design.masks.wall.mm(),
+        thickness: design.masks.thickness.mm(),
+        tolerance: PRINT_TOLERANCE,
+    };
+    let at_station = |at: f64| {
+        let failed = |source| PackError::Shape { at, source };
+        let shape = wing.shape_at(at)?;
+        let tolerance = design.router.tolerance.mm();
+        let template = station_template(&stamp, &shape, hinge.as_ref(), wing.is_mirrored(), tolerance)
+            .map_err(failed)?;
+        let mask = Mask::of(&shape, settings).map_err(failed)?;
+        Ok(StationAids { shape, template, mask })
+    };
+    design.templates.iter().map(|at| at_station(at.mm())).collect()
+}
+
+/// The pattern of the planform.
+pub(super) fn pattern(design: &Design, planform: &Planform) -> Drawing {
+    let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
+    planform_pattern(&stamp(design), planform, &stations, hinge(design).as_ref())
+}
+
+/// The flow about each section that the design names, each once.
+pub(super) fn section_flows(wing: &Wing) -> Result<Vec<SectionFlow<'_>>, PackError> {
+    let mut flows: Vec<SectionFlow<'_>> = Vec::new();
+    for station in wing.stations() {
+        if let Some(known) = flows.iter_mut().find(|f| *f.section == station.section) {
+            known.stations.push(station.at);
+            continue;
+        }
+        let panelling = Panelling::of(&station.section, DEFAULT_PANELS)?;
+        let flow = PotentialFlow::new(&panelling)?;
+        flows.push(SectionFlow { section: &station.section, stations: vec![station.at], flow });
+    }
+    Ok(flows)
+}

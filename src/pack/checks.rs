@@ -1,0 +1,205 @@
+//! What is checked before anything is cut.
+
+use serde::Serialize;
+
+use super::PackError;
+use super::aids::{self, SectionFlow, StationAids};
+use crate::design::Design;
+use crate::geometry::{Rect, Solid};
+use crate::wing::Wing;
+use crate::workshop::{Drawing, Half, Role};
+
+/// One check: what was measured, where, and the limit it is held to.
+#[derive(Debug, Clone, PartialEq, Serialize)]
+pub struct Check {
+    /// What is checked.
+    pub name: String,
+    /// Where on the foil.
+    #[serde(rename = "where")]
+    pub place: String,
+    /// What was measured.
+    pub value: f64,
+    /// What it is held to.
+    pub limit: f64,
+    /// Unit of both; empty for a plain number.
+    pub unit: String,
+    /// Whether it holds.
+    pub passed: bool,
+    /// What that means, and what to do when it does not hold.
+    pub why: String,
+}
+
+/// Runs every check of a design without making its pack.
+///
+/// # Errors
+/// When a shape cannot be made at all.
+pub fn run_checks(design: &Design) -> Result<Vec<Check>, PackError> {
+    let wing = design.wing()?;
+    let stations = aids::station_aids(design, &wing)?;
+    let pattern = aids::pattern(design, &wing.planform());
+    let flows = aids::section_flows(&wing)?;
+    Ok(all(design, &wing, &stations, &pattern, &flows))
+}
+
+pub(super) fn all(
+    design: &Design,
+    wing: &Wing,
+    stations: &[StationAids<'_>],
+    pattern: &Drawing,
+    flows: &[SectionFlow<'_>],
+) -> Vec<Check> {
+    let mut checks = Vec::new();
+    checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
+    checks.extend(stations.iter().flat_map(|station| shape(design, wing, station)));
+    checks.extend(stations.iter().flat_map(|station| printer(design, station)));
+    checks.push(stock(design, "planform pattern", pattern));
+    checks.extend(stations.iter().map(|s| stock(design, &place(s.shape.at), &s.template)));
+    checks
+}
+
+fn place(at: f64) -> String {
+    format!("station {} mm", crate::export::number(at, 3))
+}
+
+/// The design lift must lie within the range of incidence asked.
+fn lift<'a>(design: &'a Design, flow: &'a SectionFlow<'_>) -> impl Iterator<Item = Check> + 'a {
+    let range = &design.lift;
+    let least = flow.flow.at(range.from.radians()).cl;
+    let greatest = flow.flow.at(range.to.radians()).cl;
+    let wanted = range.design;
+    let passed = (least..=greatest).contains(&wanted);
+    let why = match flow.flow.incidence_for_lift(wanted) {
+        Some(incidence) if passed => format!(
+            "{} carries a lift coefficient of {wanted} at {:.2}°, flow without friction",
+            flow.section.name(),
+            incidence.to_degrees()
+        ),
+        _ => format!(
+            "from {} to {} {} gives lift coefficients of {least:.3} to {greatest:.3}, flow without friction: widen \
+             the range, take another section or ask for less",
+            range.from,
+            range.to,
+            flow.section.name()
+        ),
+    };
+    // The nearer end of the range is what the limit is held against.
+    let value = if wanted < least { least } else { greatest };
+    flow.stations.iter().map(move |at| Check {
+        name: "section lift in the range of incidence".to_owned(),
+        place: place(*at),
+        value,
+        limit: wanted,
+        unit: String::new(),
+        passed,
+        why: why.clone(),
+    })
+}
+
+/// No crossing, and wood everywhere between the surfaces.
+fn shape(design: &Design, wing: &Wing, station: &StationAids<'_>) -> [Check; 2] {
+    let at = station.shape.at;
+    let outline = station.template.lines.iter().find(|line| line.role == Role::CutOutside);
+    let crossing = outline.map(|line| line.path.refuse_crossings(design.router.tolerance.mm()));
+    let simple = matches!(crossing, Some(Ok(())));
+    let thickness = least_thickness(&station.shape);
+    let name = station.shape.section_name();
+    let chord = wing.shape_at(at).map_or(0.0, |shape| shape.chord);
+    [
+        Check {
+            name: "outline crosses itself".to_owned(),
+            place: place(at),
+            value: if simple { 0.0 } else { 1.0 },
+            limit: 0.0,
+            unit: "places".to_owned(),
+            passed: simple,
+            why: match crossing {
+                Some(Err(error)) => error.to_string(),
+                _ => format!("{name} at a chord of {chord:.1} mm is one plain contour"),
+            },
+        },
+        Check {
+            name: "least thickness ahead of the trailing edge".to_owned(),
+            place: place(at),
+            value: thickness,
+            limit: 0.0,
+            unit: "mm".to_owned(),
+            passed: thickness > 0.0,
+            why: "the upper surface must lie above the lower one from nose to trailing edge".to_owned(),
+        },
+    ]
+}
+
+/// Least distance between points of equal parameter on the two surfaces, from 1 % of chord to the
+/// last 1 %, counted negative where they have changed sides.
+fn least_thickness(shape: &crate::wing::StationShape<'_>) -> f64 {
+    use crate::geometry::Curve;
+    const PLACES: usize = 200;
+    let roots = (0..=PLACES).map(|i| 0.1 + (0.995 - 0.1) * i as f64 / PLACES as f64);
+    roots
+        .map(|root| {
+            let (upper, lower) = (shape.jet(-root).point, shape.jet(root).point);
+            (upper - lower).hypot() * (upper.y - lower.y).signum()
+        })
+        .fold(f64::INFINITY, f64::min)
+}
+
+/// Each plate of a mask must lie on the bed, either way round.
+fn printer(design: &Design, station: &StationAids<'_>) -> [Check; 2] {
+    let margin = 2.0 * design.printer.margin.mm();
+    let bed = [design.printer.bed_x, design.printer.bed_y].map(|side| side.mm() - margin);
+    let plate = |half: Half, solid: &Solid| {
+        let [x, y, z] = solid.size();
+        let flat = fits([x, y], bed);
+        let height = z <= design.printer.bed_z.mm();
+        Check {
+            name: "mask fits the printer bed".to_owned(),
+            place: format!("{}, {} half", place(station.shape.at), half.word()),
+            value: x.max(y),
+            limit: bed[0].max(bed[1]),
+            unit: "mm".to_owned(),
+            passed: flat && height,
+            why: if flat && height {
+                format!("{x:.1} by {y:.1} by {z:.1} mm lies within the bed less its margin")
+            } else {
+                format!(
+                    "{x:.1} by {y:.1} by {z:.1} mm does not go on {:.0} by {:.0} by {:.0} mm: take a larger bed, \
+                     thinner walls or a shorter chord",
+                    bed[0],
+                    bed[1],
+                    design.printer.bed_z.mm()
+                )
+            },
+        }
+    };
+    [plate(Half::Upper, &station.mask.upper), plate(Half::Lower, &station.mask.lower)]
+}
+
+/// What is cut must lie on the stock sheet, either way round.
+fn stock(design: &Design, place: &str, drawing: &Drawing) -> Check {
+    let margin = 2.0 * design.stock.margin.mm();
+    let sheet = [design.stock.length, design.stock.width].map(|side| side.mm() - margin);
+    let cut = drawing.lines.iter().filter(|line| line.role == Role::CutOutside);
+    let size = cut.map(|line| line.path.bounds()).reduce(|a, b| a.union(b)).unwrap_or(Rect::ZERO).size();
+    let passed = fits([size.width, size.height], sheet);
+    Check {
+        name: "template fits the stock sheet".to_owned(),
+        place: place.to_owned(),
+        value: size.width.max(size.height),
+        limit: sheet[0].max(sheet[1]),
+        unit: "mm".to_owned(),
+        passed,
+        why: if passed {
+            format!("{:.1} by {:.1} mm lies within the sheet less its margin", size.width, size.height)
+        } else {
+            format!(
+                "{:.1} by {:.1} mm does not go on {:.0} by {:.0} mm: take a larger sheet or join two",
+                size.width, size.height, sheet[0], sheet[1]
+            )
+        },
+    }
+}
+
+fn fits(piece: [f64; 2], room: [f64; 2]) -> bool {
+    let within = |a: f64, b: f64| a <= room[0] && b <= room[1];
+    within(piece[0], piece[1]) || within(piece[1], piece[0])
+}

@@ -1,0 +1,207 @@
+//! From a design to the files of its pack, in memory.
+
+use super::aids::{self, SectionFlow, StationAids};
+use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet};
+use crate::design::Design;
+use crate::export::{csv::csv, dxf, number, pdf, stl, svg_page};
+use crate::geometry::height_at;
+use crate::workshop::{Drawing, Half, Page, PaperSettings, single_page, tiled};
+
+/// Which kinds of files to make.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct Kinds {
+    /// Router files.
+    pub cut: bool,
+    /// Paper templates.
+    pub print: bool,
+    /// Printed masks.
+    pub masks: bool,
+    /// Tables.
+    pub tables: bool,
+    /// The build sheet.
+    pub sheet: bool,
+}
+
+impl Kinds {
+    /// Every kind.
+    pub const ALL: Self = Self { cut: true, print: true, masks: true, tables: true, sheet: true };
+}
+
+/// Makes the pack of a design.
+///
+/// # Errors
+/// When a shape cannot be made or a format refuses it. A check outside its limit is no error: the
+/// pack says so.
+pub fn build(design: &Design, kinds: Kinds) -> Result<Pack, PackError> {
+    let wing = design.wing()?;
+    let planform = wing.planform();
+    let stations = aids::station_aids(design, &wing)?;
+    let pattern = aids::pattern(design, &planform);
+    let flows = aids::section_flows(&wing)?;
+    let checks = checks::all(design, &wing, &stations, &pattern, &flows);
+
+    let mut files = Files { slug: design.slug(), files: Vec::new() };
+    if kinds.cut {
+        files.add_cut(&stations, &pattern);
+    }
+    if kinds.print {
+        files.add_print(design, &stations, &pattern)?;
+    }
+    if kinds.masks {
+        files.add_masks(design, &stations)?;
+    }
+    if kinds.tables {
+        files.add_tables(design, &stations, &flows)?;
+    }
+    if kinds.sheet {
+        let page = sheet::html(design, &planform, &stations, &pattern, &flows, &checks, &files.files);
+        files.add("sheet.html".to_owned(), "html", "build sheet", None, page.into_bytes());
+    }
+    Ok(pack(design, checks, files.files))
+}
+
+fn pack(design: &Design, checks: Vec<Check>, files: Vec<PackFile>) -> Pack {
+    let manifest = Manifest {
+        design: design.name.clone(),
+        fingerprint: design.fingerprint(),
+        passed: checks.iter().all(|check| check.passed),
+        out: ".".to_owned(),
+        files: files.iter().map(Entry::from).collect(),
+    };
+    Pack { manifest, checks, files }
+}
+
+struct Files {
+    slug: String,
+    files: Vec<PackFile>,
+}
+
+impl Files {
+    fn add(
+        &mut self,
+        path: String,
+        kind: &'static str,
+        role: &'static str,
+        station: Option<f64>,
+        bytes: Vec<u8>,
+    ) {
+        self.files.push(PackFile { path, kind, role, station_mm: station, bytes });
+    }
+
+    /// File name without its ending: the design, then the station or what else it shows.
+    fn stem(&self, at: f64) -> String {
+        format!("{}-station-{}", self.slug, number(at, 3))
+    }
+
+    fn add_cut(&mut self, stations: &[StationAids<'_>], pattern: &Drawing) {
+        for station in stations {
+            let (at, path) = (station.shape.at, format!("cut/{}.dxf", self.stem(station.shape.at)));
+            self.add(path, "dxf", "station template", Some(at), dxf(&station.template).into_bytes());
+        }
+        let path = format!("cut/{}-planform.dxf", self.slug);
+        self.add(path, "dxf", "planform pattern", None, dxf(pattern).into_bytes());
+    }
+
+    fn add_print(
+        &mut self,
+        design: &Design,
+        stations: &[StationAids<'_>],
+        pattern: &Drawing,
+    ) -> Result<(), PackError> {
+        let sheet = |drawing: &Drawing| svg_page(&single_page(drawing)).into_bytes();
+        for station in stations {
+            let (at, path) = (station.shape.at, format!("print/{}.svg", self.stem(station.shape.at)));
+            self.add(path, "svg", "station template", Some(at), sheet(&station.template));
+        }
+        let path = format!("print/{}-planform.svg", self.slug);
+        self.add(path, "svg", "planform pattern", None, sheet(pattern));
+
+        let (width, height) = design.paper.size.dimensions();
+        let (width, height) = (width.mm(), height.mm());
+        let paper = PaperSettings {
+            width,
+            height,
+            margin: design.paper.margin.mm(),
+            overlap: design.paper.overlap.mm(),
+        };
+        let drawings = std::iter::once(pattern).chain(stations.iter().map(|s| &s.template));
+        let pages: Vec<Page> = drawings.flat_map(|drawing| tiled(drawing, paper)).collect();
+        let title = format!("{} {}", design.name, design.fingerprint());
+        let path = format!("print/{}.pdf", self.slug);
+        self.add(path, "pdf", "all templates, tiled", None, pdf(&title, &pages)?);
+        Ok(())
+    }
+
+    fn add_masks(&mut self, design: &Design, stations: &[StationAids<'_>]) -> Result<(), PackError> {
+        for station in stations {
+            let at = station.shape.at;
+            for (half, solid) in [(Half::Upper, &station.mask.upper), (Half::Lower, &station.mask.lower)] {
+                let title = format!(
+                    "{} {} station {} mm {}",
+                    design.name,
+                    design.fingerprint(),
+                    number(at, 3),
+                    half.word()
+                );
+                let path = format!("masks/{}-{}.stl", self.stem(at), half.word());
+                self.add(path, "stl", "mask half", Some(at), stl(solid, &title)?);
+            }
+        }
+        Ok(())
+    }
+
+    fn add_tables(
+        &mut self,
+        design: &Design,
+        stations: &[StationAids<'_>],
+        flows: &[SectionFlow<'_>],
+    ) -> Result<(), PackError> {
+        let offsets = stations.iter().flat_map(|station| offsets(&station.shape));
+        let heading = ["station_mm", "percent_of_chord", "x_mm", "upper_mm", "lower_mm"];
+        let table = csv(heading, offsets)?;
+        self.add("tables/offsets.csv".to_owned(), "csv", "table of offsets", None, table.into_bytes());
+
+        let lift = flows.iter().flat_map(|flow| {
+            design.lift.angles().into_iter().map(move |angle| {
+                let s = flow.flow.at(angle.radians());
+                let values = [angle.degrees(), s.cl, s.cm, s.cp_min].map(|v| format!("{v:.6}"));
+                let [angle, cl, cm, cp_min] = values;
+                [flow.section.name().to_owned(), angle, cl, cm, cp_min]
+            })
+        });
+        let table = csv(["section", "angle_deg", "cl", "cm", "cp_min"], lift)?;
+        let role = "lift curves without friction";
+        self.add("tables/lift.csv".to_owned(), "csv", role, None, table.into_bytes());
+
+        let pressure = flows.iter().filter_map(|flow| {
+            let incidence = flow.flow.incidence_for_lift(design.lift.design)?;
+            Some((flow.section.name(), flow.flow.at(incidence).pressure))
+        });
+        let rows = pressure.flat_map(|(name, points)| {
+            points.into_iter().map(move |p| {
+                let [x, y, cp] = [p.x, p.y, p.cp].map(|v| format!("{v:.6}"));
+                [name.to_owned(), x, y, cp]
+            })
+        });
+        let table = csv(["section", "x", "y", "cp"], rows)?;
+        let role = "pressure at the design lift, without friction";
+        self.add("tables/pressure.csv".to_owned(), "csv", role, None, table.into_bytes());
+        Ok(())
+    }
+}
+
+/// Stations of the table of offsets, percent of chord.
+const PERCENT: [f64; 20] = [
+    0.0, 0.5, 1.25, 2.5, 5.0, 7.5, 10.0, 15.0, 20.0, 25.0, 30.0, 40.0, 50.0, 60.0, 70.0, 80.0, 85.0, 90.0,
+    95.0, 100.0,
+];
+
+fn offsets<'a>(shape: &'a crate::wing::StationShape<'_>) -> impl Iterator<Item = [String; 5]> + 'a {
+    PERCENT.iter().map(|percent| {
+        let x = percent / 100.0 * shape.chord;
+        let surface = |end: f64| height_at(shape, 0.0, end, x);
+        let lengths = [x, surface(-1.0), surface(1.0)].map(|v| format!("{v:.3}"));
+        let [x, upper, lower] = lengths;
+        [number(shape.at, 3), number(*percent, 2), x, upper, lower]
+    })
+}

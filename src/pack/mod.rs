@@ -1,0 +1,41 @@
+//! The pack: every workshop file of a design, checked, fingerprinted and written as one.
+
+mod aids;
+mod checks;
+mod contents;
+mod error;
+mod manifest;
+mod sheet;
+mod write;
+
+pub use checks::{Check, run_checks};
+pub use contents::{Kinds, build};
+pub use error::PackError;
+pub use manifest::{Entry, Manifest};
+pub use write::write;
+
+/// A file of the pack, made but not yet written.
+#[derive(Debug, Clone, PartialEq)]
+pub struct PackFile {
+    /// Place inside the pack, with `/` between folders.
+    pub path: String,
+    /// Format: `dxf`, `svg`, `pdf`, `stl`, `csv` or `html`.
+    pub kind: &'static str,
+    /// What it is for.
+    pub role: &'static str,
+    /// Distance from the root of the station it belongs to, mm.
+    pub station_mm: Option<f64>,
+    /// Its contents.
+    pub bytes: Vec<u8>,
+}
+
+/// A pack, made but not yet written.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Pack {
+    /// What it holds and whether its checks passed.
+    pub manifest: Manifest,
+    /// The checks, all of them.
+    pub checks: Vec<Check>,
+    /// Its files, but for the manifest's own.
+    pub files: Vec<PackFile>,
+}

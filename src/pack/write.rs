@@ -1,0 +1,184 @@
+//! Writing a pack as a whole or not at all.
+//!
+//! The new pack is made in a folder beside its place and changes places with the earlier one in a
+//! single step. Files in the folder that the program did not write go along as they are.
+
+use std::fs;
+use std::io;
+use std::path::{Component, Path, PathBuf};
+
+use super::error::Doing;
+use super::manifest::{FILE_NAME, Manifest, sha256};
+use super::{Pack, PackError};
+
+/// Writes `pack` into the folder `out`, in place of an earlier pack of the same design.
+///
+/// # Errors
+/// When `out` is not a place for it, or the disk refuses. The folder is then as it was.
+pub fn write(pack: &Pack, out: &Path) -> Result<(), PackError> {
+    let place = Place::of(out)?;
+    let earlier = place.earlier_pack(pack)?;
+
+    fs::create_dir_all(&place.parent).map_err(|e| disk(Doing::Writing, &place.parent, e))?;
+    // Removed again when it goes out of scope, whatever happens before.
+    let staging = tempfile::Builder::new()
+        .prefix(".plankform-")
+        .tempdir_in(&place.parent)
+        .map_err(|e| disk(Doing::Writing, &place.parent, e))?;
+    let fresh = staging.path().join("pack");
+    write_files(pack, &fresh)?;
+    if let Some(earlier) = &earlier {
+        keep_the_users_files(&place.folder, earlier, &fresh)?;
+    }
+    exchange(&fresh, &place.folder, staging.path()).map_err(|e| disk(Doing::Writing, &place.folder, e))
+}
+
+fn disk(doing: Doing, path: &Path, source: io::Error) -> PackError {
+    PackError::Disk { doing, path: path.to_owned(), source }
+}
+
+/// Where the pack goes.
+struct Place {
+    folder: PathBuf,
+    parent: PathBuf,
+}
+
+impl Place {
+    fn of(out: &Path) -> Result<Self, PackError> {
+        let here = std::env::current_dir().map_err(|e| disk(Doing::Reading, Path::new("."), e))?;
+        // A link to a folder is followed, so that the folder is replaced and not the link.
+        let folder = match out.canonicalize() {
+            Ok(existing) => existing,
+            Err(_) => without_dots(&here.join(out)),
+        };
+        if folder.exists() && !folder.is_dir() {
+            return Err(PackError::NotAFolder { path: out.to_owned() });
+        }
+        if here.starts_with(&folder) {
+            return Err(PackError::WorkingFolder { path: out.to_owned() });
+        }
+        let parent = folder.parent().unwrap_or(Path::new("/")).to_owned();
+        if let Some(file) = parent.ancestors().find(|a| a.exists()).filter(|a| !a.is_dir()) {
+            return Err(PackError::NotAFolder { path: file.to_owned() });
+        }
+        Ok(Self { folder, parent })
+    }
+
+    /// The manifest of the pack that stands there, checked to be ours and unchanged; `None` when
+    /// there is nothing.
+    fn earlier_pack(&self, pack: &Pack) -> Result<Option<Manifest>, PackError> {
+        if !self.folder.exists() {
+            return Ok(None);
+        }
+        let reading = |e| disk(Doing::Reading, &self.folder, e);
+        if fs::read_dir(&self.folder).map_err(reading)?.next().is_none() {
+            return Ok(None);
+        }
+        let earlier = fs::read_to_string(self.folder.join(FILE_NAME))
+            .ok()
+            .and_then(|text| serde_json::from_str::<Manifest>(&text).ok())
+            .filter(|manifest| manifest.design == pack.manifest.design)
+            .filter(|manifest| manifest.files.iter().all(|file| stays_inside(&file.path)))
+            .ok_or_else(|| PackError::NotOurs {
+                path: self.folder.clone(),
+                design: pack.manifest.design.clone(),
+            })?;
+        for file in &earlier.files {
+            let path = self.folder.join(&file.path);
+            // A file that is gone is no loss; one that was worked on is.
+            match fs::read(&path) {
+                Ok(bytes) if sha256(&bytes) != file.sha256 => return Err(PackError::Changed { path }),
+                Ok(_) => {}
+                Err(e) if e.kind() == io::ErrorKind::NotFound => {}
+                Err(e) => return Err(disk(Doing::Reading, &path, e)),
+            }
+        }
+        Ok(Some(earlier))
+    }
+}
+
+/// A path without `.` and `..`, by its words alone, for a place that does not exist yet.
+fn without_dots(path: &Path) -> PathBuf {
+    path.components().fold(PathBuf::new(), |mut plain, part| {
+        match part {
+            Component::CurDir => {}
+            Component::ParentDir => {
+                plain.pop();
+            }
+            part => plain.push(part),
+        }
+        plain
+    })
+}
+
+fn stays_inside(path: &str) -> bool {
+    !path.is_empty() && Path::new(path).components().all(|part| matches!(part, Component::Normal(_)))
+}
+
+fn write_files(pack: &Pack, folder: &Path) -> Result<(), PackError> {
+    let put = |path: PathBuf, bytes: &[u8]| {
+        let made = path.parent().map_or(Ok(()), fs::create_dir_all);
+        made.and_then(|()| fs::write(&path, bytes)).map_err(|e| disk(Doing::Writing, &path, e))
+    };
+    for file in &pack.files {
+        put(folder.join(&file.path), &file.bytes)?;
+    }
+    let manifest = serde_json::to_string_pretty(&pack.manifest)
+        .map_err(|e| disk(Doing::Writing, &folder.join(FILE_NAME), e.into()))?;
+    put(folder.join(FILE_NAME), format!("{manifest}\n").as_bytes())
+}
+
+/// Links what the earlier pack did not write into the new one: the same files, not copies.
+fn keep_the_users_files(folder: &Path, earlier: &Manifest, fresh: &Path) -> Result<(), PackError> {
+    let ours = |path: &Path| {
+        path == Path::new(FILE_NAME) || earlier.files.iter().any(|file| Path::new(&file.path) == path)
+    };
+    let mut pending = vec![PathBuf::new()];
+    while let Some(inside) = pending.pop() {
+        let here = folder.join(&inside);
+        let reading = |e| disk(Doing::Reading, &here, e);
+        for entry in fs::read_dir(&here).map_err(reading)? {
+            let entry = entry.map_err(reading)?;
+            let path = inside.join(entry.file_name());
+            let (from, to) = (entry.path(), fresh.join(&path));
+            if entry.file_type().map_err(reading)?.is_dir() {
+                let held_ours = earlier.files.iter().any(|file| Path::new(&file.path).starts_with(&path));
+                if !held_ours {
+                    fs::create_dir_all(&to).map_err(|e| disk(Doing::Writing, &to, e))?;
+                }
+                pending.push(path);
+            } else if !ours(&path) {
+                if to.exists() {
+                    return Err(PackError::InTheWay { path: from });
+                }
+                let made = to.parent().map_or(Ok(()), fs::create_dir_all);
+                made.and_then(|()| fs::hard_link(&from, &to)).map_err(|e| disk(Doing::Writing, &to, e))?;
+            }
+        }
+    }
+    Ok(())
+}
+
+/// Puts `fresh` in the place of `folder`; what stood there ends up inside `aside`.
+fn exchange(fresh: &Path, folder: &Path, aside: &Path) -> io::Result<()> {
+    if !folder.exists() {
+        return fs::rename(fresh, folder);
+    }
+    #[cfg(any(target_os = "linux", target_os = "macos"))]
+    {
+        use rustix::fs::{CWD, RenameFlags, renameat_with};
+        use rustix::io::Errno;
+        match renameat_with(CWD, fresh, CWD, folder, RenameFlags::EXCHANGE) {
+            Ok(()) => return Ok(()),
+            // A file system that cannot exchange: the two steps below do, with a moment between.
+            Err(Errno::INVAL | Errno::NOSYS | Errno::NOTSUP) => {}
+            Err(error) => return Err(error.into()),
+        }
+    }
+    let old = aside.join("earlier");
+    fs::rename(folder, &old)?;
+    fs::rename(fresh, folder).inspect_err(|_| {
+        // Best effort: without it the earlier pack would be lost with the staging folder.
+        let _ = fs::rename(&old, folder);
+    })
+}

@@ -1,0 +1,118 @@
+//! The surface between the stations: straight lines from one station's outline to the next.
+
+use super::{Station, Wing, WingError};
+use crate::geometry::{Affine, Curve, Jet, Point, Vec2};
+
+/// The outline of the foil cut square to the span at one place, in the frame of its own chord:
+/// nose at the origin, trailing edge on the x axis, millimetres.
+#[derive(Debug, Clone)]
+pub struct StationShape<'a> {
+    /// Distance from the root, mm.
+    pub at: f64,
+    /// Nose to the middle of the trailing edge, mm.
+    pub chord: f64,
+    /// Nose-up angle of that chord, radians.
+    pub twist: f64,
+    /// Nose in the foil's axes: x aft of the root's quarter chord, y up, mm.
+    pub nose: Point,
+    inner: &'a Station,
+    outer: &'a Station,
+    /// Share of the outer station.
+    weight: f64,
+    /// From the foil's axes to the chord's own.
+    to_chord: Affine,
+}
+
+impl Wing {
+    /// The shape at `at` mm from the root.
+    ///
+    /// # Errors
+    /// When that is not on the foil.
+    pub fn shape_at(&self, at: f64) -> Result<StationShape<'_>, WingError> {
+        let off = || WingError::OffTheFoil { at, reach: self.reach() };
+        let pair =
+            self.stations().windows(2).find(|pair| pair[0].at <= at && at <= pair[1].at).ok_or_else(off)?;
+        let (inner, outer) = (&pair[0], &pair[1]);
+        let weight = (at - inner.at) / (outer.at - inner.at);
+
+        let mut shape = StationShape {
+            at,
+            chord: 0.0,
+            twist: 0.0,
+            nose: Point::ORIGIN,
+            inner,
+            outer,
+            weight,
+            to_chord: Affine::IDENTITY,
+        };
+        let nose = shape.lofted(0.0).point;
+        let tail = shape.lofted(-1.0).point.midpoint(shape.lofted(1.0).point);
+        let chord = tail - nose;
+        shape.nose = nose;
+        shape.chord = chord.hypot();
+        shape.twist = -chord.angle();
+        shape.to_chord = Affine::rotate(shape.twist) * Affine::translate(-nose.to_vec2());
+        Ok(shape)
+    }
+}
+
+impl StationShape<'_> {
+    /// The nearer of the two stations between which the shape lies.
+    #[must_use]
+    pub fn nearest_station(&self) -> &Station {
+        if self.weight < 0.5 { self.inner } else { self.outer }
+    }
+
+    /// Section names that make up the shape, one or two.
+    #[must_use]
+    pub fn section_name(&self) -> String {
+        let (inner, outer) = (self.inner.section.name(), self.outer.section.name());
+        match self.weight {
+            _ if inner == outer => inner.to_owned(),
+            0.0 => inner.to_owned(),
+            1.0 => outer.to_owned(),
+            _ => format!("{inner} to {outer}"),
+        }
+    }
+
+    /// In the foil's axes.
+    fn lofted(&self, t: f64) -> Jet {
+        let (a, b) = (placed(self.inner, t), placed(self.outer, t));
+        let mix = |p: Vec2, q: Vec2| p * (1.0 - self.weight) + q * self.weight;
+        Jet {
+            point: mix(a.point.to_vec2(), b.point.to_vec2()).to_point(),
+            first: mix(a.first, b.first),
+            second: mix(a.second, b.second),
+        }
+    }
+}
+
+impl Curve for StationShape<'_> {
+    fn jet(&self, t: f64) -> Jet {
+        let jet = self.lofted(t);
+        let turned = Affine::rotate(self.twist);
+        let turn = |v: Vec2| (turned * v.to_point()).to_vec2();
+        Jet { point: self.to_chord * jet.point, first: turn(jet.first), second: turn(jet.second) }
+    }
+
+    fn breaks(&self) -> Vec<f64> {
+        let mut breaks = self.inner.section.breaks();
+        breaks.extend(self.outer.section.breaks());
+        breaks.sort_by(f64::total_cmp);
+        breaks.dedup_by(|a, b| (*a - *b).abs() < 1e-12);
+        breaks
+    }
+}
+
+/// A station's section at its chord, twist and sweep, in the foil's axes.
+fn placed(station: &Station, t: f64) -> Jet {
+    let jet = station.section.jet(t);
+    // x is aft and z is up, so nose-up turns clockwise.
+    let turn = Affine::rotate(-station.twist) * Affine::scale(station.chord);
+    let vector = |v: Vec2| (turn * v.to_point()).to_vec2();
+    Jet {
+        point: turn * (jet.point - Vec2::new(0.25, 0.0)) + Vec2::new(station.sweep, 0.0),
+        first: vector(jet.first),
+        second: vector(jet.second),
+    }
+}

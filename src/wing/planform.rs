@@ -1,0 +1,98 @@
+//! The foil seen from above.
+
+use super::Wing;
+use crate::geometry::{Point, polygon};
+
+/// The outline of the foil seen along z, and what it measures. Millimetres; x along the span,
+/// y aft of the root's quarter chord.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Planform {
+    /// Corners of the leading edge from the root to the tip.
+    pub leading: Vec<Point>,
+    /// Corners of the trailing edge from the root to the tip.
+    pub trailing: Vec<Point>,
+    mirrored: bool,
+}
+
+impl Wing {
+    /// The planform. Leading and trailing edges are the lofted noses and trailing edges, straight
+    /// from station to station.
+    #[must_use]
+    pub fn planform(&self) -> Planform {
+        let edges = |at: f64| {
+            self.shape_at(at).ok().map(|shape| {
+                let aft = shape.nose.x + shape.chord * shape.twist.cos();
+                (Point::new(at, shape.nose.x), Point::new(at, aft))
+            })
+        };
+        let (leading, trailing) = self.stations().iter().filter_map(|s| edges(s.at)).unzip();
+        Planform { leading, trailing, mirrored: self.is_mirrored() }
+    }
+}
+
+impl Planform {
+    /// The whole outline, both halves of a mirrored foil.
+    #[must_use]
+    pub fn outline(&self) -> Vec<Point> {
+        let half: Vec<Point> = self.leading.iter().chain(self.trailing.iter().rev()).copied().collect();
+        if !self.mirrored {
+            return half;
+        }
+        // The root's two corners lie on the mirror line: drop them from both halves.
+        let inner = &half[1..half.len() - 1];
+        let other = inner.iter().rev().map(|p| Point::new(-p.x, p.y));
+        let (front, back) = (self.leading[0], self.trailing[0]);
+        std::iter::once(front).chain(inner.iter().copied()).chain([back]).chain(other).collect()
+    }
+
+    /// Whether both halves of a mirrored foil are meant.
+    #[must_use]
+    pub fn is_mirrored(&self) -> bool {
+        self.mirrored
+    }
+
+    /// How far aft the leading and the trailing edge lie at `at` mm from the root.
+    #[must_use]
+    pub fn edges(&self, at: f64) -> (f64, f64) {
+        let along = |edge: &[Point]| {
+            let pair = edge.windows(2).find(|pair| at <= pair[1].x).or(edge.windows(2).last());
+            pair.map_or(0.0, |pair| {
+                let fraction = (at - pair[0].x) / (pair[1].x - pair[0].x);
+                pair[0].y + fraction * (pair[1].y - pair[0].y)
+            })
+        };
+        (along(&self.leading), along(&self.trailing))
+    }
+
+    /// Area of the whole foil in mm².
+    #[must_use]
+    pub fn area(&self) -> f64 {
+        polygon::area(&self.outline()).abs()
+    }
+
+    /// Tip to tip, mm.
+    #[must_use]
+    pub fn span(&self) -> f64 {
+        let reach = self.leading.last().map_or(0.0, |p| p.x);
+        if self.mirrored { 2.0 * reach } else { reach }
+    }
+
+    /// Span² over area.
+    #[must_use]
+    pub fn aspect_ratio(&self) -> f64 {
+        self.span().powi(2) / self.area()
+    }
+
+    /// Area over span, mm.
+    #[must_use]
+    pub fn mean_chord(&self) -> f64 {
+        self.area() / self.span()
+    }
+
+    /// Tip chord over root chord, as seen from above.
+    #[must_use]
+    pub fn taper(&self) -> f64 {
+        let chord = |i: usize| self.trailing[i].y - self.leading[i].y;
+        chord(self.leading.len() - 1) / chord(0)
+    }
+}

@@ -1,0 +1,139 @@
+//! A drawing at true size: what every plane file format writes. Millimetres, y upwards.
+
+use kurbo::Affine;
+
+use crate::geometry::{ArcPath, Point, Rect};
+
+/// What a line or a label is for: its layer in a router file, its line type on paper.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+pub enum Role {
+    /// A contour whose outside is cut.
+    CutOutside,
+    /// A line to measure from: chord line, root line, hinge line. Never cut.
+    Reference,
+    /// Words. Never cut.
+    Label,
+    /// A line of known length to check a print by, and marks to join pages by.
+    Check,
+}
+
+impl Role {
+    /// All roles, in the order in which files list their layers.
+    pub const ALL: [Self; 4] = [Self::CutOutside, Self::Reference, Self::Label, Self::Check];
+
+    /// How it is drawn on paper: width of the line and lengths of dashes and gaps, mm. The types
+    /// differ in pattern, not only in weight, so that they survive a photocopier.
+    #[must_use]
+    pub fn stroke(self) -> (f64, &'static [f64]) {
+        match self {
+            Self::CutOutside => (0.35, &[]),
+            Self::Reference => (0.2, &[6.0, 1.5, 1.0, 1.5]),
+            Self::Label | Self::Check => (0.2, &[]),
+        }
+    }
+
+    /// Name of its layer.
+    #[must_use]
+    pub fn layer(self) -> &'static str {
+        match self {
+            Self::CutOutside => "CUT_OUTSIDE",
+            Self::Reference => "REFERENCE",
+            Self::Label => "LABEL",
+            Self::Check => "CHECK",
+        }
+    }
+}
+
+/// A path with its role.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Line {
+    /// What it is for.
+    pub role: Role,
+    /// Where it runs.
+    pub path: ArcPath,
+}
+
+/// A line of text.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Label {
+    /// What it is for.
+    pub role: Role,
+    /// Left end of the base line.
+    pub at: Point,
+    /// Height of a capital letter, mm.
+    pub height: f64,
+    /// Turn anticlockwise, radians.
+    pub turn: f64,
+    /// The words.
+    pub text: String,
+}
+
+/// Lines and labels at true size.
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct Drawing {
+    /// What it shows.
+    pub title: String,
+    /// Lines, in drawing order.
+    pub lines: Vec<Line>,
+    /// Labels.
+    pub labels: Vec<Label>,
+}
+
+impl Drawing {
+    /// An empty drawing.
+    #[must_use]
+    pub fn new(title: impl Into<String>) -> Self {
+        Self { title: title.into(), ..Self::default() }
+    }
+
+    /// Adds a path.
+    pub fn add(&mut self, role: Role, path: ArcPath) {
+        self.lines.push(Line { role, path });
+    }
+
+    /// Adds a level line of text that starts at `at`.
+    pub fn write(&mut self, role: Role, at: Point, height: f64, text: impl Into<String>) {
+        let text = text.into();
+        self.labels.push(Label { role, at, height, turn: 0.0, text });
+    }
+
+    /// The drawing without its words in `role`, for where they stand beside it.
+    #[must_use]
+    pub fn without_labels(&self, role: Role) -> Self {
+        let labels = self.labels.iter().filter(|label| label.role != role).cloned().collect();
+        Self { labels, ..self.clone() }
+    }
+
+    /// The smallest upright rectangle round all lines and, by estimate, the labels.
+    #[must_use]
+    pub fn bounds(&self) -> Rect {
+        let lines = self.lines.iter().map(|line| line.path.bounds());
+        let labels = self.labels.iter().map(Label::rough_bounds);
+        lines.chain(labels).reduce(|a, b| a.union(b)).unwrap_or(Rect::ZERO)
+    }
+
+    /// The drawing moved by `by`, a turn and a shift; the height of labels stays.
+    #[must_use]
+    pub fn moved(&self, by: Affine) -> Self {
+        let turn = by.as_coeffs()[1].atan2(by.as_coeffs()[0]);
+        Self {
+            title: self.title.clone(),
+            lines: self.lines.iter().map(|l| Line { role: l.role, path: l.path.transformed(by) }).collect(),
+            labels: self
+                .labels
+                .iter()
+                .map(|l| Label { at: by * l.at, turn: l.turn + turn, ..l.clone() })
+                .collect(),
+        }
+    }
+}
+
+impl Label {
+    /// A rectangle round the text, on the generous side: letters of the fonts in use are at most
+    /// as wide as a capital is high.
+    fn rough_bounds(&self) -> Rect {
+        let width = self.text.chars().count() as f64 * self.height;
+        let flat = Rect::new(0.0, -0.4 * self.height, width, 1.2 * self.height);
+        (Affine::translate(self.at.to_vec2()) * Affine::rotate(self.turn)).transform_rect_bbox(flat)
+    }
+}

@@ -1,0 +1,21 @@
+//! The aids that shape the parts: templates, patterns, masks; laid out on paper and printer beds.
+
+mod drawing;
+mod mask;
+mod paper;
+mod pattern;
+
+pub use drawing::{Drawing, Label, Line, Role};
+pub use mask::{Half, Mask, MaskSettings};
+pub use paper::{Page, PaperSettings, single_page, tiled};
+pub(crate) use pattern::without_negative_zero;
+pub use pattern::{HingeLine, planform_pattern, station_template};
+
+/// The title every aid of one design carries, so that two revisions are never mixed on the bench.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Stamp {
+    /// Name of the design.
+    pub design: String,
+    /// Its fingerprint.
+    pub fingerprint: String,
+}

@@ -1,0 +1,152 @@
+//! Templates of the stations and the pattern of the planform.
+
+use super::{Drawing, Role, Stamp};
+use crate::geometry::{ArcPath, GeometryError, Point, follow_with_arcs, polygon};
+use crate::wing::{Planform, StationShape};
+
+/// Height of capitals in the labels of a template, mm: read at arm's length.
+const LETTERS: f64 = 4.0;
+/// Height of capitals beside a line, mm.
+const SMALL: f64 = 2.8;
+/// Base line to base line, mm.
+const LINE_STEP: f64 = 7.0;
+/// From an outline to the first label, mm.
+const GAP: f64 = 6.0;
+/// How far a reference line runs past the shape, mm.
+const OVERRUN: f64 = 5.0;
+
+/// Where a flap will be parted from the main body. So far it is only drawn.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct HingeLine {
+    /// Fraction of the chord from the nose.
+    pub chord_fraction: f64,
+    /// Where the flap begins, mm from the root.
+    pub from: f64,
+    /// Where it ends, mm from the root.
+    pub to: f64,
+}
+
+impl HingeLine {
+    /// Whether the flap reaches the station at `at` mm from the root.
+    #[must_use]
+    pub fn reaches(&self, at: f64) -> bool {
+        (self.from..=self.to).contains(&at)
+    }
+}
+
+/// The template of one station: its outline, chord line, hinge line and what it is.
+/// Nose at the origin, trailing edge along x.
+///
+/// `mirrored`: whether the foil lies level, in two halves; an upright one is seen from above.
+/// `tolerance`: greatest distance of the contour from the exact outline, mm.
+///
+/// # Errors
+/// When the outline cannot be followed within the tolerance, or crosses itself.
+pub fn station_template(
+    stamp: &Stamp,
+    shape: &StationShape<'_>,
+    hinge: Option<&HingeLine>,
+    mirrored: bool,
+    tolerance: f64,
+) -> Result<Drawing, GeometryError> {
+    let outline = follow_with_arcs(shape, tolerance)?;
+    outline.refuse_crossings(tolerance)?;
+    let bounds = outline.bounds();
+    let mut drawing = Drawing::new(format!("{}, station {} mm", stamp.design, millimetres(shape.at)));
+    drawing.add(Role::CutOutside, outline);
+    let chord_line = ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0));
+    drawing.add(Role::Reference, chord_line);
+
+    let (low, high) = (bounds.y0 - OVERRUN, bounds.y1 + OVERRUN);
+    if let Some(hinge) = hinge.filter(|hinge| hinge.reaches(shape.at)) {
+        let x = hinge.chord_fraction * shape.chord;
+        drawing.add(Role::Reference, ArcPath::line(Point::new(x, low), Point::new(x, high)));
+        drawing.write(Role::Reference, Point::new(x + 1.0, high + 1.0), SMALL, "hinge line");
+    }
+    let words = [
+        format!("{}  {}", stamp.design, stamp.fingerprint),
+        format!("station {} mm from the root", millimetres(shape.at)),
+        format!(
+            "{}, chord {:.2} mm, twist {:+.2}°",
+            shape.section_name(),
+            shape.chord,
+            without_negative_zero(shape.twist.to_degrees())
+        ),
+        // With x aft and the span's axis away from the eye, what stands upright in the drawing is
+        // the boat's up for a level foil and its starboard side for an upright one.
+        if mirrored { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
+            .to_owned(),
+    ];
+    write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
+    Ok(drawing)
+}
+
+/// The pattern of the whole planform, with its stations and the hinge line.
+///
+/// Seen from above: the span runs along x and the leading edge is at the top.
+#[must_use]
+pub fn planform_pattern(
+    stamp: &Stamp,
+    planform: &Planform,
+    stations: &[f64],
+    hinge: Option<&HingeLine>,
+) -> Drawing {
+    let flip = |p: Point| Point::new(p.x, -p.y);
+    let mut outline: Vec<Point> = planform.outline().into_iter().map(flip).collect();
+    if polygon::area(&outline) < 0.0 {
+        outline.reverse();
+    }
+    let path = ArcPath::polyline(outline, true);
+    let bounds = path.bounds();
+    let mut drawing = Drawing::new(format!("{}, planform", stamp.design));
+    drawing.add(Role::CutOutside, path);
+
+    let sides: &[f64] = if planform.is_mirrored() { &[1.0, -1.0] } else { &[1.0] };
+    for &side in sides {
+        // The root's line is the same for both halves.
+        for &at in stations.iter().filter(|&&at| side > 0.0 || at > 0.0) {
+            let (front, back) = planform.edges(at);
+            let place = |y: f64| Point::new(side * at, -y);
+            drawing.add(Role::Reference, ArcPath::line(place(front - OVERRUN), place(back + OVERRUN)));
+            drawing.write(Role::Reference, place(front - OVERRUN - 2.0), SMALL, millimetres(at));
+        }
+        if let Some(hinge) = hinge {
+            let corners = planform.leading.iter().map(|corner| corner.x);
+            let bends = corners.filter(|&at| hinge.from < at && at < hinge.to);
+            let line = std::iter::once(hinge.from).chain(bends).chain([hinge.to]).map(|at| {
+                let (front, back) = planform.edges(at);
+                Point::new(side * at, -(front + hinge.chord_fraction * (back - front)))
+            });
+            drawing.add(Role::Reference, ArcPath::polyline(line, false));
+        }
+    }
+    let words = [
+        format!("{}  {}", stamp.design, stamp.fingerprint),
+        format!("planform, span {} mm, leading edge up", millimetres(planform.span())),
+        format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
+        hinge.map_or(String::new(), |hinge| {
+            let (from, to) = (millimetres(hinge.from), millimetres(hinge.to));
+            format!("hinge line at {:.1} % of chord, {from} to {to} mm", 100.0 * hinge.chord_fraction)
+        }),
+    ];
+    write_block(&mut drawing, Point::new(bounds.x0, bounds.y0 - OVERRUN - GAP), &words);
+    drawing
+}
+
+fn write_block(drawing: &mut Drawing, top: Point, words: &[String]) {
+    for (row, text) in words.iter().filter(|text| !text.is_empty()).enumerate() {
+        let at = Point::new(top.x, top.y - LETTERS - row as f64 * LINE_STEP);
+        drawing.write(Role::Label, at, LETTERS, text);
+    }
+}
+
+/// A length as a template shows it: to a hundredth, without idle zeros.
+fn millimetres(value: f64) -> String {
+    let text = format!("{value:.2}");
+    text.trim_end_matches('0').trim_end_matches('.').to_owned()
+}
+
+/// Rounding must not print a level chord as "-0.00".
+pub(crate) fn without_negative_zero(value: f64) -> f64 {
+    if value.abs() < 0.005 { 0.0 } else { value }
+}

@@ -1,0 +1,253 @@
+//! The verbs as a user types them: data, exit status, and what bad input gets.
+
+mod common;
+
+use common::{Bench, DESIGN, demo};
+
+#[test]
+fn section_prints_the_promised_keys() {
+    let bench = Bench::new();
+    let answer = bench.run(&["section", "NACA 23012", "--format", "json", "--points", "81"]);
+    assert_eq!(answer.status, 0, "{}", answer.err);
+    let json = answer.json();
+    assert_eq!(json["section"], "NACA 23012");
+    for key in [
+        "thickness",
+        "thickness_at",
+        "camber",
+        "camber_at",
+        "nose_radius",
+        "trailing_edge_thickness",
+        "trailing_edge_angle_deg",
+        "area",
+    ] {
+        assert!(json[key].is_f64(), "{key}: {}", json[key]);
+    }
+    let points = json["points"].as_array().expect("points");
+    assert_eq!(points.len(), 81);
+    // From the trailing edge over the upper side to the nose and back.
+    assert!(points[0][1].as_f64() > Some(0.0) && points[80][1].as_f64() < Some(0.0));
+    assert_eq!(points[40], serde_json::json!([0.0, 0.0]));
+
+    let scaled = bench.run(&["section", "NACA 23012", "--chord", "12 cm", "--format", "json"]).json();
+    let ratio = scaled["thickness"].as_f64().expect("mm") / json["thickness"].as_f64().expect("chord");
+    assert!((ratio - 120.0).abs() < 1e-9);
+    assert_eq!(scaled["unit"], "mm");
+}
+
+#[test]
+fn section_prints_text_and_csv_and_draws() {
+    let bench = Bench::new();
+    let text = bench.run(&["section", "NACA 0012", "--svg", "section.svg"]);
+    assert_eq!(text.status, 0, "{}", text.err);
+    // Report 824: 4.683 % at 10 % of chord.
+    assert!(text.out.lines().any(|l| l.contains("10.0000") && l.contains("4.6828")), "{}", text.out);
+    let svg = std::fs::read_to_string(bench.path().join("section.svg")).expect("the picture");
+    assert!(svg.starts_with("<svg") && svg.contains("NACA 0012"));
+    let csv = bench.run(&["section", "NACA 0012", "--format", "csv", "--points", "5"]);
+    let lines: Vec<&str> = csv.out.lines().collect();
+    assert_eq!(lines.len(), 6);
+    assert_eq!((lines[0], lines[3]), ("x,y", "0.00000000,0.00000000"));
+}
+
+#[test]
+fn lift_prints_the_promised_keys() {
+    let bench = Bench::new();
+    let typed = ["lift", "NACA 4412", "--re", "1e6", "--angles", "-4:10:1", "--inviscid", "--pressure"];
+    let answer = bench.run(&[&typed[..], &["--format", "json"]].concat());
+    assert_eq!(answer.status, 0, "{}", answer.err);
+    let curve = &answer.json()["curves"][0];
+    assert!(curve["reynolds"].is_null() && curve["amplification"].is_null());
+    let points = curve["points"].as_array().expect("points");
+    assert_eq!(points.len(), 15);
+    for (i, point) in points.iter().enumerate() {
+        assert_eq!(point["angle_deg"].as_f64(), Some(i as f64 - 4.0));
+        assert!(point["cl"].is_f64() && point["cm"].is_f64() && point["cp_min"].is_f64());
+        assert!(point["cd"].is_null() && point["transition_upper"].is_null());
+        let pressure = point["pressure"].as_array().expect("pressure");
+        assert!(pressure.len() > 100 && pressure.iter().all(|p| p.as_array().is_some_and(|p| p.len() == 3)));
+    }
+    let text = bench.run(&["lift", "NACA 4412", "--angles", "4", "--inviscid", "--svg", "lift.svg"]);
+    assert_eq!(text.status, 0, "{}", text.err);
+    assert!(bench.path().join("lift.svg").exists());
+    let csv = bench.run(&["lift", "NACA 4412", "--angles", "0:2:1", "--inviscid", "--format", "csv"]);
+    assert_eq!(csv.out.lines().count(), 4);
+}
+
+#[test]
+fn lift_does_not_pretend_to_know_friction() {
+    let answer = Bench::new().run(&["lift", "NACA 4412", "--re", "1e6", "--angles", "-4:10:1"]);
+    assert_eq!(answer.status, 2);
+    assert!(answer.err.contains("viscous solution") && answer.err.contains("--inviscid"), "{}", answer.err);
+    assert_eq!(answer.out, "");
+}
+
+#[test]
+fn wrong_command_lines_say_what_would_be_right() {
+    let bench = Bench::new();
+    for (arguments, says) in [
+        (&["section", "NACA 44"][..], "four"),
+        (&["section", "NACA 99999"], "thickness"),
+        (&["section", "no such"], "NACA"),
+        (&["section", "NACA 0012", "--chord", "120"], "mm"),
+        (&["section", "NACA 0012", "--chord", "0 mm"], "1 mm"),
+        (&["section", "NACA 0012", "--chord", "NaN mm"], "finite"),
+        (&["section", "NACA 0012", "--points", "0"], "5"),
+        (&["lift", "NACA 0012", "--inviscid", "--angles", "4:1:1"], "upwards"),
+        (&["lift", "NACA 0012", "--inviscid", "--angles", "0:10:0"], "STEP"),
+        (&["lift", "NACA 0012", "--inviscid", "--angles", "0:10:1e-9"], "2001"),
+        (&["lift", "NACA 0012", "--inviscid", "--angles", "nan"], "number"),
+        (&["lift", "NACA 0012", "--inviscid", "--angles", "1:2:3:4"], "FROM:TO:STEP"),
+        (&["lift", "NACA 0012", "--inviscid", "--angles", "80"], "30"),
+        (&["lift", "NACA 0012", "--re", "-1", "--angles", "4"], "more than zero"),
+        (&["lift", "NACA 0012", "--angles", "4"], "--re"),
+        (&["fly"], "unrecognized"),
+    ] {
+        let answer = bench.run(arguments);
+        assert_eq!(answer.status, 2, "{arguments:?}: {}", answer.err);
+        assert!(answer.err.contains(says), "{arguments:?} says {}", answer.err);
+        assert_eq!(answer.out, "", "{arguments:?}");
+    }
+    assert!(bench.listing().is_empty());
+}
+
+#[test]
+fn help_shows_an_example_that_runs() {
+    let bench = Bench::new();
+    bench.file("my-other-foil.toml", DESIGN);
+    std::fs::create_dir(bench.path().join("demo-sections")).expect("a folder");
+    std::fs::copy(demo("main-foil.toml"), bench.path().join("demo-sections/main-foil.toml")).expect("a copy");
+    for verb in ["new", "section", "lift", "check", "build", "schema"] {
+        let help = bench.run(&[verb, "--help"]);
+        assert_eq!(help.status, 0);
+        let example = help.out.lines().find(|l| l.starts_with("  plankform ")).expect("an example");
+        let script = example.trim().replacen("plankform", env!("CARGO_BIN_EXE_plankform"), 1);
+        let status = std::process::Command::new("sh")
+            .args(["-c", &script])
+            .current_dir(bench.path())
+            .stdout(std::process::Stdio::null())
+            .status()
+            .expect("a shell");
+        assert!(status.success(), "{example}");
+    }
+}
+
+#[test]
+fn check_reports_each_limit() {
+    let bench = Bench::new();
+    bench.file("foil.toml", DESIGN);
+    let answer = bench.run(&["check", "foil.toml", "--format", "json"]);
+    assert_eq!(answer.status, 0, "{}", answer.err);
+    let json = answer.json();
+    assert_eq!(json["passed"], true);
+    for check in json["checks"].as_array().expect("checks") {
+        for key in ["name", "where", "value", "limit", "unit", "passed", "why"] {
+            assert!(!check[key].is_null(), "{key} of {check}");
+        }
+    }
+    assert_eq!(bench.listing(), ["foil.toml"], "check writes nothing");
+}
+
+#[test]
+fn checks_outside_their_limit_are_told_and_change_the_exit_status() {
+    for (addition, name) in [
+        ("[lift]\ndesign = 2.5\n", "section lift in the range of incidence"),
+        ("[lift]\ndesign = -1.5\n", "section lift in the range of incidence"),
+        ("[printer]\nbed-x = \"80 mm\"\nbed-y = \"80 mm\"\n", "mask fits the printer bed"),
+        ("[printer]\nbed-z = \"50 mm\"\n[masks]\nthickness = \"55 mm\"\n", "mask fits the printer bed"),
+        ("[stock]\nlength = \"300 mm\"\nwidth = \"300 mm\"\n", "template fits the stock sheet"),
+    ] {
+        let bench = Bench::new();
+        bench.file("foil.toml", &format!("{DESIGN}{addition}"));
+        let answer = bench.run(&["check", "foil.toml", "--format", "json"]);
+        assert_eq!(answer.status, 1, "{addition}: {}", answer.err);
+        let json = answer.json();
+        assert_eq!(json["passed"], false);
+        let outside: Vec<&str> = json["checks"]
+            .as_array()
+            .expect("checks")
+            .iter()
+            .filter(|c| c["passed"] == false)
+            .filter_map(|c| c["name"].as_str())
+            .collect();
+        assert!(!outside.is_empty() && outside.iter().all(|n| *n == name), "{addition}: {outside:?}");
+        // The files are written all the same, and say so.
+        let built = bench.run(&["build", "foil.toml", "--out", "pack"]);
+        assert_eq!(built.status, 1);
+        let sheet = std::fs::read_to_string(bench.path().join("pack/sheet.html")).expect("the sheet");
+        assert!(sheet.contains("outside their limit") && sheet.contains("OUTSIDE"));
+    }
+}
+
+#[test]
+fn new_writes_a_design_that_builds_and_overwrites_nothing() {
+    for kind in ["main-foil", "elevator", "strut", "fin"] {
+        let bench = Bench::new();
+        let answer = bench.run(&["new", "mine.toml", "--kind", kind]);
+        assert_eq!(answer.status, 0, "{}", answer.err);
+        assert_eq!(bench.run(&["build", "mine.toml"]).status, 0, "{kind}");
+        let before = std::fs::read(bench.path().join("mine.toml")).expect("the design");
+        assert_eq!(bench.run(&["new", "mine.toml"]).status, 2);
+        assert_eq!(std::fs::read(bench.path().join("mine.toml")).expect("the design"), before);
+    }
+}
+
+#[test]
+fn schema_is_a_json_schema() {
+    let json = Bench::new().run(&["schema"]).json();
+    assert!(json["$schema"].as_str().is_some_and(|s| s.contains("draft-07")));
+    assert!(json["properties"]["station"].is_object());
+}
+
+/// Every kind of wrong design file: the place, the reason, exit status 2, and nothing written.
+#[test]
+fn wrong_designs_are_answered_with_their_place() {
+    let with = |from: &str, to: &str| {
+        assert!(DESIGN.contains(from));
+        DESIGN.replacen(from, to, 1)
+    };
+    let one_station = DESIGN.split("\n[[station]]\nat = \"200 mm\"").next().expect("the first").to_owned();
+    for (text, place, says) in [
+        ("this is not TOML".to_owned(), ":1:", "TOML"),
+        (String::new(), "", "no design"),
+        (with("chord = \"100 mm\"", "chord = 100"), ":9:9", "mm"),
+        (with("chord = \"100 mm\"", "cord = \"100 mm\""), ":9:1", "chord"),
+        (with("NACA 4412", "NACA 44"), ":10:11", "four"),
+        (with("NACA 4412", "NACA 99999"), ":10:11", "thickness"),
+        (with("chord = \"100 mm\"", "chord = \"0 mm\""), ":9:9", "5 mm"),
+        (with("chord = \"100 mm\"", "chord = \"-80 mm\""), ":9:9", "5 mm"),
+        (with("chord = \"100 mm\"", "chord = \"90 m\""), ":9:9", "2"),
+        (with("chord = \"100 mm\"", "chord = \"NaN mm\""), ":9:9", "finite"),
+        (with("chord = \"100 mm\"", "chord = nan"), ":9:9", "mm"),
+        (one_station, "", "2 times at least"),
+        (with("at = \"200 mm\"", "at = \"0 mm\""), ":13:", "0 mm"),
+        (with("at = \"200 mm\"", "at = \"150 mm\""), ":13:", "200 mm"),
+        (with("Trial foil", "../foil"), ":1:8", "name"),
+        (with("Trial foil", "a/b"), ":1:8", "name"),
+    ] {
+        let bench = Bench::new();
+        bench.file("foil.toml", &text);
+        for verb in ["check", "build"] {
+            let answer = bench.run(&[verb, "foil.toml"]);
+            assert_eq!(answer.status, 2, "{text}: {}", answer.err);
+            assert!(answer.err.contains(&format!("foil.toml{place}")), "{place} of {text}: {}", answer.err);
+            assert!(answer.err.contains(says), "{says} for {text}: {}", answer.err);
+            assert_eq!(answer.out, "");
+        }
+        assert_eq!(bench.listing(), ["foil.toml"]);
+    }
+}
+
+#[test]
+fn missing_and_unreadable_designs_are_a_failure_to_read() {
+    let bench = Bench::new();
+    for path in ["missing.toml", "."] {
+        let answer = bench.run(&["build", path]);
+        assert_eq!(answer.status, 3, "{}", answer.err);
+        assert!(answer.err.contains("cannot read"), "{}", answer.err);
+    }
+    std::fs::write(bench.path().join("binary.toml"), [0xff, 0xfe, 0x00]).expect("a file");
+    let answer = bench.run(&["build", "binary.toml"]);
+    assert_eq!(answer.status, 2);
+    assert!(answer.err.contains("UTF-8"));
+}

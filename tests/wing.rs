@@ -1,0 +1,85 @@
+//! Planform and loft against closed forms.
+
+use plankform::geometry::{Curve, Point};
+use plankform::section::{Section, TrailingEdge};
+use plankform::wing::{Station, Wing, WingError};
+
+fn station(at: f64, chord: f64, twist_deg: f64, sweep: f64, name: &str) -> Station {
+    let section = Section::from_designation(name, TrailingEdge::Published).expect("a section");
+    Station { at, chord, section, twist: twist_deg.to_radians(), sweep }
+}
+
+#[test]
+fn a_straight_tapered_planform_measures_as_a_trapezoid() {
+    let stations =
+        vec![station(0.0, 140.0, 0.0, 0.0, "NACA 4412"), station(450.0, 80.0, 0.0, 20.0, "NACA 4412")];
+    let planform = Wing::new(stations, true).expect("a foil").planform();
+    // Trapezoid: mean of the two chords times the span, both halves.
+    assert!((planform.area() - 0.5 * (140.0 + 80.0) * 900.0).abs() < 1e-6);
+    assert!((planform.span() - 900.0).abs() < 1e-9);
+    assert!((planform.aspect_ratio() - 900.0 / 110.0).abs() < 1e-9);
+    assert!((planform.mean_chord() - 110.0).abs() < 1e-9);
+    assert!((planform.taper() - 80.0 / 140.0).abs() < 1e-12);
+    // The quarter chord of the tip lies 20 mm aft of the root's.
+    let tip = (planform.leading[1], planform.trailing[1]);
+    assert!((tip.0.y + 0.25 * (tip.1.y - tip.0.y) - 20.0).abs() < 1e-9);
+}
+
+#[test]
+fn the_loft_is_straight_between_stations() {
+    let stations =
+        vec![station(0.0, 140.0, 1.0, 0.0, "NACA 4412"), station(450.0, 80.0, -2.0, 20.0, "NACA 23012")];
+    let wing = Wing::new(stations, true).expect("a foil");
+    // A batten laid from root to tip touches the same point of every station between.
+    let in_space = |at: f64, t: f64| {
+        let shape = wing.shape_at(at).expect("on the foil");
+        let p = shape.jet(t).point;
+        let (sin, cos) = (-shape.twist).sin_cos();
+        Point::new(shape.nose.x + p.x * cos - p.y * sin, shape.nose.y + p.x * sin + p.y * cos)
+    };
+    for t in [-1.0, -0.6, -0.2, 0.0, 0.3, 0.8, 1.0] {
+        let (root, tip) = (in_space(0.0, t), in_space(450.0, t));
+        for fraction in [0.1, 0.25, 0.5, 0.9] {
+            let off = in_space(450.0 * fraction, t).distance(root.lerp(tip, fraction));
+            assert!(off < 1e-9, "{off} mm off the batten at {t}, {fraction}");
+        }
+    }
+    // At a station the shape is the station's own section.
+    let shape = wing.shape_at(0.0).expect("on the foil");
+    assert!((shape.chord - 140.0).abs() < 1e-9 && (shape.twist.to_degrees() - 1.0).abs() < 1e-9);
+    for t in [-0.7, 0.4] {
+        let expected = wing.stations()[0].section.jet(t).point.to_vec2() * 140.0;
+        assert!((shape.jet(t).point.to_vec2() - expected).hypot() < 1e-9);
+    }
+}
+
+#[test]
+fn nose_up_twist_lifts_the_nose() {
+    let twisted = |deg| {
+        let stations =
+            vec![station(0.0, 100.0, deg, 0.0, "NACA 0012"), station(100.0, 100.0, deg, 0.0, "NACA 0012")];
+        Wing::new(stations, false).expect("a foil")
+    };
+    let wing = twisted(5.0);
+    let shape = wing.shape_at(0.0).expect("on the foil");
+    assert!((shape.nose.y - 25.0 * 5_f64.to_radians().sin()).abs() < 1e-9);
+    assert!((shape.twist.to_degrees() - 5.0).abs() < 1e-9);
+}
+
+#[test]
+fn stations_that_make_no_foil_are_refused() {
+    let at = |at, chord| station(at, chord, 0.0, 0.0, "NACA 0012");
+    let refused = |stations| Wing::new(stations, true).expect_err("no foil");
+    assert!(matches!(refused(vec![at(0.0, 100.0)]), WingError::TooFewStations { count: 1 }));
+    assert!(matches!(refused(vec![at(10.0, 100.0), at(20.0, 90.0)]), WingError::NoRoot { .. }));
+    let crossing = vec![at(0.0, 100.0), at(300.0, 90.0), at(200.0, 80.0)];
+    assert!(matches!(refused(crossing), WingError::Order { .. }));
+    assert!(matches!(refused(vec![at(0.0, 100.0), at(0.0, 90.0)]), WingError::Order { .. }));
+    for chord in [0.0, -5.0, f64::NAN, f64::INFINITY] {
+        assert!(matches!(refused(vec![at(0.0, 100.0), at(50.0, chord)]), WingError::Station { .. }));
+    }
+    let wing = Wing::new(vec![at(0.0, 100.0), at(50.0, 90.0)], true).expect("a foil");
+    for outside in [-1.0, 50.1, f64::NAN] {
+        assert!(matches!(wing.shape_at(outside), Err(WingError::OffTheFoil { .. })));
+    }
+}

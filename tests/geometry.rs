@@ -2,7 +2,7 @@
 
 use kurbo::{ParamCurve, ParamCurveArclen, Shape};
 use plankform::geometry::{
-    ArcPath, ArcVertex, Curve, GeometryError, Jet, Point, Solid, Vec2, fitted_outline, follow_with_arcs,
+    ArcPath, ArcVertex, Curve, GeometryError, Jet, Point, Solid, Vec2, follow_with_arcs,
 };
 use plankform::section::{Section, TrailingEdge};
 use plankform::wing::{Station, Wing};
@@ -28,7 +28,7 @@ fn fitted_outlines_stay_within_a_hundred_thousandth_of_chord() {
     for name in SECTIONS {
         for edge in [TrailingEdge::Published, TrailingEdge::Closed] {
             let section = section(name, edge);
-            let outline = fitted_outline(&section, 2e-6);
+            let outline = section.outline(2e-6);
             let numbers = section.numbers();
             let error = (outline.area() - numbers.area).abs();
             println!("{name}: {} cubics, area off by {error:.1e}", outline.elements().len());

@@ -4,7 +4,7 @@ use std::path::PathBuf;
 
 use plankform::export::{csv::csv, picture};
 use plankform::geometry::{Affine, ArcPath, Curve, Point};
-use plankform::section::{Numbers, Section, Side};
+use plankform::section::{Numbers, ORDINATE_STATIONS, Section, Side};
 use plankform::units::Length;
 use plankform::workshop::{Drawing, Role};
 use serde_json::{Value, json};
@@ -87,12 +87,6 @@ fn json(section: &Section, chord: Option<Length>, points: &[Point]) -> Value {
     })
 }
 
-/// Stations of the printed table, percent of chord.
-const STATIONS: [f64; 20] = [
-    0.0, 0.5, 1.25, 2.5, 5.0, 7.5, 10.0, 15.0, 20.0, 25.0, 30.0, 40.0, 50.0, 60.0, 70.0, 80.0, 85.0, 90.0,
-    95.0, 100.0,
-];
-
 fn text(section: &Section, chord: Option<Length>) -> String {
     let (scale, unit, places) = match chord {
         Some(chord) => (chord.mm(), "mm", 3),
@@ -137,7 +131,7 @@ fn text(section: &Section, chord: Option<Length>) -> String {
         length(centroid.y),
     );
     text.push_str(&format!("ordinates in {unit}\n{:>12}{:>12}{:>12}\n", "station", "upper", "lower"));
-    for percent in STATIONS {
+    for percent in ORDINATE_STATIONS {
         let x = percent / 100.0;
         let surface = |side| section.surface(side, x) * scale;
         text.push_str(&format!(

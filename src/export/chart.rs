@@ -70,7 +70,7 @@ impl Axis {
         if high - low < 1e-9 {
             (low, high) = (low - 0.5, high + 0.5);
         }
-        let rough = (high - low) / 6.0;
+        let rough = (high - low) / 8.0;
         let power = 10_f64.powf(rough.log10().floor());
         let step = [1.0, 2.0, 5.0, 10.0].into_iter().find(|m| m * power >= rough).unwrap_or(10.0) * power;
         // A trace beyond a round value, as a nose ahead of 0 % of chord, earns no tick of its own.

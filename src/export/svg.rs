@@ -38,13 +38,13 @@ const PICTURE_WIDTH: f64 = 240.0;
 /// grow, so that they can still be read when it is shrunk to fit.
 #[must_use]
 pub fn picture(drawing: &Drawing, margin: f64) -> String {
-    let bounds = drawing.bounds();
-    let growth = (bounds.width() / PICTURE_WIDTH).max(1.0);
-    let bounds = bounds.inflate(margin * growth, margin * growth);
-    let mut moved = drawing.moved(kurbo::Affine::translate((-bounds.x0, -bounds.y0)));
-    for label in &mut moved.labels {
+    let growth = (drawing.bounds().width() / PICTURE_WIDTH).max(1.0);
+    let mut grown = drawing.clone();
+    for label in &mut grown.labels {
         label.height *= growth;
     }
+    let bounds = grown.bounds().inflate(margin * growth, margin * growth);
+    let moved = grown.moved(kurbo::Affine::translate((-bounds.x0, -bounds.y0)));
     document(bounds.width(), bounds.height())
         .set("style", "max-width:100%;height:auto")
         .add(group(&moved, bounds.height(), growth))

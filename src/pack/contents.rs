@@ -5,6 +5,7 @@ use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet};
 use crate::design::Design;
 use crate::export::{csv::csv, dxf, number, pdf, stl, svg_page};
 use crate::geometry::height_at;
+use crate::section::ORDINATE_STATIONS;
 use crate::workshop::{Drawing, Half, Page, PaperSettings, single_page, tiled};
 
 /// Which kinds of files to make.
@@ -190,14 +191,8 @@ impl Files {
     }
 }
 
-/// Stations of the table of offsets, percent of chord.
-const PERCENT: [f64; 20] = [
-    0.0, 0.5, 1.25, 2.5, 5.0, 7.5, 10.0, 15.0, 20.0, 25.0, 30.0, 40.0, 50.0, 60.0, 70.0, 80.0, 85.0, 90.0,
-    95.0, 100.0,
-];
-
 fn offsets<'a>(shape: &'a crate::wing::StationShape<'_>) -> impl Iterator<Item = [String; 5]> + 'a {
-    PERCENT.iter().map(|percent| {
+    ORDINATE_STATIONS.iter().map(|percent| {
         let x = percent / 100.0 * shape.chord;
         let surface = |end: f64| height_at(shape, 0.0, end, x);
         let lengths = [x, surface(-1.0), surface(1.0)].map(|v| format!("{v:.3}"));

@@ -8,6 +8,7 @@ use crate::design::Design;
 use crate::export::chart::{Chart, Mark, Series};
 use crate::export::html::{document, escaped, table};
 use crate::export::{number, picture};
+use crate::flow::PressurePoint;
 use crate::wing::Planform;
 use crate::workshop::{Drawing, Role, without_negative_zero};
 
@@ -145,9 +146,10 @@ fn lift(body: &mut String, design: &Design, flows: &[SectionFlow<'_>]) {
         let solution = flow.flow.at(incidence);
         let nose =
             solution.pressure.iter().enumerate().min_by(|a, b| a.1.x.total_cmp(&b.1.x)).map_or(0, |(i, _)| i);
-        let side = |name: &str, points: &[crate::flow::PressurePoint]| Series {
+        // Both run aft, so that their names stand at the trailing edge.
+        let side = |name: &str, points: &mut dyn Iterator<Item = &PressurePoint>| Series {
             name: name.to_owned(),
-            points: points.iter().map(|p| (100.0 * p.x, p.cp)).collect(),
+            points: points.map(|p| (100.0 * p.x, p.cp)).collect(),
         };
         let chart = Chart {
             title: format!("{} at lift {wanted} ({:.2}°)", flow.section.name(), incidence.to_degrees()),
@@ -155,8 +157,8 @@ fn lift(body: &mut String, design: &Design, flows: &[SectionFlow<'_>]) {
             up: "pressure coefficient".to_owned(),
             downwards: true,
             series: vec![
-                side("upper side", &solution.pressure[..=nose]),
-                side("lower side", &solution.pressure[nose..]),
+                side("upper side", &mut solution.pressure[..=nose].iter().rev()),
+                side("lower side", &mut solution.pressure[nose..].iter()),
             ],
             ..Chart::default()
         };

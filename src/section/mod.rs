@@ -11,7 +11,14 @@ pub use mean_line::{MeanLine, Ordinate};
 pub use numbers::Numbers;
 pub use thickness::{ThicknessForm, TrailingEdge};
 
-use crate::geometry::{Curve, Jet, Point, Vec2, height_at};
+use crate::geometry::{BezPath, Curve, Jet, Point, Vec2, fitted_outline, height_at};
+
+/// Stations at which ordinates are tabulated, percent of chord: those of the published tables, with
+/// one more near the nose and one near the trailing edge.
+pub const ORDINATE_STATIONS: [f64; 20] = [
+    0.0, 0.5, 1.25, 2.5, 5.0, 7.5, 10.0, 15.0, 20.0, 25.0, 30.0, 40.0, 50.0, 60.0, 70.0, 80.0, 85.0, 90.0,
+    95.0, 100.0,
+];
 
 /// One of the two surfaces.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -90,6 +97,12 @@ impl Section {
                 self.jet((std::f64::consts::FRAC_PI_2 * even).sin()).point
             })
             .collect()
+    }
+
+    /// The closed outline as cubic Béziers, within `tolerance` (in chords) of the equations.
+    #[must_use]
+    pub fn outline(&self, tolerance: f64) -> BezPath {
+        fitted_outline(self, tolerance)
     }
 
     fn refuse_folds(&self) -> Result<(), SectionError> {

@@ -14,10 +14,10 @@ pub(super) const NEAR: f64 = 2.2;
 const FAR: f64 = 6.0;
 
 /// Terms of U in the short and in the long series. The greatest of the terms left out, in the
-/// moment F₂, is below 2e-11 at the near end of each, and the moments enter the matrix multiplied
+/// moment F₂, is below 1e-12 at the near end of each, and the moments enter the matrix multiplied
 /// by the half chord over 4π: some 1e-3 at most with the usual number of panels.
-const SHORT: usize = 5;
-const LONG: usize = 13;
+const SHORT: usize = 6;
+const LONG: usize = 17;
 
 /// What a panel is to the loop: all numbers it needs, ready to be spread over the registers.
 pub(super) struct PanelConstants {

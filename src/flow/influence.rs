@@ -5,7 +5,7 @@
 //! where it moves the vorticity, and lengthens the panel evenly.
 
 use super::Panelling;
-use super::far_field::{LANES, PanelConstants, Points, add_panel};
+use super::far_field::{LANES, Near, PanelConstants, Points, add_panel};
 use super::panelling::Panel;
 use crate::geometry::Point;
 
@@ -72,7 +72,7 @@ impl pulp::WithSimd for Assembly<'_> {
         let points = Points { x: &x, y: &y };
         let mut log: Vec<f64> =
             x.iter().zip(&y).map(|(x, y)| (x - nodes[0].x).hypot(y - nodes[0].y).ln()).collect();
-        let mut near = Vec::with_capacity(rows);
+        let mut near = Near::among(rows);
 
         for (j, panel) in self.panelling.panels().iter().enumerate() {
             let constants = constants_of(panel);
@@ -80,7 +80,6 @@ impl pulp::WithSimd for Assembly<'_> {
             let (c0, rest) = block.split_at_mut(rows);
             let (c1, rest) = rest.split_at_mut(rows);
             let (c2, c3) = rest.split_at_mut(rows);
-            near.clear();
             add_panel(
                 simd,
                 &constants,
@@ -89,7 +88,7 @@ impl pulp::WithSimd for Assembly<'_> {
                 [&mut *c0, &mut *c1, &mut *c2, &mut *c3],
                 &mut near,
             );
-            for &point in near.iter().filter(|&&point| point < nodes.len()) {
+            for &point in near.points.iter().filter(|&&point| point < nodes.len()) {
                 let ([f0, f1, f2], second) = moments(panel, nodes[point]);
                 log[point] = second;
                 let bent = constants.scale * (f2 - f0);

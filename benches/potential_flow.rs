@@ -4,6 +4,9 @@
 //! LAPACK comes from numpy or scipy in a Python named by `PLANKFORM_PYTHON`, or that of
 //! `target/outside-venv`, or `python3`; without it only our own time is printed.
 
+// Printing what was measured is part of the purpose here.
+#![allow(clippy::print_stdout)]
+
 use std::hint::black_box;
 use std::path::Path;
 use std::process::Command;

@@ -3,6 +3,9 @@
 //! The values stand in `tests/reference/theory.toml`, with their sources. Run with `--nocapture`
 //! to see what was measured against what.
 
+// Printing what was measured is part of the purpose here.
+#![allow(clippy::print_stdout)]
+
 use plankform::flow::{DEFAULT_PANELS, FlowError, Panelling, PotentialFlow, Solution};
 use plankform::geometry::{Curve, Jet, Point, Vec2};
 use plankform::section::{Section, TrailingEdge};

@@ -14,10 +14,10 @@ pub(super) const NEAR: f64 = 2.2;
 const FAR: f64 = 6.0;
 
 /// Terms of U in the short and in the long series. The greatest of the terms left out, in the
-/// moment F₂, is below 2e-11 at the near end of each, and the moments enter the matrix multiplied
+/// moment F₂, is below 1e-12 at the near end of each, and the moments enter the matrix multiplied
 /// by the half chord over 4π: some 1e-3 at most with the usual number of panels.
-const SHORT: usize = 5;
-const LONG: usize = 13;
+const SHORT: usize = 6;
+const LONG: usize = 17;
 
 /// What a panel is to the loop: all numbers it needs, ready to be spread over the registers.
 pub(super) struct PanelConstants {
@@ -41,6 +41,21 @@ pub(super) struct Points<'a> {
 
 /// Doubles in the widest register there is.
 pub(super) const LANES: usize = 8;
+
+/// The points that a panel left out, and room to find them.
+pub(super) struct Near {
+    pub(super) points: Vec<usize>,
+    /// Squares of the distances, in half chords.
+    squares: Vec<f64>,
+    /// Registers that hold a point for which the long series was used.
+    registers: Vec<usize>,
+}
+
+impl Near {
+    pub(super) fn among(points: usize) -> Self {
+        Self { points: Vec::with_capacity(points), squares: vec![0.0; points], registers: vec![0; points] }
+    }
+}
 
 /// Short names for the arithmetic of one kind of register.
 #[derive(Clone, Copy)]
@@ -81,7 +96,7 @@ impl<S: Simd> Lanes<S> {
 }
 
 /// Adds the influence of a panel to the columns of the four nodes around it, and takes `log`
-/// from its first node to its second. The indices of the points left out go to `near`.
+/// from its first node to its second. The points left out go to `near`.
 ///
 /// With p = (z - middle)/half, w = 1/p and L = log((p + 1)/(p - 1)) = 2(w + w³/3 + w⁵/5 + …), the
 /// sums S = pL/2 - 1 = w²T, T = 1/3 + w²U and U = 1/5 + w²/7 + … hold every moment of the panel:
@@ -93,7 +108,7 @@ pub(super) fn add_panel<S: Simd>(
     points: &Points,
     log: &mut [f64],
     columns: [&mut [f64]; 4],
-    near: &mut Vec<usize>,
+    near: &mut Near,
 ) {
     let v = Lanes(simd);
     let (x, _) = S::as_simd_f64s(points.x);
@@ -109,7 +124,11 @@ pub(super) fn add_panel<S: Simd>(
     let (one, two, zero) = (v.all(1.0), v.all(2.0), v.all(0.0));
     let (third, two_thirds, two_ninths) = (v.all(1.0 / 3.0), v.all(2.0 / 3.0), v.all(-2.0 / 9.0));
 
+    let (squares, _) = S::as_mut_simd_f64s(&mut near.squares);
+    let mut found = 0;
+
     let count = x.len();
+    assert!(squares.len() == count);
     assert!(y.len() == count && log.len() == count);
     assert!(c0.len() == count && c1.len() == count && c2.len() == count && c3.len() == count);
     for i in 0..count {
@@ -119,6 +138,7 @@ pub(super) fn add_panel<S: Simd>(
         let w = [v.mul(p[0], reciprocal), v.fnma(p[1], reciprocal, zero)];
         let w2 = [v.fnma(w[1], w[1], v.mul(w[0], w[0])), v.mul(v.add(w[0], w[0]), w[1])];
 
+        squares[i] = square;
         let close = simd.reduce_min_f64s(square) < FAR * FAR;
 
         // U: a polynomial with real coefficients at the complex w², by Goertzel's recurrence.
@@ -158,14 +178,22 @@ pub(super) fn add_panel<S: Simd>(
             // What is left out may be infinite, so it is replaced, not scaled.
             let left_out = simd.less_than_f64s(square, v.all(NEAR * NEAR));
             [bent, first, last] = [bent, first, last].map(|value| simd.select_f64s(left_out, zero, value));
-            let lanes = points.x.len() / count;
-            let mut squares = [0.0; LANES];
-            simd.partial_store_f64s(&mut squares[..lanes], square);
-            near.extend((0..lanes).filter(|&lane| squares[lane] < NEAR * NEAR).map(|lane| i * lanes + lane));
+            if let Some(slot) = near.registers.get_mut(found) {
+                *slot = i;
+                found += 1;
+            }
         }
         c0[i] = v.fma(bend[0], bent, c0[i]);
         c1[i] = v.fma(bend[1], bent, v.fma(scale, first, c1[i]));
         c2[i] = v.fma(bend[2], bent, v.fma(scale, last, c2[i]));
         c3[i] = v.fma(bend[3], bent, c3[i]);
+    }
+
+    // Only now, so that nothing in the loop above has to be put aside for it.
+    let lanes = points.x.len() / count.max(1);
+    near.points.clear();
+    for &register in &near.registers[..found] {
+        let range = register * lanes..(register + 1) * lanes;
+        near.points.extend(range.filter(|&point| near.squares[point] < NEAR * NEAR));
     }
 }

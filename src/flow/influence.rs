@@ -5,14 +5,13 @@
 //! where it moves the vorticity, and lengthens the panel evenly.
 
 use super::Panelling;
-use super::far_field::{LANES, PanelConstants, Points, add_panel};
+use super::far_field::{LANES, Near, PanelConstants, Points, add_panel};
 use super::panelling::Panel;
 use crate::geometry::Point;
 
 /// The columns of all nodes, one entry a node, kept in one block so that they can be the greater
 /// part of a system of equations in place.
 pub(super) struct VortexInfluence {
-    nodes: usize,
     rows: usize,
     entries: Vec<f64>,
 }
@@ -27,8 +26,8 @@ impl VortexInfluence {
         let nodes = panelling.nodes().len();
         let rows = (nodes + SPARE_ROWS).next_multiple_of(LANES);
         // One column more in front takes the weight, nought, of the node before the first.
-        let entries = vec![0.0; rows * (nodes + 1 + SPARE_COLUMNS)];
-        let mut influence = Self { nodes, rows, entries };
+        let entries = Vec::with_capacity(rows * (nodes + 1 + SPARE_COLUMNS));
+        let mut influence = Self { rows, entries };
         pulp::Arch::new().dispatch(Assembly { panelling, influence: &mut influence });
         influence
     }
@@ -72,15 +71,16 @@ impl pulp::WithSimd for Assembly<'_> {
         let points = Points { x: &x, y: &y };
         let mut log: Vec<f64> =
             x.iter().zip(&y).map(|(x, y)| (x - nodes[0].x).hypot(y - nodes[0].y).ln()).collect();
-        let mut near = Vec::with_capacity(rows);
+        let mut near = Near::among(rows);
 
         for (j, panel) in self.panelling.panels().iter().enumerate() {
             let constants = constants_of(panel);
-            let block = &mut self.influence.entries[j * rows..(j + 4).min(self.influence.nodes + 2) * rows];
+            // A column is cleared just before it is filled, while it is at hand.
+            self.influence.entries.resize((j + 4) * rows, 0.0);
+            let block = &mut self.influence.entries[j * rows..];
             let (c0, rest) = block.split_at_mut(rows);
             let (c1, rest) = rest.split_at_mut(rows);
             let (c2, c3) = rest.split_at_mut(rows);
-            near.clear();
             add_panel(
                 simd,
                 &constants,
@@ -89,7 +89,7 @@ impl pulp::WithSimd for Assembly<'_> {
                 [&mut *c0, &mut *c1, &mut *c2, &mut *c3],
                 &mut near,
             );
-            for &point in near.iter().filter(|&&point| point < nodes.len()) {
+            for &point in near.points.iter().filter(|&&point| point < nodes.len()) {
                 let ([f0, f1, f2], second) = moments(panel, nodes[point]);
                 log[point] = second;
                 let bent = constants.scale * (f2 - f0);
@@ -158,6 +158,7 @@ fn product(a: [f64; 2], b: [f64; 2]) -> [f64; 2] {
 }
 
 #[cfg(test)]
+#[allow(clippy::print_stdout)]
 mod tests {
     use super::*;
     use crate::section::{Section, TrailingEdge};

@@ -24,7 +24,7 @@ fn colour(role: Role) -> u8 {
     match role {
         Role::CutOutside => 1,
         Role::Reference => 5,
-        Role::Label => 3,
+        Role::Label | Role::Caption => 3,
         Role::Check => 8,
     }
 }
@@ -117,8 +117,8 @@ impl Writer {
                 file.real(40, 0.0);
             }
         });
-        self.table("LAYER", Role::ALL.len() + 1, |file, table| {
-            let roles = Role::ALL.map(|role| (role.layer(), colour(role)));
+        self.table("LAYER", Role::LAYERS.len() + 1, |file, table| {
+            let roles = Role::LAYERS.map(|role| (role.layer(), colour(role)));
             for (name, colour) in std::iter::once(("0", 7)).chain(roles) {
                 file.record("LAYER", table, "AcDbLayerTableRecord");
                 file.pairs(&[(2, name), (70, "0")]);

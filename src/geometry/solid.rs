@@ -7,6 +7,10 @@ use spade::{ConstrainedDelaunayTriangulation, Point2, Triangulation};
 
 use super::{GeometryError, polygon};
 
+/// Corners of a face nearer than this are one, mm: no printer tells them apart, and triangles
+/// between them would have no height in single precision.
+const WELD: f64 = 2e-3;
+
 /// A closed, outward-facing skin of triangles, in millimetres.
 ///
 /// Vertices are single precision, as the file holds them, so that what is checked is what is
@@ -18,7 +22,8 @@ pub struct Solid {
 }
 
 impl Solid {
-    /// A flat-sided block: the polygon `face` raised from z = 0 to z = `height`.
+    /// A flat-sided block: the polygon `face` raised from z = 0 to z = `height`. Corners nearer to
+    /// the one before than two micrometres are left out.
     ///
     /// # Errors
     /// When the face crosses itself or cannot be triangulated.
@@ -26,8 +31,8 @@ impl Solid {
         // Rounded first: a polygon that is simple in double precision need not stay so.
         let mut rounded: Vec<Point> =
             face.iter().map(|p| Point::new(f64::from(p.x as f32), f64::from(p.y as f32))).collect();
-        rounded.dedup();
-        if rounded.first() == rounded.last() {
+        rounded.dedup_by(|a, b| a.distance(*b) < WELD);
+        while rounded.len() > 1 && rounded[0].distance(rounded[rounded.len() - 1]) < WELD {
             rounded.pop();
         }
         polygon::refuse_crossings(&rounded)?;

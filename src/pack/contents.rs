@@ -127,23 +127,18 @@ impl Files {
         };
         let drawings = std::iter::once(pattern).chain(stations.iter().map(|s| &s.template));
         let pages: Vec<Page> = drawings.flat_map(|drawing| tiled(drawing, paper)).collect();
-        let title = format!("{} {}", design.name, design.fingerprint());
         let path = format!("print/{}.pdf", self.slug);
-        self.add(path, "pdf", "all templates, tiled", None, pdf(&title, &pages)?);
+        let bytes = pdf(&aids::stamp(design).to_string(), &pages)?;
+        self.add(path, "pdf", "all templates, tiled", None, bytes);
         Ok(())
     }
 
     fn add_masks(&mut self, design: &Design, stations: &[StationAids<'_>]) -> Result<(), PackError> {
+        let stamp = aids::stamp(design);
         for station in stations {
             let at = station.shape.at;
             for (half, solid) in [(Half::Upper, &station.mask.upper), (Half::Lower, &station.mask.lower)] {
-                let title = format!(
-                    "{} {} station {} mm {}",
-                    design.name,
-                    design.fingerprint(),
-                    number(at, 3),
-                    half.word()
-                );
+                let title = format!("{stamp} station {} mm {}", number(at, 3), half.word());
                 let path = format!("masks/{}-{}.stl", self.stem(at), half.word());
                 self.add(path, "stl", "mask half", Some(at), stl(solid, &title)?);
             }

@@ -10,7 +10,7 @@ use crate::export::html::{document, escaped, table};
 use crate::export::{number, picture};
 use crate::flow::PressurePoint;
 use crate::wing::Planform;
-use crate::workshop::{Drawing, Role, without_negative_zero};
+use crate::workshop::{Drawing, without_negative_zero};
 
 /// White round a picture, mm.
 const MARGIN: f64 = 4.0;
@@ -84,7 +84,7 @@ fn shape(
         planform.aspect_ratio(),
         planform.mean_chord(),
         planform.taper(),
-        picture(&pattern.without_labels(Role::Label), MARGIN),
+        picture(&pattern.without_caption(), MARGIN),
         design.flap.map_or(String::new(), |flap| format!(
             "; hinge line at {} % of chord",
             number(100.0 * flap.hinge, 1)
@@ -110,7 +110,7 @@ fn shape(
         let _ = writeln!(
             body,
             "<figure>{}<figcaption>Station {} mm from the root, {}.</figcaption></figure>",
-            picture(&station.template.without_labels(Role::Label), MARGIN),
+            picture(&station.template.without_caption(), MARGIN),
             number(station.shape.at, 3),
             escaped(&station.shape.section_name())
         );

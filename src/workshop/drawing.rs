@@ -11,15 +11,17 @@ pub enum Role {
     CutOutside,
     /// A line to measure from: chord line, root line, hinge line. Never cut.
     Reference,
-    /// Words. Never cut.
+    /// Words beside a line. Never cut.
     Label,
+    /// Words that say what the drawing is, below it. Never cut.
+    Caption,
     /// A line of known length to check a print by, and marks to join pages by.
     Check,
 }
 
 impl Role {
-    /// All roles, in the order in which files list their layers.
-    pub const ALL: [Self; 4] = [Self::CutOutside, Self::Reference, Self::Label, Self::Check];
+    /// One role for each layer, in the order in which files list them.
+    pub const LAYERS: [Self; 4] = [Self::CutOutside, Self::Reference, Self::Label, Self::Check];
 
     /// How it is drawn on paper: width of the line and lengths of dashes and gaps, mm. The types
     /// differ in pattern, not only in weight, so that they survive a photocopier.
@@ -28,7 +30,7 @@ impl Role {
         match self {
             Self::CutOutside => (0.35, &[]),
             Self::Reference => (0.2, &[6.0, 1.5, 1.0, 1.5]),
-            Self::Label | Self::Check => (0.2, &[]),
+            Self::Label | Self::Caption | Self::Check => (0.2, &[]),
         }
     }
 
@@ -38,7 +40,7 @@ impl Role {
         match self {
             Self::CutOutside => "CUT_OUTSIDE",
             Self::Reference => "REFERENCE",
-            Self::Label => "LABEL",
+            Self::Label | Self::Caption => "LABEL",
             Self::Check => "CHECK",
         }
     }
@@ -97,10 +99,10 @@ impl Drawing {
         self.labels.push(Label { role, at, height, turn: 0.0, text });
     }
 
-    /// The drawing without its words in `role`, for where they stand beside it.
+    /// The drawing without its caption, for where that stands beside it.
     #[must_use]
-    pub fn without_labels(&self, role: Role) -> Self {
-        let labels = self.labels.iter().filter(|label| label.role != role).cloned().collect();
+    pub fn without_caption(&self) -> Self {
+        let labels = self.labels.iter().filter(|label| label.role != Role::Caption).cloned().collect();
         Self { labels, ..self.clone() }
     }
 

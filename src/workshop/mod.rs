@@ -19,3 +19,9 @@ pub struct Stamp {
     /// Its fingerprint.
     pub fingerprint: String,
 }
+
+impl std::fmt::Display for Stamp {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        write!(f, "{}  {}", self.design, self.fingerprint)
+    }
+}

@@ -52,7 +52,7 @@ pub fn station_template(
     let outline = follow_with_arcs(shape, tolerance)?;
     outline.refuse_crossings(tolerance)?;
     let bounds = outline.bounds();
-    let mut drawing = Drawing::new(format!("{}, station {} mm", stamp.design, millimetres(shape.at)));
+    let mut drawing = Drawing::new(format!("{stamp}, station {} mm", millimetres(shape.at)));
     drawing.add(Role::CutOutside, outline);
     let chord_line = ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0));
     drawing.add(Role::Reference, chord_line);
@@ -61,10 +61,10 @@ pub fn station_template(
     if let Some(hinge) = hinge.filter(|hinge| hinge.reaches(shape.at)) {
         let x = hinge.chord_fraction * shape.chord;
         drawing.add(Role::Reference, ArcPath::line(Point::new(x, low), Point::new(x, high)));
-        drawing.write(Role::Reference, Point::new(x + 1.0, high + 1.0), SMALL, "hinge line");
+        drawing.write(Role::Label, Point::new(x + 1.0, high + 1.0), SMALL, "hinge line");
     }
     let words = [
-        format!("{}  {}", stamp.design, stamp.fingerprint),
+        stamp.to_string(),
         format!("station {} mm from the root", millimetres(shape.at)),
         format!(
             "{}, chord {:.2} mm, twist {:+.2}°",
@@ -98,7 +98,7 @@ pub fn planform_pattern(
     }
     let path = ArcPath::polyline(outline, true);
     let bounds = path.bounds();
-    let mut drawing = Drawing::new(format!("{}, planform", stamp.design));
+    let mut drawing = Drawing::new(format!("{stamp}, planform"));
     drawing.add(Role::CutOutside, path);
 
     let sides: &[f64] = if planform.is_mirrored() { &[1.0, -1.0] } else { &[1.0] };
@@ -108,7 +108,7 @@ pub fn planform_pattern(
             let (front, back) = planform.edges(at);
             let place = |y: f64| Point::new(side * at, -y);
             drawing.add(Role::Reference, ArcPath::line(place(front - OVERRUN), place(back + OVERRUN)));
-            drawing.write(Role::Reference, place(front - OVERRUN - 2.0), SMALL, millimetres(at));
+            drawing.write(Role::Label, place(front - OVERRUN - 2.0), SMALL, millimetres(at));
         }
         if let Some(hinge) = hinge {
             let corners = planform.leading.iter().map(|corner| corner.x);
@@ -121,7 +121,7 @@ pub fn planform_pattern(
         }
     }
     let words = [
-        format!("{}  {}", stamp.design, stamp.fingerprint),
+        stamp.to_string(),
         format!("planform, span {} mm, leading edge up", millimetres(planform.span())),
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
@@ -136,7 +136,7 @@ pub fn planform_pattern(
 fn write_block(drawing: &mut Drawing, top: Point, words: &[String]) {
     for (row, text) in words.iter().filter(|text| !text.is_empty()).enumerate() {
         let at = Point::new(top.x, top.y - LETTERS - row as f64 * LINE_STEP);
-        drawing.write(Role::Label, at, LETTERS, text);
+        drawing.write(Role::Caption, at, LETTERS, text);
     }
 }
 

@@ -1,0 +1,93 @@
+"""Builds each design once with the binary under test and hands its pack to the checks."""
+
+import json
+import os
+import subprocess
+from dataclasses import dataclass, field
+from pathlib import Path
+
+import pytest
+
+from design_file import Design
+
+ROOT = Path(__file__).resolve().parents[2]
+KINDS = ("main-foil", "elevator", "strut", "fin")
+FILES = sorted((ROOT / "demo-sections").glob("*.toml")) + sorted((Path(__file__).parent / "designs").glob("*.toml"))
+
+
+def binary() -> str:
+    path = Path(os.environ.get("PLANKFORM", ROOT / "target/release/plankform")).resolve()
+    if not path.is_file():
+        pytest.exit("no plankform to check: run cargo build --release, or set PLANKFORM to the program", 2)
+    return str(path)
+
+
+@pytest.fixture(scope="session")
+def run():
+    """Runs plankform and gives what it printed; with --format json among the arguments, read."""
+
+    def call(*arguments):
+        command = [binary(), *map(str, arguments)]
+        done = subprocess.run(command, capture_output=True, text=True)
+        assert done.returncode == 0, f"{command}: exit status {done.returncode}\n{done.stderr}"
+        return json.loads(done.stdout) if "json" in arguments else done.stdout
+
+    return call
+
+
+@dataclass
+class Pack:
+    design: Design
+    folder: Path
+    answer: dict
+    manifest: dict = field(init=False)
+
+    def __post_init__(self):
+        self.manifest = json.loads((self.folder / "pack.json").read_text(encoding="utf-8"))
+        self.fingerprint = self.manifest["fingerprint"]
+
+    def paths(self, kind: str) -> list[Path]:
+        found = [self.folder / f["path"] for f in self.manifest["files"] if f["kind"] == kind]
+        assert found, f"the pack has no {kind}"
+        return found
+
+    def at_stations(self, kind: str) -> list[tuple]:
+        """Exact shape and file of each station, in the order of the design; every station must have one."""
+        files = [f for f in self.manifest["files"] if f["kind"] == kind and f["station_mm"] is not None]
+        pairs = [(shape, [self.folder / f["path"] for f in files if abs(f["station_mm"] - shape.at) < 1e-6])
+                 for shape in self.design.shapes]
+        assert all(found for _, found in pairs), f"a station without a {kind}"
+        assert sum(len(found) for _, found in pairs) == len(files), f"a {kind} of no station of the design"
+        return pairs
+
+    def planform(self, kind: str) -> Path:
+        [path] = [self.folder / f["path"] for f in self.manifest["files"]
+                  if f["kind"] == kind and f["role"] == "planform pattern"]
+        return path
+
+
+@pytest.fixture(scope="session", params=[f"starter {kind}" for kind in KINDS] + FILES,
+                ids=lambda p: p.replace(" ", "-") if isinstance(p, str) else p.stem)
+def pack(request, run, tmp_path_factory) -> Pack:
+    folder = tmp_path_factory.mktemp("pack")
+    path = request.param
+    if isinstance(path, str):
+        path, kind = folder / "design.toml", path.split()[1]
+        run("new", path, "--kind", kind)
+    answer = run("build", path, "--out", folder / "pack", "--format", "json")
+    return Pack(Design(path), folder / "pack", answer)
+
+
+WORST: dict[str, list[float]] = {}
+
+
+@pytest.fixture(scope="session")
+def measured():
+    """Notes a figure, so that the summary can tell how far from its limit a check passed."""
+    return lambda name, value: WORST.setdefault(name, []).append(float(value))
+
+
+def pytest_terminal_summary(terminalreporter):
+    terminalreporter.section("figures measured, least to greatest")
+    for name, values in WORST.items():
+        terminalreporter.write_line(f"{name}: {min(values):.6g} to {max(values):.6g}")

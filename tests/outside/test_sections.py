@@ -1,0 +1,90 @@
+"""`plankform section`: what a section measures, against quadrature by scipy and areas by shapely."""
+
+import numpy as np
+import pytest
+from scipy.integrate import quad
+from scipy.optimize import brentq, minimize_scalar
+from shapely import Polygon
+
+from naca import Section
+
+SECTIONS = [("0009", "published"), ("0012", "closed"), ("2412", "published"), ("4415", "published"), ("6409", "closed"),
+            ("21012", "published"), ("23012", "published"), ("24015", "closed"), ("23112", "published"), ("25118", "closed")]
+
+
+@pytest.fixture(scope="module", params=SECTIONS, ids=lambda p: "-".join(p))
+def pair(request, run):
+    digits, edge = request.param
+    answer = run("section", f"NACA {digits}", "--trailing-edge", edge, "--points", 201, "--format", "json")
+    return Section(digits, edge), answer
+
+
+def test_points_satisfy_the_equations(pair):
+    """A point lies on the section when its distance from the mean line is the half thickness there (Report 460)."""
+    section, answer = pair
+    points = np.array(answer["points"])
+    assert len(points) == 201
+    for x, y in points[np.hypot(*points.T) > 0]:
+        foot = brentq(lambda s, x=x, y=y: (x - s) + (y - section.mean(s)) * section.slope(s),
+                      max(x - 0.2, -0.01), x + 0.2, xtol=1e-16, rtol=1e-14)
+        distance = np.hypot(x - foot, y - section.mean(foot))
+        assert distance == pytest.approx(section.half_thickness(max(foot, 0.0)), abs=1e-9)
+
+
+def test_points_run_from_the_upper_trailing_edge_round_the_nose(pair):
+    section, answer = pair
+    points = np.array(answer["points"])
+    assert points[0] == pytest.approx(section.outline(-1.0), abs=1e-12)
+    assert points[100] == pytest.approx([0, 0], abs=1e-12)
+    assert points[-1] == pytest.approx(section.outline(1.0), abs=1e-12)
+
+
+def test_area_and_centroid(pair):
+    section, answer = pair
+    # Thickness laid off equally on both sides of the mean line: the bend cancels, and the area is the integral of the
+    # thickness along it. With x = r^2 the integrand is smooth at the nose.
+    area = quad(lambda r: 2 * section.half_thickness(r * r) * np.hypot(1, section.slope(r * r)) * 2 * r, 0, 1,
+                points=[np.sqrt(section.joint)] if section.joint < 1 else None, epsabs=1e-13)[0]
+    assert answer["area"] == pytest.approx(area, abs=1e-9)
+    polygon = Polygon(section.outline(np.linspace(-1, 1, 40001)))
+    assert polygon.area == pytest.approx(area, abs=1e-8)
+    assert answer["centroid"] == pytest.approx([polygon.centroid.x, polygon.centroid.y], abs=1e-7)
+
+
+def test_greatest_thickness_and_camber(pair):
+    section, answer = pair
+    thickest = minimize_scalar(lambda x: -section.half_thickness(x), bounds=(0.1, 0.6), method="bounded",
+                               options={"xatol": 1e-10})
+    assert answer["thickness"] == pytest.approx(-2 * thickest.fun, abs=1e-9)
+    # A flat maximum is found to the square root of what its height is found to.
+    assert answer["thickness_at"] == pytest.approx(thickest.x, abs=1e-6)
+    if section.joint == 1.0:
+        assert (answer["camber"], answer["camber_at"]) == (0, 0)
+        return
+    highest = minimize_scalar(lambda x: -section.mean(x), bounds=(0.01, 0.8), method="bounded", options={"xatol": 1e-10})
+    assert answer["camber"] == pytest.approx(-highest.fun, abs=1e-9)
+    assert answer["camber_at"] == pytest.approx(highest.x, abs=1e-6)
+
+
+def test_nose_and_trailing_edge(pair):
+    section, answer = pair
+    # Report 460: the nose circle of the thickness form has the radius 1.1019 t^2.
+    assert answer["nose_radius"] == pytest.approx(1.1019 * section.thickness**2, rel=1e-4)
+    assert answer["trailing_edge_thickness"] == pytest.approx(2 * section.half_thickness(1.0), abs=1e-12)
+    # The sides lean by the fall of the half thickness against the mean line, each foreshortened or stretched by its bend.
+    secant = np.hypot(1, section.slope(1.0))
+    fall = -section.half_thickness_slope(1.0) / secant
+    bend = section.half_thickness(1.0) * section.bend(1.0) / secant**3
+    angle = np.degrees(np.arctan2(fall, 1 - bend) + np.arctan2(fall, 1 + bend))
+    assert answer["trailing_edge_angle_deg"] == pytest.approx(angle, abs=1e-6)
+
+
+def test_a_chord_scales_all_lengths(run):
+    unit = run("section", "NACA 23012", "--format", "json")
+    scaled = run("section", "NACA 23012", "--chord", "120 mm", "--format", "json")
+    assert scaled["unit"] == "mm"
+    assert np.array(scaled["points"]) == pytest.approx(120 * np.array(unit["points"]), abs=1e-9)
+    for length in ("thickness", "thickness_at", "camber", "camber_at", "nose_radius", "trailing_edge_thickness"):
+        assert scaled[length] == pytest.approx(120 * unit[length], abs=1e-9), length
+    assert scaled["area"] == pytest.approx(120**2 * unit["area"], abs=1e-7)
+    assert scaled["trailing_edge_angle_deg"] == pytest.approx(unit["trailing_edge_angle_deg"], abs=1e-9)

@@ -26,7 +26,7 @@ fn main() {
     for round in 0..ROUNDS {
         building.push(timed(|| drop(make())));
         let out = folder.path().join(format!("pack-{round}"));
-        writing.push(timed(|| pack::write(&made, &out).unwrap()));
+        writing.push(timed(|| drop(pack::write(&made, &out).unwrap())));
         let out = folder.path().join(format!("plain-{round}"));
         plain.push(timed(|| write_plainly(&made, &out)));
     }

@@ -7,6 +7,17 @@
 //! [`design`] reads the user's file and builds a [`wing::Wing`] from it; [`pack`] walks the line
 //! from there to the files on disk. Inside, geometry is in millimetres, sections are in unit
 //! chord, flow is dimensionless and angles are in radians; units exist only at the edges.
+//!
+//! ```
+//! use plankform::design::{Design, Kind, starter};
+//! use plankform::pack::{Kinds, build};
+//!
+//! let design = Design::parse(&starter(Kind::Strut), "strut.toml")?;
+//! let pack = build(&design, Kinds::ALL)?;
+//! assert!(pack.manifest.passed);
+//! assert!(pack.files.iter().any(|file| file.path == "sheet.html"));
+//! # Ok::<(), Box<dyn std::error::Error>>(())
+//! ```
 
 pub mod design;
 pub mod export;

@@ -112,12 +112,20 @@ fn what_is_left_out_takes_its_default() {
 }
 
 #[test]
+fn every_station_has_a_template_whatever_is_named_besides() {
+    let mm = |text: &str| good(text).templates.iter().map(|at| at.mm()).collect::<Vec<_>>();
+    assert_eq!(mm(&format!("{FIN}[templates]\nat = [\"120 mm\", \"200 mm\"]\n")), [0.0, 120.0, 200.0, 300.0]);
+    // A place within a micrometre of a station is the station.
+    assert_eq!(mm(&format!("{FIN}[templates]\nat = [\"0.0005 mm\", \"150 mm\"]\n")).len(), 3);
+}
+
+#[test]
 fn starters_are_valid_and_their_marked_lines_are_the_defaults() {
     for kind in Kind::ALL {
         let text = design::starter(kind);
         let design = good(&text);
         assert_eq!(design.kind, kind);
-        let (_, marked) = text.split_once("change one.").unwrap();
+        let (_, marked) = text.split_once("and its key.").unwrap();
         let defaults: String = marked
             .lines()
             .filter(|line| line.starts_with("# [") || line.contains(" = "))
@@ -443,6 +451,7 @@ fn the_fingerprint_follows_the_shape_and_nothing_else() {
         fin_with("at = \"0 mm\"\nchord = \"120 mm\"", "chord = \"120 mm\"\nat = \"0 mm\""),
         fin_with("\"NACA 0012\"", "\"naca0012\"\ntwist = \"-0 rad\""),
         format!("{FIN}[templates]\nat = [\"0 mm\", \"300 mm\"]\n"),
+        format!("{FIN}[printer]\nbed-y = \"200 mm\"\n[stock]\nthickness = \"12 mm\"\n"),
         format!("{FIN}[masks]\nwall = \"1 cm\"\n[lift]\nto = \"8 deg\"\n[paper]\nsize = \"A3\"\n"),
     ];
     for text in same {
@@ -462,8 +471,6 @@ fn the_fingerprint_follows_the_shape_and_nothing_else() {
         format!("{FIN}[templates]\nat = [\"0 mm\", \"150 mm\", \"300 mm\"]\n"),
         format!("{FIN}[flap]\nhinge = 0.7\n"),
         format!("{FIN}[masks]\nclearance = \"0.4 mm\"\n"),
-        format!("{FIN}[printer]\nbed-y = \"200 mm\"\n"),
-        format!("{FIN}[stock]\nthickness = \"12 mm\"\n"),
         format!("{FIN}[router]\ntolerance = \"0.02 mm\"\n"),
     ];
     let mut seen = vec![fin];

@@ -268,7 +268,8 @@ fn wrong_designations_say_what_would_be_right() {
     assert!(matches!(wrong("NACA 4012"), SectionError::CamberPosition { camber: 4, position: 0, .. }));
     assert!(matches!(wrong("NACA 0412"), SectionError::CamberPosition { camber: 0, position: 4, .. }));
     assert!(matches!(wrong("NACA 9140"), SectionError::Folds { side: "lower", .. }));
-    for text in ["", "NACA", "4412", "NACA 44x2", "NACA ٤٤١٢", "naca-4412", "é"] {
+    assert!(matches!(wrong("4412"), SectionError::NoFamily { .. }));
+    for text in ["", "NACA", "441", "NACA 44x2", "NACA ٤٤١٢", "naca-4412", "é"] {
         assert!(matches!(wrong(text), SectionError::Unknown { .. }), "{text}");
     }
     assert_eq!(published("naca4412"), published(" NACA 4412 "));

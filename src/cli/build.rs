@@ -10,7 +10,9 @@ use super::{Outcome, ReportFormat, check, design_source, print, print_json};
 
 /// Build the pack of workshop files of a design
 #[derive(Debug, clap::Args)]
-#[command(after_help = "Example:\n  plankform build demo-sections/main-foil.toml --out main-foil-pack")]
+#[command(
+    after_help = "Example:\n  plankform new my-foil.toml\n  plankform build my-foil.toml --out my-pack"
+)]
 pub(super) struct Arguments {
     /// The design file
     #[arg(value_name = "DESIGN")]
@@ -18,7 +20,7 @@ pub(super) struct Arguments {
     /// Folder for the pack [default: pack-NAME, after the design's name]
     #[arg(long, value_name = "DIR")]
     out: Option<PathBuf>,
-    /// Only these kinds of files
+    /// Only these kinds of files; an earlier pack is replaced by them as a whole
     #[arg(long, value_name = "KIND", value_delimiter = ',')]
     only: Vec<Kind>,
     /// How to print
@@ -44,7 +46,7 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     let design = design_source::read(&arguments.design)?;
     let out = arguments.out.clone().unwrap_or_else(|| PathBuf::from(format!("pack-{}", design.slug())));
     let pack = pack::build(&design, kinds(&arguments.only))?;
-    pack::write(&pack, &out)?;
+    let replaced = pack::write(&pack, &out)?;
 
     match arguments.format {
         ReportFormat::Json => {
@@ -56,6 +58,11 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
             text.push_str(&check::listed(&pack.checks));
             let count = pack.files.len() + 1;
             text.push_str(&format!("{count} files written to {}\n", out.display()));
+            if let Some(earlier) = replaced.filter(|earlier| earlier.fingerprint != pack.manifest.fingerprint)
+            {
+                let (old, new) = (&earlier.fingerprint, &pack.manifest.fingerprint);
+                text.push_str(&format!("they replace {old}: do not mix its pieces with those of {new}\n"));
+            }
             if pack.files.iter().any(|file| file.kind == "html") {
                 text.push_str(&format!("start with {}\n", out.join("sheet.html").display()));
             }

@@ -11,7 +11,7 @@ use super::{Outcome, ReportFormat, design_source, print, print_json};
 
 /// Check a design against its limits, without writing anything
 #[derive(Debug, clap::Args)]
-#[command(after_help = "Example:\n  plankform check demo-sections/main-foil.toml")]
+#[command(after_help = "Example:\n  plankform new my-foil.toml\n  plankform check my-foil.toml")]
 pub(super) struct Arguments {
     /// The design file
     #[arg(value_name = "DESIGN")]
@@ -40,10 +40,11 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     Ok(if passed { Outcome::Passed } else { Outcome::OutsideLimits })
 }
 
-/// The checks line by line, and a count.
+/// The checks line by line and a count; those outside their limit last, where they are seen.
 pub(super) fn listed(checks: &[Check]) -> String {
     let mut text = String::new();
-    for check in checks {
+    let outside = checks.iter().filter(|check| !check.passed);
+    for check in checks.iter().filter(|check| check.passed).chain(outside) {
         let mark = if check.passed { "passed " } else { "OUTSIDE" };
         let unit = &check.unit;
         let (value, limit) = (number(check.value, 3), number(check.limit, 3));

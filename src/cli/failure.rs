@@ -19,12 +19,13 @@ impl Failure {
         Self::Input(error.to_string())
     }
 
+    // The kind alone: libraries add the names of their temporary files, which tell a user nothing.
     pub(super) fn writing(what: impl fmt::Display, error: &io::Error) -> Self {
-        Self::Disk(format!("cannot write {what}: {error}"))
+        Self::Disk(format!("cannot write {what}: {}", error.kind()))
     }
 
     pub(super) fn reading(what: impl fmt::Display, error: &io::Error) -> Self {
-        Self::Disk(format!("cannot read {what}: {error}"))
+        Self::Disk(format!("cannot read {what}: {}", error.kind()))
     }
 
     pub(super) fn exit_status(&self) -> u8 {

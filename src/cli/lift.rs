@@ -4,13 +4,14 @@ use std::path::PathBuf;
 
 use plankform::export::chart::{Chart, Series};
 use plankform::export::csv::csv;
+use plankform::export::fixed;
 use plankform::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
 use serde_json::{Value, json};
 
 use super::failure::Failure;
 use super::number_list;
 use super::section_source::SectionSource;
-use super::{Format, Outcome, print, print_json, save};
+use super::{Format, Outcome, print, print_json, save, say};
 
 /// Lift curve of a section, with moment and pressure
 #[derive(Debug, clap::Args)]
@@ -23,7 +24,7 @@ pub(super) struct Arguments {
     /// Reynolds numbers by the chord, with commas between them; not needed with --inviscid
     #[arg(long, value_name = "RE[,RE]", allow_hyphen_values = true, value_parser = number_list::positive_list, required_unless_present = "inviscid")]
     re: Option<std::vec::Vec<f64>>,
-    /// Incidence in degrees, nose up positive: FROM:TO:STEP with both ends, or one value
+    /// Incidence in degrees, nose up positive: from FROM in whole steps up to TO, or one value
     #[arg(long, value_name = "FROM:TO:STEP", allow_hyphen_values = true, value_parser = angles)]
     angles: std::vec::Vec<f64>,
     /// Flow without friction: lift, moment and pressure, but no drag and no stall
@@ -58,6 +59,9 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
              pressure without friction"
                 .to_owned(),
         ));
+    }
+    if arguments.re.is_some() {
+        say("note: flow without friction is the same at every Reynolds number; --re is not used");
     }
     let section = arguments.source.section()?;
     let panelling = Panelling::of(&section, DEFAULT_PANELS).map_err(Failure::input)?;
@@ -118,16 +122,17 @@ fn point(angle: f64, solution: &Solution, pressure: bool) -> Value {
 fn text(name: &str, flow: &PotentialFlow, points: &[(f64, Solution)], pressure: bool) -> String {
     let mut text = format!(
         "{name}, flow without friction: no drag, no stall; real lift is lower near stall\n\
-         lift slope {:.5} per degree, zero lift at {:.3}°\n\n{:>10}{:>10}{:>10}{:>12}\n",
+         lift slope {:.5} per degree, zero lift at {}°\n\n{:>10}{:>10}{:>10}{:>12}\n",
         flow.slope_per_radian().to_radians(),
-        flow.zero_lift().to_degrees(),
+        fixed(flow.zero_lift().to_degrees(), 3),
         "angle",
         "lift",
         "moment",
         "least cp",
     );
     for (angle, s) in points {
-        text.push_str(&format!("{angle:>9.2}°{:>10.4}{:>10.4}{:>12.3}\n", s.cl, s.cm, s.cp_min));
+        let [cl, cm] = [s.cl, s.cm].map(|v| fixed(v, 4));
+        text.push_str(&format!("{angle:>9.2}°{cl:>10}{cm:>10}{:>12.3}\n", s.cp_min));
     }
     if pressure {
         for (angle, s) in points {
@@ -141,11 +146,11 @@ fn text(name: &str, flow: &PotentialFlow, points: &[(f64, Solution)], pressure: 
 }
 
 fn table(points: &[(f64, Solution)], pressure: bool) -> Result<String, plankform::export::ExportError> {
-    let fixed = |v: f64| format!("{v:.6}");
+    let fixed = |v: f64| fixed(v, 6);
     if pressure {
         let rows =
             points.iter().flat_map(|(angle, s)| s.pressure.iter().map(move |p| [*angle, p.x, p.y, p.cp]));
-        csv(["angle_deg", "x", "y", "cp"], rows.map(|row| row.map(fixed)))
+        csv(["angle_deg", "x_over_chord", "y_over_chord", "cp"], rows.map(|row| row.map(fixed)))
     } else {
         let rows = points.iter().map(|(angle, s)| [*angle, s.cl, s.cm, s.cp_min].map(fixed));
         csv(["angle_deg", "cl", "cm", "cp_min"], rows)

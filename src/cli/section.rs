@@ -2,11 +2,11 @@
 
 use std::path::PathBuf;
 
-use plankform::export::{csv::csv, picture};
+use plankform::export::{csv::csv, fixed, svg_page};
 use plankform::geometry::{Affine, ArcPath, Curve, Point};
 use plankform::section::{Numbers, ORDINATE_STATIONS, Section, Side};
 use plankform::units::Length;
-use plankform::workshop::{Drawing, Role};
+use plankform::workshop::{Drawing, Role, single_page};
 use serde_json::{Value, json};
 
 use super::failure::Failure;
@@ -20,15 +20,15 @@ pub(super) struct Arguments {
     #[command(flatten)]
     source: SectionSource,
     /// Give lengths in mm for a section of this chord, such as "120 mm"
-    #[arg(long, value_name = "LEN", value_parser = chord)]
+    #[arg(long, value_name = "LEN", value_parser = chord, allow_hyphen_values = true)]
     chord: Option<Length>,
-    /// Points along the outline
-    #[arg(long, value_name = "N", default_value_t = 161, value_parser = clap::value_parser!(u32).range(5..=20_001))]
+    /// Points along the outline, in CSV and JSON
+    #[arg(long, value_name = "N", default_value_t = 161, allow_hyphen_values = true, value_parser = clap::value_parser!(u32).range(5..=20_001))]
     points: u32,
     /// How to print
     #[arg(long, default_value = "text")]
     format: Format,
-    /// Also draw the section to this SVG file, at true size
+    /// Also draw the section to this SVG file, at true size (200 mm without --chord)
     #[arg(long, value_name = "FILE")]
     svg: Option<PathBuf>,
 }
@@ -51,7 +51,7 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     if let Some(path) = &arguments.svg {
         let chord = arguments.chord.map_or(PICTURE_CHORD, Length::mm);
         let drawing = drawn(&section, chord).map_err(Failure::input)?;
-        save(path, &format!("{}\n", picture(&drawing, 8.0)))?;
+        save(path, &svg_page(&single_page(&drawing)))?;
     }
     let scale = arguments.chord.map_or(1.0, Length::mm);
     let points = section.points(arguments.points as usize);
@@ -59,8 +59,9 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
         Format::Text => print(&text(&section, arguments.chord))?,
         Format::Json => print_json(&json(&section, arguments.chord, &points))?,
         Format::Csv => {
-            let rows = points.iter().map(|p| [p.x, p.y].map(|v| format!("{:.8}", v * scale)));
-            print(&csv(["x", "y"], rows).map_err(Failure::input)?)?;
+            let heading = if arguments.chord.is_some() { ["x_mm", "y_mm"] } else { ["x", "y"] };
+            let rows = points.iter().map(|p| [p.x, p.y].map(|v| fixed(v * scale, 8)));
+            print(&csv(heading, rows).map_err(Failure::input)?)?;
         }
     }
     Ok(Outcome::Passed)

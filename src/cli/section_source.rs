@@ -28,8 +28,8 @@ impl From<TrailingEdgeWord> for TrailingEdge {
 #[derive(Debug, clap::Args)]
 pub(super) struct SectionSource {
     /// Designation of the section, such as "NACA 4412" or "NACA 23012"
-    #[arg(value_name = "SECTION")]
-    section: String,
+    #[arg(value_name = "SECTION", num_args = 1..=2, required = true)]
+    section: Vec<String>,
     /// How the trailing edge is finished
     #[arg(long, value_name = "FINISH", default_value = "published")]
     trailing_edge: TrailingEdgeWord,
@@ -37,12 +37,14 @@ pub(super) struct SectionSource {
 
 impl SectionSource {
     pub(super) fn section(&self) -> Result<Section, Failure> {
-        if Path::new(&self.section).is_file() {
+        // A designation typed without quotes comes as two words.
+        let section = self.section.join(" ");
+        if Path::new(&section).is_file() {
             return Err(Failure::Input(format!(
                 "{} is a file: sections are taken by designation so far, section files are still to come",
-                self.section
+                section
             )));
         }
-        Section::from_designation(&self.section, self.trailing_edge.into()).map_err(Failure::input)
+        Section::from_designation(&section, self.trailing_edge.into()).map_err(Failure::input)
     }
 }

@@ -9,11 +9,12 @@ use crate::units::{Angle, Length};
 
 impl Design {
     /// Eight hexadecimal digits such as `3f9a-01c7`, the first of a SHA-256 over everything that
-    /// shapes the parts: the kind, the planform, the stations, templates, flap, masks, printer,
-    /// stock and router.
+    /// shapes the parts and their aids: the kind, the planform, the stations, templates, flap,
+    /// masks and router.
     ///
-    /// Names, notes, comments, the order of keys, the unit a value was written in, the paper and
-    /// the range of the lift curves do not change it: pieces stay the same without them.
+    /// Names, notes, comments, the order of keys, the unit a value was written in, the paper,
+    /// the printer, the stock and the range of the lift curves do not change it: pieces stay the
+    /// same without them.
     #[must_use]
     pub fn fingerprint(&self) -> String {
         let digest = Sha256::digest(self.shape().as_bytes());
@@ -52,10 +53,8 @@ impl Design {
             let each: Vec<String> = lengths.iter().map(|&length| mm(length)).collect();
             format!("{what} {}", each.join(" "))
         };
-        let (masks, printer, stock) = (&self.masks, &self.printer, &self.stock);
+        let masks = &self.masks;
         lines.push(all("masks", &[masks.clearance, masks.wall, masks.thickness]));
-        lines.push(all("printer", &[printer.bed_x, printer.bed_y, printer.bed_z, printer.margin]));
-        lines.push(all("stock", &[stock.length, stock.width, stock.thickness, stock.margin]));
         lines.push(all("router", &[self.router.tolerance]));
         lines.join("\n")
     }

@@ -164,11 +164,11 @@ pub(super) static STATION: Table = Table {
 pub(super) static TEMPLATES: Table = Table {
     name: "templates",
     times: Times::AtMostOnce,
-    doc: "Where templates and masks are made.",
+    doc: "Where templates and masks are made, besides the stations.",
     keys: &[key(
         "at",
         Lengths(200, 0.0, LONGEST),
-        Left("the stations themselves"),
+        Left("none but the stations"),
         "Places from the root outwards, in ascending order.",
         "0 mm, 150 mm, 300 mm, 450 mm",
     )],

@@ -59,7 +59,7 @@ pub struct Design {
     pub span: Length,
     /// From the root outwards, two at least: the first at 0, the last at [`Design::reach`].
     pub stations: Vec<Station>,
-    /// Where templates are cut, ascending; the stations themselves when the file names none.
+    /// Where templates are cut, ascending: every station, and the places the file names besides.
     pub templates: Vec<Length>,
     /// The flap planned, if any.
     pub flap: Option<Flap>,

@@ -40,7 +40,7 @@ pub(super) fn design(sheet: &Sheet, problems: &mut Problems) -> Option<Design> {
         kind: kind?,
         notes: root.text("notes").map(str::to_owned),
         span: span?,
-        templates: templates.unwrap_or_else(|| stations.iter().map(|station| station.at).collect()),
+        templates: with_stations(templates.unwrap_or_default(), &stations),
         stations,
         flap: match flap {
             Some(flap) => Some(flap?),
@@ -53,6 +53,18 @@ pub(super) fn design(sheet: &Sheet, problems: &mut Problems) -> Option<Design> {
         stock: stock?,
         router: router?,
     })
+}
+
+/// The places named and the stations, ascending: the foil bends at a station, and a batten laid past
+/// one without a template would cut the bend off.
+fn with_stations(mut places: Vec<Length>, stations: &[Station]) -> Vec<Length> {
+    for station in stations {
+        if places.iter().all(|place| (place.mm() - station.at.mm()).abs() > SAME) {
+            places.push(station.at);
+        }
+    }
+    places.sort_by(|a, b| a.mm().total_cmp(&b.mm()));
+    places
 }
 
 /// How far the built piece reaches, and how to say why.

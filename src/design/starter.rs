@@ -16,7 +16,7 @@ pub fn starter(kind: Kind) -> String {
         Kind::Fin => FIN,
     });
     text.push_str(
-        "\n# What follows are the defaults. Take the marks away before a table and a key to change one.\n",
+        "\n# What follows are the defaults. To change one, remove the # before its table and its key.\n",
     );
     for table in TABLES.into_iter().filter(|table| table.times == Times::AtMostOnce) {
         defaults(table, &mut text);

@@ -276,6 +276,7 @@ fn escaped(text: &str) -> String {
     text.chars()
         .map(|c| match c {
             '°' => "%%d".to_owned(),
+            '²' => "2".to_owned(),
             ' '..='~' => c.to_string(),
             c if c.is_control() => " ".to_owned(),
             c => format!("\\U+{:04X}", u32::from(c)),

@@ -8,16 +8,20 @@ pub fn escaped(text: &str) -> String {
     text.replace('&', "&amp;").replace('<', "&lt;").replace('>', "&gt;").replace('"', "&quot;")
 }
 
-/// A table: heading and rows of plain text.
+/// A table: heading and rows of plain text; rows for which `marked` holds stand out.
 #[must_use]
-pub fn table<const COLUMNS: usize>(heading: [&str; COLUMNS], rows: &[[String; COLUMNS]]) -> String {
+pub fn table<const COLUMNS: usize>(
+    heading: [&str; COLUMNS],
+    rows: &[[String; COLUMNS]],
+    marked: impl Fn(&[String; COLUMNS]) -> bool,
+) -> String {
     let mut html = String::from("<table><thead><tr>");
     for cell in heading {
         let _ = write!(html, "<th>{}</th>", escaped(cell));
     }
     html.push_str("</tr></thead><tbody>");
     for row in rows {
-        html.push_str("<tr>");
+        html.push_str(if marked(row) { "<tr class=\"marked\">" } else { "<tr>" });
         for cell in row {
             let _ = write!(html, "<td>{}</td>", escaped(cell));
         }
@@ -33,10 +37,11 @@ pub fn document(title: &str, body: &str) -> String {
     const STYLE: &str = "
 body { font: 16px/1.5 'DejaVu Sans', Verdana, sans-serif; max-width: 62rem; margin: 2rem auto; padding: 0 1rem; color: #111; background: #fff }
 h1 { margin-bottom: 0 } h2 { margin-top: 2.5rem; border-bottom: 2px solid #111 }
-table { border-collapse: collapse; margin: 1rem 0 } th, td { border: 1px solid #777; padding: .3rem .6rem; text-align: left }
+table { border-collapse: collapse; margin: 1rem 0; display: block; overflow-x: auto } th, td { border: 1px solid #777; padding: .3rem .6rem; text-align: left }
 th { background: #eee } .good::before { content: '\\2714  ' } .bad { font-weight: bold } .bad::before { content: '\\2718  ' }
 .caution { border: 3px solid #111; padding: .5rem 1rem } figure { margin: 1.5rem 0 } figcaption { font-size: 14px }
-code { font-size: 15px } svg { max-width: 100%; height: auto } @media print { h2, figure, table { break-inside: avoid } }
+code { font-size: 15px } svg { max-width: 100%; height: auto } tr.marked { background: #ddd; font-weight: bold }
+@media print { h2 { break-after: avoid } figure, tr { break-inside: avoid } }
 ";
     format!(
         "<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n<meta name=\"viewport\" \

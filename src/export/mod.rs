@@ -24,10 +24,19 @@ pub struct ExportError {
     pub why: String,
 }
 
+/// A number with so many decimals, and never "-0.0".
+#[must_use]
+pub fn fixed(value: f64, places: usize) -> String {
+    let text = format!("{value:.places$}");
+    match text.strip_prefix('-') {
+        Some(digits) if digits.bytes().all(|b| matches!(b, b'0' | b'.')) => digits.to_owned(),
+        _ => text,
+    }
+}
+
 /// A number as short as it can be with `places` decimals, and never "-0".
 #[must_use]
 pub fn number(value: f64, places: usize) -> String {
-    let text = format!("{value:.places$}");
-    let short = if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.') } else { &text };
-    if short == "-0" { "0".to_owned() } else { short.to_owned() }
+    let text = fixed(value, places);
+    if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.').to_owned() } else { text }
 }

@@ -33,8 +33,8 @@ pub fn svg_page(page: &Page) -> String {
 /// Width up to which a picture shows at true size inside a document, mm.
 const PICTURE_WIDTH: f64 = 240.0;
 
-/// A drawing alone, `margin` mm of white round it, to be shown inside other documents: it takes
-/// the width it is given, but never more than its true size. Letters and lines of a wider drawing
+/// A drawing alone, `margin` mm of white round it, to be shown inside other documents at
+/// up to its true size. Letters and lines of a wider drawing
 /// grow, so that they can still be read when it is shrunk to fit.
 #[must_use]
 pub fn picture(drawing: &Drawing, margin: f64) -> String {
@@ -45,10 +45,7 @@ pub fn picture(drawing: &Drawing, margin: f64) -> String {
     }
     let bounds = grown.bounds().inflate(margin * growth, margin * growth);
     let moved = grown.moved(kurbo::Affine::translate((-bounds.x0, -bounds.y0)));
-    document(bounds.width(), bounds.height())
-        .set("style", "max-width:100%;height:auto")
-        .add(group(&moved, bounds.height(), growth))
-        .to_string()
+    document(bounds.width(), bounds.height()).add(group(&moved, bounds.height(), growth)).to_string()
 }
 
 fn document(width: f64, height: f64) -> Document {

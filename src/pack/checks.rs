@@ -85,7 +85,12 @@ fn lift<'a>(design: &'a Design, flow: &'a SectionFlow<'_>) -> impl Iterator<Item
     // The nearer end of the range is what the limit is held against.
     let value = if wanted < least { least } else { greatest };
     flow.stations.iter().map(move |at| Check {
-        name: "section lift in the range of incidence".to_owned(),
+        name: if wanted < least {
+            "least lift in the range of incidence"
+        } else {
+            "greatest lift in the range of incidence"
+        }
+        .to_owned(),
         place: place(*at),
         value,
         limit: wanted,
@@ -118,13 +123,14 @@ fn shape(design: &Design, wing: &Wing, station: &StationAids<'_>) -> [Check; 2] 
             },
         },
         Check {
-            name: "least thickness ahead of the trailing edge".to_owned(),
+            name: "surfaces keep apart ahead of the trailing edge".to_owned(),
             place: place(at),
             value: thickness,
             limit: 0.0,
             unit: "mm".to_owned(),
             passed: thickness > 0.0,
-            why: "the upper surface must lie above the lower one from nose to trailing edge".to_owned(),
+            why: "least distance between the surfaces from 1 % to 99 % of chord; the upper must lie above"
+                .to_owned(),
         },
     ]
 }
@@ -143,31 +149,32 @@ fn least_thickness(shape: &crate::wing::StationShape<'_>) -> f64 {
         .fold(f64::INFINITY, f64::min)
 }
 
-/// Each plate of a mask must lie on the bed, either way round.
+/// Each plate of a mask must lie on the bed, turned as it may be, and not stand too high.
 fn printer(design: &Design, station: &StationAids<'_>) -> [Check; 2] {
     let margin = 2.0 * design.printer.margin.mm();
     let bed = [design.printer.bed_x, design.printer.bed_y].map(|side| side.mm() - margin);
+    let height = design.printer.bed_z.mm();
     let plate = |half: Half, solid: &Solid| {
         let [x, y, z] = solid.size();
+        let size = format!("{x:.2} by {y:.2} by {z:.2} mm");
+        let room = format!("{:.2} by {:.2} by {height:.2} mm, the bed less its margin", bed[0], bed[1]);
         let flat = fits([x, y], bed);
-        let height = z <= design.printer.bed_z.mm();
+        let low = z <= height;
+        // What is told is what fails, and the length of the plate when nothing does.
+        let (value, limit) = if low { (x.max(y), bed[0].max(bed[1])) } else { (z, height) };
         Check {
             name: "mask fits the printer bed".to_owned(),
             place: format!("{}, {} half", place(station.shape.at), half.word()),
-            value: x.max(y),
-            limit: bed[0].max(bed[1]),
+            value,
+            limit,
             unit: "mm".to_owned(),
-            passed: flat && height,
-            why: if flat && height {
-                format!("{x:.1} by {y:.1} by {z:.1} mm lies within the bed less its margin")
-            } else {
-                format!(
-                    "{x:.1} by {y:.1} by {z:.1} mm does not go on {:.0} by {:.0} by {:.0} mm: take a larger bed, \
-                     thinner walls or a shorter chord",
-                    bed[0],
-                    bed[1],
-                    design.printer.bed_z.mm()
-                )
+            passed: flat && low,
+            why: match (low, flat) {
+                (true, true) => format!("{size} lies on {room}"),
+                (false, _) => format!("{size} is higher than {room}: make the masks thinner"),
+                (true, false) => format!(
+                    "{size} is larger than {room}, turned any way: take a larger bed, thinner walls or a shorter chord"
+                ),
             },
         }
     };
@@ -199,7 +206,38 @@ fn stock(design: &Design, place: &str, drawing: &Drawing) -> Check {
     }
 }
 
+/// Whether a rectangle lies within another, at any angle.
+///
+/// Source: W. B. Carver, solution to problem E 1225, American Mathematical Monthly 64 (1957); from
+/// memory.
 fn fits(piece: [f64; 2], room: [f64; 2]) -> bool {
-    let within = |a: f64, b: f64| a <= room[0] && b <= room[1];
-    within(piece[0], piece[1]) || within(piece[1], piece[0])
+    let ([p, q], [a, b]) = (longer_first(piece), longer_first(room));
+    let diagonal = p * p + q * q;
+    (p <= a && q <= b)
+        || (p > a && b * diagonal >= 2.0 * p * q * a + (p * p - q * q) * (diagonal - a * a).sqrt())
+}
+
+fn longer_first([a, b]: [f64; 2]) -> [f64; 2] {
+    if a >= b { [a, b] } else { [b, a] }
+}
+
+/// The checks with those outside their limit first.
+pub(super) fn worst_first(checks: &[Check]) -> impl Iterator<Item = &Check> {
+    let outside = checks.iter().filter(|check| !check.passed);
+    outside.chain(checks.iter().filter(|check| check.passed))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::fits;
+
+    #[test]
+    fn a_long_piece_may_lie_across_the_corners() {
+        // A thin rod goes as far as the diagonal, 311.1 for 220 square.
+        assert!(fits([311.0, 0.01], [220.0, 220.0]) && !fits([311.2, 0.01], [220.0, 220.0]));
+        // At 45 degrees a square of side s holds a piece whose sides add up to s times root two.
+        assert!(fits([250.0, 61.0], [220.0, 220.0]) && !fits([250.0, 62.0], [220.0, 220.0]));
+        assert!(fits([100.0, 220.0], [220.0, 100.0]) && !fits([100.0, 221.0], [220.0, 100.0]));
+        assert!(!fits([150.0, 150.0], [1000.0, 149.0]));
+    }
 }

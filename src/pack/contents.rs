@@ -1,11 +1,9 @@
 //! From a design to the files of its pack, in memory.
 
 use super::aids::{self, SectionFlow, StationAids};
-use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet};
+use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet, tables};
 use crate::design::Design;
-use crate::export::{csv::csv, dxf, number, pdf, stl, svg_page};
-use crate::geometry::height_at;
-use crate::section::ORDINATE_STATIONS;
+use crate::export::{dxf, number, pdf, stl, svg_page};
 use crate::workshop::{Drawing, Half, Page, PaperSettings, single_page, tiled};
 
 /// Which kinds of files to make.
@@ -152,46 +150,16 @@ impl Files {
         stations: &[StationAids<'_>],
         flows: &[SectionFlow<'_>],
     ) -> Result<(), PackError> {
-        let offsets = stations.iter().flat_map(|station| offsets(&station.shape));
-        let heading = ["station_mm", "percent_of_chord", "x_mm", "upper_mm", "lower_mm"];
-        let table = csv(heading, offsets)?;
-        self.add("tables/offsets.csv".to_owned(), "csv", "table of offsets", None, table.into_bytes());
-
-        let lift = flows.iter().flat_map(|flow| {
-            design.lift.angles().into_iter().map(move |angle| {
-                let s = flow.flow.at(angle.radians());
-                let values = [angle.degrees(), s.cl, s.cm, s.cp_min].map(|v| format!("{v:.6}"));
-                let [angle, cl, cm, cp_min] = values;
-                [flow.section.name().to_owned(), angle, cl, cm, cp_min]
-            })
-        });
-        let table = csv(["section", "angle_deg", "cl", "cm", "cp_min"], lift)?;
-        let role = "lift curves without friction";
-        self.add("tables/lift.csv".to_owned(), "csv", role, None, table.into_bytes());
-
-        let pressure = flows.iter().filter_map(|flow| {
-            let incidence = flow.flow.incidence_for_lift(design.lift.design)?;
-            Some((flow.section.name(), flow.flow.at(incidence).pressure))
-        });
-        let rows = pressure.flat_map(|(name, points)| {
-            points.into_iter().map(move |p| {
-                let [x, y, cp] = [p.x, p.y, p.cp].map(|v| format!("{v:.6}"));
-                [name.to_owned(), x, y, cp]
-            })
-        });
-        let table = csv(["section", "x", "y", "cp"], rows)?;
+        let fingerprint = design.fingerprint();
+        let text = tables::stations(stations, &fingerprint)?;
+        self.add("tables/stations.csv".to_owned(), "csv", "where each station lies", None, text);
+        let text = tables::offsets(stations, &fingerprint)?;
+        self.add("tables/offsets.csv".to_owned(), "csv", "table of offsets", None, text);
+        let text = tables::lift(design, flows, &fingerprint)?;
+        self.add("tables/lift.csv".to_owned(), "csv", "lift curves without friction", None, text);
+        let text = tables::pressure(design, flows, &fingerprint)?;
         let role = "pressure at the design lift, without friction";
-        self.add("tables/pressure.csv".to_owned(), "csv", role, None, table.into_bytes());
+        self.add("tables/pressure.csv".to_owned(), "csv", role, None, text);
         Ok(())
     }
-}
-
-fn offsets<'a>(shape: &'a crate::wing::StationShape<'_>) -> impl Iterator<Item = [String; 5]> + 'a {
-    ORDINATE_STATIONS.iter().map(|percent| {
-        let x = percent / 100.0 * shape.chord;
-        let surface = |end: f64| height_at(shape, 0.0, end, x);
-        let lengths = [x, surface(-1.0), surface(1.0)].map(|v| format!("{v:.3}"));
-        let [x, upper, lower] = lengths;
-        [number(shape.at, 3), number(*percent, 2), x, upper, lower]
-    })
 }

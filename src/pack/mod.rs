@@ -6,6 +6,7 @@ mod contents;
 mod error;
 mod manifest;
 mod sheet;
+mod tables;
 mod write;
 
 pub use checks::{Check, run_checks};

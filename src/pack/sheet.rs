@@ -9,11 +9,14 @@ use crate::export::chart::{Chart, Mark, Series};
 use crate::export::html::{document, escaped, table};
 use crate::export::{number, picture};
 use crate::flow::PressurePoint;
+use crate::geometry::Point;
 use crate::wing::Planform;
-use crate::workshop::{Drawing, without_negative_zero};
+use crate::workshop::{Drawing, turn};
 
 /// White round a picture, mm.
 const MARGIN: f64 = 4.0;
+/// The word for a check that does not hold.
+const OUTSIDE: &str = "OUTSIDE";
 
 pub(super) fn html(
     design: &Design,
@@ -29,7 +32,7 @@ pub(super) fn html(
     cautions(&mut body);
     shape(&mut body, design, planform, stations, pattern);
     lift(&mut body, design, flows);
-    steps(&mut body, files);
+    steps(&mut body, design, files);
     check_table(&mut body, checks);
     file_table(&mut body, files);
     document(&format!("{} {}", design.name, design.fingerprint()), &body)
@@ -77,7 +80,7 @@ fn shape(
 ) {
     let _ = writeln!(
         body,
-        "<h2>Shape</h2>\n<p>Span {:.1} mm, area {:.1} cm², aspect ratio {:.2}, mean chord {:.1} mm, taper {:.3}.</p>\n\
+        "<h2>Shape</h2>\n<p>Seen from above: span {:.1} mm, area {:.1} cm², aspect ratio {:.2}, mean chord {:.1} mm, taper {:.3}.</p>\n\
          <figure>{}<figcaption>Planform, leading edge up; distances from the root in mm{}.</figcaption></figure>",
         planform.span(),
         planform.area() / 100.0,
@@ -90,7 +93,8 @@ fn shape(
             number(100.0 * flap.hinge, 1)
         ))
     );
-    let rows: Vec<[String; 5]> = stations
+    let root = stations.first().map_or(Point::ORIGIN, |station| station.shape.nose);
+    let rows: Vec<[String; 7]> = stations
         .iter()
         .map(|station| {
             let shape = &station.shape;
@@ -99,13 +103,23 @@ fn shape(
                 number(shape.at, 3),
                 shape.section_name(),
                 format!("{:.2}", shape.chord),
-                format!("{:+.2}°", without_negative_zero(shape.twist.to_degrees())),
+                turn(shape.twist),
+                number(shape.nose.x - root.x, 2),
+                number(shape.nose.y - root.y, 2),
                 bounds.map_or(String::new(), |b| format!("{:.2}", b.height())),
             ]
         })
         .collect();
-    let heading = ["station, mm from root", "section", "chord, mm", "twist", "height of the outline, mm"];
-    body.push_str(&table(heading, &rows));
+    let heading = [
+        "station, mm from root",
+        "section",
+        "chord, mm",
+        "twist, nose up",
+        "nose aft of the root's, mm",
+        "nose above the root's, mm",
+        "height of the outline, mm",
+    ];
+    body.push_str(&table(heading, &rows, |_| false));
     for station in stations {
         let _ = writeln!(
             body,
@@ -171,32 +185,70 @@ fn lift(body: &mut String, design: &Design, flows: &[SectionFlow<'_>]) {
     }
 }
 
-fn steps(body: &mut String, files: &[PackFile]) {
+fn steps(body: &mut String, design: &Design, files: &[PackFile]) {
     let count = |kind: &str| files.iter().filter(|file| file.kind == kind).count();
-    let _ = writeln!(
-        body,
-        "<h2>Order of work</h2>\n<ol>\n\
-         <li>Read the checks below. Nothing is cut while one is outside its limit.</li>\n\
-         <li>Print <code>print/*.pdf</code> at 100 % (no fitting to the page) and measure both 100 mm lines on every page. \
-         Join tiles by their crosses.</li>\n\
-         <li>Send the {} router files in <code>cut/</code> to the router: millimetres, cut on layer CUT_OUTSIDE only.</li>\n\
-         <li>Print the {} mask halves in <code>masks/</code> flat as they lie, without support.</li>\n\
-         <li>Cut the planform, mark the stations and the centre line, and shape down to the masks: a pair that closes all \
-         round leaves the set clearance.</li>\n\
-         <li>Between stations fair with a straight batten; check against <code>tables/offsets.csv</code>.</li>\n</ol>\n\
-         <p>The outlines are the finished surface. The allowance for the laminate is not taken off yet.</p>",
-        count("dxf"),
-        count("stl")
+    let (pages, routed, plates) = (count("pdf"), count("dxf"), count("stl"));
+    let mut steps = vec![
+        "Read the checks below. For each that is outside its limit, change the design, or know why you go on."
+            .to_owned(),
+    ];
+    if pages > 0 {
+        steps.push(
+            "Print <code>print/*.pdf</code> at 100 %, with fitting to the page off, and measure both 100 mm lines on \
+             every page. Join tiles by laying cross on cross."
+                .to_owned(),
+        );
+    }
+    if routed > 0 {
+        steps.push(format!(
+            "Send the {routed} router files in <code>cut/</code> to the router. They are in millimetres. Cut outside the \
+             lines of layer CUT_OUTSIDE; the other layers are never cut."
+        ));
+    }
+    if plates > 0 {
+        let sides = if design.kind.mirrored() {
+            ""
+        } else {
+            " On this upright foil the upper half is the starboard one, the lower half the port one."
+        };
+        steps.push(format!(
+            "Print the {plates} mask halves in <code>masks/</code> flat as they lie, without support. Write station, half \
+             and fingerprint on each one as it leaves the bed: they look alike.{sides}"
+        ));
+    }
+    if stations_are_marked(files) {
+        steps.push(
+            "Cut the planform, mark the root line and the stations on it, and shape down to the masks. When a pair \
+             closes, the gap all round is the set clearance."
+                .to_owned(),
+        );
+        steps.push(
+            "Set the twist: on each template the line marked \u{201c}level\u{201d} lies level when the foil does. The table \
+             above gives the height of each nose against the root's."
+                .to_owned(),
+        );
+        steps.push("Between stations, fair the surface with a straight batten.".to_owned());
+    }
+    body.push_str("<h2>Order of work</h2>\n<ol>\n");
+    for step in steps {
+        let _ = writeln!(body, "<li>{step}</li>");
+    }
+    body.push_str(
+        "</ol>\n<p>The outlines are the finished surface. The allowance for the laminate is not taken off yet.</p>",
     );
 }
 
+/// Whether the pack holds anything to shape by.
+fn stations_are_marked(files: &[PackFile]) -> bool {
+    files.iter().any(|file| matches!(file.kind, "dxf" | "pdf" | "stl"))
+}
+
 fn check_table(body: &mut String, checks: &[Check]) {
-    let rows: Vec<[String; 6]> = checks
-        .iter()
+    let rows: Vec<[String; 6]> = super::checks::worst_first(checks)
         .map(|check| {
             let quantity = |v: f64| format!("{} {}", number(v, 3), check.unit).trim_end().to_owned();
             [
-                if check.passed { "passed" } else { "OUTSIDE" }.to_owned(),
+                if check.passed { "passed" } else { OUTSIDE }.to_owned(),
                 check.name.clone(),
                 check.place.clone(),
                 quantity(check.value),
@@ -206,7 +258,8 @@ fn check_table(body: &mut String, checks: &[Check]) {
         })
         .collect();
     body.push_str("<h2>Checks</h2>\n");
-    body.push_str(&table(["", "check", "where", "value", "limit", "why"], &rows));
+    let heading = ["", "check", "where", "value", "limit", "why"];
+    body.push_str(&table(heading, &rows, |row| row[0] == OUTSIDE));
 }
 
 fn file_table(body: &mut String, files: &[PackFile]) {
@@ -218,5 +271,5 @@ fn file_table(body: &mut String, files: &[PackFile]) {
         })
         .collect();
     body.push_str("<h2>Files of this pack</h2>\n");
-    body.push_str(&table(["file", "what it is", "station"], &rows));
+    body.push_str(&table(["file", "what it is", "station"], &rows, |_| false));
 }

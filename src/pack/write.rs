@@ -11,11 +11,12 @@ use super::error::Doing;
 use super::manifest::{FILE_NAME, Manifest, sha256};
 use super::{Pack, PackError};
 
-/// Writes `pack` into the folder `out`, in place of an earlier pack of the same design.
+/// Writes `pack` into the folder `out`, in place of an earlier pack of the same design, whose
+/// manifest is given back.
 ///
 /// # Errors
 /// When `out` is not a place for it, or the disk refuses. The folder is then as it was.
-pub fn write(pack: &Pack, out: &Path) -> Result<(), PackError> {
+pub fn write(pack: &Pack, out: &Path) -> Result<Option<Manifest>, PackError> {
     let place = Place::of(out)?;
     let earlier = place.earlier_pack(pack)?;
 
@@ -30,11 +31,17 @@ pub fn write(pack: &Pack, out: &Path) -> Result<(), PackError> {
     if let Some(earlier) = &earlier {
         keep_the_users_files(&place.folder, earlier, &fresh)?;
     }
-    exchange(&fresh, &place.folder, staging.path()).map_err(|e| disk(Doing::Writing, &place.folder, e))
+    exchange(&fresh, &place.folder, staging.path()).map_err(|e| disk(Doing::Writing, &place.folder, e))?;
+    Ok(earlier)
 }
 
 fn disk(doing: Doing, path: &Path, source: io::Error) -> PackError {
-    PackError::Disk { doing, path: path.to_owned(), source }
+    PackError::Disk { doing, path: path.to_owned(), source: without_path(&source) }
+}
+
+/// The system's reason alone: libraries add the name of a temporary file, which tells a user nothing.
+fn without_path(error: &io::Error) -> io::Error {
+    io::Error::from(error.kind())
 }
 
 /// Where the pack goes.

@@ -10,6 +10,9 @@ pub(super) fn parse(text: &str, trailing_edge: TrailingEdge) -> Result<Section, 
     let trimmed = text.trim();
     let digits = match trimmed.get(..4) {
         Some(prefix) if prefix.eq_ignore_ascii_case("naca") => trimmed[4..].trim_start(),
+        _ if matches!(trimmed.len(), 4 | 5) && trimmed.bytes().all(|byte| byte.is_ascii_digit()) => {
+            return Err(SectionError::NoFamily { digits: trimmed.to_owned() });
+        }
         _ => return Err(unknown()),
     };
     if digits.is_empty() || !digits.bytes().all(|byte| byte.is_ascii_digit()) {

@@ -11,6 +11,12 @@ pub enum SectionError {
         /// What was given.
         text: String,
     },
+    /// Digits without the family's name.
+    #[error("'{digits}' lacks the name of its family: write \"NACA {digits}\"")]
+    NoFamily {
+        /// What was given.
+        digits: String,
+    },
     /// The number of digits fits no family.
     #[error(
         "'{text}' has {count} digits: a NACA designation has four (\"NACA 4412\") or five (\"NACA 23012\")"

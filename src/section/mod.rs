@@ -54,6 +54,15 @@ impl Section {
 
     /// A published section by its designation, such as `NACA 4412` or `NACA 23012`.
     ///
+    /// ```
+    /// use plankform::section::{Section, Side, TrailingEdge};
+    ///
+    /// let section = Section::from_designation("NACA 0012", TrailingEdge::Published)?;
+    /// // NACA Report 824, appendix: 5.803 % of chord at 40 %.
+    /// assert!((section.surface(Side::Upper, 0.4) - 0.05803).abs() < 0.5e-5);
+    /// # Ok::<(), plankform::section::SectionError>(())
+    /// ```
+    ///
     /// # Errors
     /// When the designation is not one, with what would be.
     pub fn from_designation(text: &str, trailing_edge: TrailingEdge) -> Result<Self, SectionError> {

@@ -63,6 +63,15 @@ impl StationShape<'_> {
         if self.weight < 0.5 { self.inner } else { self.outer }
     }
 
+    /// The level line in the shape's own frame: the foil's x axis, on which the quarter chord of
+    /// every station lies, from `ahead` mm before the nose to `behind` mm after the trailing edge.
+    #[must_use]
+    pub fn level_line(&self, ahead: f64, behind: f64) -> (Point, Point) {
+        let end = self.nose.x + self.chord * self.twist.cos();
+        let place = |x: f64| self.to_chord * Point::new(x, 0.0);
+        (place(self.nose.x - ahead), place(end + behind))
+    }
+
     /// Section names that make up the shape, one or two.
     #[must_use]
     pub fn section_name(&self) -> String {

@@ -8,7 +8,7 @@ mod pattern;
 pub use drawing::{Drawing, Label, Line, Role};
 pub use mask::{Half, Mask, MaskSettings};
 pub use paper::{Page, PaperSettings, single_page, tiled};
-pub(crate) use pattern::without_negative_zero;
+pub(crate) use pattern::turn;
 pub use pattern::{HingeLine, planform_pattern, station_template};
 
 /// The title every aid of one design carries, so that two revisions are never mixed on the bench.

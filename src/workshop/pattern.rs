@@ -1,11 +1,13 @@
 //! Templates of the stations and the pattern of the planform.
 
-use super::{Drawing, Role, Stamp};
+use super::{Drawing, Label, Role, Stamp};
 use crate::geometry::{ArcPath, GeometryError, Point, follow_with_arcs, polygon};
 use crate::wing::{Planform, StationShape};
 
 /// Height of capitals in the labels of a template, mm: read at arm's length.
 const LETTERS: f64 = 4.0;
+/// A turn below this needs no level line of its own, radians: 0.01 mm over 100 mm.
+const LEVEL: f64 = 1e-4;
 /// Height of capitals beside a line, mm.
 const SMALL: f64 = 2.8;
 /// Base line to base line, mm.
@@ -58,6 +60,11 @@ pub fn station_template(
     drawing.add(Role::Reference, chord_line);
 
     let (low, high) = (bounds.y0 - OVERRUN, bounds.y1 + OVERRUN);
+    if shape.twist.abs() > LEVEL {
+        let (front, back) = shape.level_line(4.0 * OVERRUN, 4.0 * OVERRUN);
+        drawing.add(Role::Reference, ArcPath::line(front, back));
+        drawing.write(Role::Label, Point::new(back.x + 1.0, back.y - 0.5 * SMALL), SMALL, "level");
+    }
     if let Some(hinge) = hinge.filter(|hinge| hinge.reaches(shape.at)) {
         let x = hinge.chord_fraction * shape.chord;
         drawing.add(Role::Reference, ArcPath::line(Point::new(x, low), Point::new(x, high)));
@@ -66,12 +73,7 @@ pub fn station_template(
     let words = [
         stamp.to_string(),
         format!("station {} mm from the root", millimetres(shape.at)),
-        format!(
-            "{}, chord {:.2} mm, twist {:+.2}°",
-            shape.section_name(),
-            shape.chord,
-            without_negative_zero(shape.twist.to_degrees())
-        ),
+        format!("{}, chord {:.2} mm, twist {}", shape.section_name(), shape.chord, turn(shape.twist)),
         // With x aft and the span's axis away from the eye, what stands upright in the drawing is
         // the boat's up for a level foil and its starboard side for an upright one.
         if mirrored { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
@@ -108,7 +110,14 @@ pub fn planform_pattern(
             let (front, back) = planform.edges(at);
             let place = |y: f64| Point::new(side * at, -y);
             drawing.add(Role::Reference, ArcPath::line(place(front - OVERRUN), place(back + OVERRUN)));
-            drawing.write(Role::Label, place(front - OVERRUN - 2.0), SMALL, millimetres(at));
+            // Upright, so that the words of near stations stay apart.
+            drawing.labels.push(Label {
+                role: Role::Label,
+                at: place(front - OVERRUN - 2.0),
+                height: SMALL,
+                turn: std::f64::consts::FRAC_PI_2,
+                text: millimetres(at),
+            });
         }
         if let Some(hinge) = hinge {
             let corners = planform.leading.iter().map(|corner| corner.x);
@@ -146,7 +155,8 @@ fn millimetres(value: f64) -> String {
     text.trim_end_matches('0').trim_end_matches('.').to_owned()
 }
 
-/// Rounding must not print a level chord as "-0.00".
-pub(crate) fn without_negative_zero(value: f64) -> f64 {
-    if value.abs() < 0.005 { 0.0 } else { value }
+/// A twist in words: signed, to a hundredth of a degree, and plain nothing for none.
+pub(crate) fn turn(radians: f64) -> String {
+    let degrees = radians.to_degrees();
+    if degrees.abs() < 0.005 { "0°".to_owned() } else { format!("{degrees:+.2}°") }
 }

@@ -37,6 +37,31 @@ def test_offsets_run_to_the_trailing_edge_at_every_station(pack):
         assert percent == sorted(set(percent)) and (percent[0], percent[-1]) == (0, 100)
 
 
+def test_stations_lie_where_the_loft_puts_them(pack):
+    """Where the nose of each station goes, and how it is turned: what a builder sets the twist by."""
+    table = rows(pack, "stations.csv")
+    shapes = pack.design.shapes
+    assert len(table) == len(shapes)
+    root = shapes[0]
+    for row, shape in zip(table, shapes):
+        along = shape.tail - shape.nose
+        expected = {
+            "station_mm": shape.at,
+            "chord_mm": shape.chord,
+            "nose_aft_mm": shape.nose[0] - root.nose[0],
+            "nose_above_mm": shape.nose[1] - root.nose[1],
+            "nose_overhang_mm": -min(0.0, shape.outline[:, 0].min()),
+        }
+        for key, value in expected.items():
+            assert float(row[key]) == pytest.approx(value, abs=2 * HALF_UNIT), f"{key} at {shape.at}"
+        assert float(row["twist_deg"]) == pytest.approx(-np.degrees(np.arctan2(along[1], along[0])), abs=1e-4)
+
+
+def test_every_row_carries_the_fingerprint(pack):
+    for name in ("stations.csv", "offsets.csv", "lift.csv", "pressure.csv"):
+        assert {row["fingerprint"] for row in rows(pack, name)} == {pack.fingerprint}, name
+
+
 def test_lift_curves_cover_every_section(pack):
     table = rows(pack, "lift.csv")
     names = {station.section.name for station in pack.design.stations}
@@ -55,7 +80,7 @@ def test_pressures_add_up_to_the_design_lift(pack, measured):
     for name in {row["section"] for row in pressure}:
         curve = np.array([[float(r["cl"]), float(r["angle_deg"])] for r in lift if r["section"] == name])
         alpha = np.radians(np.interp(pack.design.design_lift, *curve.T))
-        x, y, cp = np.array([[float(r[k]) for k in ("x", "y", "cp")] for r in pressure if r["section"] == name]).T
+        x, y, cp = np.array([[float(r[k]) for k in ("x_over_chord", "y_over_chord", "cp")] for r in pressure if r["section"] == name]).T
         middle = (cp[1:] + cp[:-1]) / 2
         # From the upper trailing edge over the nose to the lower one: force on the surface from outside.
         across, along = (middle * np.diff(x)).sum(), -(middle * np.diff(y)).sum()

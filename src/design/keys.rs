@@ -135,7 +135,13 @@ pub(super) static STATION: Table = Table {
             "450 mm",
         ),
         key("chord", Length(5.0, 2000.0), Required, "From the nose to the trailing edge.", "120 mm"),
-        key("section", Text(60), Required, "Designation of the section.", "NACA 2412"),
+        key(
+            "section",
+            Text(60),
+            Required,
+            "Designation of the section, as \"NACA 23012\", \"NACA 0012-34\" or \"NACA 16-209\".",
+            "NACA 2412",
+        ),
         key(
             "trailing-edge",
             Word(&["published", "closed"]),

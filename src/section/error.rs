@@ -5,7 +5,7 @@
 pub enum SectionError {
     /// The text is not a designation that is known.
     #[error(
-        "'{text}' is not a section this program knows: write a NACA four-digit (\"NACA 4412\") or five-digit (\"NACA 23012\") designation"
+        "'{text}' is not a section this program knows: write a NACA designation of four digits (\"NACA 4412\"), five (\"NACA 23012\"), either with a modified thickness (\"NACA 0012-34\"), or of the 16-series (\"NACA 16-209\")"
     )]
     Unknown {
         /// What was given.
@@ -36,6 +36,24 @@ pub enum SectionError {
         text: String,
         /// Percent of chord.
         percent: u32,
+    },
+    /// The two digits after the dash name no modified thickness form.
+    #[error(
+        "'-{modifier}' in '{text}' names no modified thickness: write two digits, the first 1 to 9 for the nose (6 is the usual one), the second 2 to 6 for the position of the greatest thickness in tenths of the chord"
+    )]
+    Modifier {
+        /// What was given.
+        text: String,
+        /// What stands after the dash.
+        modifier: String,
+    },
+    /// A 16-series designation that is none.
+    #[error(
+        "'{text}' is no 16-series section: write three digits after the dash, design lift in tenths and thickness in percent (\"NACA 16-209\"), and if wanted the mean line (\"NACA 16-209, a = 0.8\", a from 0.02 to 1, or 0)"
+    )]
+    Series16 {
+        /// What was given.
+        text: String,
     },
     /// Camber without a position, or a position without camber.
     #[error(

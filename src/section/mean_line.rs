@@ -1,6 +1,6 @@
-//! Mean (camber) lines of the NACA four- and five-digit families.
+//! Mean (camber) lines.
 
-use super::SectionError;
+use super::{SectionError, UniformLoad};
 
 /// Ordinate of a mean line and its derivatives with respect to x, all in unit chord.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -42,6 +42,8 @@ pub enum MeanLine {
         /// the plain lines.
         rear_ratio: f64,
     },
+    /// Load uniform up to a station, then falling evenly to nothing.
+    UniformLoad(UniformLoad),
 }
 
 /// Constants published for a design lift coefficient of 0.3: position digit, joint, front cubic,
@@ -79,6 +81,7 @@ impl MeanLine {
     pub fn at(&self, x: f64) -> Ordinate {
         match *self {
             Self::Straight => Ordinate { y: 0.0, slope: 0.0, second: 0.0, third: 0.0 },
+            Self::UniformLoad(line) => line.at(x),
             Self::FourDigit { camber, position: p } => {
                 let (scale, start) = if x < p {
                     (camber / (p * p), 0.0)
@@ -109,13 +112,14 @@ impl MeanLine {
         }
     }
 
-    /// Where the line changes from one polynomial to the next, strictly inside (0, 1).
+    /// Where the line changes from one piece to the next, ascending and strictly inside (0, 1).
     #[must_use]
-    pub fn joint(&self) -> Option<f64> {
+    pub fn joints(&self) -> Vec<f64> {
         match *self {
-            Self::Straight => None,
-            Self::FourDigit { position, .. } => Some(position),
-            Self::FiveDigit { joint, .. } => Some(joint),
+            Self::Straight => Vec::new(),
+            Self::FourDigit { position, .. } => vec![position],
+            Self::FiveDigit { joint, .. } => vec![joint],
+            Self::UniformLoad(line) => line.joints(),
         }
     }
 }

@@ -5,11 +5,13 @@ mod error;
 mod mean_line;
 mod numbers;
 mod thickness;
+mod uniform_load;
 
 pub use error::SectionError;
 pub use mean_line::{MeanLine, Ordinate};
 pub use numbers::Numbers;
 pub use thickness::{ThicknessForm, TrailingEdge};
+pub use uniform_load::UniformLoad;
 
 use crate::geometry::{BezPath, Curve, Jet, Point, Vec2, fitted_outline, height_at};
 
@@ -161,9 +163,12 @@ impl Curve for Section {
     }
 
     fn breaks(&self) -> Vec<f64> {
-        match self.mean_line.joint() {
-            Some(joint) => vec![-1.0, -joint.sqrt(), 0.0, joint.sqrt(), 1.0],
-            None => vec![-1.0, 0.0, 1.0],
-        }
+        let mut roots: Vec<f64> = self.mean_line.joints().into_iter().map(f64::sqrt).collect();
+        roots.extend(self.thickness.joint().map(f64::sqrt));
+        roots.push(1.0);
+        roots.sort_by(f64::total_cmp);
+        roots.dedup();
+        let upper = roots.iter().rev().map(|root| -root);
+        upper.chain([0.0]).chain(roots.iter().copied()).collect()
     }
 }

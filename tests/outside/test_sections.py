@@ -9,7 +9,8 @@ from shapely import Polygon
 from naca import Section
 
 SECTIONS = [("0009", "published"), ("0012", "closed"), ("2412", "published"), ("4415", "published"), ("6409", "closed"),
-            ("21012", "published"), ("23012", "published"), ("24015", "closed"), ("23112", "published"), ("25118", "closed")]
+            ("21012", "published"), ("23012", "published"), ("24015", "closed"), ("23112", "published"), ("25118", "closed"),
+            ("0012-34", "published"), ("2412-64", "closed"), ("23015-95", "published"), ("0010-63", "closed")]
 
 
 @pytest.fixture(scope="module", params=SECTIONS, ids=lambda p: "-".join(p))
@@ -68,8 +69,11 @@ def test_greatest_thickness_and_camber(pair):
 
 def test_nose_and_trailing_edge(pair):
     section, answer = pair
-    # Report 460: the nose circle of the thickness form has the radius 1.1019 t^2.
-    assert answer["nose_radius"] == pytest.approx(1.1019 * section.thickness**2, rel=1e-4)
+    # Report 460: the nose circle of the thickness form has the radius 1.1019 t^2. Report 492: a nose index I of 1 to 8 makes
+    # it (I/6)^2 times that, 9 three times.
+    index = int(section.name.partition("-")[2][:1] or 6)
+    share = 3 if index == 9 else (index / 6) ** 2
+    assert answer["nose_radius"] == pytest.approx(1.1019 * share * section.thickness**2, rel=1e-4)
     assert answer["trailing_edge_thickness"] == pytest.approx(2 * section.half_thickness(1.0), abs=1e-12)
     # The sides lean by the fall of the half thickness against the mean line, each foreshortened or stretched by its bend.
     secant = np.hypot(1, section.slope(1.0))

@@ -80,8 +80,9 @@ fn shape(
 ) {
     let _ = writeln!(
         body,
-        "<h2>Shape</h2>\n<p>Seen from above: span {:.1} mm, area {:.1} cm², aspect ratio {:.2}, mean chord {:.1} mm, taper {:.3}.</p>\n\
+        "<h2>Shape</h2>\n<p>Seen from {}: span {:.1} mm, area {:.1} cm², aspect ratio {:.2}, mean chord {:.1} mm, taper {:.3}.</p>\n\
          <figure>{}<figcaption>Planform, leading edge up; distances from the root in mm{}.</figcaption></figure>",
+        if planform.is_mirrored() { "above" } else { "the side" },
         planform.span(),
         planform.area() / 100.0,
         planform.aspect_ratio(),

@@ -66,7 +66,9 @@ pub(super) struct Exact {
 }
 
 /// Powers of w = 1/p.
+// Aligned, lest every other register straddles two cache lines.
 #[derive(Clone, Copy)]
+#[repr(align(64))]
 struct Inverse<S: Simd> {
     w: Complex<S>,
     w2: Complex<S>,
@@ -76,7 +78,9 @@ struct Inverse<S: Simd> {
     least: f64,
 }
 
+// Aligned, lest every other register straddles two cache lines.
 #[derive(Clone, Copy)]
+#[repr(align(64))]
 struct Sums<S: Simd> {
     s: Complex<S>,
     t: Complex<S>,
@@ -85,6 +89,7 @@ struct Sums<S: Simd> {
 }
 
 /// Where a register of points has come on its way along the panels.
+#[derive(Clone, Copy)]
 struct Walk<S: Simd> {
     /// Logarithm of the distance to the first node of the next panel.
     log: S::f64s,
@@ -96,7 +101,8 @@ struct Walk<S: Simd> {
 /// with that of the node before the first panel, and every column is as long as the points are
 /// many. `exact` is asked for what panel and point, by their numbers, are too near each other for.
 ///
-/// A register of points walks along all panels, so that the columns under way stay in registers.
+/// Registers of points walk along the panels, a batch of these at a time, so that the columns under
+/// way stay in registers and those just completed in the nearest cache.
 #[inline(always)]
 pub(super) fn fill<S: Simd>(
     simd: S,
@@ -115,10 +121,11 @@ pub(super) fn fill<S: Simd>(
     let nothing = Inverse::<S> { w: [zero; 2], w2: [zero; 2], modulus2: zero, least: 0.0 };
     let mut inverses = [nothing; BATCH];
     let mut sums = [Sums::<S> { s: [zero; 2], t: [zero; 2], fall: [zero; 2] }; BATCH];
-    for i in 0..count {
-        let mut walk = Walk::<S> { log: log[i], entries: [zero; 4] };
-        let batches = panels.chunks(BATCH).zip(columns.chunks_mut(BATCH * count));
-        for (batch, (panels, columns)) in batches.enumerate() {
+    let mut walks: Vec<Walk<S>> = log.iter().map(|&log| Walk { log, entries: [zero; 4] }).collect();
+    let batches = panels.chunks(BATCH).zip(columns.chunks_mut(BATCH * count));
+    for (batch, (panels, columns)) in batches.enumerate() {
+        for i in 0..count {
+            let mut walk = walks[i];
             for (inverse, panel) in inverses.iter_mut().zip(panels) {
                 *inverse = inverse_of(v, panel, x[i], y[i]);
             }
@@ -136,7 +143,10 @@ pub(super) fn fill<S: Simd>(
                 column[i] = complete;
                 walk.entries = [rest[0], rest[1], rest[2], zero];
             }
+            walks[i] = walk;
         }
+    }
+    for (i, walk) in walks.into_iter().enumerate() {
         for (column, entries) in columns[panels.len() * count..].chunks_exact_mut(count).zip(walk.entries) {
             column[i] = entries;
         }
@@ -148,10 +158,7 @@ fn inverse_of<S: Simd>(v: Lanes<S>, panel: &PanelConstants, x: S::f64s, y: S::f6
     let [along, across] = panel.inverse.map(|value| v.all(value));
     let origin = panel.origin.map(|value| v.all(value));
     // The conjugate of p, whose inverse is a multiple of it.
-    let p = [
-        v.fnma(y, across, v.fms(x, along, origin[0])),
-        v.fnma(x, across, v.fnma(y, along, origin[1])),
-    ];
+    let p = [v.fnma(y, across, v.fms(x, along, origin[0])), v.fnma(x, across, v.fnma(y, along, origin[1]))];
     let square = v.fma(p[0], p[0], v.mul(p[1], p[1]));
     let modulus2 = v.0.div_f64s(v.all(1.0), square);
     let w = [v.mul(p[0], modulus2), v.mul(p[1], modulus2)];
@@ -173,10 +180,8 @@ fn sums_of<S: Simd>(v: Lanes<S>, inverse: &Inverse<S>) -> Sums<S> {
     } else {
         series::<S, NEAR_TERMS>(v, w2, modulus4)
     };
-    let t = [
-        v.fnma(w2[1], u[1], v.fma(w2[0], u[0], v.all(1.0 / 3.0))),
-        v.fma(w2[1], u[0], v.mul(w2[0], u[1])),
-    ];
+    let t =
+        [v.fnma(w2[1], u[1], v.fma(w2[0], u[0], v.all(1.0 / 3.0))), v.fma(w2[1], u[0], v.mul(w2[0], u[1]))];
     Sums { s: v.product(w2, t), t, fall: [v.sub(t[0], u[0]), v.sub(t[1], u[1])] }
 }
 

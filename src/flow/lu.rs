@@ -188,7 +188,8 @@ fn place_of(amount: f64, values: &[f64]) -> usize {
     // Whole stretches first: without a way out at every value they are searched in registers.
     const STRETCH: usize = 16;
     let (stretches, _) = values.as_chunks::<STRETCH>();
-    let holds = |stretch: &[f64; STRETCH]| stretch.iter().fold(false, |any, value| any | (value.abs() == amount));
+    let holds =
+        |stretch: &[f64; STRETCH]| stretch.iter().fold(false, |any, value| any | (value.abs() == amount));
     let start = STRETCH * stretches.iter().position(holds).unwrap_or(stretches.len());
     let within = values[start..].iter().position(|value| value.abs() == amount);
     within.map_or(0, |within| start + within)

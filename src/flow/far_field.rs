@@ -48,6 +48,8 @@ pub(super) struct PanelConstants {
 
 /// The points, padded so that they fill registers: their number is a multiple of [`LANES`].
 pub(super) struct Points<'a> {
+    /// How many there are without those that pad.
+    pub(super) count: usize,
     pub(super) x: &'a [f64],
     pub(super) y: &'a [f64],
     /// Logarithm of the distance to the first node of the first panel.
@@ -121,11 +123,14 @@ pub(super) fn fill<S: Simd>(
     let nothing = Inverse::<S> { w: [zero; 2], w2: [zero; 2], modulus2: zero, least: 0.0 };
     let mut inverses = [nothing; BATCH];
     let mut sums = [Sums::<S> { s: [zero; 2], t: [zero; 2], fall: [zero; 2] }; BATCH];
-    let mut walks: Vec<Walk<S>> = log.iter().map(|&log| Walk { log, entries: [zero; 4] }).collect();
+    let used = points.count.div_ceil(S::F64_LANES);
+    let mut walks: Vec<Walk<S>> =
+        log.iter().take(used).map(|&log| Walk { log, entries: [zero; 4] }).collect();
     let batches = panels.chunks(BATCH).zip(columns.chunks_mut(BATCH * count));
     for (batch, (panels, columns)) in batches.enumerate() {
-        for i in 0..count {
-            let mut walk = walks[i];
+        for (i, under_way) in walks.iter_mut().enumerate() {
+            // By value from here on, or it would not be kept in registers.
+            let mut walk = *under_way;
             for (inverse, panel) in inverses.iter_mut().zip(panels) {
                 *inverse = inverse_of(v, panel, x[i], y[i]);
             }
@@ -134,16 +139,16 @@ pub(super) fn fill<S: Simd>(
             }
             let work = panels.iter().zip(&inverses).zip(&sums).zip(columns.chunks_exact_mut(count));
             for (k, (((panel, inverse), sums), column)) in work.enumerate() {
-                add_panel(v, panel, inverse, sums, &mut walk);
+                walk = add_panel(v, panel, inverse, sums, walk);
                 if inverse.least < NEAR * NEAR {
                     let first_point = i * S::F64_LANES;
-                    add_exact(inverse, &mut walk, |lane| exact(batch * BATCH + k, first_point + lane));
+                    walk = add_exact(inverse, walk, |lane| exact(batch * BATCH + k, first_point + lane));
                 }
                 let [complete, rest @ ..] = walk.entries;
                 column[i] = complete;
                 walk.entries = [rest[0], rest[1], rest[2], zero];
             }
-            walks[i] = walk;
+            *under_way = walk;
         }
     }
     for (i, walk) in walks.into_iter().enumerate() {
@@ -207,8 +212,8 @@ fn add_panel<S: Simd>(
     panel: &PanelConstants,
     inverse: &Inverse<S>,
     sums: &Sums<S>,
-    walk: &mut Walk<S>,
-) {
+    walk: Walk<S>,
+) -> Walk<S> {
     let &Inverse { w, modulus2, least, .. } = inverse;
     let &Sums { s, t, fall } = sums;
     let two_bow = v.all(panel.two_bow);
@@ -221,7 +226,6 @@ fn add_panel<S: Simd>(
     // The step is twice the real part of w (1 + S).
     let second = v.fma(v.add(w[1], w[1]), s[1], v.fnma(v.add(w[0], w[0]), one_and_s, walk.log));
     let logs = v.add(walk.log, second);
-    walk.log = second;
 
     let f0 = v.fma(two_bow, e[1], v.add(v.add(s[0], s[0]), logs));
     let f1 = v.fms(two_bow, rise[1], e[0]);
@@ -237,17 +241,18 @@ fn add_panel<S: Simd>(
     let bend = panel.bend.map(|weight| v.all(weight));
     let scale = v.all(panel.scale);
     let [before, at_first, at_second, _] = walk.entries;
-    walk.entries = [
+    let entries = [
         v.fma(bend[0], bent, before),
         v.fma(bend[1], bent, v.fma(scale, first, at_first)),
         v.fma(bend[2], bent, v.fma(scale, last, at_second)),
         v.mul(bend[3], bent),
     ];
+    Walk { log: second, entries }
 }
 
 /// Adds what [`add_panel`] left out.
 #[inline(always)]
-fn add_exact<S: Simd>(inverse: &Inverse<S>, walk: &mut Walk<S>, exact: impl Fn(usize) -> Exact) {
+fn add_exact<S: Simd>(inverse: &Inverse<S>, walk: Walk<S>, exact: impl Fn(usize) -> Exact) -> Walk<S> {
     let spread = |register: S::f64s| {
         let mut values = [0.0; LANES];
         S::as_mut_simd_f64s(&mut values).0[0] = register;
@@ -265,6 +270,5 @@ fn add_exact<S: Simd>(inverse: &Inverse<S>, walk: &mut Walk<S>, exact: impl Fn(u
             entries[lane] += add;
         }
     }
-    walk.log = gather(&log);
-    walk.entries = entries.each_ref().map(gather);
+    Walk { log: gather(&log), entries: entries.each_ref().map(gather) }
 }

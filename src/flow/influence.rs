@@ -72,7 +72,7 @@ impl pulp::WithSimd for Assembly<'_> {
         let log: Vec<f64> = std::iter::zip(&x, &y)
             .map(|(&x, &y)| 0.5 * (square(nodes[0].x, x) + square(nodes[0].y, y)).ln())
             .collect();
-        let points = Points { x: &x, y: &y, log: &log };
+        let points = Points { count: nodes.len(), x: &x, y: &y, log: &log };
         let panels = self.panelling.panels();
         let constants: Vec<PanelConstants> = panels.iter().map(constants_of).collect();
 

@@ -5,7 +5,7 @@
 //! where it moves the vorticity, and lengthens the panel evenly.
 
 use super::Panelling;
-use super::far_field::{LANES, Near, PanelConstants, Points, add_panel};
+use super::far_field::{Exact, LANES, PanelConstants, Points, fill};
 use super::panelling::Panel;
 use crate::geometry::Point;
 
@@ -19,14 +19,14 @@ pub(super) struct VortexInfluence {
 /// Rows that a system may add below the nodes.
 const SPARE_ROWS: usize = 1;
 /// Columns that a system may add after the nodes.
-const SPARE_COLUMNS: usize = 1;
+const SPARE_COLUMNS: usize = 3;
 
 impl VortexInfluence {
     pub(super) fn of(panelling: &Panelling) -> Self {
         let nodes = panelling.nodes().len();
         let rows = (nodes + SPARE_ROWS).next_multiple_of(LANES);
         // One column more in front takes the weight, nought, of the node before the first.
-        let entries = Vec::with_capacity(rows * (nodes + 1 + SPARE_COLUMNS));
+        let entries = vec![0.0; rows * (nodes + 1 + SPARE_COLUMNS)];
         let mut influence = Self { rows, entries };
         pulp::Arch::new().dispatch(Assembly { panelling, influence: &mut influence });
         influence
@@ -37,7 +37,7 @@ impl VortexInfluence {
         self.rows
     }
 
-    /// The block from the first node's column on, spare column included. Rows below the nodes
+    /// The block from the first node's column on, spare columns included. Rows below the nodes
     /// hold nothing of use.
     pub(super) fn block(&mut self) -> &mut [f64] {
         &mut self.entries[self.rows..]
@@ -68,48 +68,35 @@ impl pulp::WithSimd for Assembly<'_> {
             nodes.iter().map(part).chain(std::iter::repeat(away)).take(rows).collect()
         };
         let (x, y) = (pad(|node| node.x), pad(|node| node.y));
-        let points = Points { x: &x, y: &y };
-        let mut log: Vec<f64> =
-            x.iter().zip(&y).map(|(x, y)| (x - nodes[0].x).hypot(y - nodes[0].y).ln()).collect();
-        let mut near = Near::among(rows);
+        let square = |from: f64, to: f64| (to - from) * (to - from);
+        let log: Vec<f64> = std::iter::zip(&x, &y)
+            .map(|(&x, &y)| 0.5 * (square(nodes[0].x, x) + square(nodes[0].y, y)).ln())
+            .collect();
+        let points = Points { count: nodes.len(), x: &x, y: &y, log: &log };
+        let panels = self.panelling.panels();
+        let constants: Vec<PanelConstants> = panels.iter().map(constants_of).collect();
 
-        for (j, panel) in self.panelling.panels().iter().enumerate() {
-            let constants = constants_of(panel);
-            // A column is cleared just before it is filled, while it is at hand.
-            self.influence.entries.resize((j + 4) * rows, 0.0);
-            let block = &mut self.influence.entries[j * rows..];
-            let (c0, rest) = block.split_at_mut(rows);
-            let (c1, rest) = rest.split_at_mut(rows);
-            let (c2, c3) = rest.split_at_mut(rows);
-            add_panel(
-                simd,
-                &constants,
-                &points,
-                &mut log,
-                [&mut *c0, &mut *c1, &mut *c2, &mut *c3],
-                &mut near,
-            );
-            for &point in near.points.iter().filter(|&&point| point < nodes.len()) {
-                let ([f0, f1, f2], second) = moments(panel, nodes[point]);
-                log[point] = second;
-                let bent = constants.scale * (f2 - f0);
-                c0[point] += constants.bend[0] * bent;
-                c1[point] += constants.bend[1] * bent + constants.scale * (f0 - f1);
-                c2[point] += constants.bend[2] * bent + constants.scale * (f0 + f1);
-                c3[point] += constants.bend[3] * bent;
-            }
-        }
+        fill(simd, &constants, &points, &mut self.influence.entries, |panel, point| {
+            let ([f0, f1, f2], log) = moments(&panels[panel], nodes[point]);
+            let PanelConstants { scale, bend, .. } = constants[panel];
+            let mut columns = bend.map(|weight| weight * (f2 - f0));
+            columns[1] += scale * (f0 - f1);
+            columns[2] += scale * (f0 + f1);
+            Exact { columns, log }
+        });
     }
 }
 
 fn constants_of(panel: &Panel) -> PanelConstants {
     let square = panel.half.hypot2();
+    let inverse = [panel.half.x / square, -panel.half.y / square];
+    let scale = panel.half_length() / (4.0 * std::f64::consts::PI);
     PanelConstants {
-        middle: [panel.middle.x, panel.middle.y],
-        inverse: [panel.half.x / square, -panel.half.y / square],
-        bow: panel.bow,
-        scale: panel.half_length() / (4.0 * std::f64::consts::PI),
-        bend: panel.bend,
+        inverse,
+        origin: product(inverse, [panel.middle.x, panel.middle.y]),
+        two_bow: 2.0 * panel.bow,
+        scale,
+        bend: panel.bend.map(|weight| weight * scale),
     }
 }
 

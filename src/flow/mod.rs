@@ -4,7 +4,9 @@ mod edge;
 mod error;
 mod far_field;
 mod influence;
+mod lanes;
 mod loads;
+mod lu;
 mod panelling;
 mod potential;
 

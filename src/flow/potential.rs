@@ -1,12 +1,9 @@
 //! Potential flow about one outline, solved once for every incidence.
 
-use faer::dyn_stack::{MemBuffer, MemStack};
-use faer::linalg::lu::partial_pivoting::{factor, solve};
-use faer::{MatMut, Par};
-
 use super::edge::{Base, straight_run};
 use super::influence::VortexInfluence;
 use super::loads::{circulation, loads};
+use super::lu::solve_in_place;
 use super::{FlowError, Panelling};
 
 /// Flow about an outline at any incidence: that of two onset directions, of which every other is
@@ -73,10 +70,9 @@ impl PotentialFlow {
         let base = Base::of(panelling);
 
         block[count * stride..][..count].fill(1.0);
-        let mut onset = vec![0.0; 2 * size];
         for (i, node) in nodes.iter().enumerate() {
-            onset[i] = node.y;
-            onset[size + i] = -node.x;
+            block[size * stride + i] = node.y;
+            block[(size + 1) * stride + i] = -node.x;
         }
         if let Some(base) = &base {
             // The edge speed is the mean of both sides, the upper one counted aft.
@@ -87,25 +83,25 @@ impl PotentialFlow {
             }
         } else {
             let row = count - 1;
-            for column in 0..size {
+            for column in 0..size + 2 {
                 block[column * stride + row] = 0.0;
             }
             for (i, weight) in straight_run(panelling).into_iter().enumerate() {
                 block[i * stride + row] += weight;
                 block[(count - 1 - i) * stride + row] -= weight;
             }
-            onset[row] = 0.0;
-            onset[size + row] = 0.0;
         }
-        for column in 0..size {
+        for column in 0..size + 2 {
             block[column * stride + count] = 0.0;
         }
         block[count] = 1.0;
         block[(count - 1) * stride + count] = 1.0;
 
-        solve_in_place(block, stride, &mut onset)?;
-        let part = |column: usize| onset[column * size..][..count].to_vec();
-        let speed = [part(0), part(1)];
+        solve_in_place(block, stride, size);
+        let speed = [size, size + 1].map(|column| block[column * stride..][..count].to_vec());
+        if !speed.iter().flatten().all(|speed| speed.is_finite()) {
+            return Err(FlowError::Singular);
+        }
         let base_circulation = base.map_or(0.0, |base| base.circulation());
         let circulation = [0, 1].map(|k| circulation(panelling, base_circulation, &speed[k]));
         Ok(Self { panelling: panelling.clone(), speed, circulation })
@@ -166,27 +162,4 @@ impl PotentialFlow {
         let sine = cl / self.slope_per_radian();
         (sine.abs() <= 1.0).then(|| self.zero_lift() + sine.asin())
     }
-}
-
-/// Solves for the columns of `right` in place with the leading square of `block`, whose columns
-/// lie `stride` apart.
-fn solve_in_place(block: &mut [f64], stride: usize, right: &mut [f64]) -> Result<(), FlowError> {
-    let size = right.len() / 2;
-    let (mut forward, mut backward) = (vec![0_usize; size], vec![0_usize; size]);
-    let mut matrix = MatMut::from_column_major_slice_with_stride_mut(block, size, size, stride);
-    let right_columns = MatMut::from_column_major_slice_mut(right, size, 2);
-    let scratch = factor::lu_in_place_scratch::<usize, f64>(size, size, Par::Seq, Default::default())
-        .or(solve::solve_in_place_scratch::<usize, f64>(size, 2, Par::Seq));
-    let mut memory = MemBuffer::new(scratch);
-    let stack = MemStack::new(&mut memory);
-    let (_, rows) = factor::lu_in_place(
-        matrix.as_mut(),
-        &mut forward,
-        &mut backward,
-        Par::Seq,
-        stack,
-        Default::default(),
-    );
-    solve::solve_in_place(matrix.as_ref(), matrix.as_ref(), rows, right_columns, Par::Seq, stack);
-    if right.iter().all(|value| value.is_finite()) { Ok(()) } else { Err(FlowError::Singular) }
 }

@@ -31,9 +31,9 @@ pub(super) struct SectionSource {
     /// Designation of the section, such as "NACA 4412", or a section file, such as "mine.toml"
     #[arg(value_name = "SECTION", num_args = 1..=2, required = true)]
     section: Vec<String>,
-    /// How the trailing edge of a designation is finished; section files say it themselves
-    #[arg(long, value_name = "FINISH", default_value = "published")]
-    trailing_edge: TrailingEdgeWord,
+    /// How the trailing edge of a designation is finished [default: published]
+    #[arg(long, value_name = "FINISH")]
+    trailing_edge: Option<TrailingEdgeWord>,
 }
 
 impl SectionSource {
@@ -43,9 +43,19 @@ impl SectionSource {
         let path = Path::new(&section);
         // A designation has no ending, and a path to a section file always has.
         if path.extension().is_some_and(|ending| ending.eq_ignore_ascii_case("toml")) || path.is_file() {
+            if self.trailing_edge.is_some() {
+                return Err(Failure::Input(
+                    "the equations of a section file say how its trailing edge ends: leave out --trailing-edge"
+                        .to_owned(),
+                ));
+            }
             return from_file(path);
         }
-        Section::from_designation(&section, self.trailing_edge.into()).map_err(Failure::input)
+        Section::from_designation(
+            &section,
+            self.trailing_edge.map_or(TrailingEdge::Published, TrailingEdge::from),
+        )
+        .map_err(Failure::input)
     }
 }
 

@@ -213,6 +213,9 @@ impl Equations {
                 return self.fail(x, format!("the thickness is {t:.4} of chord {}", place(x)), FRACTIONS);
             }
         }
+        if let Some(x) = self.waists().into_iter().find(|x| self.at(*x).value() <= SAME) {
+            return self.fail(x, format!("the thickness is nought {}", place(x)), FRACTIONS);
+        }
         if nose[1] < 2.0 * SHARP {
             let help = "a round nose needs a term in sqrt(x); the nose radius is an eighth of the square of its coefficient";
             return self.fail(
@@ -222,6 +225,22 @@ impl Equations {
             );
         }
         Ok(())
+    }
+
+    /// Where a thickness has a least value between two stations.
+    fn waists(&self) -> Vec<f64> {
+        let root = |i: u32| f64::from(i) / f64::from(INTERVALS);
+        let rises = |r: f64| self.at_root(r).derivatives()[1] > 0.0;
+        let turns = (1..INTERVALS).filter(|i| !rises(root(*i)) && rises(root(i + 1)));
+        let waist = |i: u32| {
+            let (mut low, mut high) = (root(i), root(i + 1));
+            for _ in 0..60 {
+                let middle = 0.5 * (low + high);
+                if rises(middle) { high = middle } else { low = middle }
+            }
+            high * high
+        };
+        turns.map(waist).collect()
     }
 
     /// Refuses what is not finite, steps at a joint, and what changes faster than its slope says.

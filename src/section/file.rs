@@ -6,6 +6,7 @@ use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeString, DeTable, DeValue};
 
+use super::expression::known_names;
 use super::{EquationError, Equations, Expression, MeanLine, Piece, Section, ThicknessForm};
 use crate::problems::{FileErrors, Problems, Wrong};
 use crate::units::{clipped, nearest};
@@ -13,11 +14,6 @@ use crate::units::{clipped, nearest};
 /// The largest section file that is read, in bytes.
 pub const LARGEST_SECTION_FILE: usize = 100_000;
 const MOST_CONSTANTS: usize = 200;
-/// Names that an expression has a meaning for by itself.
-const TAKEN: [&str; 19] = [
-    "x", "pi", "e", "sqrt", "exp", "ln", "log10", "sin", "cos", "tan", "asin", "acos", "atan", "sinh",
-    "cosh", "tanh", "abs", "min", "max",
-];
 
 pub(super) fn parse(text: &str, file_name: &str) -> Result<Section, FileErrors> {
     let mut file = File { text, problems: Problems::default(), constants: BTreeMap::new() };
@@ -162,7 +158,7 @@ impl File<'_> {
         let letters = |c: char| c.is_ascii_alphanumeric() || c == '_';
         let starts = name.starts_with(|c: char| c.is_ascii_alphabetic() || c == '_');
         let shown = clipped(name);
-        if TAKEN.contains(&name.as_ref()) {
+        if known_names().any(|known| known == name.as_ref()) {
             self.wrong(
                 key.span(),
                 format!("'{shown}' has a meaning of its own in expressions"),
@@ -179,10 +175,10 @@ impl File<'_> {
 
     /// The equations under a key: one text, or a list of pieces.
     fn equations(&mut self, key: &str, value: &'static str, raw: &Spanned<DeValue<'_>>) -> Option<Placed> {
-        let (pieces, places): (Vec<Piece>, Vec<Range<usize>>) = match raw.get_ref() {
+        let (pieces, places): (Vec<Piece>, Vec<[Range<usize>; 2]>) = match raw.get_ref() {
             DeValue::String(_) => {
                 let value = self.expression(raw)?;
-                (vec![Piece { from: 0.0, to: 1.0, value }], vec![raw.span()])
+                (vec![Piece { from: 0.0, to: 1.0, value }], vec![[raw.span(), raw.span()]])
             }
             DeValue::Array(array) if array.len() > 0 && array.len() <= super::equations::MOST_PIECES => {
                 let read: Vec<_> = array.iter().map(|raw| self.piece(key, value, raw)).collect();
@@ -201,7 +197,9 @@ impl File<'_> {
             }
         };
         let equations = Equations::new(pieces);
-        self.noted(equations, &places).map(|equations| (equations, places))
+        // How the pieces join is marked at their heads, what is in them at their expressions.
+        let (heads, values): (Vec<_>, Vec<_>) = places.into_iter().map(|[head, value]| (head, value)).unzip();
+        self.noted(equations, &heads).map(|equations| (equations, values))
     }
 
     fn piece(
@@ -209,7 +207,7 @@ impl File<'_> {
         key: &str,
         value: &'static str,
         raw: &Spanned<DeValue<'_>>,
-    ) -> Option<(Piece, Range<usize>)> {
+    ) -> Option<(Piece, [Range<usize>; 2])> {
         let DeValue::Table(table) = raw.get_ref() else {
             self.wrong(
                 raw.span(),
@@ -229,9 +227,9 @@ impl File<'_> {
         }
         let from = table.get("from").and_then(|raw| self.end(raw));
         let to = table.get("to").and_then(|raw| self.end(raw));
-        let raw = table.get(value)?;
-        let value = self.expression(raw);
-        Some((Piece { from: from?, to: to?, value: value? }, raw.span()))
+        let text = table.get(value)?;
+        let value = self.expression(text);
+        Some((Piece { from: from?, to: to?, value: value? }, [raw.span(), text.span()]))
     }
 
     /// An end of a piece: a number, or an expression without x.

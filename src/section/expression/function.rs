@@ -41,7 +41,7 @@ const NAMES: [(&str, Function); 14] = [
 ];
 
 /// Every name that an expression knows by itself, but for the constants of its file.
-pub(super) fn known_names() -> impl Iterator<Item = &'static str> {
+pub(in crate::section) fn known_names() -> impl Iterator<Item = &'static str> {
     NAMES.into_iter().map(|(name, _)| name).chain(["min", "max", "x", "pi", "e"])
 }
 

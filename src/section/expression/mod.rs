@@ -15,6 +15,8 @@ use std::collections::BTreeMap;
 pub use error::ExpressionError;
 pub use taylor::Taylor;
 
+pub(super) use function::known_names;
+
 use function::Function;
 
 /// The longest text of an expression, in bytes.

@@ -94,7 +94,7 @@ impl Taylor {
         let rise = lead as f64 * power;
         if power < 0.0 || rise.fract() != 0.0 {
             return Self([0.0, 1.0, 2.0, 3.0].map(|order| {
-                let vanishes = order < rise && self.0[lead] > 0.0;
+                let vanishes = power > 0.0 && (order == 0.0 || order < rise && self.0[lead] > 0.0);
                 if vanishes { 0.0 } else { f64::NAN }
             }));
         }
@@ -107,7 +107,7 @@ impl Taylor {
         for (order, into) in risen.iter_mut().enumerate() {
             if order as f64 >= rise {
                 *into = series[order - rise as usize];
-            } else if series[0].is_nan() {
+            } else if order > 0 && series[0].is_nan() {
                 *into = f64::NAN;
             }
         }

@@ -168,6 +168,21 @@ fn no_text_takes_long_or_goes_too_deep() {
     assert!(start.elapsed() < Duration::from_secs(5), "{:?}", start.elapsed());
 }
 
+/// As much work as a file of the greatest size can ask for: corners without end in every piece.
+#[test]
+fn a_hostile_file_is_answered_in_time() {
+    let start = Instant::now();
+    let restless = vec!["abs(sin(1e9*x))"; 120].join("+");
+    let mut text = "name = \"a\"\n".to_owned();
+    for i in 0..9 {
+        let (from, to) = (f64::from(i) / 9.0, f64::from(i + 1) / 9.0);
+        text.push_str(&format!("[[thickness]]\nfrom = {from}\nto = {to}\nt = \"{restless}\"\n"));
+    }
+    assert!(text.len() < LARGEST_SECTION_FILE && text.len() > LARGEST_SECTION_FILE * 4 / 5);
+    assert!(Section::from_file_text(&text, "a.toml").is_err());
+    assert!(start.elapsed() < Duration::from_secs(20), "{:?}", start.elapsed());
+}
+
 #[test]
 fn corners_take_the_side_of_greater_x() {
     for (text, slope) in

@@ -46,7 +46,7 @@ impl Design {
 
 fn read(text: &str, problems: &mut Problems) -> Option<Design> {
     if text.len() > LARGEST_FILE {
-        let message = format!("the file has more than {LARGEST_FILE} bytes, the most that a design may have");
+        let message = format!("the file has too many bytes: a design has {LARGEST_FILE} at most");
         problems.add(0..0, Wrong::new(message));
         return None;
     }

@@ -42,6 +42,8 @@ pub struct EquationError {
 const INTERVALS: u32 = 2000;
 /// The most pieces that a line has.
 pub(super) const MOST_PIECES: usize = 50;
+/// The most corners that are looked for in a piece; each takes some sixty evaluations.
+const MOST_CORNERS: usize = 100;
 /// Two ends nearer than this are one, in chords.
 const SAME: f64 = 1e-9;
 /// Greatest step between two pieces, in chords: a ten-thousandth of a millimetre on a metre.
@@ -82,14 +84,15 @@ impl Equations {
         }
         let mut end = 0.0;
         for (i, piece) in pieces.iter().enumerate() {
-            if !((piece.from - end).abs() <= SAME) {
+            if !within(piece.from - end, SAME) {
                 return fail(
                     i,
                     end,
                     format!("this piece begins at {}, and the one before it ends at {end}", piece.from),
                 );
             }
-            if !(piece.to > piece.from + SAME) {
+            let covers = piece.to > piece.from + SAME;
+            if !covers {
                 return fail(
                     i,
                     end,
@@ -98,7 +101,7 @@ impl Equations {
             }
             end = piece.to;
         }
-        if !((end - 1.0).abs() <= SAME) {
+        if !within(end - 1.0, SAME) {
             return fail(
                 pieces.len().saturating_sub(1),
                 end,
@@ -264,7 +267,7 @@ impl Equations {
         }
         for &x in self.joints.iter() {
             let [before, after] = self.about(x).map(|side| side.value());
-            if !((after - before).abs() <= STEP) {
+            if !within(after - before, STEP) {
                 let message =
                     format!("there is a step {}, from {before:.7} to {after:.7} of chord", place(x));
                 return self.fail(x, message, "neighbouring pieces must meet");
@@ -279,7 +282,7 @@ impl Equations {
             }
             let [a, b, c] = [from, 0.5 * (from + to), to].map(|v| line(self, v).derivatives());
             let change = (to - from) * (a[1] + 4.0 * b[1] + c[1]) / 6.0;
-            if !((c[0] - a[0] - change).abs() <= STEP) {
+            if !within(c[0] - a[0] - change, STEP) {
                 let message = format!("the value jumps or swings too fast {}", place(x_from));
                 return self.fail(x_from, message, DEFINED);
             }
@@ -306,6 +309,11 @@ impl Equations {
     fn fail(&self, x: f64, message: String, help: &'static str) -> Result<(), EquationError> {
         Err(EquationError { piece: self.index(x), x, message, help })
     }
+}
+
+/// Whether a difference is small; what is no number is not.
+fn within(difference: f64, limit: f64) -> bool {
+    difference.abs() <= limit
 }
 
 fn station(i: u32) -> f64 {
@@ -337,9 +345,10 @@ fn corners(piece: &Piece) -> Vec<f64> {
                     between.end = middle;
                 }
             }
+            found.push(between.end);
             // More than these are no design; the check of the slopes refuses what is left out.
-            if found.len() < 100 {
-                found.push(between.end);
+            if found.len() >= MOST_CORNERS {
+                return found;
             }
         }
         before = here;

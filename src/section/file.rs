@@ -11,8 +11,8 @@ use super::{EquationError, Equations, Expression, MeanLine, Piece, Section, Thic
 use crate::problems::{FileErrors, Problems, Wrong};
 use crate::units::{clipped, nearest};
 
-/// The largest section file that is read, in bytes.
-pub const LARGEST_SECTION_FILE: usize = 100_000;
+/// The largest section file that is read, in bytes. It bounds the work that a file can ask for.
+pub const LARGEST_SECTION_FILE: usize = 20_000;
 const MOST_CONSTANTS: usize = 200;
 
 pub(super) fn parse(text: &str, file_name: &str) -> Result<Section, FileErrors> {
@@ -180,7 +180,7 @@ impl File<'_> {
                 let value = self.expression(raw)?;
                 (vec![Piece { from: 0.0, to: 1.0, value }], vec![[raw.span(), raw.span()]])
             }
-            DeValue::Array(array) if array.len() > 0 && array.len() <= super::equations::MOST_PIECES => {
+            DeValue::Array(array) if !array.is_empty() && array.len() <= super::equations::MOST_PIECES => {
                 let read: Vec<_> = array.iter().map(|raw| self.piece(key, value, raw)).collect();
                 read.into_iter().collect::<Option<Vec<_>>>()?.into_iter().unzip()
             }

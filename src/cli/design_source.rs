@@ -1,22 +1,41 @@
 //! The design file a command line names.
 
+use std::io::Read;
 use std::path::Path;
 
-use plankform::design::Design;
+use plankform::design::{Design, LARGEST_FILE};
 
 use super::failure::Failure;
 
 /// Reads and understands a design file; every problem of it is reported at once.
 pub(super) fn read(path: &Path) -> Result<Design, Failure> {
-    let bytes = std::fs::read(path).map_err(|e| Failure::reading(path.display(), &e))?;
-    let text = String::from_utf8(bytes).map_err(|e| {
+    let text = text_of(path, LARGEST_FILE, "a design file")?;
+    Design::parse(&text, &path.display().to_string())
+        .map_err(|errors| Failure::Input(errors.render(in_colour())))
+}
+
+/// The text of a file, read no further than just past `largest` bytes: the parser refuses it then.
+pub(super) fn text_of(path: &Path, largest: usize, what: &str) -> Result<String, Failure> {
+    let failed = |e: std::io::Error| Failure::reading(path.display(), &e);
+    let file = std::fs::File::open(path).map_err(failed)?;
+    let mut bytes = Vec::new();
+    file.take(largest as u64 + 1).read_to_end(&mut bytes).map_err(failed)?;
+    let cut = bytes.len() > largest;
+    String::from_utf8(bytes).or_else(|e| {
         let at = e.utf8_error().valid_up_to();
-        Failure::Input(format!(
-            "{}: byte {at} is not UTF-8 text: a design file is plain text in TOML",
+        // The cut may have gone through a character.
+        if cut && e.utf8_error().error_len().is_none() {
+            return Ok(" ".repeat(largest + 1));
+        }
+        Err(Failure::Input(format!(
+            "{}: byte {at} is not UTF-8 text: {what} is plain text in TOML",
             path.display()
-        ))
-    })?;
-    let colour = std::env::var_os("NO_COLOR").is_none_or(|v| v.is_empty())
-        && std::io::IsTerminal::is_terminal(&std::io::stderr());
-    Design::parse(&text, &path.display().to_string()).map_err(|errors| Failure::Input(errors.render(colour)))
+        )))
+    })
+}
+
+/// Whether reports on standard error may be coloured.
+pub(super) fn in_colour() -> bool {
+    std::env::var_os("NO_COLOR").is_none_or(|v| v.is_empty())
+        && std::io::IsTerminal::is_terminal(&std::io::stderr())
 }

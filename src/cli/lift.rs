@@ -76,7 +76,7 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
         Format::Csv => print(&table(&points, arguments.pressure).map_err(Failure::input)?)?,
         Format::Json => print_json(&json!({
             "section": section.name(),
-            "trailing_edge": section.thickness_form().trailing_edge().word(),
+            "trailing_edge": section.thickness_form().edge_word(),
             "curves": [curve(&flow, &points, arguments.pressure)],
         }))?,
     }

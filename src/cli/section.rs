@@ -72,7 +72,7 @@ fn json(section: &Section, chord: Option<Length>, points: &[Point]) -> Value {
     let n = section.numbers();
     json!({
         "section": section.name(),
-        "trailing_edge": section.thickness_form().trailing_edge().word(),
+        "trailing_edge": section.thickness_form().edge_word(),
         "unit": if chord.is_some() { "mm" } else { "chord" },
         "thickness": n.thickness * scale,
         "thickness_at": n.thickness_at * scale,
@@ -105,7 +105,7 @@ fn text(section: &Section, chord: Option<Length>) -> String {
         area,
         centroid,
     } = section.numbers();
-    let edge = section.thickness_form().trailing_edge().word();
+    let edge = section.thickness_form().edge_word();
     let length = |v: f64| format!("{:.places$} {unit}", v * scale);
     let area_unit = if chord.is_some() { "mm²" } else { "% of chord²" };
     let area_scale = if chord.is_some() { scale * scale } else { scale };

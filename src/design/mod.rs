@@ -8,7 +8,6 @@ mod fingerprint;
 mod keys;
 mod model;
 mod page;
-mod problem;
 mod reader;
 mod resolve;
 mod schema;
@@ -16,13 +15,13 @@ mod starter;
 mod value;
 mod wing;
 
+pub use crate::problems::{FileErrors as DesignErrors, Problem};
 pub use model::{Design, Flap, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
 pub use page::key_tables;
-pub use problem::{DesignErrors, Problem};
 pub use schema::schema;
 pub use starter::starter;
 
-use problem::{Problems, Wrong};
+use crate::problems::{Problems, Wrong};
 use toml::de::DeTable;
 
 /// The largest design file that is read, in bytes.
@@ -47,7 +46,7 @@ impl Design {
 
 fn read(text: &str, problems: &mut Problems) -> Option<Design> {
     if text.len() > LARGEST_FILE {
-        let message = format!("the file has {} bytes: a design has {LARGEST_FILE} at most", text.len());
+        let message = format!("the file has too many bytes: a design has {LARGEST_FILE} at most");
         problems.add(0..0, Wrong::new(message));
         return None;
     }

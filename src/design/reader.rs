@@ -7,8 +7,8 @@ use toml::Spanned;
 use toml::de::{DeArray, DeString, DeTable, DeValue};
 
 use super::keys::{Key, Otherwise, ROOT, TABLES, Table, Times};
-use super::problem::{Problems, Wrong};
 use super::value::{self, Value};
+use crate::problems::{Problems, Wrong};
 use crate::units::{Angle, Length, clipped, nearest};
 
 /// A file whose tables and keys have been read one by one; what was wrong is left out of it.

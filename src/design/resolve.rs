@@ -4,8 +4,8 @@ use std::ops::Range;
 
 use super::keys;
 use super::model::{Design, Flap, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
-use super::problem::{Problems, Wrong};
 use super::reader::{Row, Sheet};
+use crate::problems::{Problems, Wrong};
 use crate::section::{Section, TrailingEdge};
 use crate::units::{Angle, Length};
 

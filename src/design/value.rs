@@ -6,7 +6,7 @@ use toml::Spanned;
 use toml::de::DeValue;
 
 use super::keys::{Key, Takes};
-use super::problem::{Problems, Wrong};
+use crate::problems::{Problems, Wrong};
 use crate::units::{ANGLE, Angle, LENGTH, Length, Quantity, UnitError, clipped, nearest, plain};
 
 /// A value that its key takes.

@@ -105,4 +105,14 @@ pub enum SectionError {
         /// Where along the chord.
         percent: f64,
     },
+    /// The two surfaces meet between nose and trailing edge.
+    #[error(
+        "{name}: the surfaces cross near {percent:.1} % of chord; take less camber, or more thickness there"
+    )]
+    SurfacesCross {
+        /// Designation.
+        name: String,
+        /// Where along the chord.
+        percent: f64,
+    },
 }

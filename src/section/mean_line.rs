@@ -1,6 +1,6 @@
 //! Mean (camber) lines.
 
-use super::{SectionError, UniformLoad};
+use super::{EquationError, Equations, SectionError, UniformLoad};
 
 /// Ordinate of a mean line and its derivatives with respect to x, all in unit chord.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -16,7 +16,7 @@ pub struct Ordinate {
 }
 
 /// The line midway between the surfaces, over x in [0, 1].
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, PartialEq)]
 pub enum MeanLine {
     /// No camber.
     Straight,
@@ -44,6 +44,8 @@ pub enum MeanLine {
     },
     /// Load uniform up to a station, then falling evenly to nothing.
     UniformLoad(UniformLoad),
+    /// The user's own expressions, by [`MeanLine::from_equations`], which checks them.
+    Equations(Equations),
 }
 
 /// Constants published for a design lift coefficient of 0.3: position digit, joint, front cubic,
@@ -76,10 +78,24 @@ impl MeanLine {
         Ok(Self::FiveDigit { joint, front: front * (design_lift / 0.3), rear_ratio })
     }
 
+    /// A mean line from expressions for its height over x, both fractions of the chord.
+    ///
+    /// # Errors
+    /// With the place, when it is not finite or not smooth, steps, turns sharply, is too steep or
+    /// too high, or does not begin and end at 0.
+    pub fn from_equations(equations: Equations) -> Result<Self, EquationError> {
+        equations.refuse_as_mean_line()?;
+        Ok(Self::Equations(equations))
+    }
+
     /// Ordinate and derivatives at `x`; at the joint, those of the rear piece.
     #[must_use]
     pub fn at(&self, x: f64) -> Ordinate {
         match *self {
+            Self::Equations(ref equations) => {
+                let [y, slope, second, third] = equations.at(x).derivatives();
+                Ordinate { y, slope, second, third }
+            }
             Self::Straight => Ordinate { y: 0.0, slope: 0.0, second: 0.0, third: 0.0 },
             Self::UniformLoad(line) => line.at(x),
             Self::FourDigit { camber, position: p } => {
@@ -116,6 +132,7 @@ impl MeanLine {
     #[must_use]
     pub fn joints(&self) -> Vec<f64> {
         match *self {
+            Self::Equations(ref equations) => equations.joints().to_vec(),
             Self::Straight => Vec::new(),
             Self::FourDigit { position, .. } => vec![position],
             Self::FiveDigit { joint, .. } => vec![joint],

@@ -1,19 +1,28 @@
 //! A foil section at unit chord: nose at the origin, trailing edge at x = 1, y upwards.
 
 mod designation;
+mod equations;
 mod error;
+mod expression;
+mod file;
 mod mean_line;
 mod numbers;
 mod thickness;
 mod uniform_load;
 
+pub use equations::{EquationError, Equations, Piece};
 pub use error::SectionError;
+pub use expression::{
+    DEEPEST as DEEPEST_EXPRESSION, Expression, ExpressionError, LONGEST as LONGEST_EXPRESSION, Taylor,
+};
+pub use file::LARGEST_SECTION_FILE;
 pub use mean_line::{MeanLine, Ordinate};
 pub use numbers::Numbers;
 pub use thickness::{ThicknessForm, TrailingEdge};
 pub use uniform_load::UniformLoad;
 
 use crate::geometry::{BezPath, Curve, Jet, Point, Vec2, fitted_outline, height_at};
+use crate::problems::FileErrors;
 
 /// Stations at which ordinates are tabulated, percent of chord: those of the published tables, with
 /// one more near the nose and one near the trailing edge.
@@ -71,6 +80,14 @@ impl Section {
         designation::parse(text, trailing_edge)
     }
 
+    /// A section from the text of a section file; `file_name` is only repeated in messages.
+    ///
+    /// # Errors
+    /// What is wrong with the file, each with its place and what would be right.
+    pub fn from_file_text(text: &str, file_name: &str) -> Result<Self, FileErrors> {
+        file::parse(text, file_name)
+    }
+
     /// Designation.
     #[must_use]
     pub fn name(&self) -> &str {
@@ -114,6 +131,25 @@ impl Section {
     #[must_use]
     pub fn outline(&self, tolerance: f64) -> BezPath {
         fitted_outline(self, tolerance)
+    }
+
+    /// Refuses surfaces that meet elsewhere than at the nose and the trailing edge.
+    fn refuse_crossing_surfaces(&self) -> Result<(), SectionError> {
+        let mut points = self.points(801);
+        let (first, last) = (points.first().copied(), points.last().copied());
+        // A closed edge is one point and not two.
+        if let (Some(first), Some(last)) = (first, last)
+            && first.distance(last) < 1e-9
+        {
+            points.pop();
+        }
+        crate::geometry::polygon::refuse_crossings(&points).map_err(|error| {
+            let percent = match error {
+                crate::geometry::GeometryError::Crosses { x, .. } => 100.0 * x,
+                _ => 0.0,
+            };
+            SectionError::SurfacesCross { name: self.name.clone(), percent }
+        })
     }
 
     fn refuse_folds(&self) -> Result<(), SectionError> {
@@ -164,7 +200,7 @@ impl Curve for Section {
 
     fn breaks(&self) -> Vec<f64> {
         let mut roots: Vec<f64> = self.mean_line.joints().into_iter().map(f64::sqrt).collect();
-        roots.extend(self.thickness.joint().map(f64::sqrt));
+        roots.extend(self.thickness.joints().into_iter().map(f64::sqrt));
         roots.push(1.0);
         roots.sort_by(f64::total_cmp);
         roots.dedup();

@@ -1,5 +1,7 @@
 //! Thickness forms: how the half thickness runs from nose to trailing edge.
 
+use super::{EquationError, Equations};
+
 /// How the trailing edge of a published form is finished.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Hash, serde::Serialize)]
 #[serde(rename_all = "lowercase")]
@@ -24,7 +26,7 @@ impl TrailingEdge {
 }
 
 /// Half thickness over x in [0, 1].
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, PartialEq)]
 pub struct ThicknessForm {
     /// Nominal thickness, a fraction of the chord.
     thickness: f64,
@@ -33,7 +35,7 @@ pub struct ThicknessForm {
 }
 
 /// Half thickness for a nominal thickness of one.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, PartialEq)]
 enum Law {
     /// Coefficients of √x, x, x², x³, x⁴.
     FourDigit([f64; 5]),
@@ -45,6 +47,8 @@ enum Law {
         /// Coefficients of 1, (1 - x), (1 - x)², (1 - x)³ behind it.
         aft: [f64; 4],
     },
+    /// The user's own full thickness; the nominal thickness is a half then.
+    Equations(Equations),
 }
 
 /// The coefficient of √x that gives the usual nose, for a nominal thickness of one.
@@ -112,10 +116,31 @@ impl ThicknessForm {
         Some(Self { thickness, trailing_edge, law })
     }
 
-    /// How the trailing edge is finished.
+    /// A form from expressions for the full thickness over x, both fractions of the chord.
+    ///
+    /// # Errors
+    /// With the place, when it is not finite or not smooth, steps, is negative, nought or too
+    /// great, or has no round nose.
+    pub fn from_equations(equations: Equations) -> Result<Self, EquationError> {
+        equations.refuse_as_thickness()?;
+        let open = equations.at_root(1.0).value() > 1e-9;
+        let trailing_edge = if open { TrailingEdge::Published } else { TrailingEdge::Closed };
+        Ok(Self { thickness: 0.5, trailing_edge, law: Law::Equations(equations) })
+    }
+
+    /// How the trailing edge is finished; of expressions, whether they close it.
     #[must_use]
     pub fn trailing_edge(&self) -> TrailingEdge {
         self.trailing_edge
+    }
+
+    /// The word for the trailing edge: `published`, `closed`, or `open` for the user's own.
+    #[must_use]
+    pub fn edge_word(&self) -> &'static str {
+        match (&self.law, self.trailing_edge) {
+            (Law::Equations(_), TrailingEdge::Published) => "open",
+            (_, edge) => edge.word(),
+        }
     }
 
     /// Half thickness at x = `root`², with its first and second derivatives with respect to
@@ -124,6 +149,10 @@ impl ThicknessForm {
     pub fn half_at_root(&self, root: f64) -> [f64; 3] {
         let (r, x) = (root, root * root);
         let values = match self.law {
+            Law::Equations(ref equations) => {
+                let [value, first, second, _] = equations.at_root(r).derivatives();
+                [value, first, second]
+            }
             Law::FourDigit([a, b, c, d, e]) => [
                 r * (a + r * (b + x * (c + x * (d + x * e)))),
                 a + r * (2.0 * b + x * (4.0 * c + x * (6.0 * d + x * 8.0 * e))),
@@ -143,12 +172,13 @@ impl ThicknessForm {
         values.map(|v| v * self.thickness)
     }
 
-    /// Where the form changes from one polynomial to the next, strictly inside (0, 1).
+    /// Where the form changes from one piece to the next, ascending and strictly inside (0, 1).
     #[must_use]
-    pub fn joint(&self) -> Option<f64> {
-        match self.law {
-            Law::FourDigit(_) => None,
-            Law::Modified { joint, .. } => Some(joint),
+    pub fn joints(&self) -> Vec<f64> {
+        match &self.law {
+            Law::FourDigit(_) => Vec::new(),
+            Law::Modified { joint, .. } => vec![*joint],
+            Law::Equations(equations) => equations.joints().to_vec(),
         }
     }
 
@@ -158,7 +188,10 @@ impl ThicknessForm {
     /// usual nose.
     #[must_use]
     pub fn nose_radius(&self) -> f64 {
-        let (Law::FourDigit([nose, ..]) | Law::Modified { fore: [nose, ..], .. }) = self.law;
+        let nose = match &self.law {
+            Law::FourDigit([nose, ..]) | Law::Modified { fore: [nose, ..], .. } => *nose,
+            Law::Equations(equations) => equations.at_root(0.0).derivatives()[1],
+        };
         (nose * self.thickness).powi(2) / 2.0
     }
 }

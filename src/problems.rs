@@ -1,4 +1,4 @@
-//! What is wrong with a design file, where it stands, and what would be right.
+//! What is wrong with a file of the user, where it stands, and what would be right.
 
 use std::fmt;
 use std::ops::Range;
@@ -14,7 +14,7 @@ const KEPT: usize = 100;
 /// The longest piece of a line that is shown, in characters.
 const SHOWN: usize = 200;
 
-/// One thing that is wrong with a design file.
+/// One thing that is wrong with a file.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Problem {
     /// Bytes of the file that it concerns.
@@ -29,9 +29,9 @@ pub struct Problem {
     pub help: Option<String>,
 }
 
-/// Everything that is wrong with a design file, in the order in which it stands there.
+/// Everything that is wrong with a file, in the order in which it stands there.
 #[derive(Debug, Clone, PartialEq, Eq)]
-pub struct DesignErrors {
+pub struct FileErrors {
     file: String,
     problems: Vec<Problem>,
     /// The line of each problem, as it may be shown.
@@ -48,7 +48,7 @@ struct Shown {
     cut: bool,
 }
 
-impl DesignErrors {
+impl FileErrors {
     /// The problems: at least one, at most a hundred.
     #[must_use]
     pub fn problems(&self) -> &[Problem] {
@@ -103,53 +103,53 @@ impl DesignErrors {
     }
 }
 
-impl fmt::Display for DesignErrors {
+impl fmt::Display for FileErrors {
     fn fmt(&self, formatter: &mut fmt::Formatter<'_>) -> fmt::Result {
         formatter.write_str(&self.render(false))
     }
 }
 
-impl std::error::Error for DesignErrors {}
+impl std::error::Error for FileErrors {}
 
 /// Gathers the problems of a file while it is read.
 #[derive(Default)]
-pub(super) struct Problems {
+pub(crate) struct Problems {
     found: Vec<(Range<usize>, Wrong)>,
     dropped: usize,
 }
 
 /// What is wrong and what would be right, before its place is known.
-pub(super) struct Wrong {
+pub(crate) struct Wrong {
     message: String,
     help: Option<String>,
 }
 
 impl Wrong {
     /// Something wrong of which the message says all. What it repeats of the file is made harmless.
-    pub(super) fn new(message: impl AsRef<str>) -> Self {
+    pub(crate) fn new(message: impl AsRef<str>) -> Self {
         Self { message: message.as_ref().chars().map(harmless).collect(), help: None }
     }
 
     /// The same with what would be right.
-    pub(super) fn help(self, help: impl AsRef<str>) -> Self {
+    pub(crate) fn help(self, help: impl AsRef<str>) -> Self {
         Self { help: Some(help.as_ref().chars().map(harmless).collect()), ..self }
     }
 }
 
 impl Problems {
     /// Notes a problem of the bytes in `span`.
-    pub(super) fn add(&mut self, span: Range<usize>, wrong: Wrong) {
+    pub(crate) fn add(&mut self, span: Range<usize>, wrong: Wrong) {
         // Room to sort in, since the file is not read in the order in which it is written.
         if self.found.len() < 100 * KEPT { self.found.push((span, wrong)) } else { self.dropped += 1 }
     }
 
     /// Whether nothing was wrong.
-    pub(super) fn is_empty(&self) -> bool {
+    pub(crate) fn is_empty(&self) -> bool {
         self.found.is_empty()
     }
 
     /// The report on `source`, a file called `file`.
-    pub(super) fn report(mut self, source: &str, file: &str) -> DesignErrors {
+    pub(crate) fn report(mut self, source: &str, file: &str) -> FileErrors {
         self.found.sort_by_key(|(span, _)| (span.start, span.end));
         let more = self.dropped + self.found.len().saturating_sub(KEPT);
         self.found.truncate(KEPT);
@@ -160,7 +160,7 @@ impl Problems {
             lines.push(place.shown(span.end));
             problems.push(Problem { span, line: place.line, column: place.column(), message, help });
         }
-        DesignErrors { file: file.chars().map(harmless).collect(), problems, lines, more }
+        FileErrors { file: file.chars().map(harmless).collect(), problems, lines, more }
     }
 }
 

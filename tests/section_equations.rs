@@ -355,7 +355,7 @@ fn a_crossing_of_the_surfaces_is_refused() {
 #[test]
 fn the_verbs_take_section_files() {
     let bench = Bench::new();
-    let file = demo("scow-section.toml");
+    let file = demo("sections/scow-section.toml");
     let path = file.to_str().expect("a path");
     let answer = bench.run(&["section", path, "--format", "json"]);
     assert_eq!(answer.status, 0, "{}", answer.err);

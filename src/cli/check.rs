@@ -2,8 +2,8 @@
 
 use std::path::PathBuf;
 
-use plankform::export::number;
 use plankform::pack::{Check, run_checks};
+use plankform::units::number;
 use serde_json::json;
 
 use super::failure::Failure;

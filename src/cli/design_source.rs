@@ -25,7 +25,7 @@ pub(super) fn text_of(path: &Path, largest: usize, what: &str) -> Result<String,
         let at = e.utf8_error().valid_up_to();
         // The cut may have gone through a character.
         if cut && e.utf8_error().error_len().is_none() {
-            return Ok(" ".repeat(largest + 1));
+            return Ok(String::from_utf8_lossy(e.as_bytes()).into_owned());
         }
         Err(Failure::Input(format!(
             "{}: byte {at} is not UTF-8 text: {what} is plain text in TOML",

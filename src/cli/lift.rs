@@ -4,8 +4,8 @@ use std::path::PathBuf;
 
 use plankform::export::chart::{Chart, Series};
 use plankform::export::csv::csv;
-use plankform::export::fixed;
 use plankform::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
+use plankform::units::fixed;
 use serde_json::{Value, json};
 
 use super::failure::Failure;

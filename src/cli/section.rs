@@ -2,10 +2,10 @@
 
 use std::path::PathBuf;
 
-use plankform::export::{csv::csv, fixed, svg_page};
+use plankform::export::{csv::csv, svg_page};
 use plankform::geometry::{Affine, ArcPath, Curve, Point};
 use plankform::section::{Numbers, ORDINATE_STATIONS, Section, Side};
-use plankform::units::Length;
+use plankform::units::{Length, fixed};
 use plankform::workshop::{Drawing, Role, single_page};
 use serde_json::{Value, json};
 

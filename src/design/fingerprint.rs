@@ -5,7 +5,7 @@ use std::fmt::Write;
 use sha2::{Digest, Sha256};
 
 use super::model::Design;
-use crate::units::{Angle, Length};
+use crate::units::{Angle, Length, fixed};
 
 impl Design {
     /// Eight hexadecimal digits such as `3f9a-01c7`, the first of a SHA-256 over everything that
@@ -47,7 +47,8 @@ impl Design {
         }));
         lines.extend(self.templates.iter().map(|at| format!("template {}", mm(*at))));
         lines.extend(
-            self.flap.map(|flap| format!("flap {} {} {}", fixed(flap.hinge), mm(flap.from), mm(flap.to))),
+            self.flap
+                .map(|flap| format!("flap {} {} {}", fixed(flap.hinge, PLACES), mm(flap.from), mm(flap.to))),
         );
         let all = |what: &str, lengths: &[Length]| {
             let each: Vec<String> = lengths.iter().map(|&length| mm(length)).collect();
@@ -60,16 +61,14 @@ impl Design {
     }
 }
 
-/// A nanometre is far below any tool and far above the rounding of another unit.
-fn fixed(value: f64) -> String {
-    let text = format!("{value:.6}");
-    if text == "-0.000000" { "0.000000".to_owned() } else { text }
-}
+/// Decimals of every value: a nanometre is far below any tool and far above the rounding of
+/// another unit.
+const PLACES: usize = 6;
 
 fn mm(length: Length) -> String {
-    fixed(length.mm())
+    fixed(length.mm(), PLACES)
 }
 
 fn degrees(angle: Angle) -> String {
-    fixed(angle.degrees())
+    fixed(angle.degrees(), PLACES)
 }

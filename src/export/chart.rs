@@ -4,7 +4,7 @@
 use std::fmt::Write as _;
 
 use super::html::escaped;
-use super::number;
+use crate::units::number;
 
 /// One line of a chart.
 #[derive(Debug, Clone, PartialEq)]

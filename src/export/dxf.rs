@@ -65,7 +65,7 @@ impl Writer {
 
     fn real(&mut self, code: u16, value: f64) {
         // A real needs its decimal point to be read as one by strict readers.
-        let short = super::number(value, PLACES);
+        let short = crate::units::number(value, PLACES);
         let text = if short.contains('.') { short } else { format!("{short}.0") };
         self.pair(code, text);
     }

@@ -23,20 +23,3 @@ pub struct ExportError {
     /// What its library said.
     pub why: String,
 }
-
-/// A number with so many decimals, and never "-0.0".
-#[must_use]
-pub fn fixed(value: f64, places: usize) -> String {
-    let text = format!("{value:.places$}");
-    match text.strip_prefix('-') {
-        Some(digits) if digits.bytes().all(|b| matches!(b, b'0' | b'.')) => digits.to_owned(),
-        _ => text,
-    }
-}
-
-/// A number as short as it can be with `places` decimals, and never "-0".
-#[must_use]
-pub fn number(value: f64, places: usize) -> String {
-    let text = fixed(value, places);
-    if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.').to_owned() } else { text }
-}

@@ -3,8 +3,8 @@
 use svg::Document;
 use svg::node::element::{ClipPath, Definitions, Group, Path, Rectangle, Text};
 
-use super::number;
 use crate::geometry::{ArcPath, Point, Segment};
+use crate::units::number;
 use crate::workshop::{Drawing, Label, Page};
 
 /// Decimals of a coordinate, in mm.

@@ -2,7 +2,7 @@
 
 use super::PackError;
 use crate::design::Design;
-use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow};
+use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
 use crate::section::Section;
 use crate::wing::{Planform, StationShape, Wing};
 use crate::workshop::{Drawing, HingeLine, Mask, MaskSettings, Stamp, planform_pattern, station_template};
@@ -22,6 +22,19 @@ pub(super) struct SectionFlow<'a> {
     pub(super) section: &'a Section,
     pub(super) stations: Vec<f64>,
     pub(super) flow: PotentialFlow,
+}
+
+impl SectionFlow<'_> {
+    /// The flow at a lift coefficient; `None` where potential flow cannot give it.
+    pub(super) fn at_lift(&self, cl: f64) -> Option<Solution> {
+        self.flow.incidence_for_lift(cl).map(|incidence| self.flow.at(incidence))
+    }
+
+    /// Angle in degrees and flow over the range of incidence that the design asks for.
+    pub(super) fn over_range(&self, design: &Design) -> impl Iterator<Item = (f64, Solution)> {
+        let angles = design.lift.angles().into_iter();
+        angles.map(|angle| (angle.degrees(), self.flow.at(angle.radians())))
+    }
 }
 
 pub(super) fn stamp(design: &Design) -> Stamp {

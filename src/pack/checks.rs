@@ -6,7 +6,6 @@ use super::PackError;
 use super::aids::{self, SectionFlow, StationAids};
 use crate::design::Design;
 use crate::geometry::{Rect, Solid};
-use crate::wing::Wing;
 use crate::workshop::{Drawing, Half, Role};
 
 /// One check: what was measured, where, and the limit it is held to.
@@ -38,19 +37,18 @@ pub fn run_checks(design: &Design) -> Result<Vec<Check>, PackError> {
     let stations = aids::station_aids(design, &wing)?;
     let pattern = aids::pattern(design, &wing.planform());
     let flows = aids::section_flows(&wing)?;
-    Ok(all(design, &wing, &stations, &pattern, &flows))
+    Ok(all(design, &stations, &pattern, &flows))
 }
 
 pub(super) fn all(
     design: &Design,
-    wing: &Wing,
     stations: &[StationAids<'_>],
     pattern: &Drawing,
     flows: &[SectionFlow<'_>],
 ) -> Vec<Check> {
     let mut checks = Vec::new();
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
-    checks.extend(stations.iter().flat_map(|station| shape(design, wing, station)));
+    checks.extend(stations.iter().flat_map(|station| shape(design, station)));
     checks.extend(stations.iter().flat_map(|station| printer(design, station)));
     checks.push(stock(design, "planform pattern", pattern));
     checks.extend(stations.iter().map(|s| stock(design, &place(s.shape.at), &s.template)));
@@ -58,7 +56,7 @@ pub(super) fn all(
 }
 
 fn place(at: f64) -> String {
-    format!("station {} mm", crate::export::number(at, 3))
+    format!("station {} mm", crate::units::number(at, 3))
 }
 
 /// The design lift must lie within the range of incidence asked.
@@ -101,14 +99,14 @@ fn lift<'a>(design: &'a Design, flow: &'a SectionFlow<'_>) -> impl Iterator<Item
 }
 
 /// No crossing, and wood everywhere between the surfaces.
-fn shape(design: &Design, wing: &Wing, station: &StationAids<'_>) -> [Check; 2] {
+fn shape(design: &Design, station: &StationAids<'_>) -> [Check; 2] {
     let at = station.shape.at;
     let outline = station.template.lines.iter().find(|line| line.role == Role::CutOutside);
     let crossing = outline.map(|line| line.path.refuse_crossings(design.router.tolerance.mm()));
     let simple = matches!(crossing, Some(Ok(())));
     let thickness = least_thickness(&station.shape);
     let name = station.shape.section_name();
-    let chord = wing.shape_at(at).map_or(0.0, |shape| shape.chord);
+    let chord = station.shape.chord;
     [
         Check {
             name: "outline crosses itself".to_owned(),

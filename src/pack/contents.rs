@@ -3,7 +3,8 @@
 use super::aids::{self, SectionFlow, StationAids};
 use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet, tables};
 use crate::design::Design;
-use crate::export::{dxf, number, pdf, stl, svg_page};
+use crate::export::{dxf, pdf, stl, svg_page};
+use crate::units::number;
 use crate::workshop::{Drawing, Half, Page, PaperSettings, single_page, tiled};
 
 /// Which kinds of files to make.
@@ -37,7 +38,7 @@ pub fn build(design: &Design, kinds: Kinds) -> Result<Pack, PackError> {
     let stations = aids::station_aids(design, &wing)?;
     let pattern = aids::pattern(design, &planform);
     let flows = aids::section_flows(&wing)?;
-    let checks = checks::all(design, &wing, &stations, &pattern, &flows);
+    let checks = checks::all(design, &stations, &pattern, &flows);
 
     let mut files = Files { slug: design.slug(), files: Vec::new() };
     if kinds.cut {

@@ -7,9 +7,10 @@ use super::{Check, PackFile};
 use crate::design::Design;
 use crate::export::chart::{Chart, Mark, Series};
 use crate::export::html::{document, escaped, table};
-use crate::export::{number, picture};
+use crate::export::picture;
 use crate::flow::PressurePoint;
 use crate::geometry::Point;
+use crate::units::number;
 use crate::wing::Planform;
 use crate::workshop::{Drawing, turn};
 
@@ -140,12 +141,7 @@ fn lift(body: &mut String, design: &Design, flows: &[SectionFlow<'_>]) {
     );
     let curves = flows.iter().map(|flow| Series {
         name: flow.section.name().to_owned(),
-        points: design
-            .lift
-            .angles()
-            .into_iter()
-            .map(|angle| (angle.degrees(), flow.flow.at(angle.radians()).cl))
-            .collect(),
+        points: flow.over_range(design).map(|(angle, solution)| (angle, solution.cl)).collect(),
     });
     let chart = Chart {
         title: "Lift of the sections".to_owned(),
@@ -157,8 +153,7 @@ fn lift(body: &mut String, design: &Design, flows: &[SectionFlow<'_>]) {
     };
     let _ = writeln!(body, "<figure>{}</figure>", chart.to_svg());
     for flow in flows {
-        let Some(incidence) = flow.flow.incidence_for_lift(wanted) else { continue };
-        let solution = flow.flow.at(incidence);
+        let Some(solution) = flow.at_lift(wanted) else { continue };
         let nose =
             solution.pressure.iter().enumerate().min_by(|a, b| a.1.x.total_cmp(&b.1.x)).map_or(0, |(i, _)| i);
         // Both run aft, so that their names stand at the trailing edge.
@@ -167,7 +162,11 @@ fn lift(body: &mut String, design: &Design, flows: &[SectionFlow<'_>]) {
             points: points.map(|p| (100.0 * p.x, p.cp)).collect(),
         };
         let chart = Chart {
-            title: format!("{} at lift {wanted} ({:.2}°)", flow.section.name(), incidence.to_degrees()),
+            title: format!(
+                "{} at lift {wanted} ({:.2}°)",
+                flow.section.name(),
+                solution.incidence.to_degrees()
+            ),
             across: "percent of chord".to_owned(),
             up: "pressure coefficient".to_owned(),
             downwards: true,

@@ -3,10 +3,11 @@
 
 use super::aids::{SectionFlow, StationAids};
 use crate::design::Design;
+use crate::export::ExportError;
 use crate::export::csv::csv;
-use crate::export::{ExportError, fixed, number};
 use crate::geometry::{Curve, Point, height_at};
 use crate::section::ORDINATE_STATIONS;
+use crate::units::{fixed, number};
 use crate::wing::StationShape;
 
 /// Where each station lies and how it is turned, against the root's nose.
@@ -68,9 +69,8 @@ pub(super) fn lift(
     fingerprint: &str,
 ) -> Result<Vec<u8>, ExportError> {
     let rows = flows.iter().flat_map(|flow| {
-        design.lift.angles().into_iter().map(move |angle| {
-            let s = flow.flow.at(angle.radians());
-            let [angle, cl, cm, cp_min] = [angle.degrees(), s.cl, s.cm, s.cp_min].map(|v| fixed(v, 6));
+        flow.over_range(design).map(move |(angle, s)| {
+            let [angle, cl, cm, cp_min] = [angle, s.cl, s.cm, s.cp_min].map(|v| fixed(v, 6));
             [flow.section.name().to_owned(), angle, cl, cm, cp_min, fingerprint.to_owned()]
         })
     });
@@ -84,8 +84,7 @@ pub(super) fn pressure(
     fingerprint: &str,
 ) -> Result<Vec<u8>, ExportError> {
     let rows = flows.iter().flat_map(|flow| {
-        let incidence = flow.flow.incidence_for_lift(design.lift.design);
-        let points = incidence.map_or(Vec::new(), |incidence| flow.flow.at(incidence).pressure);
+        let points = flow.at_lift(design.lift.design).map_or(Vec::new(), |solution| solution.pressure);
         points.into_iter().map(move |p| {
             let [x, y, cp] = [p.x, p.y, p.cp].map(|v| fixed(v, 6));
             [flow.section.name().to_owned(), x, y, cp, fingerprint.to_owned()]

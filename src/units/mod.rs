@@ -11,6 +11,7 @@ mod spelling;
 mod values;
 
 pub use error::UnitError;
+pub use number::{fixed, number};
 pub use quantity::{ANGLE, LENGTH, Quantity, Unit};
 pub use values::{Angle, Length};
 

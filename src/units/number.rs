@@ -39,7 +39,22 @@ pub(crate) fn plain(value: f64) -> String {
     if value != 0.0 && !(1e-5..1e9).contains(&value.abs()) {
         return format!("{value:e}");
     }
-    let fixed = format!("{value:.6}");
-    let short = fixed.trim_end_matches('0').trim_end_matches('.');
-    if short == "-0" { "0".to_owned() } else { short.to_owned() }
+    number(value, 6)
+}
+
+/// A number with so many decimals, and never "-0.0".
+#[must_use]
+pub fn fixed(value: f64, places: usize) -> String {
+    let text = format!("{value:.places$}");
+    match text.strip_prefix('-') {
+        Some(digits) if digits.bytes().all(|b| matches!(b, b'0' | b'.')) => digits.to_owned(),
+        _ => text,
+    }
+}
+
+/// A number as short as it can be with `places` decimals, and never "-0".
+#[must_use]
+pub fn number(value: f64, places: usize) -> String {
+    let text = fixed(value, places);
+    if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.').to_owned() } else { text }
 }

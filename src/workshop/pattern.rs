@@ -2,6 +2,7 @@
 
 use super::{Drawing, Label, Role, Stamp};
 use crate::geometry::{ArcPath, GeometryError, Point, follow_with_arcs, polygon};
+use crate::units::number;
 use crate::wing::{Planform, StationShape};
 
 /// Height of capitals in the labels of a template, mm: read at arm's length.
@@ -54,7 +55,7 @@ pub fn station_template(
     let outline = follow_with_arcs(shape, tolerance)?;
     outline.refuse_crossings(tolerance)?;
     let bounds = outline.bounds();
-    let mut drawing = Drawing::new(format!("{stamp}, station {} mm", millimetres(shape.at)));
+    let mut drawing = Drawing::new(format!("{stamp}, station {} mm", number(shape.at, 2)));
     drawing.add(Role::CutOutside, outline);
     let chord_line = ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0));
     drawing.add(Role::Reference, chord_line);
@@ -72,7 +73,7 @@ pub fn station_template(
     }
     let words = [
         stamp.to_string(),
-        format!("station {} mm from the root", millimetres(shape.at)),
+        format!("station {} mm from the root", number(shape.at, 2)),
         format!("{}, chord {:.2} mm, twist {}", shape.section_name(), shape.chord, turn(shape.twist)),
         // With x aft and the span's axis away from the eye, what stands upright in the drawing is
         // the boat's up for a level foil and its starboard side for an upright one.
@@ -116,7 +117,7 @@ pub fn planform_pattern(
                 at: place(front - OVERRUN - 2.0),
                 height: SMALL,
                 turn: std::f64::consts::FRAC_PI_2,
-                text: millimetres(at),
+                text: number(at, 2),
             });
         }
         if let Some(hinge) = hinge {
@@ -131,10 +132,10 @@ pub fn planform_pattern(
     }
     let words = [
         stamp.to_string(),
-        format!("planform, span {} mm, leading edge up", millimetres(planform.span())),
+        format!("planform, span {} mm, leading edge up", number(planform.span(), 2)),
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
-            let (from, to) = (millimetres(hinge.from), millimetres(hinge.to));
+            let (from, to) = (number(hinge.from, 2), number(hinge.to, 2));
             format!("hinge line at {:.1} % of chord, {from} to {to} mm", 100.0 * hinge.chord_fraction)
         }),
     ];
@@ -147,12 +148,6 @@ fn write_block(drawing: &mut Drawing, top: Point, words: &[String]) {
         let at = Point::new(top.x, top.y - LETTERS - row as f64 * LINE_STEP);
         drawing.write(Role::Caption, at, LETTERS, text);
     }
-}
-
-/// A length as a template shows it: to a hundredth, without idle zeros.
-fn millimetres(value: f64) -> String {
-    let text = format!("{value:.2}");
-    text.trim_end_matches('0').trim_end_matches('.').to_owned()
 }
 
 /// A twist in words: signed, to a hundredth of a degree, and plain nothing for none.

@@ -3,6 +3,7 @@
 #![allow(clippy::unwrap_used, reason = "in a test, a panic is the report")]
 
 use plankform::design::{self, Design, DesignErrors, Kind, LARGEST_FILE, Problem};
+use plankform::section::{Beside, Finish};
 use plankform::units::Length;
 use proptest::prelude::*;
 
@@ -103,7 +104,7 @@ fn what_is_left_out_takes_its_default() {
     );
     assert_eq!(fin.router.tolerance.mm(), 0.01);
     assert_eq!((fin.stations[1].twist.degrees(), fin.stations[1].sweep.mm()), (0.0, 0.0));
-    assert_eq!(fin.stations[1].trailing_edge.word(), "published");
+    assert_eq!(fin.stations[1].finish, Finish::Published);
     assert_eq!(fin.templates, [Length::from_mm(0.0), Length::from_mm(300.0)]);
     assert_eq!((fin.flap, fin.notes.clone()), (None, None));
     // A flap without ends takes the whole piece.
@@ -247,11 +248,86 @@ fn sections_are_looked_up_where_they_stand() {
     spoilt("\"NACA 0012\"", "\"NACA 99999\"", (8, 11), &["99"]);
     spoilt("\"NACA 0012\"", "\"flat plate\"", (8, 11), &["'flat plate' is not a section"]);
     spoilt("\"NACA 0012\"", "12", (8, 11), &["section takes text", "this is a number"]);
-    spoilt("\"NACA 0012\"", &format!("\"{}\"", "9".repeat(61)), (8, 11), &["61 characters"]);
+    spoilt("\"NACA 0012\"", &format!("\"{}\"", "9".repeat(201)), (8, 11), &["201 characters"]);
     let closed = good(&fin_with("\"NACA 0012\"", "\"naca0012\"\ntrailing-edge = \"closed\""));
     assert_eq!(closed.stations[0].section.name(), "NACA 0012");
     assert_eq!(closed.stations[0].designation, "naca0012");
     assert!(closed.stations[0].section.numbers().trailing_edge_thickness < 1e-15);
+}
+
+#[test]
+fn sections_come_from_files_beside_the_design() {
+    let files = |name: &str, _most: usize| {
+        match name {
+        "own/flat.toml" => Ok(b"name = \"Flat\"\nthickness = \"0.3*sqrt(x)*(1 - x)\"\n".to_vec()),
+        "own/flat-again.toml" => {
+            Ok(b"# the same, written otherwise\nname = \"Other\"\nthickness = \"k*sqrt(x)*(1 - x)\"\n[constants]\nk = 0.3\n".to_vec())
+        }
+        "own/other.toml" => Ok(b"name = \"Flat\"\nthickness = \"0.300001*sqrt(x)*(1 - x)\"\n".to_vec()),
+        "own/blend.toml" => {
+            Ok(b"name = \"Half\"\n[blend]\nfirst = \"flat.toml\"\nsecond = \"NACA 2412\"\nshare = 0.5\n".to_vec())
+        }
+        "bad.toml" => Ok(b"name = \"Bad\"\nthickness = \"0.3*sqrt(x)*(1 - y)\"\n".to_vec()),
+        "round.toml" => {
+            Ok(b"name = \"Round\"\n[blend]\nfirst = \"round.toml\"\nsecond = \"NACA 2412\"\nshare = 0.5\n".to_vec())
+        }
+        _ => Err(std::io::Error::from(std::io::ErrorKind::NotFound)),
+    }
+    };
+    let read = |named: &str| {
+        let text = fin_with("\"NACA 0012\"", &format!("\"{named}\""));
+        Design::parse_beside(&text, "fin.toml", &Beside::new(&files))
+    };
+    let flat = read("own/flat.toml").expect("a design");
+    assert_eq!(flat.stations[0].section.name(), "Flat");
+    assert_eq!(flat.stations[0].designation, "own/flat.toml");
+    let blend = read("own/blend.toml").expect("a design");
+    let half = 0.5 * (flat.stations[0].section.numbers().area + 0.0822 * 1.0);
+    assert!((blend.stations[0].section.numbers().area - half).abs() < 2e-3);
+
+    // The mark on every piece follows the shape, not its words.
+    let again = read("own/flat-again.toml").expect("a design");
+    let other = read("own/other.toml").expect("a design");
+    assert_eq!(flat.fingerprint(), again.fingerprint());
+    assert_ne!(flat.fingerprint(), other.fingerprint());
+
+    let says = |named: &str| read(named).expect_err(named).to_string();
+    assert!(says("bad.toml").contains("bad.toml, line 2, column"), "{}", says("bad.toml"));
+    assert!(says("bad.toml").contains("plankform section"), "{}", says("bad.toml"));
+    assert!(says("none.toml").contains("none.toml cannot be read"), "{}", says("none.toml"));
+    assert!(says("round.toml").contains("names itself"), "{}", says("round.toml"));
+    for outside in
+        ["../flat.toml", "/etc/flat.toml", "own//flat.toml", "./flat.toml", "own\\\\flat.toml", "c:flat.toml"]
+    {
+        assert!(says(outside).contains("beside the one that names it"), "{}", says(outside));
+    }
+    // Without files beside it there is nothing to read.
+    let alone = fin_with("\"NACA 0012\"", "\"own/flat.toml\"");
+    assert!(Design::parse(&alone, "fin.toml").expect_err("no files").to_string().contains("cannot be read"));
+}
+
+#[test]
+fn a_trailing_edge_is_as_thick_as_asked_at_its_chord() {
+    let design =
+        good(&fin_with("\"NACA 0012\"", "\"NACA 0012\"\ntrailing-edge = \"0.9 mm\"\nedge-from = 0.7"));
+    let station = &design.stations[0];
+    let thickness = station.section.numbers().trailing_edge_thickness * station.chord.mm();
+    assert!((thickness - 0.9).abs() < 1e-9, "{thickness}");
+    let plain = good(&fin_with("\"NACA 0012\"", "\"NACA 0012\""));
+    assert_ne!(design.fingerprint(), plain.fingerprint());
+    spoilt(
+        "\"NACA 0012\"",
+        "\"NACA 0012\"\ntrailing-edge = \"blunt\"",
+        (9, 17),
+        &["trailing-edge is 'blunt'", "\"published\" or \"closed\", or a length"],
+    );
+    spoilt("\"NACA 0012\"", "\"NACA 0012\"\ntrailing-edge = 1", (9, 17), &["1 mm"]);
+    spoilt(
+        "\"NACA 0012\"",
+        "\"NACA 0012\"\ntrailing-edge = \"40 mm\"",
+        (8, 11),
+        &["trailing-edge is to be 33.3333", "takes 0 to 10 %"],
+    );
 }
 
 #[test]

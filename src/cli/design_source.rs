@@ -4,13 +4,16 @@ use std::io::Read;
 use std::path::Path;
 
 use plankform::design::{Design, LARGEST_FILE};
+use plankform::section::Beside;
 
 use super::failure::Failure;
+use super::section_source::reader_beside;
 
 /// Reads and understands a design file; every problem of it is reported at once.
 pub(super) fn read(path: &Path) -> Result<Design, Failure> {
     let text = text_of(path, LARGEST_FILE, "a design file")?;
-    Design::parse(&text, &path.display().to_string())
+    let read = reader_beside(path);
+    Design::parse_beside(&text, &path.display().to_string(), &Beside::new(&read))
         .map_err(|errors| Failure::Input(errors.render(in_colour())))
 }
 

@@ -63,7 +63,7 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     if arguments.re.is_some() {
         say("note: flow without friction is the same at every Reynolds number; --re is not used");
     }
-    let section = arguments.source.section()?;
+    let section = arguments.source.section(None)?;
     let panelling = Panelling::of(&section, DEFAULT_PANELS).map_err(Failure::input)?;
     let flow = PotentialFlow::new(&panelling).map_err(Failure::input)?;
     let points: Vec<(f64, Solution)> =
@@ -76,7 +76,7 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
         Format::Csv => print(&table(&points, arguments.pressure).map_err(Failure::input)?)?,
         Format::Json => print_json(&json!({
             "section": section.name(),
-            "trailing_edge": section.thickness_form().edge_word(),
+            "trailing_edge": section.edge_word(),
             "curves": [curve(&flow, &points, arguments.pressure)],
         }))?,
     }

@@ -3,10 +3,10 @@
 use std::path::PathBuf;
 
 use plankform::export::{csv::csv, svg_page};
-use plankform::geometry::{Affine, ArcPath, Curve, Point};
-use plankform::section::{Numbers, ORDINATE_STATIONS, Section, Side};
+use plankform::geometry::Point;
+use plankform::section::{ORDINATE_STATIONS, Section, Side};
 use plankform::units::{Length, fixed};
-use plankform::workshop::{Drawing, Role, single_page};
+use plankform::workshop::{section_numbers, section_picture, single_page};
 use serde_json::{Value, json};
 
 use super::failure::Failure;
@@ -47,10 +47,10 @@ fn chord(text: &str) -> Result<Length, String> {
 }
 
 pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
-    let section = arguments.source.section()?;
+    let section = arguments.source.section(arguments.chord)?;
     if let Some(path) = &arguments.svg {
         let chord = arguments.chord.map_or(PICTURE_CHORD, Length::mm);
-        let drawing = drawn(&section, chord).map_err(Failure::input)?;
+        let drawing = section_picture(&section, chord).map_err(Failure::input)?;
         save(path, &svg_page(&single_page(&drawing)))?;
     }
     let scale = arguments.chord.map_or(1.0, Length::mm);
@@ -70,9 +70,11 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
 fn json(section: &Section, chord: Option<Length>, points: &[Point]) -> Value {
     let scale = chord.map_or(1.0, Length::mm);
     let n = section.numbers();
+    let place = |p: Point| [p.x * scale, p.y * scale];
+    let moments = n.second_moments;
     json!({
         "section": section.name(),
-        "trailing_edge": section.thickness_form().edge_word(),
+        "trailing_edge": section.edge_word(),
         "unit": if chord.is_some() { "mm" } else { "chord" },
         "thickness": n.thickness * scale,
         "thickness_at": n.thickness_at * scale,
@@ -83,8 +85,19 @@ fn json(section: &Section, chord: Option<Length>, points: &[Point]) -> Value {
         "trailing_edge_thickness": n.trailing_edge_thickness * scale,
         "trailing_edge_angle_deg": n.trailing_edge_angle.to_degrees(),
         "area": n.area * scale * scale,
-        "centroid": [n.centroid.x * scale, n.centroid.y * scale],
-        "points": points.iter().map(|p| [p.x * scale, p.y * scale]).collect::<Vec<_>>(),
+        "centroid": place(n.centroid),
+        "second_moments": {
+            "about_x": moments.about_x * scale.powi(4),
+            "about_y": moments.about_y * scale.powi(4),
+            "product": moments.product * scale.powi(4),
+        },
+        "perimeter": n.perimeter * scale,
+        "smallest_radius": n.sharpest.radius * scale,
+        "smallest_radius_at": place(n.sharpest.at),
+        "smallest_hollow_radius": n.hollowest.map(|turn| turn.radius * scale),
+        "smallest_hollow_radius_at": n.hollowest.map(|turn| place(turn.at)),
+        "remarks": section.remarks(),
+        "points": points.iter().map(|p| place(*p)).collect::<Vec<_>>(),
     })
 }
 
@@ -93,45 +106,18 @@ fn text(section: &Section, chord: Option<Length>) -> String {
         Some(chord) => (chord.mm(), "mm", 3),
         None => (100.0, "% of chord", 4),
     };
-    let Numbers {
-        thickness,
-        thickness_at,
-        camber,
-        camber_at,
-        nose_radius,
-        nose_radius_on_outline,
-        trailing_edge_thickness,
-        trailing_edge_angle,
-        area,
-        centroid,
-    } = section.numbers();
-    let edge = section.thickness_form().edge_word();
-    let length = |v: f64| format!("{:.places$} {unit}", v * scale);
-    let area_unit = if chord.is_some() { "mm²" } else { "% of chord²" };
-    let area_scale = if chord.is_some() { scale * scale } else { scale };
     let of_chord = chord.map_or(String::new(), |c| format!(", chord {c}"));
-    let mut text = format!(
-        "{}, {edge} trailing edge{of_chord}\n\n\
-         thickness            {} at {}\n\
-         camber               {} at {}\n\
-         nose radius          {} ({} on the outline itself)\n\
-         trailing edge        {} thick, {:.3}° between the surfaces\n\
-         area                 {:.places$} {area_unit}\n\
-         centroid             {}, {} above the chord line\n\n",
-        section.name(),
-        length(thickness),
-        length(thickness_at),
-        length(camber),
-        length(camber_at),
-        length(nose_radius),
-        length(nose_radius_on_outline),
-        length(trailing_edge_thickness),
-        trailing_edge_angle.to_degrees(),
-        area * area_scale,
-        length(centroid.x),
-        length(centroid.y),
-    );
-    text.push_str(&format!("ordinates in {unit}\n{:>12}{:>12}{:>12}\n", "station", "upper", "lower"));
+    let mut text = format!("{}, {} trailing edge{of_chord}\n\n", section.name(), section.edge_word());
+    for (what, value) in section_numbers(&section.numbers(), chord) {
+        text.push_str(&format!("{what:<21}{value}\n"));
+    }
+    for remark in section.remarks() {
+        text.push_str(&format!("\nnote: {remark}"));
+    }
+    if !section.remarks().is_empty() {
+        text.push('\n');
+    }
+    text.push_str(&format!("\nordinates in {unit}\n{:>12}{:>12}{:>12}\n", "station", "upper", "lower"));
     for percent in ORDINATE_STATIONS {
         let x = percent / 100.0;
         let surface = |side| section.surface(side, x) * scale;
@@ -143,55 +129,4 @@ fn text(section: &Section, chord: Option<Length>) -> String {
         ));
     }
     text
-}
-
-/// Outline, mean line and chord line at a chord in mm.
-fn drawn(section: &Section, chord: f64) -> Result<Drawing, plankform::geometry::GeometryError> {
-    let mut drawing = Drawing::new(section.name());
-    let outline = plankform::geometry::follow_with_arcs(&Scaled { section, chord }, 0.01)?;
-    let below = outline.bounds().y0;
-    drawing.add(Role::CutOutside, outline);
-    let mean = (0..=200).map(|i| {
-        let x = f64::from(i) / 200.0;
-        Point::new(x * chord, section.mean_line().at(x).y * chord)
-    });
-    drawing.add(Role::Reference, ArcPath::polyline(mean, false));
-    drawing.add(Role::Reference, ArcPath::line(Point::new(-5.0, 0.0), Point::new(chord + 5.0, 0.0)));
-    let n = section.numbers();
-    for (row, words) in [
-        format!("{}, chord {chord:.1} mm", section.name()),
-        format!(
-            "thickness {:.2} % at {:.1} %, camber {:.2} % at {:.1} %",
-            100.0 * n.thickness,
-            100.0 * n.thickness_at,
-            100.0 * n.camber,
-            100.0 * n.camber_at
-        ),
-    ]
-    .iter()
-    .enumerate()
-    {
-        drawing.write(Role::Label, Point::new(0.0, below - 8.0 - 6.5 * row as f64), 3.5, words);
-    }
-    Ok(drawing)
-}
-
-/// A section at a chord in mm.
-struct Scaled<'a> {
-    section: &'a Section,
-    chord: f64,
-}
-
-impl Curve for Scaled<'_> {
-    fn jet(&self, t: f64) -> plankform::geometry::Jet {
-        let mut jet = self.section.jet(t);
-        jet.point = Affine::scale(self.chord) * jet.point;
-        jet.first *= self.chord;
-        jet.second *= self.chord;
-        jet
-    }
-
-    fn breaks(&self) -> Vec<f64> {
-        self.section.breaks()
-    }
 }

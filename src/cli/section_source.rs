@@ -1,66 +1,119 @@
 //! The section a command line names.
 
+use std::io::{self, Read};
 use std::path::Path;
 
-use clap::ValueEnum;
-use plankform::section::{LARGEST_SECTION_FILE, Section, TrailingEdge};
+use plankform::section::{Beside, Finish, Section, SectionFileError, Work};
+use plankform::units::Length;
 
-use super::design_source::{in_colour, text_of};
+use super::design_source::in_colour;
 use super::failure::Failure;
 
-#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
-pub(super) enum TrailingEdgeWord {
-    /// Open, as the published equation leaves it
+/// The trailing edge that a command line asks for.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) enum Edge {
     Published,
-    /// Brought to a sharp edge
     Closed,
-}
-
-impl From<TrailingEdgeWord> for TrailingEdge {
-    fn from(word: TrailingEdgeWord) -> Self {
-        match word {
-            TrailingEdgeWord::Published => Self::Published,
-            TrailingEdgeWord::Closed => Self::Closed,
-        }
-    }
+    /// A share of the chord.
+    Share(f64),
+    /// At the real chord.
+    Length(Length),
 }
 
 /// The section arguments that several verbs share.
 #[derive(Debug, clap::Args)]
 pub(super) struct SectionSource {
-    /// Designation of the section, such as "NACA 4412", or a section file, such as "mine.toml"
+    /// Designation of the section, such as "NACA 4412"; or a file: a section file (.toml), a traced
+    /// outline (.dxf), a table of coordinates
     #[arg(value_name = "SECTION", num_args = 1..=2, required = true)]
     section: Vec<String>,
-    /// How the trailing edge of a designation is finished [default: published]
-    #[arg(long, value_name = "FINISH")]
-    trailing_edge: Option<TrailingEdgeWord>,
+    /// Trailing edge: "published" as the section has it, "closed", or its thickness, such as "0.8 %"
+    /// of the chord or, with --chord, "1 mm" [default: published]
+    #[arg(long, value_name = "FINISH", value_parser = edge, allow_hyphen_values = true)]
+    trailing_edge: Option<Edge>,
+    /// Where the change to that thickness begins, a share of the chord [default: 0.6]
+    #[arg(long, value_name = "X", requires = "trailing_edge", value_parser = edge_from, allow_hyphen_values = true)]
+    edge_from: Option<f64>,
 }
 
-impl SectionSource {
-    pub(super) fn section(&self) -> Result<Section, Failure> {
-        // A designation typed without quotes comes as two words.
-        let section = self.section.join(" ");
-        let path = Path::new(&section);
-        // A designation has no ending, and a path to a section file always has.
-        if path.extension().is_some_and(|ending| ending.eq_ignore_ascii_case("toml")) || path.is_file() {
-            if self.trailing_edge.is_some() {
-                return Err(Failure::Input(
-                    "the equations of a section file say how its trailing edge ends: leave out --trailing-edge"
-                        .to_owned(),
-                ));
-            }
-            return from_file(path);
-        }
-        Section::from_designation(
-            &section,
-            self.trailing_edge.map_or(TrailingEdge::Published, TrailingEdge::from),
-        )
-        .map_err(Failure::input)
+fn edge(text: &str) -> Result<Edge, String> {
+    let text = text.trim();
+    if let Some(percent) = text.strip_suffix('%') {
+        let percent: f64 = percent.trim().parse().map_err(|_| format!("'{text}' is no percentage"))?;
+        return match percent {
+            0.0..=10.0 => Ok(Edge::Share(percent / 100.0)),
+            _ => Err(format!("{percent} % is out of bounds: 0 to 10 % of the chord")),
+        };
+    }
+    match text {
+        "published" => Ok(Edge::Published),
+        "closed" => Ok(Edge::Closed),
+        length => length.parse().map(Edge::Length).map_err(|_| {
+            "write published, closed, a share of the chord (\"0.8 %\") or a length (\"1 mm\")".to_owned()
+        }),
     }
 }
 
-fn from_file(path: &Path) -> Result<Section, Failure> {
-    let text = text_of(path, LARGEST_SECTION_FILE, "a section file")?;
-    Section::from_file_text(&text, &path.display().to_string())
-        .map_err(|errors| Failure::Input(errors.render(in_colour())))
+fn edge_from(text: &str) -> Result<f64, String> {
+    text.parse()
+        .ok()
+        .filter(|x| (0.1..=0.98).contains(x))
+        .ok_or_else(|| "it is a share of the chord from 0.1 to 0.98".to_owned())
+}
+
+impl SectionSource {
+    /// The section, at a `chord` if one is known.
+    pub(super) fn section(&self, chord: Option<Length>) -> Result<Section, Failure> {
+        let from = self.edge_from.unwrap_or(Work::EDGE_FROM);
+        let finish = match (self.trailing_edge.unwrap_or(Edge::Published), chord) {
+            (Edge::Share(thickness), _) => Finish::Thick { thickness, from },
+            (Edge::Length(length), Some(chord)) => {
+                Finish::Thick { thickness: length.mm() / chord.mm(), from }
+            }
+            (Edge::Length(_), None) => {
+                return Err(Failure::Input(
+                    "a trailing edge in mm needs the chord it is for: give --chord, or a share of the chord (\"0.8 %\")"
+                        .to_owned(),
+                ));
+            }
+            (Edge::Published | Edge::Closed, _) if self.edge_from.is_some() => {
+                return Err(Failure::Input(
+                    "--edge-from goes with a thickness of the trailing edge, such as --trailing-edge \"1 %\""
+                        .to_owned(),
+                ));
+            }
+            (Edge::Published, _) => Finish::Published,
+            (Edge::Closed, _) => Finish::Closed,
+        };
+        // A designation typed without quotes comes as two words.
+        let named = self.section.join(" ");
+        let path = Path::new(&named);
+        // The user names a file wherever it is; what that file names in turn lies beside it.
+        let is_file = plankform::section::names_a_file(&named) || path.is_file();
+        let name = path.file_name().and_then(|name| name.to_str()).filter(|_| is_file).unwrap_or(&named);
+        let read = reader_beside(path);
+        Beside::new(&read).named(name, finish).map_err(|error| match error {
+            SectionFileError::Reading { source, .. } => Failure::reading(path.display(), &source),
+            other => Failure::Input(other.render(in_colour())),
+        })
+    }
+}
+
+/// Reads files beside `path` or in folders below it, never such as a link leads out of there.
+pub(super) fn reader_beside(path: &Path) -> impl Fn(&str, usize) -> io::Result<Vec<u8>> + use<> {
+    let folder = path.parent().filter(|folder| !folder.as_os_str().is_empty()).unwrap_or(Path::new("."));
+    let (folder, own) = (folder.to_owned(), path.to_owned());
+    move |name, most| {
+        let wanted = folder.join(name);
+        if wanted != own && !wanted.canonicalize()?.starts_with(folder.canonicalize()?) {
+            return Err(io::Error::other("a link leads out of the folder"));
+        }
+        let file = std::fs::File::open(wanted)?;
+        if !file.metadata()?.is_file() {
+            return Err(io::Error::other("it is no file"));
+        }
+        let mut bytes = Vec::new();
+        file.take(most as u64).read_to_end(&mut bytes)?;
+        Ok(bytes)
+    }
 }

@@ -4,7 +4,8 @@ use std::fmt::Write;
 
 use sha2::{Digest, Sha256};
 
-use super::model::Design;
+use super::model::{Design, Station};
+use crate::section::{Finish, names_a_file};
 use crate::units::{Angle, Length, fixed};
 
 impl Design {
@@ -39,8 +40,8 @@ impl Design {
                 "station {} chord {} section {} {} twist {} sweep {}",
                 mm(station.at),
                 mm(station.chord),
-                station.section.name(),
-                station.trailing_edge.word(),
+                section(station),
+                finish(station.finish),
                 degrees(station.twist),
                 mm(station.sweep)
             )
@@ -64,6 +65,32 @@ impl Design {
 /// Decimals of every value: a nanometre is far below any tool and far above the rounding of
 /// another unit.
 const PLACES: usize = 6;
+
+/// A published section by its name; one from a file by its shape, so that it does not matter how or
+/// where that is written.
+fn section(station: &Station) -> String {
+    if !names_a_file(&station.designation) {
+        return station.section.name().to_owned();
+    }
+    let mut digest = Sha256::new();
+    for point in station.section.points(SHAPE_POINTS) {
+        digest.update(format!("{} {};", fixed(point.x, SHAPE_PLACES), fixed(point.y, SHAPE_PLACES)));
+    }
+    digest.finalize().iter().take(16).map(|byte| format!("{byte:02x}")).collect()
+}
+
+/// Points and decimals by which a shape is known: a change of a hundred-millionth of the chord tells.
+const SHAPE_POINTS: usize = 401;
+const SHAPE_PLACES: usize = 8;
+
+fn finish(finish: Finish) -> String {
+    match finish {
+        Finish::Published | Finish::Closed => finish.of_family().word().to_owned(),
+        Finish::Thick { thickness, from } => {
+            format!("edge {} from {}", fixed(thickness, SHAPE_PLACES), fixed(from, PLACES))
+        }
+    }
+}
 
 fn mm(length: Length) -> String {
     fixed(length.mm(), PLACES)

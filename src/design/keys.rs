@@ -53,6 +53,8 @@ pub(super) enum Takes {
     Text(usize),
     /// One of these words.
     Word(&'static [&'static str]),
+    /// One of these words, or a length within these, millimetres.
+    WordOrLength(&'static [&'static str], f64, f64),
     /// A length within these, millimetres.
     Length(f64, f64),
     /// Up to so many lengths, each within these, millimetres.
@@ -74,7 +76,7 @@ pub(super) enum Otherwise {
 }
 
 use Otherwise::{Default, Left, Required};
-use Takes::{Angle, Length, Lengths, Name, Number, Text, Word};
+use Takes::{Angle, Length, Lengths, Name, Number, Text, Word, WordOrLength};
 
 const fn key(
     name: &'static str,
@@ -137,17 +139,24 @@ pub(super) static STATION: Table = Table {
         key("chord", Length(5.0, 2000.0), Required, "From the nose to the trailing edge.", "120 mm"),
         key(
             "section",
-            Text(60),
+            Text(200),
             Required,
-            "Designation of the section, as \"NACA 23012\", \"NACA 0012-34\" or \"NACA 16-209\".",
+            "Designation of the section, as \"NACA 23012\", \"NACA 0012-34\" or \"NACA 16-209\"; or a file beside the design: a section file (\"mine.toml\"), a table of coordinates (\"friend.txt\"), a traced outline (\"traced.dxf\").",
             "NACA 2412",
         ),
         key(
             "trailing-edge",
-            Word(&["published", "closed"]),
+            WordOrLength(&["published", "closed"], 0.0, 50.0),
             Default("published"),
-            "As wide as the published equation leaves it, or closed to a sharp edge.",
-            "closed",
+            "As wide as the section has it (of a published one, as its equation leaves it), closed to a sharp edge, or so thick at this chord.",
+            "0.8 mm",
+        ),
+        key(
+            "edge-from",
+            Number(0.1, 0.98),
+            Default("0.6"),
+            "Where the change to that thickness begins, a fraction of the chord.",
+            "0.7",
         ),
         key(
             "twist",
@@ -370,12 +379,14 @@ impl Takes {
                 "1 to 60 letters (a to z), digits, spaces, '-' and '_', the first a letter or a digit".into()
             }
             Text(most) => format!("text of at most {most} characters"),
-            Word(words) => {
-                let each: Vec<String> = words.iter().map(|word| format!("\"{word}\"")).collect();
-                match each.split_last() {
-                    Some((last, rest)) if !rest.is_empty() => format!("{} or {last}", rest.join(", ")),
-                    _ => each.concat(),
-                }
+            Word(words) => one_of(words),
+            WordOrLength(words, least, most) => {
+                format!(
+                    "{}, or a length from {} to {}",
+                    one_of(words),
+                    round_length(least),
+                    round_length(most)
+                )
             }
             Length(least, most) => format!("a length from {} to {}", round_length(least), round_length(most)),
             Lengths(count, least, most) => format!(
@@ -386,6 +397,15 @@ impl Takes {
             Angle(least, most) => format!("an angle from {} deg to {} deg", number(least), number(most)),
             Number(least, most) => format!("a number from {} to {}", number(least), number(most)),
         }
+    }
+}
+
+/// Words as they stand in a sentence: "a", "b" or "c".
+fn one_of(words: &[&str]) -> String {
+    let each: Vec<String> = words.iter().map(|word| format!("\"{word}\"")).collect();
+    match each.split_last() {
+        Some((last, rest)) if !rest.is_empty() => format!("{} or {last}", rest.join(", ")),
+        _ => each.concat(),
     }
 }
 

@@ -22,6 +22,7 @@ pub use schema::schema;
 pub use starter::starter;
 
 use crate::problems::{Problems, Wrong};
+use crate::section::Beside;
 use toml::de::DeTable;
 
 /// The largest design file that is read, in bytes.
@@ -33,10 +34,19 @@ impl Design {
     /// # Errors
     /// Everything that is wrong with the file, each with its place and what would be right: no
     /// TOML, unknown or missing keys, values of the wrong kind or out of bounds, stations out of
-    /// order, sections that do not exist, files larger than [`LARGEST_FILE`].
+    /// order, sections that do not exist or stand in a file, files larger than [`LARGEST_FILE`].
     pub fn parse(text: &str, file_name: &str) -> Result<Self, DesignErrors> {
+        let nothing = |_: &str, _: usize| Err(std::io::Error::from(std::io::ErrorKind::NotFound));
+        Self::parse_beside(text, file_name, &Beside::new(&nothing))
+    }
+
+    /// The same for a design whose stations may name the files `beside` it as their sections.
+    ///
+    /// # Errors
+    /// As [`Design::parse`], and what is wrong with those files.
+    pub fn parse_beside(text: &str, file_name: &str, beside: &Beside<'_>) -> Result<Self, DesignErrors> {
         let mut problems = Problems::default();
-        let design = read(text, &mut problems);
+        let design = read(text, beside, &mut problems);
         match design {
             Some(design) if problems.is_empty() => Ok(design),
             _ => Err(problems.report(text, file_name)),
@@ -44,7 +54,7 @@ impl Design {
     }
 }
 
-fn read(text: &str, problems: &mut Problems) -> Option<Design> {
+fn read(text: &str, beside: &Beside<'_>, problems: &mut Problems) -> Option<Design> {
     if text.len() > LARGEST_FILE {
         let message = format!("the file has too many bytes: a design has {LARGEST_FILE} at most");
         problems.add(0..0, Wrong::new(message));
@@ -66,5 +76,5 @@ fn read(text: &str, problems: &mut Problems) -> Option<Design> {
         return None;
     }
     let sheet = reader::Sheet::read(root.get_ref(), problems);
-    resolve::design(&sheet, problems)
+    resolve::design(&sheet, beside, problems)
 }

@@ -1,6 +1,6 @@
 //! A design as resolved from its file: every default filled in, every bound checked.
 
-use crate::section::{Section, TrailingEdge};
+use crate::section::{Finish, Section};
 use crate::units::{Angle, Length};
 
 /// What is built.
@@ -107,12 +107,12 @@ pub struct Station {
     pub at: Length,
     /// Chord, 5 mm to 2 m.
     pub chord: Length,
-    /// The section at unit chord.
+    /// The section at unit chord, finished.
     pub section: Section,
-    /// The section as the file names it.
+    /// The section as the file names it: a designation or a file.
     pub designation: String,
     /// How its trailing edge is finished.
-    pub trailing_edge: TrailingEdge,
+    pub finish: Finish,
     /// Nose-up about the quarter chord, -30 to 30 degrees.
     pub twist: Angle,
     /// How far the quarter chord lies aft of the first station's.

@@ -6,8 +6,8 @@ use super::keys;
 use super::model::{Design, Flap, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
 use super::reader::{Row, Sheet};
 use crate::problems::{Problems, Wrong};
-use crate::section::{Section, TrailingEdge};
-use crate::units::{Angle, Length};
+use crate::section::{Beside, Finish, SectionFileError};
+use crate::units::{Angle, Length, clipped};
 
 /// Two places along the span nearer than this are one, millimetres.
 const SAME: f64 = 0.001;
@@ -15,7 +15,7 @@ const SAME: f64 = 0.001;
 /// Builds the design, or notes why it cannot be.
 ///
 /// Every part is looked at before any is given up, so that one run reports them all.
-pub(super) fn design(sheet: &Sheet, problems: &mut Problems) -> Option<Design> {
+pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems) -> Option<Design> {
     let root = sheet.one(&keys::ROOT)?;
     let kind = root.text("kind").and_then(Kind::from_word);
     let span = sheet.one(&keys::PLANFORM).and_then(|row| row.length("span"));
@@ -24,7 +24,7 @@ pub(super) fn design(sheet: &Sheet, problems: &mut Problems) -> Option<Design> {
         _ => None,
     };
 
-    let stations = stations(sheet.all(&keys::STATION), reach.as_ref(), problems);
+    let stations = stations(sheet.all(&keys::STATION), reach.as_ref(), beside, problems);
     let templates = templates(sheet.one(&keys::TEMPLATES), reach.as_ref(), problems);
     let flap = sheet.one(&keys::FLAP).map(|row| flap(row, reach.as_ref(), problems));
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
@@ -93,7 +93,12 @@ impl Reach {
     }
 }
 
-fn stations(rows: &[Row], reach: Option<&Reach>, problems: &mut Problems) -> Option<Vec<Station>> {
+fn stations(
+    rows: &[Row],
+    reach: Option<&Reach>,
+    beside: &Beside<'_>,
+    problems: &mut Problems,
+) -> Option<Vec<Station>> {
     let places: Vec<(Length, Range<usize>)> =
         rows.iter().filter_map(|row| Some((row.length("at")?, row.place("at")))).collect();
     let ordered = ascending("station", &places, problems);
@@ -101,7 +106,7 @@ fn stations(rows: &[Row], reach: Option<&Reach>, problems: &mut Problems) -> Opt
     if ordered && places.len() == rows.len() {
         ends(&places, reach, problems);
     }
-    let stations: Vec<Option<Station>> = rows.iter().map(|row| station(row, problems)).collect();
+    let stations: Vec<Option<Station>> = rows.iter().map(|row| station(row, beside, problems)).collect();
     stations.into_iter().collect()
 }
 
@@ -144,24 +149,40 @@ fn ends(places: &[(Length, Range<usize>)], reach: Option<&Reach>, problems: &mut
     }
 }
 
-fn station(row: &Row, problems: &mut Problems) -> Option<Station> {
-    let trailing_edge = match row.text("trailing-edge") {
-        Some(word) if word == TrailingEdge::Closed.word() => TrailingEdge::Closed,
-        _ => TrailingEdge::Published,
+fn station(row: &Row, beside: &Beside<'_>, problems: &mut Problems) -> Option<Station> {
+    let chord = row.length("chord");
+    let from = row.number("edge-from");
+    let finish = match (row.length("trailing-edge"), chord, from) {
+        (Some(thickness), Some(chord), Some(from)) => {
+            Some(Finish::Thick { thickness: thickness.mm() / chord.mm(), from })
+        }
+        (Some(_), ..) => None,
+        (None, ..) if row.text("trailing-edge") == Some("closed") => Some(Finish::Closed),
+        (None, ..) => Some(Finish::Published),
     };
-    let section = row.text("section").and_then(|designation| {
-        let made = Section::from_designation(designation, trailing_edge);
-        made.map_err(|error| problems.add(row.place("section"), Wrong::new(error.to_string()))).ok()
+    let section = row.text("section").and_then(|named| {
+        let made = beside.named(named.trim(), finish.unwrap_or_default());
+        made.map_err(|error| problems.add(row.place("section"), wrong_section(named, &error))).ok()
     });
     Some(Station {
         at: row.length("at")?,
-        chord: row.length("chord")?,
+        chord: chord?,
         section: section?,
         designation: row.text("section")?.trim().to_owned(),
-        trailing_edge,
+        finish: finish?,
         twist: row.angle("twist")?,
         sweep: row.length("sweep")?,
     })
+}
+
+fn wrong_section(named: &str, error: &SectionFileError) -> Wrong {
+    let wrong = Wrong::new(error.to_string());
+    match error {
+        SectionFileError::Text(_) | SectionFileError::Drawing { .. } => wrong
+            .help(format!("`plankform section \"{}\"` shows what is wrong with that file", clipped(named))),
+        SectionFileError::Reading { .. } => wrong.help("it is looked for beside the design file"),
+        _ => wrong,
+    }
 }
 
 fn templates(row: Option<&Row>, reach: Option<&Reach>, problems: &mut Problems) -> Option<Vec<Length>> {

@@ -61,6 +61,10 @@ fn of_key(key: &Key) -> Map<String, Value> {
         Takes::Name => json!({ "type": "string", "pattern": "^[A-Za-z0-9][A-Za-z0-9 _-]{0,59}$" }),
         Takes::Text(most) => json!({ "type": "string", "maxLength": most }),
         Takes::Word(words) => json!({ "type": "string", "enum": words }),
+        Takes::WordOrLength(words, ..) => json!({ "anyOf": [
+            { "type": "string", "enum": words },
+            { "type": "string", "pattern": LENGTH.pattern() },
+        ] }),
         Takes::Length(..) => json!({ "type": "string", "pattern": LENGTH.pattern() }),
         Takes::Angle(..) => json!({ "type": "string", "pattern": ANGLE.pattern() }),
         Takes::Number(least, most) => json!({ "type": "number", "minimum": least, "maximum": most }),

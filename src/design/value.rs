@@ -65,7 +65,9 @@ fn single(key: &Key, raw: &DeValue<'_>) -> Result<Value, Wrong> {
         }
         (_, DeValue::String(text), _) => from_text(key, text),
         (Takes::Number(..), _, Some(digits)) => from_text(key, digits),
-        (Takes::Length(..) | Takes::Lengths(..), _, Some(digits)) => Err(bare(key, &LENGTH, digits)),
+        (Takes::Length(..) | Takes::Lengths(..) | Takes::WordOrLength(..), _, Some(digits)) => {
+            Err(bare(key, &LENGTH, digits))
+        }
         (Takes::Angle(..), _, Some(digits)) => Err(bare(key, &ANGLE, digits)),
         _ => Err(mismatch(key, raw)),
     }
@@ -99,6 +101,13 @@ pub(super) fn from_text(key: &Key, text: &str) -> Result<Value, Wrong> {
             }
             Ok(Value::Text(text.to_owned()))
         }
+        Takes::WordOrLength(words, ..) if words.contains(&text) => Ok(Value::Text(text.to_owned())),
+        // No length begins with a letter: a word was meant.
+        Takes::WordOrLength(words, ..) if text.starts_with(|c: char| c.is_alphabetic()) => {
+            let message = format!("{} is '{}': it takes {}", key.name, clipped(text), key.takes.describe());
+            let near = nearest(text, words.iter().copied()).unwrap_or(key.example);
+            Err(Wrong::new(message).help(format!("for example \"{near}\"")))
+        }
         Takes::Word(words) => match words.contains(&text) {
             true => Ok(Value::Text(text.to_owned())),
             false => {
@@ -114,7 +123,7 @@ pub(super) fn from_text(key: &Key, text: &str) -> Result<Value, Wrong> {
                 })
             }
         },
-        Takes::Length(least, most) | Takes::Lengths(_, least, most) => {
+        Takes::Length(least, most) | Takes::Lengths(_, least, most) | Takes::WordOrLength(_, least, most) => {
             let length = quantity(key, &LENGTH, text)?;
             within(length, least, most)
                 .map(|mm| Value::Length(Length::from_mm(mm)))

@@ -57,9 +57,12 @@ impl Reading<'_> {
             return Section::new(format!("NACA {name}"), line, form);
         };
         let form = match digits(modifier).as_deref() {
-            Some([nose, position]) => {
-                ThicknessForm::modified(thickness, *nose, *position, self.trailing_edge)
-            }
+            Some([nose, position]) => ThicknessForm::modified(
+                thickness,
+                f64::from(*nose),
+                f64::from(*position) / 10.0,
+                self.trailing_edge,
+            ),
             _ => None,
         };
         let form =
@@ -91,7 +94,7 @@ impl Reading<'_> {
             }
         };
         // The thickness form is the modified one with nose index 4 and position 5.
-        let form = ThicknessForm::modified(f64::from(percent) / 100.0, 4, 5, self.trailing_edge)
+        let form = ThicknessForm::modified(f64::from(percent) / 100.0, 4.0, 0.5, self.trailing_edge)
             .ok_or_else(wrong)?;
         let suffix = if a == 1.0 { String::new() } else { format!(", a = {a}") };
         Section::new(format!("NACA 16-{number}{suffix}"), line, form)

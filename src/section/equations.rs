@@ -191,16 +191,40 @@ impl Equations {
 
     /// Holds the line against what a full thickness must be.
     pub(super) fn refuse_as_thickness(&self) -> Result<(), EquationError> {
+        self.refuse_as_surface()?;
+        self.refuse_as_gap(&|root| self.at_root(root))
+    }
+
+    /// Holds the line against what the height of a surface must be: smooth but for its corners, and
+    /// 0 at the nose.
+    pub(super) fn refuse_as_surface(&self) -> Result<(), EquationError> {
         self.refuse_rough(3, &|line, root| line.at_root(root), &|root| root)?;
-        let thickness = |i: u32| self.at_root(f64::from(i) / f64::from(INTERVALS)).value();
+        let nose = self.at_root(0.0).value();
+        if nose.abs() > SAME {
+            let message = format!("the value is {nose:.3e} of chord at the nose, and must be 0 there");
+            return self.fail(0.0, message, "a nose is blunt by a term in sqrt(x), not by a face");
+        }
+        Ok(())
+    }
+
+    /// Holds an upper surface and its `lower` one against each other.
+    pub(super) fn refuse_as_pair(&self, lower: &Self) -> Result<(), EquationError> {
+        self.refuse_as_gap(&|root| self.at_root(root) - lower.at_root(root))?;
+        let [upper, lower] = [self, lower].map(|surface| surface.at_root(1.0).value());
+        if upper < -SAME || lower > SAME {
+            let message = format!(
+                "the trailing edge goes from {lower:.6} to {upper:.6} of chord, and the chord line at 0 must end in it"
+            );
+            return self.fail(1.0, message, "the chord line goes from the nose to the trailing edge");
+        }
+        Ok(())
+    }
+
+    /// Holds a full thickness over the root of x against what it must be.
+    fn refuse_as_gap(&self, gap: &dyn Fn(f64) -> Taylor) -> Result<(), EquationError> {
+        let thickness = |i: u32| gap(f64::from(i) / f64::from(INTERVALS)).value();
         if (0..=INTERVALS).all(|i| thickness(i) == 0.0) {
             return self.fail(0.5, "the thickness is nought everywhere".to_owned(), FRACTIONS);
-        }
-        let nose = self.at_root(0.0).derivatives();
-        if nose[0].abs() > SAME {
-            let message =
-                format!("the thickness is {:.3e} of chord at the nose, and must be 0 there", nose[0]);
-            return self.fail(0.0, message, "a nose is blunt by a term in sqrt(x), not by a face");
         }
         for i in 1..=INTERVALS {
             let (x, t) = (station(i), thickness(i));
@@ -216,10 +240,11 @@ impl Equations {
                 return self.fail(x, format!("the thickness is {t:.4} of chord {}", place(x)), FRACTIONS);
             }
         }
-        if let Some(x) = self.waists().into_iter().find(|x| self.at(*x).value() <= SAME) {
+        if let Some(root) = waists(gap).into_iter().find(|root| gap(*root).value() <= SAME) {
+            let x = root * root;
             return self.fail(x, format!("the thickness is nought {}", place(x)), FRACTIONS);
         }
-        if nose[1] < 2.0 * SHARP {
+        if gap(0.0).derivatives()[1] < 2.0 * SHARP {
             let help = "a round nose needs a term in sqrt(x); the nose radius is an eighth of the square of its coefficient";
             return self.fail(
                 0.0,
@@ -228,22 +253,6 @@ impl Equations {
             );
         }
         Ok(())
-    }
-
-    /// Where a thickness has a least value between two stations.
-    fn waists(&self) -> Vec<f64> {
-        let root = |i: u32| f64::from(i) / f64::from(INTERVALS);
-        let rises = |r: f64| self.at_root(r).derivatives()[1] > 0.0;
-        let turns = (1..INTERVALS).filter(|i| !rises(root(*i)) && rises(root(i + 1)));
-        let waist = |i: u32| {
-            let (mut low, mut high) = (root(i), root(i + 1));
-            for _ in 0..60 {
-                let middle = 0.5 * (low + high);
-                if rises(middle) { high = middle } else { low = middle }
-            }
-            high * high
-        };
-        turns.map(waist).collect()
     }
 
     /// Refuses what is not finite, steps at a joint, and what changes faster than its slope says.
@@ -323,6 +332,22 @@ fn station(i: u32) -> f64 {
 
 fn place(x: f64) -> String {
     format!("at {:.2} % of chord", 100.0 * x)
+}
+
+/// Roots of the stations at which a thickness has a least value between two others.
+fn waists(thickness: &dyn Fn(f64) -> Taylor) -> Vec<f64> {
+    let root = |i: u32| f64::from(i) / f64::from(INTERVALS);
+    let rises = |r: f64| thickness(r).derivatives()[1] > 0.0;
+    let turns = (1..INTERVALS).filter(|i| !rises(root(*i)) && rises(root(i + 1)));
+    let waist = |i: u32| {
+        let (mut low, mut high) = (root(i), root(i + 1));
+        for _ in 0..60 {
+            let middle = 0.5 * (low + high);
+            if rises(middle) { high = middle } else { low = middle }
+        }
+        high
+    };
+    turns.map(waist).collect()
 }
 
 /// Where `abs`, `min` and `max` in a piece change over.

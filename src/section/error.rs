@@ -85,13 +85,18 @@ pub enum SectionError {
         /// Third digit.
         digit: u8,
     },
-    /// No five-digit mean line is published at that position.
-    #[error("no {} five-digit mean line is published for position digit {digit}: it goes from {} to 5", if *.reflexed { "reflexed" } else { "plain" }, if *.reflexed { 2 } else { 1 })]
+    /// There is no five-digit mean line with its highest point there.
+    #[error(
+        "no {} five-digit mean line has its highest point at {percent:.4} % of chord: it lies from {least} % to 42 % (the digits of a designation count twentieths)",
+        if *.reflexed { "reflexed" } else { "plain" }
+    )]
     FiveDigitPosition {
-        /// Second digit.
-        digit: u8,
+        /// What was asked, percent of chord.
+        percent: f64,
         /// Whether the reflexed lines were asked for.
         reflexed: bool,
+        /// Least position, percent of chord.
+        least: f64,
     },
     /// The mean line bends so sharply that a surface offset from it folds over.
     #[error(
@@ -114,5 +119,27 @@ pub enum SectionError {
         name: String,
         /// Where along the chord.
         percent: f64,
+    },
+    /// Something asked of a section that it cannot be brought to.
+    #[error("{name} cannot be worked: {why}")]
+    Work {
+        /// Designation.
+        name: String,
+        /// What is in the way.
+        why: String,
+    },
+    /// A flap that cannot be.
+    #[error("the flap of {name} cannot be: {why}")]
+    Flap {
+        /// Designation.
+        name: String,
+        /// What is in the way.
+        why: String,
+    },
+    /// A share of a blend that is none.
+    #[error("a blend cannot take {weight} of its second section: from 0 to 1")]
+    BlendWeight {
+        /// What was asked.
+        weight: f64,
     },
 }

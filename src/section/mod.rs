@@ -5,24 +5,80 @@ mod equations;
 mod error;
 mod expression;
 mod file;
+mod finish;
+mod flap;
+mod form;
+mod laid;
 mod mean_line;
 mod numbers;
 mod thickness;
 mod uniform_load;
+mod upright;
+mod work;
+mod working;
+
+#[allow(missing_docs, dead_code, unreachable_pub)]
+mod coordinates {
+    use crate::geometry::Point;
+    use crate::problems::FileErrors;
+    pub const LARGEST_COORDINATE_FILE: usize = 1_000_000;
+    #[derive(Debug, Clone, PartialEq)]
+    pub struct FittedSurfaces;
+    impl FittedSurfaces {
+        pub fn at(&self, t: f64) -> [f64; 3] {
+            [t; 3]
+        }
+        pub fn knots(&self) -> &[f64] {
+            &[]
+        }
+    }
+    pub struct CoordinateReport {
+        pub title: Option<String>,
+    }
+    impl CoordinateReport {
+        pub fn lines(&self) -> Vec<String> {
+            Vec::new()
+        }
+    }
+    pub struct Traced {
+        pub surfaces: FittedSurfaces,
+        pub points: Vec<Point>,
+        pub report: CoordinateReport,
+    }
+    #[derive(Debug, thiserror::Error)]
+    #[error("x")]
+    pub struct CoordinateError;
+    pub fn from_table(_: &str, _: &str, _: Option<f64>) -> Result<Traced, FileErrors> {
+        Ok(Traced { surfaces: FittedSurfaces, points: vec![], report: CoordinateReport { title: None } })
+    }
+    pub fn from_dxf(_: &[u8], _: &str, _: Option<f64>) -> Result<Traced, CoordinateError> {
+        Err(CoordinateError)
+    }
+}
+pub use coordinates::FittedSurfaces;
 
 pub use equations::{EquationError, Equations, Piece};
 pub use error::SectionError;
 pub use expression::{
     DEEPEST as DEEPEST_EXPRESSION, Expression, ExpressionError, LONGEST as LONGEST_EXPRESSION, Taylor,
 };
-pub use file::LARGEST_SECTION_FILE;
+pub use file::{Beside, LARGEST_SECTION_FILE, SectionFileError, names_a_file};
+pub use finish::Finish;
+pub use flap::{Flap, FlapSurface, HingeHeight};
 pub use mean_line::{MeanLine, Ordinate};
 pub use numbers::Numbers;
 pub use thickness::{ThicknessForm, TrailingEdge};
 pub use uniform_load::UniformLoad;
+pub use work::Work;
 
-use crate::geometry::{BezPath, Curve, Jet, Point, Vec2, fitted_outline, height_at};
+use std::sync::Arc;
+
+use crate::geometry::{BezPath, Curve, Jet, Point, fitted_outline, height_at};
 use crate::problems::FileErrors;
+use flap::Flapped;
+use form::{Blend, Form};
+use laid::Laid;
+use upright::Upright;
 
 /// Stations at which ordinates are tabulated, percent of chord: those of the published tables, with
 /// one more near the nose and one near the trailing edge.
@@ -40,27 +96,83 @@ pub enum Side {
     Lower,
 }
 
-/// A mean line with a thickness laid off perpendicular to it on both sides.
+/// A section of any making: a thickness laid off across a mean line, two surfaces written as
+/// equations or fitted to points, a blend of two others, each with what was changed of it.
 ///
 /// As a [`Curve`] its parameter runs from -1 (upper trailing edge) over 0 (nose) to 1 (lower
-/// trailing edge), anticlockwise; its square is the station on the mean line, so that the round
-/// nose is smooth in it.
+/// trailing edge), anticlockwise. Its square is the station along the mean line or the chord, so
+/// that the round nose is smooth in it; a deflected flap stretches it behind the hinge.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Section {
     name: String,
-    mean_line: MeanLine,
-    thickness: ThicknessForm,
+    form: Form,
+    /// The word for its trailing edge.
+    edge: &'static str,
+    remarks: Vec<String>,
 }
 
 impl Section {
-    /// A section from a mean line and a thickness form.
+    /// A section from a mean line and a thickness form, laid off across it.
     ///
     /// # Errors
     /// When a surface folds over itself because the mean line bends too sharply.
     pub fn new(name: String, mean_line: MeanLine, thickness: ThicknessForm) -> Result<Self, SectionError> {
-        let section = Self { name, mean_line, thickness };
-        section.refuse_folds()?;
-        Ok(section)
+        let edge = thickness.edge_word();
+        let form = Form::Laid(Laid { mean_line, thickness, rounds: Vec::new() });
+        Self { name, form, edge, remarks: Vec::new() }.without_folds()
+    }
+
+    /// A section from expressions for the heights of its upper and lower surface over x, all in
+    /// chords.
+    ///
+    /// # Errors
+    /// The surface (upper or lower), the piece, the place and what is wrong.
+    pub fn from_surfaces(
+        name: String,
+        upper: Equations,
+        lower: Equations,
+    ) -> Result<Self, (Side, EquationError)> {
+        let made = Upright::from_equations(upper, lower);
+        let upright = made.map_err(|(i, error)| (if i == 0 { Side::Upper } else { Side::Lower }, error))?;
+        Ok(Self::upright(name, upright, Vec::new()))
+    }
+
+    fn upright(name: String, upright: Upright, remarks: Vec<String>) -> Self {
+        let form = Form::Upright(upright);
+        let edge = edge_of(&form);
+        Self { name, form, edge, remarks }
+    }
+
+    /// A mixture of two sections, point by point at the same root of the station: `weight` of the
+    /// second, 0 to 1.
+    ///
+    /// # Errors
+    /// When the weight is none, or the mixture crosses itself.
+    pub fn blend(name: String, first: &Self, second: &Self, weight: f64) -> Result<Self, SectionError> {
+        if !(0.0..=1.0).contains(&weight) {
+            return Err(SectionError::BlendWeight { weight });
+        }
+        let of = [first.form.clone(), second.form.clone()];
+        let form = Form::Blend(Arc::new(Blend { of, weight }));
+        let remarks = first.remarks.iter().chain(&second.remarks).cloned().collect();
+        let edge = edge_of(&form);
+        let blend = Self { name, form, edge, remarks };
+        blend.refuse_crossing_surfaces()?;
+        Ok(blend)
+    }
+
+    /// With a flap deflected. What [`Section::numbers`] says of thickness, camber and nose is of
+    /// the section with the flap straight.
+    ///
+    /// # Errors
+    /// When hinge or angle are out of bounds, or the surfaces do not meet.
+    pub fn flapped(&self, flap: Flap) -> Result<Self, SectionError> {
+        let name =
+            format!("{}, flap {}° at {:.0} %", self.name, flap::degrees_of(flap.angle), 100.0 * flap.hinge);
+        let form = Form::Flapped(Arc::new(Flapped::new(self.form.clone(), flap, &self.name)?));
+        let flapped = Self { name, form, ..self.clone() };
+        flapped.refuse_crossing_surfaces()?;
+        Ok(flapped)
     }
 
     /// A published section by its designation, such as `NACA 4412` or `NACA 23012`.
@@ -80,30 +192,54 @@ impl Section {
         designation::parse(text, trailing_edge)
     }
 
-    /// A section from the text of a section file; `file_name` is only repeated in messages.
+    /// A section from the text of a section file that names no others; `file_name` is only repeated
+    /// in messages.
     ///
     /// # Errors
     /// What is wrong with the file, each with its place and what would be right.
     pub fn from_file_text(text: &str, file_name: &str) -> Result<Self, FileErrors> {
-        file::parse(text, file_name)
+        let nothing = |_: &str, _: usize| Err(std::io::Error::from(std::io::ErrorKind::NotFound));
+        file::parse(text, file_name, &Beside::new(&nothing))
     }
 
-    /// Designation.
+    /// A section through points.
+    fn fitted(name: String, traced: coordinates::Traced) -> Self {
+        let remarks = traced.report.lines();
+        Self::upright(name, Upright::fitted(traced.surfaces), remarks)
+    }
+
+    /// The same under another name.
+    #[must_use]
+    pub fn named(self, name: String) -> Self {
+        Self { name, ..self }
+    }
+
+    /// Designation, or what its maker calls it.
     #[must_use]
     pub fn name(&self) -> &str {
         &self.name
     }
 
-    /// The mean line.
+    /// The word for its trailing edge: `published`, `closed` or `open`.
     #[must_use]
-    pub fn mean_line(&self) -> &MeanLine {
-        &self.mean_line
+    pub fn edge_word(&self) -> &'static str {
+        self.edge
     }
 
-    /// The thickness form.
+    /// What was done to bring it about that its maker should know, such as how points were placed
+    /// and how close the curve lies to them; a sentence each.
     #[must_use]
-    pub fn thickness_form(&self) -> &ThicknessForm {
-        &self.thickness
+    pub fn remarks(&self) -> &[String] {
+        &self.remarks
+    }
+
+    /// The points of the upper and the lower surface at parameter `root` of both, 0 (nose) to 1,
+    /// with any flap straight. For the published families they lie across the mean line at
+    /// x = `root`², and midway between them is that line.
+    #[must_use]
+    pub fn pair(&self, root: f64) -> [Point; 2] {
+        let whole = self.form.unflapped();
+        [-root, root].map(|t| whole.jet(t).point)
     }
 
     /// Height of a surface above the chord line at station `x`, solved on the outline itself.
@@ -133,6 +269,13 @@ impl Section {
         fitted_outline(self, tolerance)
     }
 
+    fn without_folds(self) -> Result<Self, SectionError> {
+        match self.form.fold() {
+            Some((side, x)) => Err(SectionError::Folds { name: self.name, side, percent: 100.0 * x }),
+            None => Ok(self),
+        }
+    }
+
     /// Refuses surfaces that meet elsewhere than at the nose and the trailing edge.
     fn refuse_crossing_surfaces(&self) -> Result<(), SectionError> {
         let mut points = self.points(801);
@@ -151,60 +294,20 @@ impl Section {
             SectionError::SurfacesCross { name: self.name.clone(), percent }
         })
     }
+}
 
-    fn refuse_folds(&self) -> Result<(), SectionError> {
-        const STATIONS: usize = 2000;
-        for i in 1..=STATIONS {
-            let root = i as f64 / STATIONS as f64;
-            let x = root * root;
-            let half = self.thickness.half_at_root(root)[0];
-            let line = self.mean_line.at(x);
-            // An offset curve turns back where the offset passes the centre of curvature.
-            let reach = half * line.second.abs() / (1.0 + line.slope * line.slope).powf(1.5);
-            if reach >= 1.0 {
-                let side = if line.second < 0.0 { "lower" } else { "upper" };
-                return Err(SectionError::Folds { name: self.name.clone(), side, percent: 100.0 * x });
-            }
-        }
-        Ok(())
-    }
+/// The word for the trailing edge of a form that is no published one.
+fn edge_of(form: &Form) -> &'static str {
+    let gap = form.jet(-1.0).point.distance(form.jet(1.0).point);
+    if gap > 1e-9 { "open" } else { "closed" }
 }
 
 impl Curve for Section {
     fn jet(&self, t: f64) -> Jet {
-        let x = t * t;
-        let line = self.mean_line.at(x);
-        let [half, half_first, half_second] = self.thickness.half_at_root(t.abs());
-        // Offset along the normal and its derivatives in t: upper side (t < 0) outwards is up.
-        let (offset, offset_first, offset_second) =
-            if t < 0.0 { (half, -half_first, half_second) } else { (-half, -half_first, -half_second) };
-
-        let secant2 = 1.0 + line.slope * line.slope;
-        let (cos, sin) = (1.0 / secant2.sqrt(), line.slope / secant2.sqrt());
-        let (along, normal) = (Vec2::new(cos, sin), Vec2::new(-sin, cos));
-        // Angle of the mean line, differentiated by x and then by t.
-        let turn_x = line.second / secant2;
-        let turn_xx =
-            line.third / secant2 - 2.0 * line.slope * line.second * line.second / (secant2 * secant2);
-        let turn = turn_x * 2.0 * t;
-        let turn_rate = turn_xx * 4.0 * x + turn_x * 2.0;
-
-        Jet {
-            point: Point::new(x, line.y) + offset * normal,
-            first: Vec2::new(2.0 * t, 2.0 * t * line.slope) + offset_first * normal - offset * turn * along,
-            second: Vec2::new(2.0, 2.0 * line.slope + 4.0 * x * line.second) + offset_second * normal
-                - 2.0 * offset_first * turn * along
-                - offset * (turn_rate * along + turn * turn * normal),
-        }
+        self.form.jet(t)
     }
 
     fn breaks(&self) -> Vec<f64> {
-        let mut roots: Vec<f64> = self.mean_line.joints().into_iter().map(f64::sqrt).collect();
-        roots.extend(self.thickness.joints().into_iter().map(f64::sqrt));
-        roots.push(1.0);
-        roots.sort_by(f64::total_cmp);
-        roots.dedup();
-        let upper = roots.iter().rev().map(|root| -root);
-        upper.chain([0.0]).chain(roots.iter().copied()).collect()
+        self.form.breaks()
     }
 }

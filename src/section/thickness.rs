@@ -55,8 +55,8 @@ enum Law {
 const NOSE: f64 = 1.4845;
 
 /// Slope of the modified form at its trailing edge (`d1`) for a thickness of 0.2, by the position
-/// of the greatest thickness in tenths of the chord. NACA Report 492, from memory.
-const EDGE_SLOPE: [(u8, f64); 5] = [(2, 0.200), (3, 0.234), (4, 0.315), (5, 0.465), (6, 0.700)];
+/// of the greatest thickness. NACA Report 492, from memory.
+const EDGE_SLOPE: [(f64, f64); 5] = [(0.2, 0.200), (0.3, 0.234), (0.4, 0.315), (0.5, 0.465), (0.6, 0.700)];
 
 impl ThicknessForm {
     /// The four- and five-digit form of nominal thickness `thickness` (fraction of chord).
@@ -72,24 +72,34 @@ impl ThicknessForm {
         Self { thickness, trailing_edge, law: Law::FourDigit([NOSE, -0.6300, -1.7580, 1.4215, last]) }
     }
 
-    /// The modified form: `nose_index` 1 to 9 (6 for the usual nose, 3 for a quarter of its
-    /// radius, 9 for three times it) and the greatest thickness at `position` tenths of the chord,
-    /// 2 to 6. `None` outside these.
+    /// The modified form: `nose_index` from 1 to 8, or 9 (6 for the usual nose, 3 for a quarter of
+    /// its radius, 9 for three times it), and the greatest thickness at `position`, 0.2 to 0.6 of the
+    /// chord. `None` outside these.
     ///
     /// Source: Stack and von Doenhoff, NACA Report 492 (1934). The coefficients are derived here
     /// from its conditions: greatest thickness and no slope at the joint from both sides, equal
-    /// curvature there, given nose radius, edge and edge slope.
+    /// curvature there, given nose radius, edge and edge slope. Between the positions for which the
+    /// report gives the edge slope it is interpolated (Lagrange's polynomial through all five).
     #[must_use]
     pub fn modified(
         thickness: f64,
-        nose_index: u8,
-        position: u8,
+        nose_index: f64,
+        position: f64,
         trailing_edge: TrailingEdge,
     ) -> Option<Self> {
-        let (_, d1) = EDGE_SLOPE.into_iter().find(|(tenths, _)| *tenths == position)?;
+        if !(0.2..=0.6).contains(&position) {
+            return None;
+        }
+        let d1: f64 = EDGE_SLOPE
+            .iter()
+            .map(|&(at, slope)| {
+                let others = EDGE_SLOPE.iter().filter(|(other, _)| *other != at);
+                slope * others.map(|(other, _)| (position - other) / (at - other)).product::<f64>()
+            })
+            .sum();
         let nose = match nose_index {
-            1..=8 => NOSE * f64::from(nose_index) / 6.0,
-            9 => NOSE * 3_f64.sqrt(),
+            9.0 => NOSE * 3_f64.sqrt(),
+            1.0..=8.0 => NOSE * nose_index / 6.0,
             _ => return None,
         };
         // The report's conditions are for a thickness of 0.2, five times less than one.
@@ -98,7 +108,7 @@ impl ThicknessForm {
             TrailingEdge::Published => 0.01,
             TrailingEdge::Closed => 0.0,
         };
-        let joint = f64::from(position) / 10.0;
+        let joint = position;
         let s = 1.0 - joint;
         let d2 = (3.0 * (0.5 - d0) - 2.0 * s * d1) / (s * s);
         let d3 = (s * d1 - 2.0 * (0.5 - d0)) / (s * s * s);

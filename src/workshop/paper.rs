@@ -48,7 +48,8 @@ pub struct Page {
 #[must_use]
 pub fn single_page(drawing: &Drawing) -> Page {
     const MARGIN: f64 = 10.0;
-    let bounds = drawing.bounds();
+    // The window cuts lines at its edge, and an outermost line is as wide outside as inside.
+    let bounds = drawing.bounds().inflate(1.0, 1.0);
     let window_width = bounds.width().max(CHECK_LENGTH + 10.0);
     let window_height = bounds.height().max(CHECK_LENGTH + 10.0);
     let window = Rect::from_origin_size((MARGIN + STRIP, MARGIN + STRIP), (window_width, window_height));

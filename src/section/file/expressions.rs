@@ -1,4 +1,4 @@
-//! The section file: a section written as equations, in TOML.
+//! Expressions in a section file: constants, pieces, and what they make.
 
 use std::collections::BTreeMap;
 use std::ops::Range;
@@ -6,117 +6,38 @@ use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeString, DeTable, DeValue};
 
-use super::expression::known_names;
-use super::{EquationError, Equations, Expression, MeanLine, Piece, Section, ThicknessForm};
-use crate::problems::{FileErrors, Problems, Wrong};
-use crate::units::{clipped, nearest};
+use super::reader::{Raw, Reader, number};
+use crate::problems::Wrong;
+use crate::section::equations::MOST_PIECES;
+use crate::section::expression::known_names;
+use crate::section::{EquationError, Equations, Expression, Piece};
+use crate::units::clipped;
 
-/// The largest section file that is read, in bytes. It bounds the work that a file can ask for.
-pub const LARGEST_SECTION_FILE: usize = 20_000;
 const MOST_CONSTANTS: usize = 200;
 
-pub(super) fn parse(text: &str, file_name: &str) -> Result<Section, FileErrors> {
-    let mut file = File { text, problems: Problems::default(), constants: BTreeMap::new() };
-    match file.section() {
-        Some(section) if file.problems.is_empty() => Ok(section),
-        _ => Err(file.problems.report(text, file_name)),
-    }
-}
-
 /// The equations of one line, with the place of each piece in the file.
-type Placed = (Equations, Vec<Range<usize>>);
+pub(super) type PlacedEquations = (Equations, Vec<Range<usize>>);
 
-struct File<'a> {
-    text: &'a str,
-    problems: Problems,
+/// Reads expressions in which the constants of the file may stand.
+pub(super) struct Expressions<'r, 'a> {
+    pub(super) reader: &'r mut Reader<'a>,
     constants: BTreeMap<String, f64>,
 }
 
-impl File<'_> {
-    fn wrong(&mut self, span: Range<usize>, message: impl AsRef<str>, help: impl AsRef<str>) {
-        self.problems.add(span, Wrong::new(message).help(help));
-    }
-
-    fn section(&mut self) -> Option<Section> {
-        if self.text.len() > LARGEST_SECTION_FILE {
-            let message =
-                format!("the file has more than {LARGEST_SECTION_FILE} bytes, the most that are read");
-            self.wrong(0..0, message, "a section file holds equations, no lists of points");
-            return None;
-        }
-        let root = match DeTable::parse(self.text) {
-            Ok(root) => root,
-            Err(error) => {
-                let message = format!("this is not TOML, the form of a section file: {}", error.message());
-                self.problems.add(error.span().unwrap_or(0..0), Wrong::new(message));
-                return None;
-            }
-        };
-        let root = root.get_ref();
-        self.refuse_unknown(root, &["name", "constants", "camber", "thickness"], "a section file");
+impl<'r, 'a> Expressions<'r, 'a> {
+    pub(super) fn new(reader: &'r mut Reader<'a>, root: &DeTable<'_>) -> Self {
+        let mut expressions = Self { reader, constants: BTreeMap::new() };
         if let Some(constants) = root.get("constants") {
-            self.read_constants(constants);
+            expressions.read_constants(constants);
         }
-        let name = match root.get("name") {
-            Some(raw) => self.name(raw),
-            None => {
-                self.wrong(
-                    0..0,
-                    "name is missing: what the section is called",
-                    "write name = \"My section\"",
-                );
-                None
-            }
-        };
-        let line = match root.get("camber") {
-            Some(raw) => self.equations("camber", "y", raw).and_then(|(equations, places)| {
-                let line = MeanLine::from_equations(equations);
-                self.noted(line, &places)
-            }),
-            None => Some(MeanLine::Straight),
-        };
-        let form = match root.get("thickness") {
-            Some(raw) => self.equations("thickness", "t", raw).and_then(|(equations, places)| {
-                let form = ThicknessForm::from_equations(equations);
-                self.noted(form, &places)
-            }),
-            None => {
-                let help = "write thickness = \"0.3*sqrt(x)*(1 - x)\", or what yours is: the full thickness over x, in chords";
-                self.wrong(0..0, "thickness is missing", help);
-                None
-            }
-        };
-        let made = Section::new(name?, line?, form?)
-            .and_then(|section| section.refuse_crossing_surfaces().map(|()| section));
-        let place = root.get("camber").or(root.get("thickness")).map_or(0..0, Spanned::span);
-        made.map_err(|error| self.problems.add(place, Wrong::new(error.to_string()))).ok()
+        expressions
     }
 
-    fn refuse_unknown(&mut self, table: &DeTable<'_>, known: &'static [&'static str], place: &str) {
-        for (key, _) in table.iter().filter(|(key, _)| !known.contains(&key.get_ref().as_ref())) {
-            let help = match nearest(key.get_ref(), known.iter().copied()) {
-                Some(near) => format!("did you mean {near}?"),
-                None => format!("what can stand here: {}", known.join(", ")),
-            };
-            self.wrong(key.span(), format!("'{}' is not a key of {place}", clipped(key.get_ref())), help);
-        }
+    fn wrong(&mut self, span: Range<usize>, message: impl AsRef<str>, help: impl AsRef<str>) {
+        self.reader.wrong(span, message, help);
     }
 
-    fn name(&mut self, raw: &Spanned<DeValue<'_>>) -> Option<String> {
-        let fit = |c: char| c.is_ascii_alphanumeric() || " -_.,()=%".contains(c);
-        match raw.get_ref() {
-            DeValue::String(text) if !text.trim().is_empty() && text.len() <= 60 && text.chars().all(fit) => {
-                Some(text.trim().to_owned())
-            }
-            _ => {
-                let help = "it takes up to 60 letters, digits, blanks and - _ . , ( ) = %, in quotes";
-                self.wrong(raw.span(), "this cannot be the name of a section", help);
-                None
-            }
-        }
-    }
-
-    fn read_constants(&mut self, raw: &Spanned<DeValue<'_>>) {
+    fn read_constants(&mut self, raw: &Raw<'_>) {
         let DeValue::Table(table) = raw.get_ref() else {
             self.wrong(
                 raw.span(),
@@ -174,13 +95,18 @@ impl File<'_> {
     }
 
     /// The equations under a key: one text, or a list of pieces.
-    fn equations(&mut self, key: &str, value: &'static str, raw: &Spanned<DeValue<'_>>) -> Option<Placed> {
+    pub(super) fn equations(
+        &mut self,
+        key: &str,
+        value: &'static str,
+        raw: &Raw<'_>,
+    ) -> Option<PlacedEquations> {
         let (pieces, places): (Vec<Piece>, Vec<[Range<usize>; 2]>) = match raw.get_ref() {
             DeValue::String(_) => {
                 let value = self.expression(raw)?;
                 (vec![Piece { from: 0.0, to: 1.0, value }], vec![[raw.span(), raw.span()]])
             }
-            DeValue::Array(array) if !array.is_empty() && array.len() <= super::equations::MOST_PIECES => {
+            DeValue::Array(array) if !array.is_empty() && array.len() <= MOST_PIECES => {
                 let read: Vec<_> = array.iter().map(|raw| self.piece(key, value, raw)).collect();
                 read.into_iter().collect::<Option<Vec<_>>>()?.into_iter().unzip()
             }
@@ -202,12 +128,7 @@ impl File<'_> {
         self.noted(equations, &heads).map(|equations| (equations, values))
     }
 
-    fn piece(
-        &mut self,
-        key: &str,
-        value: &'static str,
-        raw: &Spanned<DeValue<'_>>,
-    ) -> Option<(Piece, [Range<usize>; 2])> {
+    fn piece(&mut self, key: &str, value: &'static str, raw: &Raw<'_>) -> Option<(Piece, [Range<usize>; 2])> {
         let DeValue::Table(table) = raw.get_ref() else {
             self.wrong(
                 raw.span(),
@@ -218,7 +139,7 @@ impl File<'_> {
         };
         let known: &'static [&'static str] =
             if value == "y" { &["from", "to", "y"] } else { &["from", "to", "t"] };
-        self.refuse_unknown(table, known, &format!("[[{key}]]"));
+        self.reader.refuse_unknown(table, known, &format!("[[{key}]]"));
         let missing: Vec<&str> = known.iter().copied().filter(|name| !table.contains_key(*name)).collect();
         if !missing.is_empty() {
             let message = format!("this piece of {key} lacks {}", missing.join(", "));
@@ -233,7 +154,7 @@ impl File<'_> {
     }
 
     /// An end of a piece: a number, or an expression without x.
-    fn end(&mut self, raw: &Spanned<DeValue<'_>>) -> Option<f64> {
+    fn end(&mut self, raw: &Raw<'_>) -> Option<f64> {
         let value = match raw.get_ref() {
             DeValue::String(_) => self.expression(raw)?.constant().filter(|value| value.is_finite()),
             other => number(other),
@@ -248,7 +169,7 @@ impl File<'_> {
         value
     }
 
-    fn expression(&mut self, raw: &Spanned<DeValue<'_>>) -> Option<Expression> {
+    fn expression(&mut self, raw: &Raw<'_>) -> Option<Expression> {
         let DeValue::String(text) = raw.get_ref() else {
             self.wrong(raw.span(), "an expression stands in quotes", "write it as \"0.3*sqrt(x)*(1 - x)\"");
             return None;
@@ -258,7 +179,8 @@ impl File<'_> {
             Err(error) => {
                 // Escapes in the file shift what follows; then the whole text is marked.
                 let whole = raw.span();
-                let inside = self.text.get(whole.clone()).and_then(|literal| literal.find(text.as_ref()));
+                let inside =
+                    self.reader.text.get(whole.clone()).and_then(|literal| literal.find(text.as_ref()));
                 let span = match inside {
                     Some(offset) if !text.is_empty() => {
                         let start = whole.start + offset;
@@ -267,7 +189,7 @@ impl File<'_> {
                     _ => whole,
                 };
                 let wrong = Wrong::new(&error.message);
-                self.problems.add(
+                self.reader.problems.add(
                     span,
                     match &error.help {
                         Some(help) => wrong.help(help),
@@ -279,21 +201,11 @@ impl File<'_> {
         }
     }
 
-    fn noted<T>(&mut self, made: Result<T, EquationError>, places: &[Range<usize>]) -> Option<T> {
+    pub(super) fn noted<T>(&mut self, made: Result<T, EquationError>, places: &[Range<usize>]) -> Option<T> {
         made.map_err(|error| {
             let place = places.get(error.piece).or(places.last()).cloned().unwrap_or(0..0);
             self.wrong(place, &error.message, error.help);
         })
         .ok()
     }
-}
-
-/// A finite number of the file.
-fn number(raw: &DeValue<'_>) -> Option<f64> {
-    let digits = match raw {
-        DeValue::Integer(integer) if integer.radix() == 10 => integer.as_str(),
-        DeValue::Float(float) => float.as_str(),
-        _ => return None,
-    };
-    digits.parse().ok().filter(|value: &f64| value.is_finite())
 }

@@ -12,6 +12,16 @@ use serde::Deserialize;
 struct Reference {
     thickness: Thickness,
     mean_line_a1: MeanLineTable,
+    derived_line: Vec<DerivedLine>,
+}
+
+/// Joint, cubic, and of a reflexed line the ratio of its rear cubic.
+#[derive(Deserialize)]
+struct DerivedLine {
+    position: f64,
+    plain: Option<[f64; 2]>,
+    reflexed: Option<[f64; 3]>,
+    published: Vec<f64>,
 }
 
 #[derive(Deserialize)]
@@ -105,6 +115,49 @@ fn forms_are_smooth_at_their_joint_and_closed_when_asked() {
             .nose_radius()
     };
     assert!((radius(3) / radius(6) - 0.25).abs() < 1e-12 && (radius(9) / radius(6) - 3.0).abs() < 1e-12);
+}
+
+#[test]
+fn five_digit_lines_of_any_position_follow_from_their_conditions() {
+    for line in reference().derived_line {
+        let expected = line.plain.map(Vec::from).or(line.reflexed.map(Vec::from)).expect("a line");
+        let reflexed = line.reflexed.is_some();
+        let derived = MeanLine::five_digit_at(0.3, line.position, reflexed).expect("a line");
+        let MeanLine::FiveDigit { joint, front, rear_ratio } = derived else { panic!("{derived:?}") };
+        let ours = [joint, front, rear_ratio];
+        for (ours, expected) in ours.iter().zip(&expected) {
+            assert!((ours / expected - 1.0).abs() < 1e-7, "{} {reflexed}: {ours} {expected}", line.position);
+        }
+        // The published constants are those of conditions solved by hand: said in docs/sections.md.
+        let strays: Vec<String> = ours
+            .iter()
+            .zip(&line.published)
+            .map(|(a, b)| format!("{:.2} %", 100.0 * (b / a - 1.0)))
+            .collect();
+        println!("position {}, reflexed {reflexed}: published constants stray by {strays:?}", line.position);
+        assert!((joint - line.published[0]).abs() < 1.1e-3);
+        // A designation with such a digit keeps the published ones.
+        let digit = (20.0 * line.position).round() as u8;
+        let MeanLine::FiveDigit { joint, .. } = MeanLine::five_digit(0.3, digit, reflexed).expect("a line")
+        else {
+            panic!("no five-digit line")
+        };
+        assert_eq!(joint, line.published[0]);
+    }
+    // Where none is published: the highest point where the digits say, and nothing elsewhere than asked.
+    for (designation, at) in
+        [("NACA 26012", 0.30), ("NACA 27012", 0.35), ("NACA 28012", 0.40), ("NACA 27112", 0.35)]
+    {
+        let n = section(designation).numbers();
+        assert!((n.camber_at - at).abs() < 1e-7, "{designation}: {}", n.camber_at);
+    }
+    for (position, reflexed) in [(0.02, false), (0.42, false), (0.06, true), (0.42, true)] {
+        assert!(MeanLine::five_digit_at(0.4, position, reflexed).is_ok(), "{position}");
+    }
+    for (position, reflexed) in [(0.019, false), (0.43, false), (0.05, true), (0.43, true), (f64::NAN, false)]
+    {
+        assert!(MeanLine::five_digit_at(0.4, position, reflexed).is_err(), "{position}");
+    }
 }
 
 #[test]

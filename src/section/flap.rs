@@ -257,7 +257,8 @@ fn broken_side(whole: &Form, axis: Point, flap: &Flap, sign: f64, root: f64) -> 
         let (a, b) = (whole.jet(sign * fixed).point, whole.jet(sign * moved).point);
         (a - (axis + turned(b - axis))).hypot() < 1e-10
     };
-    let in_order = fixed > 0.0 && fixed <= root && moved >= root && moved < 1.0;
+    // Where a surface slopes, both may lie a little to one side of the hinge.
+    let in_order = fixed > 0.0 && fixed <= moved && moved < 1.0;
     (met && in_order).then_some(BrokenSide { fixed_to: fixed, flap_from: moved, round: 0.0 })
 }
 

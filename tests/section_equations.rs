@@ -380,17 +380,3 @@ fn the_verbs_take_section_files() {
         assert!(answer.err.contains(says), "{}", answer.err);
     }
 }
-
-/// The worked example of the hand-book is built as it stands there.
-#[test]
-fn the_example_of_the_handbook_is_a_section() {
-    let page = include_str!("../docs/sections.md");
-    let example =
-        page.split("```toml\n").nth(1).and_then(|rest| rest.split("```").next()).expect("an example");
-    let section = Section::from_file_text(example, "docs.toml").unwrap_or_else(|e| panic!("{e}"));
-    assert!(
-        page.contains(&format!("thickness of {:.2} %", 100.0 * section.numbers().thickness)),
-        "{:?}",
-        section.numbers()
-    );
-}

@@ -66,7 +66,7 @@ pub use file::{Beside, LARGEST_SECTION_FILE, SectionFileError, names_a_file};
 pub use finish::Finish;
 pub use flap::{Flap, FlapSurface, HingeHeight};
 pub use mean_line::{MeanLine, Ordinate};
-pub use numbers::Numbers;
+pub use numbers::{Numbers, SecondMoments, Turn};
 pub use thickness::{ThicknessForm, TrailingEdge};
 pub use uniform_load::UniformLoad;
 pub use work::Work;

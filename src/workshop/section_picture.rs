@@ -4,7 +4,7 @@ use std::f64::consts::TAU;
 
 use super::{Drawing, Role};
 use crate::geometry::{Affine, ArcPath, Curve, GeometryError, Jet, Point, Vec2, follow_with_arcs};
-use crate::section::{Numbers, Section};
+use crate::section::{Numbers, Section, Turn};
 use crate::units::Length;
 
 /// How far the drawn outline may lie from the section, mm.
@@ -76,10 +76,11 @@ pub fn section_numbers(n: &Numbers, chord: Option<Length>) -> Vec<(&'static str,
     };
     let moments = n.second_moments;
     let moment = |v: f64| format!("{:.places$} {moment_unit}", v * moment_scale);
-    let hollow = match n.hollowest {
-        Some(turn) => format!("{} at {}", length(turn.radius), length(turn.at.x)),
-        None => "none, the outline bulges everywhere".to_owned(),
+    let turn = |turn: Turn| match turn.radius {
+        0.0 => format!("a corner at {}", length(turn.at.x)),
+        radius => format!("radius {} at {}", length(radius), length(turn.at.x)),
     };
+    let hollow = n.hollowest.map_or("none, the outline bulges everywhere".to_owned(), turn);
     vec![
         ("thickness", format!("{} at {}", length(n.thickness), length(n.thickness_at))),
         ("camber", format!("{} at {}", length(n.camber), length(n.camber_at))),
@@ -102,7 +103,7 @@ pub fn section_numbers(n: &Numbers, chord: Option<Length>) -> Vec<(&'static str,
             format!("{} about the chord, {} across it", moment(moments.about_x), moment(moments.about_y)),
         ),
         ("outline", format!("{} long", length(n.perimeter))),
-        ("sharpest bulge", format!("radius {} at {}", length(n.sharpest.radius), length(n.sharpest.at.x))),
+        ("sharpest bulge", turn(n.sharpest)),
         ("sharpest hollow", hollow),
     ]
 }

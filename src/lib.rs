@@ -24,6 +24,7 @@ pub mod export;
 pub mod flow;
 pub mod geometry;
 pub mod pack;
+pub mod parts;
 pub mod problems;
 pub mod section;
 pub mod units;

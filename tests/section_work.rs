@@ -336,6 +336,31 @@ fn numbers_agree_with_closed_forms() {
     assert!((flapped.numbers().thickness - n.thickness).abs() < 1e-15);
 }
 
+/// Solid four-digit sections: area 0.685083 t, ∫ y² dA = 0.03940746 t³ and the centroid, which does not
+/// depend on t, by integration of NACA Report 460's polynomial (closed form, computed elsewhere).
+#[test]
+fn second_moments_of_four_digit_sections_agree_with_their_polynomial() {
+    for (name, area, about_x, about_y) in [
+        ("NACA 0009", 0.061_657_50, 2.872_804e-5, 3.403_766e-3),
+        ("NACA 0012", 0.082_210_00, 6.809_609e-5, 4.538_354e-3),
+        ("NACA 0015", 0.102_762_50, 1.330_002e-4, 5.672_943e-3),
+    ] {
+        let n = published(name).numbers();
+        assert!((n.area - area).abs() < 1e-8, "{name}: {}", n.area);
+        assert!((n.centroid.x - 0.420_435_47).abs() < 1e-8, "{name}: {}", n.centroid.x);
+        assert!(
+            (n.second_moments.about_x / about_x - 1.0).abs() < 3e-7,
+            "{name}: {}",
+            n.second_moments.about_x
+        );
+        assert!(
+            (n.second_moments.about_y / about_y - 1.0).abs() < 3e-7,
+            "{name}: {}",
+            n.second_moments.about_y
+        );
+    }
+}
+
 #[test]
 fn families_take_fractions_in_a_section_file() {
     let own = file(

@@ -84,6 +84,28 @@ impl StationShape<'_> {
         }
     }
 
+    /// How the outline moves for each mm along the span away from the root, at a parameter held
+    /// fast, in the shape's own frame.
+    #[must_use]
+    pub fn spread(&self, t: f64) -> Vec2 {
+        let change = placed(self.outer, t).point - placed(self.inner, t).point;
+        let per_mm = change / (self.outer.at - self.inner.at);
+        (Affine::rotate(self.twist) * per_mm.to_point()).to_vec2()
+    }
+
+    /// Parameters of the upper and the lower side at `x` mm from the nose along the chord.
+    #[must_use]
+    pub fn roots_at(&self, x: f64) -> [f64; 2] {
+        [-1.0, 1.0].map(|end| {
+            let (mut low, mut high) = (0.0, end);
+            for _ in 0..50 {
+                let middle = 0.5 * (low + high);
+                if self.jet(middle).point.x < x { low = middle } else { high = middle }
+            }
+            0.5 * (low + high)
+        })
+    }
+
     /// In the foil's axes.
     fn lofted(&self, t: f64) -> Jet {
         let (a, b) = (placed(self.inner, t), placed(self.outer, t));

@@ -1,0 +1,213 @@
+//! The core under its laminate: distances in the plane and in space, where the wood ends, weights.
+
+use plankform::geometry::{Curve, Point, follow_with_arcs};
+use plankform::parts::{Core, Covers, Laminate, PartError, Ply, PlyMaterial};
+use plankform::section::{Section, Side, TrailingEdge};
+use plankform::wing::{Station, Wing};
+
+/// A foil of two stations 300 mm apart.
+fn foil(sections: [&str; 2], chords: [f64; 2], sweep: f64, twist: f64, edge: TrailingEdge) -> Wing {
+    let station = |i: usize| Station {
+        at: 300.0 * i as f64,
+        chord: chords[i],
+        section: Section::from_designation(sections[i], edge).expect("a section"),
+        twist: twist.to_radians() * i as f64,
+        sweep: sweep * i as f64,
+    };
+    Wing::new(vec![station(0), station(1)], true).expect("a foil")
+}
+
+fn plain(thickness: f64) -> Ply {
+    Ply { thickness, covers: Covers::Both, span: 0.0..=1000.0, chord: 0.0..=1.0 }
+}
+
+fn laminate(plies: Vec<Ply>) -> Laminate {
+    Laminate { plies, finish: 0.1, rise: 5.0 }
+}
+
+/// Least distance in the plane from a point to the finished outline, refined on the curve itself.
+fn distance(curve: &impl Curve, point: Point) -> f64 {
+    let at = |t: f64| curve.jet(t.clamp(-1.0, 1.0)).point.distance(point);
+    let count = 4000;
+    let share = |i: usize| 2.0 * i as f64 / f64::from(count) - 1.0;
+    let best = (0..=4000).min_by(|&a, &b| at(share(a)).total_cmp(&at(share(b)))).expect("points");
+    let (mut low, mut high) = (share(best.saturating_sub(1)), share((best + 1).min(4000)));
+    for _ in 0..80 {
+        let (a, b) = (low + (high - low) / 3.0, high - (high - low) / 3.0);
+        if at(a) < at(b) { high = b } else { low = a }
+    }
+    at(0.5 * (low + high))
+}
+
+/// Cured ply thickness and weight: fibre volume over its share, and the rule of mixtures; worked
+/// examples computed apart (carbon of 200 g/m² at 50 % and 45 %, E-glass of 300 g/m² at 45 %).
+#[test]
+fn plies_have_the_thickness_of_their_fibre() {
+    for (areal_weight, fibre_density, fibre_share, thickness, density, weight) in [
+        (200.0, 1800.0, 0.5, 0.222_222, 1475.0, 0.327_778),
+        (200.0, 1800.0, 0.45, 0.246_914, 1442.5, 0.356_173),
+        (150.0, 1800.0, 0.6, 0.138_889, 1540.0, 0.213_889),
+        (300.0, 2550.0, 0.45, 0.261_438, 1780.0, 0.465_359),
+        (80.0, 2550.0, 0.4, 0.078_431, 1710.0, 0.134_118),
+    ] {
+        let ply = PlyMaterial { areal_weight, fibre_density, resin_density: 1150.0, fibre_share };
+        assert!((ply.thickness() - thickness).abs() < 1e-6, "{}", ply.thickness());
+        assert!((ply.density() - density).abs() < 1e-3, "{}", ply.density());
+        assert!((ply.cured_weight() - weight).abs() < 1e-6, "{}", ply.cured_weight());
+    }
+}
+
+/// On an untapered foil the skin's thickness lies between core and finished surface everywhere.
+#[test]
+fn every_point_of_the_core_lies_the_skin_inside() {
+    for (section, edge) in [
+        ("NACA 0012", TrailingEdge::Published),
+        ("NACA 4412", TrailingEdge::Closed),
+        ("NACA 23112", TrailingEdge::Published),
+        ("NACA 16-209", TrailingEdge::Published),
+    ] {
+        for skin in [0.2, 0.7, 1.4] {
+            let foil = foil([section; 2], [120.0; 2], 0.0, 0.0, edge);
+            let laminate = laminate(vec![plain(skin)]);
+            let shape = foil.shape_at(100.0).expect("a shape");
+            let core = Core::of(&shape, &laminate).expect("a core");
+            let mut worst: f64 = 0.0;
+            for i in 0..=400 {
+                let point = core.jet(f64::from(i) / 200.0 - 1.0).point;
+                worst = worst.max((distance(&shape, point) - skin - 0.1).abs());
+            }
+            println!(
+                "{section}, skin {skin} mm: off by {worst:.1e} mm, wood ends at {:.2} mm",
+                core.tail().x
+            );
+            assert!(worst < 1e-6, "{section} {skin}: {worst}");
+            // The router's contour too, within its own tolerance.
+            let contour = follow_with_arcs(&core, 0.01).expect("a contour");
+            assert!(contour.refuse_crossings(0.01).is_ok());
+            for vertex in contour.vertices() {
+                assert!((distance(&shape, vertex.point) - skin - 0.1).abs() < 0.01);
+            }
+        }
+    }
+}
+
+/// On a tapered, twisted and swept foil the skin's thickness is square to the surface in space.
+#[test]
+fn the_allowance_is_square_to_a_surface_that_leans() {
+    let foil = foil(["NACA 0018", "NACA 2409"], [180.0, 60.0], 30.0, -3.0, TrailingEdge::Published);
+    let laminate = laminate(vec![plain(0.9)]);
+    let at = 150.0;
+    let shape = foil.shape_at(at).expect("a shape");
+    let core = Core::of(&shape, &laminate).expect("a core");
+    // The finished surface in the frame of the shape, near it: points at other places are brought
+    // into its frame by what both know of the foil's own axes.
+    let in_frame = |t: f64, y: f64| shape.jet(t).point + (y - at) * shape.spread(t);
+    let (mut worst, mut plane): (f64, f64) = (0.0, 0.0);
+    for i in 1..40 {
+        let point = core.jet(f64::from(i) / 20.0 - 1.0).point;
+        let mut best = (f64::INFINITY, 0.0, at);
+        for j in 0..=1000 {
+            let t = f64::from(j) / 500.0 - 1.0;
+            for k in -5..=5 {
+                let y = at + 0.3 * f64::from(k);
+                let d = in_frame(t, y).distance(point).hypot(y - at);
+                if d < best.0 {
+                    best = (d, t, y);
+                }
+            }
+        }
+        let (mut step_t, mut step_y) = (2e-3, 0.3);
+        for _ in 0..60 {
+            for (dt, dy) in [
+                (1.0, 0.0),
+                (-1.0, 0.0),
+                (0.0, 1.0),
+                (0.0, -1.0),
+                (1.0, 1.0),
+                (-1.0, -1.0),
+                (1.0, -1.0),
+                (-1.0, 1.0),
+            ] {
+                let (t, y) = ((best.1 + dt * step_t).clamp(-1.0, 1.0), best.2 + dy * step_y);
+                let d = in_frame(t, y).distance(point).hypot(y - at);
+                if d < best.0 {
+                    best = (d, t, y);
+                }
+            }
+            (step_t, step_y) = (0.7 * step_t, 0.7 * step_y);
+        }
+        worst = worst.max((best.0 - 1.0).abs());
+        plane = plane.max((distance(&shape, point) - 1.0).abs());
+    }
+    println!(
+        "tapered foil: skin off by {worst:.1e} mm in space; in the plane it is up to {plane:.4} mm longer"
+    );
+    assert!(worst < 1e-3, "{worst}");
+    assert!(plane > 0.005, "the lean makes no difference here");
+}
+
+#[test]
+fn plies_count_where_they_lie() {
+    let upper = Ply { covers: Covers::Upper, chord: 0.2..=0.6, ..plain(0.3) };
+    let inner = Ply { span: 0.0..=120.0, ..plain(0.25) };
+    let laminate = laminate(vec![plain(0.2), upper, inner]);
+    let thickness = |side, at, x| laminate.thickness(side, at, x, 100.0)[0];
+    for (side, at, x, expected) in [
+        (Side::Upper, 50.0, 40.0, 0.85),
+        (Side::Lower, 50.0, 40.0, 0.55),
+        (Side::Upper, 200.0, 40.0, 0.6),
+        (Side::Upper, 200.0, 10.0, 0.3),
+        (Side::Upper, 200.0, 20.0, 0.3),
+        (Side::Upper, 200.0, 22.5, 0.45),
+        (Side::Upper, 200.0, 25.0, 0.6),
+        (Side::Upper, 200.0, 57.5, 0.45),
+        (Side::Upper, 200.0, 90.0, 0.3),
+    ] {
+        assert!((thickness(side, at, x) - expected).abs() < 1e-12, "{side:?} {at} {x}");
+    }
+    // The slope is that of the thickness.
+    for x in [21.0, 23.0, 24.9, 56.0, 59.0] {
+        let slope = (thickness(Side::Upper, 50.0, x + 1e-6) - thickness(Side::Upper, 50.0, x - 1e-6)) / 2e-6;
+        assert!((laminate.thickness(Side::Upper, 50.0, x, 100.0)[1] - slope).abs() < 1e-7, "{x}");
+    }
+    let foil = foil(["NACA 2412"; 2], [100.0; 2], 0.0, 0.0, TrailingEdge::Published);
+    let shape = foil.shape_at(200.0).expect("a shape");
+    let core = Core::of(&shape, &laminate).expect("a core");
+    for (x, t) in [(40.0, 0), (40.0, 1), (80.0, 0), (10.0, 1)].map(|(x, side)| (x, shape.roots_at(x)[side])) {
+        let side = if t < 0.0 { Side::Upper } else { Side::Lower };
+        let finished = shape.jet(t);
+        let normal = finished.tangent().expect("a tangent").turn_90();
+        let expected = finished.point + thickness(side, 200.0, x) * normal;
+        let off = distance(&core, expected);
+        assert!(off < 1e-6, "{side:?} {x}: {off}");
+    }
+    follow_with_arcs(&core, 0.01).expect("a contour");
+}
+
+#[test]
+fn the_wood_ends_where_the_skins_meet() {
+    let closed = foil(["NACA 0012"; 2], [100.0; 2], 0.0, 0.0, TrailingEdge::Closed);
+    let shape = closed.shape_at(50.0).expect("a shape");
+    let thin = laminate(vec![plain(0.4)]);
+    let core = Core::of(&shape, &thin).expect("a core");
+    assert!(core.ends_in_laminate());
+    // The edge of the wood is the skin's thickness from both surfaces.
+    assert!((distance(&shape, core.tail()) - 0.5).abs() < 1e-9);
+    // Behind some place it is thinner than the shop can handle, and ahead of it not.
+    let place = core.thin_behind(1.5).expect("a place");
+    let thickness = |x: f64| 2.0 * (shape.jet(shape.roots_at(x)[0]).point.y - 0.5);
+    assert!(place < core.tail().x && (thickness(place) - 1.5).abs() < 0.1, "{}", thickness(place));
+
+    // A sharp nose under a thick skin: the wood begins in an edge there too.
+    let sharp = foil(["NACA 0006"; 2], [100.0; 2], 0.0, 0.0, TrailingEdge::Published);
+    let shape = sharp.shape_at(50.0).expect("a shape");
+    let thick = laminate(vec![plain(0.7)]);
+    let core = Core::of(&shape, &thick).expect("a core");
+    assert!((distance(&shape, core.nose()) - 0.8).abs() < 1e-9, "{}", distance(&shape, core.nose()));
+    let contour = follow_with_arcs(&core, 0.01).expect("a contour");
+    assert!(contour.refuse_crossings(1e-3).is_ok() && contour.area() > 0.0);
+
+    // And under one that is too thick there is none.
+    let none = laminate(vec![plain(3.1)]);
+    assert!(matches!(Core::of(&shape, &none), Err(PartError::NoCore { .. })));
+}

@@ -1,7 +1,7 @@
 //! The core under its laminate: distances in the plane and in space, where the wood ends, weights.
 
 use plankform::geometry::{Curve, Point, follow_with_arcs};
-use plankform::parts::{Core, Covers, Laminate, PartError, Ply, PlyMaterial};
+use plankform::parts::{Core, Covers, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, split};
 use plankform::section::{Section, Side, TrailingEdge};
 use plankform::wing::{Station, Wing};
 
@@ -210,4 +210,73 @@ fn the_wood_ends_where_the_skins_meet() {
     // And under one that is too thick there is none.
     let none = laminate(vec![plain(3.1)]);
     assert!(matches!(Core::of(&shape, &none), Err(PartError::NoCore { .. })));
+}
+
+fn hinge(kind: HingeKind) -> Hinge {
+    Hinge {
+        at: 84.0,
+        kind,
+        up: 10.0_f64.to_radians(),
+        down: 15.0_f64.to_radians(),
+        face: 0.3,
+        clearance: 0.5,
+    }
+}
+
+/// Both pieces of either hinge are plain, lie in the finished section, and keep clear of each other
+/// over the whole travel; the closing travel uses up the gap to the clearance and no further.
+#[test]
+fn a_split_foil_turns_freely() {
+    let foil = foil(["NACA 2412"; 2], [120.0; 2], 0.0, 0.0, TrailingEdge::Published);
+    let shape = foil.shape_at(100.0).expect("a shape");
+    let laminate = laminate(vec![plain(0.5)]);
+    let whole = follow_with_arcs(&shape, 0.005).expect("an outline");
+    for kind in [
+        HingeKind::Laminate { side: Side::Upper },
+        HingeKind::Laminate { side: Side::Lower },
+        HingeKind::Pin { height: 0.5 },
+        HingeKind::Pin { height: 0.3 },
+        HingeKind::Pin { height: 0.8 },
+    ] {
+        let parts = split(&shape, &laminate, &hinge(kind), 0.005).expect("a split");
+        println!(
+            "{kind:?}: gap {:.3} mm at rest, {:.3} mm at {:.1}°, spacer {:?}",
+            parts.gap_at_rest,
+            parts.least_gap,
+            parts.least_gap_at.to_degrees(),
+            parts.spacer
+        );
+        assert!(parts.least_gap > 0.47, "{kind:?}: {}", parts.least_gap);
+        if let HingeKind::Laminate { side } = kind {
+            assert!((parts.least_gap - 0.5).abs() < 0.02, "{kind:?}: {}", parts.least_gap);
+            let closing = if side == Side::Upper { 15.0 } else { -10.0 };
+            assert!((parts.least_gap_at.to_degrees() - closing).abs() < 1e-9);
+        }
+        let mut area = 0.0;
+        for piece in [&parts.main, &parts.flap] {
+            for path in [&piece.core, &piece.finished] {
+                assert!(path.area() > 0.0, "{kind:?} runs clockwise");
+                assert!(path.refuse_crossings(0.005).is_ok(), "{kind:?} crosses itself");
+            }
+            assert!(piece.core.area() < piece.finished.area());
+            area += piece.finished.area();
+            // A cut face takes its own laminate: the wood keeps that far away from it.
+            let least =
+                piece.core.flattened(0.01).iter().map(|p| piece.finished.distance(*p)).fold(9.0, f64::min);
+            let skin = if matches!(kind, HingeKind::Pin { .. }) { 0.3 } else { 0.0 };
+            assert!(least > skin - 0.01, "{kind:?}: {least}");
+        }
+        assert!(area < whole.area() && area > 0.85 * whole.area(), "{kind:?}");
+    }
+}
+
+#[test]
+fn hinges_that_cannot_be_are_refused() {
+    let foil = foil(["NACA 2412"; 2], [120.0; 2], 0.0, 0.0, TrailingEdge::Published);
+    let shape = foil.shape_at(100.0).expect("a shape");
+    let laminate = laminate(vec![plain(0.5)]);
+    let behind = Hinge { at: 119.0, ..hinge(HingeKind::Laminate { side: Side::Upper }) };
+    assert!(matches!(split(&shape, &laminate, &behind, 0.01), Err(PartError::OffTheWood { .. })));
+    let thick = Hinge { face: 9.0, ..hinge(HingeKind::Pin { height: 0.5 }) };
+    assert!(matches!(split(&shape, &laminate, &thick, 0.01), Err(PartError::OffTheWood { .. })));
 }

@@ -269,7 +269,7 @@ impl Segment {
         self.arc().map_or_else(|| self.from.distance(self.to), |arc| arc.radius * arc.sweep.abs())
     }
 
-    fn at(&self, fraction: f64) -> Point {
+    pub(super) fn at(&self, fraction: f64) -> Point {
         match self.arc() {
             Some(_) if fraction <= 0.0 => self.from,
             Some(arc) => arc.centre + arc.radius * Vec2::from_angle(arc.start_angle + fraction * arc.sweep),

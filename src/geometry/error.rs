@@ -59,4 +59,12 @@ pub enum GeometryError {
         /// Place.
         z: f64,
     },
+    /// A cut that does not leave two pieces.
+    #[error("the cut at x = {x:.3}, y = {y:.3} mm does not part the outline into two pieces")]
+    Cut {
+        /// A place on the cut.
+        x: f64,
+        /// The same.
+        y: f64,
+    },
 }

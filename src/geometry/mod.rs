@@ -1,5 +1,6 @@
 //! Plane and solid geometry that knows no foil: curves, arcs, polygons, solids.
 
+mod arc_cut;
 mod arc_path;
 mod biarcs;
 pub mod curve;

@@ -103,6 +103,16 @@ impl Laminate {
         sum
     }
 
+    /// The skin of one side alone.
+    #[must_use]
+    pub fn of_side(&self, side: Side) -> Self {
+        let covers = if side == Side::Upper { Covers::Upper } else { Covers::Lower };
+        let on_it = |ply: &&Ply| ply.covers == Covers::Both || ply.covers == covers;
+        let finish = Ply { thickness: self.finish, covers, span: f64::MIN..=f64::MAX, chord: 0.0..=1.0 };
+        let plies = self.plies.iter().filter(on_it).map(|ply| Ply { covers, ..ply.clone() });
+        Self { plies: plies.chain([finish]).collect(), finish: 0.0, rise: self.rise }
+    }
+
     /// Share of a ply's thickness at a distance inside of its edge, and its slope.
     fn rises(&self, inside: f64) -> [f64; 2] {
         if inside <= 0.0 {

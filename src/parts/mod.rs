@@ -3,8 +3,10 @@
 
 mod core;
 mod error;
+mod hinge;
 mod laminate;
 
 pub use self::core::Core;
 pub use error::PartError;
+pub use hinge::{Hinge, HingeKind, Piece, Split, split};
 pub use laminate::{Covers, Laminate, Ply, PlyMaterial};

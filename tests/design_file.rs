@@ -2,7 +2,7 @@
 
 #![allow(clippy::unwrap_used, reason = "in a test, a panic is the report")]
 
-use plankform::design::{self, Design, DesignErrors, Kind, LARGEST_FILE, Problem};
+use plankform::design::{self, Design, DesignErrors, FlapKind, Kind, LARGEST_FILE, PlySide, Problem};
 use plankform::section::{Beside, Finish};
 use plankform::units::Length;
 use proptest::prelude::*;
@@ -109,7 +109,13 @@ fn what_is_left_out_takes_its_default() {
     assert_eq!((fin.flap, fin.notes.clone()), (None, None));
     // A flap without ends takes the whole piece.
     let flap = good(&format!("{FIN}[flap]\nhinge = 0.7\n")).flap.unwrap();
-    assert_eq!((flap.from.mm(), flap.to.mm()), (0.0, 300.0));
+    assert_eq!((flap.from.mm(), flap.to.mm(), flap.hinge_end), (0.0, 300.0, 0.7));
+    assert_eq!((flap.kind, flap.up.degrees(), flap.down.degrees()), (FlapKind::LaminateUpper, 8.0, 12.0));
+    assert!(fin.plies.is_empty() && !fin.has_skin());
+    let ply = good(&format!("{FIN}[[ply]]\nweight = \"200 g/m2\"\n"));
+    assert_eq!((ply.plies[0].to.mm(), ply.plies[0].on), (300.0, PlySide::Both));
+    assert!((ply.skin().plies[0].thickness - 200.0 / (1800.0 * 0.45)).abs() < 1e-12);
+    assert_ne!(ply.fingerprint(), fin.fingerprint());
 }
 
 #[test]
@@ -607,12 +613,20 @@ fn examples_and_defaults_of_the_schema_are_read() {
 #[test]
 fn the_hand_book_shows_the_registry() {
     let page = include_str!("../docs/design-file.md").replace("\r\n", "\n");
+    if std::env::var_os("PLANKFORM_HANDBOOK").is_some_and(|word| word == "write") {
+        let (head, rest) = page.split_once("<!-- keys -->\n").expect("the mark before the tables");
+        let (_, tail) = rest.split_once("<!-- end of keys -->").expect("the mark behind them");
+        let tables = design::key_tables();
+        let path = concat!(env!("CARGO_MANIFEST_DIR"), "/docs/design-file.md");
+        std::fs::write(path, format!("{head}<!-- keys -->\n{tables}<!-- end of keys -->{tail}")).unwrap();
+        return;
+    }
     let (_, tables) = page.split_once("<!-- keys -->\n").expect("the mark before the tables");
     let (tables, _) = tables.split_once("<!-- end of keys -->").expect("the mark behind them");
     assert_eq!(
         tables.trim(),
         design::key_tables().trim(),
-        "docs/design-file.md is stale: put key_tables() there"
+        "docs/design-file.md is stale: PLANKFORM_HANDBOOK=write cargo test --test design_file writes it"
     );
 }
 

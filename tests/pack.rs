@@ -48,9 +48,15 @@ fn every_demo_builds_a_complete_pack() {
             assert!(!files[path].is_empty(), "{path}");
         }
         let count = |ending: &str| files.keys().filter(|f| f.ends_with(ending)).count();
-        let stations = count(".dxf") - 1;
+        let wood = ["-core.dxf", "-main.dxf", "-flap.dxf"].into_iter().map(count).sum::<usize>();
+        let stations = count(".dxf") - 1 - wood;
         assert!(stations >= 2, "{name}");
-        assert_eq!((count(".svg"), count(".pdf"), count(".stl")), (stations + 1, 1, 2 * stations), "{name}");
+        let sheets = 1 + usize::from(wood > 0);
+        assert_eq!(
+            (count(".svg"), count(".pdf"), count(".stl")),
+            (stations + wood + 1, sheets, 2 * stations),
+            "{name}"
+        );
         for file in ["sheet.html", "tables/offsets.csv", "pack.json"] {
             assert!(files.contains_key(file), "{file}");
         }

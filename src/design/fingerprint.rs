@@ -4,14 +4,14 @@ use std::fmt::Write;
 
 use sha2::{Digest, Sha256};
 
-use super::model::{Design, Station};
+use super::model::{Design, Flap, Ply, Station};
 use crate::section::{Finish, names_a_file};
 use crate::units::{Angle, Length, fixed};
 
 impl Design {
     /// Eight hexadecimal digits such as `3f9a-01c7`, the first of a SHA-256 over everything that
-    /// shapes the parts and their aids: the kind, the planform, the stations, templates, flap,
-    /// masks and router.
+    /// shapes the parts and their aids: the kind, the planform, the stations, templates, laminate,
+    /// flap, masks and router.
     ///
     /// Names, notes, comments, the order of keys, the unit a value was written in, the paper,
     /// the printer, the stock and the range of the lift curves do not change it: pieces stay the
@@ -47,10 +47,12 @@ impl Design {
             )
         }));
         lines.extend(self.templates.iter().map(|at| format!("template {}", mm(*at))));
-        lines.extend(
-            self.flap
-                .map(|flap| format!("flap {} {} {}", fixed(flap.hinge, PLACES), mm(flap.from), mm(flap.to))),
-        );
+        lines.extend(self.plies.iter().map(ply));
+        if self.has_skin() {
+            let laminate = &self.laminate;
+            lines.push(format!("laminate finish {} rise {}", mm(laminate.finish), mm(laminate.rise)));
+        }
+        lines.extend(self.flap.as_ref().map(flap));
         let all = |what: &str, lengths: &[Length]| {
             let each: Vec<String> = lengths.iter().map(|&length| mm(length)).collect();
             format!("{what} {}", each.join(" "))
@@ -82,6 +84,21 @@ fn section(station: &Station) -> String {
 /// Points and decimals by which a shape is known: a change of a hundred-millionth of the chord tells.
 const SHAPE_POINTS: usize = 401;
 const SHAPE_PLACES: usize = 8;
+
+/// What of a ply decides how much it takes up and where.
+fn ply(ply: &Ply) -> String {
+    let thickness = ply.thickness.map_or_else(|| "computed".to_owned(), mm);
+    let numbers = [ply.weight, ply.fibre_density, ply.fibre_share, ply.chord_from, ply.chord_to]
+        .map(|v| fixed(v, PLACES));
+    format!("ply {:?} {thickness} {} span {} {}", ply.on, numbers.join(" "), mm(ply.from), mm(ply.to))
+}
+
+fn flap(flap: &Flap) -> String {
+    let numbers = [flap.hinge, flap.hinge_end, flap.axis].map(|v| fixed(v, PLACES));
+    let travel = [flap.up, flap.down].map(degrees);
+    let lengths = [flap.from, flap.to, flap.clearance, flap.face].map(mm);
+    format!("flap {} {} {} {}", flap.kind.word(), numbers.join(" "), travel.join(" "), lengths.join(" "))
+}
 
 fn finish(finish: Finish) -> String {
     match finish {

@@ -4,7 +4,8 @@
 //! down. The reader, its messages, the schema for editors and the page of the hand-book all follow
 //! from them.
 
-use super::model::{Kind, PaperSize};
+use super::model::{FlapKind, Kind, PaperSize, PlySide};
+use crate::units::{AREAL_WEIGHT, DENSITY, Quantity};
 
 /// One table of the file.
 pub(super) struct Table {
@@ -61,6 +62,8 @@ pub(super) enum Takes {
     Lengths(usize, f64, f64),
     /// An angle within these, degrees.
     Angle(f64, f64),
+    /// Another quantity within these, in its base unit.
+    Amount(&'static Quantity, f64, f64),
     /// A number without a unit within these.
     Number(f64, f64),
 }
@@ -76,7 +79,7 @@ pub(super) enum Otherwise {
 }
 
 use Otherwise::{Default, Left, Required};
-use Takes::{Angle, Length, Lengths, Name, Number, Text, Word, WordOrLength};
+use Takes::{Amount, Angle, Length, Lengths, Name, Number, Text, Word, WordOrLength};
 
 const fn key(
     name: &'static str,
@@ -189,11 +192,97 @@ pub(super) static TEMPLATES: Table = Table {
     )],
 };
 
+/// What the laminate takes up besides its plies.
+pub(super) static LAMINATE: Table = Table {
+    name: "laminate",
+    times: Times::AtMostOnce,
+    doc: "What lies between wood and finished surface besides the plies.",
+    keys: &[
+        key("finish", Length(0.0, 5.0), Default("0 mm"), "Filler and paint over all.", "0.2 mm"),
+        key(
+            "rise",
+            Length(0.5, 100.0),
+            Default("5 mm"),
+            "Over how much of the chord the recess for a ply deepens at an edge of it that lies on a surface.",
+            "5 mm",
+        ),
+        key(
+            "least-wood",
+            Length(0.0, 50.0),
+            Default("1.5 mm"),
+            "The thinnest wood that your shop can shape; where the core is thinner you are told.",
+            "1.5 mm",
+        ),
+    ],
+};
+
+/// One ply.
+pub(super) static PLY: Table = Table {
+    name: "ply",
+    times: Times::Many(0, 60),
+    doc: "A layer of the laminate, from the wood outwards. Without any, core and finished surface are one.",
+    keys: &[
+        key("cloth", Text(60), Default("cloth"), "What you call it.", "carbon twill"),
+        key("weight", Amount(&AREAL_WEIGHT, 10.0, 3000.0), Required, "Weight of the dry cloth.", "200 g/m2"),
+        key(
+            "fibre-density",
+            Amount(&DENSITY, 500.0, 4000.0),
+            Default("1800 kg/m3"),
+            "Density of the fibre: carbon about 1800, E-glass 2550, aramid 1440 kg/m3.",
+            "1800 kg/m3",
+        ),
+        key(
+            "resin-density",
+            Amount(&DENSITY, 800.0, 2000.0),
+            Default("1150 kg/m3"),
+            "Density of the cured resin.",
+            "1150 kg/m3",
+        ),
+        key(
+            "fibre-share",
+            Number(0.2, 0.75),
+            Default("0.45"),
+            "Share of the fibre in the volume of the cured ply: about 0.35 by hand, 0.45 to 0.5 under vacuum.",
+            "0.45",
+        ),
+        key(
+            "thickness",
+            Length(0.01, 20.0),
+            Left("from weight, density and share"),
+            "Thickness of the cured ply, where you have measured it.",
+            "0.25 mm",
+        ),
+        key("on", Word(PlySide::WORDS), Default("both"), "The surfaces that it covers.", "both"),
+        key(
+            "from",
+            Length(0.0, LONGEST),
+            Default("0 mm"),
+            "Where it begins, from the root along the span.",
+            "0 mm",
+        ),
+        key(
+            "to",
+            Length(0.0, LONGEST),
+            Left("the far end"),
+            "Where it ends, from the root along the span.",
+            "300 mm",
+        ),
+        key(
+            "chord-from",
+            Number(0.0, 0.95),
+            Default("0"),
+            "Where it begins along the chord; from 0 on both surfaces it goes round the nose.",
+            "0.15",
+        ),
+        key("chord-to", Number(0.05, 1.0), Default("1"), "Where it ends along the chord.", "0.6"),
+    ],
+};
+
 /// The flap.
 pub(super) static FLAP: Table = Table {
     name: "flap",
     times: Times::Absent,
-    doc: "A flap that is planned; this version draws its hinge line for reference and splits nothing.",
+    doc: "A flap: where it is parted from the main body, and how it is hinged.",
     keys: &[
         key(
             "hinge",
@@ -201,6 +290,13 @@ pub(super) static FLAP: Table = Table {
             Required,
             "Where the hinge lies, as a fraction of the chord from the nose.",
             "0.7",
+        ),
+        key(
+            "hinge-end",
+            Number(0.3, 0.95),
+            Left("as hinge"),
+            "The same at the flap's outer end; between the two it changes evenly.",
+            "0.72",
         ),
         key(
             "from",
@@ -216,6 +312,30 @@ pub(super) static FLAP: Table = Table {
             "Where the flap ends, from the root along the span.",
             "400 mm",
         ),
+        key(
+            "kind",
+            Word(FlapKind::WORDS),
+            Default("laminate-upper"),
+            "A hinge of laminate in the upper or the lower surface with a wedge-shaped gap, or a pin with a round flap nose.",
+            "laminate-upper",
+        ),
+        key(
+            "axis",
+            Number(0.1, 0.9),
+            Default("0.5"),
+            "Height of a pin between the lower (0) and the upper (1) surface.",
+            "0.5",
+        ),
+        key("up", Angle(0.0, 45.0), Default("8 deg"), "Travel with the trailing edge up.", "8 deg"),
+        key("down", Angle(0.0, 45.0), Default("12 deg"), "Travel with the trailing edge down.", "12 deg"),
+        key(
+            "clearance",
+            Length(0.1, 5.0),
+            Default("0.5 mm"),
+            "What stays free between flap and main body throughout the travel.",
+            "0.5 mm",
+        ),
+        key("face", Length(0.0, 5.0), Default("0 mm"), "Laminate on the cut faces.", "0.3 mm"),
     ],
 };
 
@@ -327,8 +447,10 @@ pub(super) static ROUTER: Table = Table {
 };
 
 /// Every table, in the order of the hand-book.
-pub(super) static TABLES: [&Table; 11] =
-    [&ROOT, &PLANFORM, &STATION, &TEMPLATES, &FLAP, &LIFT, &MASKS, &PRINTER, &PAPER, &STOCK, &ROUTER];
+pub(super) static TABLES: [&Table; 13] = [
+    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &LAMINATE, &PLY, &FLAP, &LIFT, &MASKS, &PRINTER, &PAPER, &STOCK,
+    &ROUTER,
+];
 
 impl Table {
     /// The key of that name.
@@ -347,7 +469,7 @@ impl Table {
 
     /// Whether a file has to hold it.
     pub(super) fn required(&self) -> bool {
-        matches!(self.times, Times::Once | Times::Many(..))
+        matches!(self.times, Times::Once | Times::Many(1.., _))
     }
 }
 
@@ -395,6 +517,10 @@ impl Takes {
                 round_length(most)
             ),
             Angle(least, most) => format!("an angle from {} deg to {} deg", number(least), number(most)),
+            Amount(quantity, least, most) => {
+                let (name, base) = (quantity.name, quantity.base());
+                format!("{name} from {} {base} to {} {base}", number(least), number(most))
+            }
             Number(least, most) => format!("a number from {} to {}", number(least), number(most)),
         }
     }

@@ -8,6 +8,7 @@ mod fingerprint;
 mod keys;
 mod model;
 mod page;
+mod parts;
 mod reader;
 mod resolve;
 mod schema;
@@ -16,7 +17,10 @@ mod value;
 mod wing;
 
 pub use crate::problems::{FileErrors as DesignErrors, Problem};
-pub use model::{Design, Flap, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
+pub use model::{
+    Design, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide, Printer, Router,
+    Station, Stock,
+};
 pub use page::key_tables;
 pub use schema::schema;
 pub use starter::starter;

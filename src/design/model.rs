@@ -61,7 +61,11 @@ pub struct Design {
     pub stations: Vec<Station>,
     /// Where templates are cut, ascending: every station, and the places the file names besides.
     pub templates: Vec<Length>,
-    /// The flap planned, if any.
+    /// What lies between wood and finished surface besides the plies.
+    pub laminate: Laminate,
+    /// The plies, from the wood outwards.
+    pub plies: Vec<Ply>,
+    /// The flap, if any.
     pub flap: Option<Flap>,
     /// What the lift curves cover.
     pub lift: Lift,
@@ -119,11 +123,122 @@ pub struct Station {
     pub sweep: Length,
 }
 
-/// A flap. In this version its hinge line is drawn for reference and nothing is split.
+/// What lies between wood and finished surface besides the plies.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Laminate {
+    /// Filler and paint over all, 0 to 5 mm.
+    pub finish: Length,
+    /// Over how much of the chord the recess for a ply deepens at its edge, 0.5 to 100 mm.
+    pub rise: Length,
+    /// The thinnest wood that the shop can shape, 0 to 50 mm.
+    pub least_wood: Length,
+}
+
+/// The surfaces that a ply covers.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum PlySide {
+    /// Both.
+    Both,
+    /// The upper one.
+    Upper,
+    /// The lower one.
+    Lower,
+}
+
+impl PlySide {
+    /// Every choice, in the order in which [`PlySide::WORDS`] names them.
+    pub const ALL: [Self; 3] = [Self::Both, Self::Upper, Self::Lower];
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["both", "upper", "lower"];
+
+    /// The side of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        Self::ALL.into_iter().zip(Self::WORDS).find(|(_, known)| **known == word).map(|(side, _)| side)
+    }
+}
+
+/// A layer of the laminate.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Ply {
+    /// What its maker calls it.
+    pub cloth: String,
+    /// Weight of the dry cloth, g/m², 10 to 3000.
+    pub weight: f64,
+    /// Density of its fibre, kg/m³, 500 to 4000.
+    pub fibre_density: f64,
+    /// Density of the cured resin, kg/m³, 800 to 2000.
+    pub resin_density: f64,
+    /// Share of the fibre in its volume, 0.2 to 0.75.
+    pub fibre_share: f64,
+    /// Thickness when cured where it has been measured, 0.01 to 20 mm.
+    pub thickness: Option<Length>,
+    /// The surfaces that it covers.
+    pub on: PlySide,
+    /// Where it begins along the span, from the root.
+    pub from: Length,
+    /// Where it ends.
+    pub to: Length,
+    /// Where it begins along the chord, 0 to 0.95.
+    pub chord_from: f64,
+    /// Where it ends, 0.05 to 1.
+    pub chord_to: f64,
+}
+
+/// How a flap is hinged.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum FlapKind {
+    /// The skin of the upper surface runs through and bends.
+    LaminateUpper,
+    /// That of the lower surface.
+    LaminateLower,
+    /// A pin with a round flap nose in a cove.
+    Pin,
+}
+
+impl FlapKind {
+    /// Every kind, in the order in which [`FlapKind::WORDS`] names them.
+    pub const ALL: [Self; 3] = [Self::LaminateUpper, Self::LaminateLower, Self::Pin];
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["laminate-upper", "laminate-lower", "pin"];
+
+    /// The word of the design file.
+    #[must_use]
+    pub fn word(self) -> &'static str {
+        match self {
+            Self::LaminateUpper => "laminate-upper",
+            Self::LaminateLower => "laminate-lower",
+            Self::Pin => "pin",
+        }
+    }
+
+    /// The kind of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        Self::ALL.into_iter().find(|kind| kind.word() == word)
+    }
+}
+
+/// A flap.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Flap {
-    /// Where the hinge lies, a fraction of the chord from the nose, 0.3 to 0.95.
+    /// Where the hinge lies at the flap's inner end, a fraction of the chord from the nose, 0.3 to
+    /// 0.95.
     pub hinge: f64,
+    /// The same at its outer end.
+    pub hinge_end: f64,
+    /// How it is hinged.
+    pub kind: FlapKind,
+    /// Height of a pin between the lower (0) and the upper (1) surface, 0.1 to 0.9.
+    pub axis: f64,
+    /// Travel with the trailing edge up, 0 to 45 degrees.
+    pub up: Angle,
+    /// Travel with the trailing edge down, 0 to 45 degrees.
+    pub down: Angle,
+    /// What stays free throughout the travel, 0.1 to 5 mm.
+    pub clearance: Length,
+    /// Laminate on the cut faces, 0 to 5 mm.
+    pub face: Length,
     /// Where it begins, from the root along the span.
     pub from: Length,
     /// Where it ends, at most at [`Design::reach`].

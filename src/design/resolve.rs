@@ -3,7 +3,10 @@
 use std::ops::Range;
 
 use super::keys;
-use super::model::{Design, Flap, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
+use super::model::{
+    Design, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide, Printer, Router,
+    Station, Stock,
+};
 use super::reader::{Row, Sheet};
 use crate::problems::{Problems, Wrong};
 use crate::section::{Beside, Finish, SectionFileError};
@@ -27,6 +30,8 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let stations = stations(sheet.all(&keys::STATION), reach.as_ref(), beside, problems);
     let templates = templates(sheet.one(&keys::TEMPLATES), reach.as_ref(), problems);
     let flap = sheet.one(&keys::FLAP).map(|row| flap(row, reach.as_ref(), problems));
+    let laminate = laminate(sheet.one(&keys::LAMINATE)?);
+    let plies: Vec<_> = sheet.all(&keys::PLY).iter().map(|row| ply(row, reach.as_ref(), problems)).collect();
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
     let masks = masks(sheet.one(&keys::MASKS)?);
     let printer = printer(sheet.one(&keys::PRINTER)?, problems);
@@ -42,6 +47,8 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         span: span?,
         templates: with_stations(templates.unwrap_or_default(), &stations),
         stations,
+        laminate: laminate?,
+        plies: plies.into_iter().collect::<Option<_>>()?,
         flap: match flap {
             Some(flap) => Some(flap?),
             None => None,
@@ -197,17 +204,74 @@ fn templates(row: Option<&Row>, reach: Option<&Reach>, problems: &mut Problems) 
 }
 
 fn flap(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Flap> {
+    let (from, to) = stretch(row, "the flap", reach, problems)?;
+    let hinge = row.number("hinge")?;
+    Some(Flap {
+        hinge,
+        hinge_end: row.number("hinge-end").unwrap_or(hinge),
+        kind: row.text("kind").and_then(FlapKind::from_word)?,
+        axis: row.number("axis")?,
+        up: row.angle("up")?,
+        down: row.angle("down")?,
+        clearance: row.length("clearance")?,
+        face: row.length("face")?,
+        from,
+        to,
+    })
+}
+
+/// From where to where along the span something goes; to the far end where that is left out.
+fn stretch(
+    row: &Row,
+    what: &str,
+    reach: Option<&Reach>,
+    problems: &mut Problems,
+) -> Option<(Length, Length)> {
     let from = row.length("from")?;
     let to = row.length("to").or(reach.map(|reach| reach.to))?;
     if let Some(reach) = reach {
-        reach.holds("the flap's end", to, row.place("to"), problems);
+        reach.holds(&format!("{what}'s end"), to, row.place("to"), problems);
     }
     if to.mm() <= from.mm() + SAME {
-        let wrong = Wrong::new(format!("the flap runs from {from} to {to}, and leaves nothing between"))
+        let wrong = Wrong::new(format!("{what} runs from {from} to {to}, and leaves nothing between"))
             .help("from lies nearer to the root than to");
         problems.add(row.place("from"), wrong);
     }
-    Some(Flap { hinge: row.number("hinge")?, from, to })
+    Some((from, to))
+}
+
+fn laminate(row: &Row) -> Option<Laminate> {
+    Some(Laminate {
+        finish: row.length("finish")?,
+        rise: row.length("rise")?,
+        least_wood: row.length("least-wood")?,
+    })
+}
+
+fn ply(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply> {
+    let (from, to) = stretch(row, "the ply", reach, problems)?;
+    let (chord_from, chord_to) = (row.number("chord-from")?, row.number("chord-to")?);
+    if chord_to <= chord_from {
+        let message =
+            format!("the ply runs from {chord_from} to {chord_to} of the chord, and leaves nothing between");
+        problems.add(
+            row.place("chord-from"),
+            Wrong::new(message).help("chord-from lies nearer to the nose than chord-to"),
+        );
+    }
+    Some(Ply {
+        cloth: row.text("cloth")?.to_owned(),
+        weight: row.number("weight")?,
+        fibre_density: row.number("fibre-density")?,
+        resin_density: row.number("resin-density")?,
+        fibre_share: row.number("fibre-share")?,
+        thickness: row.length("thickness"),
+        on: row.text("on").and_then(PlySide::from_word)?,
+        from,
+        to,
+        chord_from,
+        chord_to,
+    })
 }
 
 fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {

@@ -66,6 +66,7 @@ fn of_key(key: &Key) -> Map<String, Value> {
             { "type": "string", "pattern": LENGTH.pattern() },
         ] }),
         Takes::Length(..) => json!({ "type": "string", "pattern": LENGTH.pattern() }),
+        Takes::Amount(quantity, ..) => json!({ "type": "string", "pattern": quantity.pattern() }),
         Takes::Angle(..) => json!({ "type": "string", "pattern": ANGLE.pattern() }),
         Takes::Number(least, most) => json!({ "type": "number", "minimum": least, "maximum": most }),
         Takes::Lengths(most, ..) => json!({

@@ -69,6 +69,7 @@ fn single(key: &Key, raw: &DeValue<'_>) -> Result<Value, Wrong> {
             Err(bare(key, &LENGTH, digits))
         }
         (Takes::Angle(..), _, Some(digits)) => Err(bare(key, &ANGLE, digits)),
+        (Takes::Amount(quantity, ..), _, Some(digits)) => Err(bare(key, quantity, digits)),
         _ => Err(mismatch(key, raw)),
     }
 }
@@ -134,6 +135,12 @@ pub(super) fn from_text(key: &Key, text: &str) -> Result<Value, Wrong> {
             within(angle, least, most)
                 .map(|degrees| Value::Angle(Angle::from_degrees(degrees)))
                 .ok_or_else(|| beyond(key, &Angle::from_degrees(angle).to_string()))
+        }
+        Takes::Amount(kind, least, most) => {
+            let amount = quantity(key, kind, text)?;
+            within(amount, least, most)
+                .map(Value::Number)
+                .ok_or_else(|| beyond(key, &format!("{} {}", plain(amount), kind.base())))
         }
         Takes::Number(least, most) => {
             let number = text.parse().unwrap_or(f64::NAN);

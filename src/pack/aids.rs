@@ -3,9 +3,13 @@
 use super::PackError;
 use crate::design::Design;
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
+use crate::geometry::{ArcPath, follow_with_arcs};
+use crate::parts::{Core, Laminate, Split, split};
 use crate::section::Section;
 use crate::wing::{Planform, StationShape, Wing};
-use crate::workshop::{Drawing, HingeLine, Mask, MaskSettings, Stamp, planform_pattern, station_template};
+use crate::workshop::{
+    Drawing, HingeLine, Mask, MaskSettings, Stamp, part_template, planform_pattern, station_template,
+};
 
 /// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
 const PRINT_TOLERANCE: f64 = 0.02;
@@ -15,6 +19,19 @@ pub(super) struct StationAids<'a> {
     pub(super) shape: StationShape<'a>,
     pub(super) template: Drawing,
     pub(super) mask: Mask,
+    pub(super) wood: Wood,
+}
+
+/// The wood of a station: what is cut before anything is laid over it.
+pub(super) struct Wood {
+    /// Templates of the pieces, each with its role and the ending of its file's name.
+    pub(super) templates: Vec<(&'static str, &'static str, Drawing)>,
+    /// Where the wood ends behind, mm from the nose along the chord, where the skins meet there.
+    pub(super) ends_at: Option<f64>,
+    /// Where it becomes thinner than the shop can shape, mm from the nose.
+    pub(super) thin_behind: Option<f64>,
+    /// The flap, parted.
+    pub(super) split: Option<Split>,
 }
 
 /// The flow about one of the design's sections, and the stations that use it.
@@ -43,7 +60,8 @@ pub(super) fn stamp(design: &Design) -> Stamp {
 
 fn hinge(design: &Design) -> Option<HingeLine> {
     let flap = design.flap?;
-    Some(HingeLine { chord_fraction: flap.hinge, from: flap.from.mm(), to: flap.to.mm() })
+    let chord_fractions = [flap.hinge, flap.hinge_end];
+    Some(HingeLine { chord_fractions, from: flap.from.mm(), to: flap.to.mm() })
 }
 
 /// Shapes, templates and masks of every template station.
@@ -55,6 +73,7 @@ pub(super) fn station_aids<'a>(design: &Design, wing: &'a Wing) -> Result<Vec<St
         thickness: design.masks.thickness.mm(),
         tolerance: PRINT_TOLERANCE,
     };
+    let skin = design.skin();
     let at_station = |at: f64| {
         let failed = |source| PackError::Shape { at, source };
         let shape = wing.shape_at(at)?;
@@ -62,9 +81,49 @@ pub(super) fn station_aids<'a>(design: &Design, wing: &'a Wing) -> Result<Vec<St
         let template = station_template(&stamp, &shape, hinge.as_ref(), wing.is_mirrored(), tolerance)
             .map_err(failed)?;
         let mask = Mask::of(&shape, settings).map_err(failed)?;
-        Ok(StationAids { shape, template, mask })
+        let wood = wood(design, &skin, &stamp, &shape)?;
+        Ok(StationAids { shape, template, mask, wood })
     };
     design.templates.iter().map(|at| at_station(at.mm())).collect()
+}
+
+/// The wood at a station and its templates; none where the finished surface itself is cut.
+fn wood(
+    design: &Design,
+    skin: &Laminate,
+    stamp: &Stamp,
+    shape: &StationShape<'_>,
+) -> Result<Wood, PackError> {
+    let mut wood = Wood { templates: Vec::new(), ends_at: None, thin_behind: None, split: None };
+    let hinge = design.hinge_at(shape.at, shape.chord);
+    if hinge.is_none() && !design.has_skin() {
+        return Ok(wood);
+    }
+    let tolerance = design.router.tolerance.mm();
+    let failed = |source| PackError::Shape { at: shape.at, source };
+    let finished = follow_with_arcs(shape, tolerance).map_err(failed)?;
+    let core = Core::of(shape, skin)?;
+    wood.ends_at = core.ends_in_laminate().then(|| core.tail().x);
+    wood.thin_behind = core.thin_behind(design.laminate.least_wood.mm());
+    let mut add = |role, ending, name, path: &ArcPath, words: &[String]| {
+        wood.templates.push((role, ending, part_template(stamp, shape, &finished, name, path, words)));
+    };
+    match hinge {
+        None => {
+            let path = follow_with_arcs(&core, tolerance).map_err(failed)?;
+            add("core template", "core", "core", &path, &[]);
+        }
+        Some(hinge) => {
+            let split = split(shape, skin, &hinge, tolerance)?;
+            let Split { axis, .. } = split;
+            let words =
+                [format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y)];
+            add("main body template", "main", "main body", &split.main.core, &words);
+            add("flap template", "flap", "flap", &split.flap.core, &words);
+            wood.split = Some(split);
+        }
+    }
+    Ok(wood)
 }
 
 /// The pattern of the planform.

@@ -49,6 +49,7 @@ pub(super) fn all(
     let mut checks = Vec::new();
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
+    checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));
     checks.extend(stations.iter().flat_map(|station| printer(design, station)));
     checks.push(stock(design, "planform pattern", pattern));
     checks.extend(stations.iter().map(|s| stock(design, &place(s.shape.at), &s.template)));
@@ -145,6 +146,31 @@ fn least_thickness(shape: &crate::wing::StationShape<'_>) -> f64 {
             (upper - lower).hypot() * (upper.y - lower.y).signum()
         })
         .fold(f64::INFINITY, f64::min)
+}
+
+/// What the outlines of flap and main body may take of the clearance, mm: each is followed with arcs.
+const GAP_SLACK: f64 = 0.03;
+
+/// The flap must keep clear of the main body throughout its travel.
+fn flap_gap(design: &Design, station: &StationAids<'_>) -> Option<Check> {
+    let (split, flap) = (station.wood.split.as_ref()?, design.flap?);
+    let clearance = flap.clearance.mm();
+    let passed = split.least_gap >= clearance - GAP_SLACK;
+    let angle = split.least_gap_at.to_degrees();
+    Some(Check {
+        name: "flap keeps clear of the main body".to_owned(),
+        place: place(station.shape.at),
+        value: split.least_gap,
+        limit: clearance,
+        unit: "mm".to_owned(),
+        passed,
+        why: format!(
+            "turned from {} up to {} down, the pieces come nearest at {angle:+.1}°{}",
+            flap.up,
+            flap.down,
+            if passed { "" } else { ": ask for less travel, or move the axis towards the middle" }
+        ),
+    })
 }
 
 /// Each plate of a mask must lie on the bed, turned as it may be, and not stand too high.

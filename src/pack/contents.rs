@@ -97,6 +97,10 @@ impl Files {
         for station in stations {
             let (at, path) = (station.shape.at, format!("cut/{}.dxf", self.stem(station.shape.at)));
             self.add(path, "dxf", "station template", Some(at), dxf(&station.template).into_bytes());
+            for (role, ending, drawing) in &station.wood.templates {
+                let path = format!("cut/{}-{ending}.dxf", self.stem(at));
+                self.add(path, "dxf", role, Some(at), dxf(drawing).into_bytes());
+            }
         }
         let path = format!("cut/{}-planform.dxf", self.slug);
         self.add(path, "dxf", "planform pattern", None, dxf(pattern).into_bytes());
@@ -112,6 +116,10 @@ impl Files {
         for station in stations {
             let (at, path) = (station.shape.at, format!("print/{}.svg", self.stem(station.shape.at)));
             self.add(path, "svg", "station template", Some(at), sheet(&station.template));
+            for (role, ending, drawing) in &station.wood.templates {
+                let path = format!("print/{}-{ending}.svg", self.stem(at));
+                self.add(path, "svg", role, Some(at), sheet(drawing));
+            }
         }
         let path = format!("print/{}-planform.svg", self.slug);
         self.add(path, "svg", "planform pattern", None, sheet(pattern));
@@ -124,11 +132,19 @@ impl Files {
             margin: design.paper.margin.mm(),
             overlap: design.paper.overlap.mm(),
         };
-        let drawings = std::iter::once(pattern).chain(stations.iter().map(|s| &s.template));
-        let pages: Vec<Page> = drawings.flat_map(|drawing| tiled(drawing, paper)).collect();
-        let path = format!("print/{}.pdf", self.slug);
-        let bytes = pdf(&aids::stamp(design).to_string(), &pages)?;
-        self.add(path, "pdf", "all templates, tiled", None, bytes);
+        let title = aids::stamp(design).to_string();
+        let tiles = |drawings: Vec<&Drawing>| -> Vec<Page> {
+            drawings.into_iter().flat_map(|drawing| tiled(drawing, paper)).collect()
+        };
+        let finished = std::iter::once(pattern).chain(stations.iter().map(|s| &s.template));
+        let bytes = pdf(&title, &tiles(finished.collect()))?;
+        self.add(format!("print/{}.pdf", self.slug), "pdf", "all templates, tiled", None, bytes);
+        let wood = stations.iter().flat_map(|s| s.wood.templates.iter().map(|(_, _, drawing)| drawing));
+        let pages = tiles(wood.collect());
+        if !pages.is_empty() {
+            let bytes = pdf(&title, &pages)?;
+            self.add(format!("print/{}-wood.pdf", self.slug), "pdf", "wood templates, tiled", None, bytes);
+        }
         Ok(())
     }
 

@@ -6,6 +6,7 @@ use std::path::PathBuf;
 use crate::export::ExportError;
 use crate::flow::FlowError;
 use crate::geometry::GeometryError;
+use crate::parts::PartError;
 use crate::wing::WingError;
 
 /// Why a pack is not made or not written. Nothing is half-written: the earlier pack, if any,
@@ -20,6 +21,9 @@ pub enum PackError {
         /// What is wrong.
         source: GeometryError,
     },
+    /// A part cannot be made.
+    #[error(transparent)]
+    Part(#[from] PartError),
     /// The foil cannot be lofted.
     #[error(transparent)]
     Wing(#[from] WingError),

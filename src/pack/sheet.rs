@@ -32,6 +32,7 @@ pub(super) fn html(
     heading(&mut body, design, checks);
     cautions(&mut body);
     shape(&mut body, design, planform, stations, pattern);
+    wood(&mut body, design, stations);
     lift(&mut body, design, flows);
     steps(&mut body, design, files);
     check_table(&mut body, checks);
@@ -130,6 +131,85 @@ fn shape(
             number(station.shape.at, 3),
             escaped(&station.shape.section_name())
         );
+    }
+}
+
+/// What is cut before anything is laid over it: plies, where the wood ends, the gap of the flap.
+fn wood(body: &mut String, design: &Design, stations: &[StationAids<'_>]) {
+    if stations.iter().all(|station| station.wood.templates.is_empty()) {
+        return;
+    }
+    body.push_str("<h2>Wood, laminate and flap</h2>\n");
+    let skin = design.skin();
+    if design.plies.is_empty() {
+        body.push_str("<p>No plies are named: wood and finished surface differ by the finish alone.</p>\n");
+    } else {
+        let rows: Vec<[String; 6]> = design
+            .plies
+            .iter()
+            .zip(&skin.plies)
+            .map(|(ply, laid)| {
+                [
+                    escaped(&ply.cloth),
+                    format!("{:.0}", ply.weight),
+                    format!("{:.3}", laid.thickness),
+                    format!("{:?}", ply.on).to_lowercase(),
+                    format!("{} to {}", number(ply.from.mm(), 1), number(ply.to.mm(), 1)),
+                    format!("{} to {}", number(100.0 * ply.chord_from, 1), number(100.0 * ply.chord_to, 1)),
+                ]
+            })
+            .collect();
+        let heading = [
+            "cloth, from the wood outwards",
+            "g/m²",
+            "cured, mm",
+            "on",
+            "along the span, mm",
+            "of the chord, %",
+        ];
+        body.push_str(&table(heading, &rows, |_| false));
+    }
+    let mm = |value: Option<f64>| value.map_or("–".to_owned(), |v| format!("{v:.1}"));
+    let rows: Vec<[String; 6]> = stations
+        .iter()
+        .map(|station| {
+            let (wood, split) = (&station.wood, station.wood.split.as_ref());
+            [
+                number(station.shape.at, 3),
+                mm(wood.ends_at),
+                mm(wood.thin_behind),
+                split.map_or("–".to_owned(), |s| format!("{:.2}, {:.2}", s.axis.x, s.axis.y)),
+                split.map_or("–".to_owned(), |s| {
+                    format!("{:.2} at rest, {:.2} least", s.gap_at_rest, s.least_gap)
+                }),
+                split
+                    .and_then(|s| s.spacer)
+                    .map_or("–".to_owned(), |[narrow, wide]| format!("{narrow:.2} to {wide:.2}")),
+            ]
+        })
+        .collect();
+    let heading = [
+        "station, mm from root",
+        "wood ends, mm from nose",
+        "wood thinner than your least behind, mm",
+        "hinge axis, mm",
+        "gap at the flap, mm",
+        "spacer for the gap, mm",
+    ];
+    body.push_str(&table(heading, &rows, |_| false));
+    body.push_str(
+        "<p>Behind where the wood ends the trailing edge is laminate alone. The spacer is laid into the gap while the hinge's \
+         skin cures, narrow side to the hinge.</p>\n",
+    );
+    for station in stations {
+        for (role, _, drawing) in &station.wood.templates {
+            let _ = writeln!(
+                body,
+                "<figure>{}<figcaption>Station {} mm from the root, {role}.</figcaption></figure>",
+                picture(&drawing.without_caption(), MARGIN),
+                number(station.shape.at, 3),
+            );
+        }
     }
 }
 

@@ -29,20 +29,6 @@ pub enum PartError {
         /// Distance from the nose, mm.
         x: f64,
     },
-    /// Flap and main body come too near each other.
-    #[error(
-        "at {at:.1} mm from the root the flap comes within {gap:.2} mm of the main body at {degrees:.1}°, and {clearance:.2} mm is asked"
-    )]
-    Touches {
-        /// Distance from the root, mm.
-        at: f64,
-        /// Deflection, degrees, trailing edge down positive.
-        degrees: f64,
-        /// Distance, mm.
-        gap: f64,
-        /// Distance asked, mm.
-        clearance: f64,
-    },
     /// An outline that cannot be followed or parted.
     #[error(transparent)]
     Geometry(#[from] crate::geometry::GeometryError),

@@ -69,8 +69,6 @@ pub struct Split {
 
 /// Steps of the travel at which the pieces are held against each other, each way.
 const STEPS: usize = 24;
-/// How far the gap may fall short of the clearance, mm: what following with arcs takes.
-const SLACK: f64 = 0.03;
 /// Distances are taken between chords that lie this near to the pieces, mm.
 const CHORDS: f64 = 0.004;
 
@@ -79,7 +77,7 @@ const CHORDS: f64 = 0.004;
 /// `tolerance`: greatest distance of the outlines from the exact ones, mm.
 ///
 /// # Errors
-/// When there is no wood, the hinge lies off it, or the pieces would touch within the travel.
+/// When there is no wood, or the hinge lies off it.
 pub fn split(
     shape: &StationShape<'_>,
     laminate: &Laminate,
@@ -111,10 +109,6 @@ pub fn split(
                 (least_gap, least_gap_at) = (here, angle);
             }
         }
-    }
-    if least_gap < hinge.clearance - SLACK {
-        let degrees = least_gap_at.to_degrees();
-        return Err(PartError::Touches { at: shape.at, degrees, gap: least_gap, clearance: hinge.clearance });
     }
     Ok(Split { main, flap, axis, gap_at_rest, least_gap, least_gap_at, spacer })
 }

@@ -54,6 +54,24 @@ pub static ANGLE: Quantity = Quantity {
     ],
 };
 
+/// Weights of cloth for each area; the base unit is the gram for each square metre.
+pub static AREAL_WEIGHT: Quantity = Quantity {
+    name: "a weight for each area",
+    units: &[
+        Unit { symbol: "g/m2", also: &["g/m²"], factor: Factor::Tenths(10) },
+        Unit { symbol: "kg/m2", also: &["kg/m²"], factor: Factor::Tenths(10_000) },
+    ],
+};
+
+/// Densities; the base unit is the kilogram for each cubic metre.
+pub static DENSITY: Quantity = Quantity {
+    name: "a density",
+    units: &[
+        Unit { symbol: "kg/m3", also: &["kg/m³"], factor: Factor::Tenths(10) },
+        Unit { symbol: "g/cm3", also: &["g/cm³"], factor: Factor::Tenths(10_000) },
+    ],
+};
+
 impl Quantity {
     /// Reads `text` as this quantity, in its base unit (millimetres, degrees).
     ///

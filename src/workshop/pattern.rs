@@ -18,11 +18,12 @@ const GAP: f64 = 6.0;
 /// How far a reference line runs past the shape, mm.
 const OVERRUN: f64 = 5.0;
 
-/// Where a flap will be parted from the main body. So far it is only drawn.
+/// Where a flap is parted from the main body.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct HingeLine {
-    /// Fraction of the chord from the nose.
-    pub chord_fraction: f64,
+    /// Fractions of the chord from the nose at the flap's inner and outer end; between them it
+    /// changes evenly.
+    pub chord_fractions: [f64; 2],
     /// Where the flap begins, mm from the root.
     pub from: f64,
     /// Where it ends, mm from the root.
@@ -30,6 +31,14 @@ pub struct HingeLine {
 }
 
 impl HingeLine {
+    /// Fraction of the chord at `at` mm from the root.
+    #[must_use]
+    pub fn fraction_at(&self, at: f64) -> f64 {
+        let share = ((at - self.from) / (self.to - self.from)).clamp(0.0, 1.0);
+        let [inner, outer] = self.chord_fractions;
+        inner + share * (outer - inner)
+    }
+
     /// Whether the flap reaches the station at `at` mm from the root.
     #[must_use]
     pub fn reaches(&self, at: f64) -> bool {
@@ -67,7 +76,7 @@ pub fn station_template(
         drawing.write(Role::Label, Point::new(back.x + 1.0, back.y - 0.5 * SMALL), SMALL, "level");
     }
     if let Some(hinge) = hinge.filter(|hinge| hinge.reaches(shape.at)) {
-        let x = hinge.chord_fraction * shape.chord;
+        let x = hinge.fraction_at(shape.at) * shape.chord;
         drawing.add(Role::Reference, ArcPath::line(Point::new(x, low), Point::new(x, high)));
         drawing.write(Role::Label, Point::new(x + 1.0, high + 1.0), SMALL, "hinge line");
     }
@@ -82,6 +91,32 @@ pub fn station_template(
     ];
     write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
     Ok(drawing)
+}
+
+/// The template of a part at one station: its own contour to cut, the finished outline for reference,
+/// chord line and what it is.
+#[must_use]
+pub fn part_template(
+    stamp: &Stamp,
+    shape: &StationShape<'_>,
+    finished: &ArcPath,
+    name: &str,
+    part: &ArcPath,
+    words: &[String],
+) -> Drawing {
+    let mut drawing = Drawing::new(format!("{stamp}, station {} mm, {name}", number(shape.at, 2)));
+    drawing.add(Role::CutOutside, part.clone());
+    drawing.add(Role::Reference, finished.clone());
+    drawing.add(
+        Role::Reference,
+        ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0)),
+    );
+    let mut lines = vec![stamp.to_string(), format!("station {} mm from the root", number(shape.at, 2))];
+    lines.push(format!("{name}: the wood under the laminate"));
+    lines.extend(words.iter().cloned());
+    lines.push("cut the full line; the broken one is the finished surface".to_owned());
+    write_block(&mut drawing, Point::new(0.0, finished.bounds().y0 - OVERRUN - GAP), &lines);
+    drawing
 }
 
 /// The pattern of the whole planform, with its stations and the hinge line.
@@ -125,7 +160,7 @@ pub fn planform_pattern(
             let bends = corners.filter(|&at| hinge.from < at && at < hinge.to);
             let line = std::iter::once(hinge.from).chain(bends).chain([hinge.to]).map(|at| {
                 let (front, back) = planform.edges(at);
-                Point::new(side * at, -(front + hinge.chord_fraction * (back - front)))
+                Point::new(side * at, -(front + hinge.fraction_at(at) * (back - front)))
             });
             drawing.add(Role::Reference, ArcPath::polyline(line, false));
         }
@@ -136,7 +171,9 @@ pub fn planform_pattern(
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
             let (from, to) = (number(hinge.from, 2), number(hinge.to, 2));
-            format!("hinge line at {:.1} % of chord, {from} to {to} mm", 100.0 * hinge.chord_fraction)
+            let [inner, outer] = hinge.chord_fractions.map(|share| number(100.0 * share, 1));
+            let along = if inner == outer { inner } else { format!("{inner} to {outer}") };
+            format!("hinge line at {along} % of chord, {from} to {to} mm")
         }),
     ];
     write_block(&mut drawing, Point::new(bounds.x0, bounds.y0 - OVERRUN - GAP), &words);

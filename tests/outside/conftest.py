@@ -11,6 +11,8 @@ import pytest
 from design_file import Design
 
 ROOT = Path(__file__).resolve().parents[2]
+# Roles of what is cut before the laminate; everything else at a station is the finished surface.
+WOOD = ("core template", "main body template", "flap template")
 KINDS = ("main-foil", "elevator", "strut", "fin")
 FILES = sorted((ROOT / "demo-sections").glob("*.toml")) + sorted((Path(__file__).parent / "designs").glob("*.toml"))
 
@@ -53,7 +55,8 @@ class Pack:
 
     def at_stations(self, kind: str) -> list[tuple]:
         """Exact shape and file of each station, in the order of the design; every station must have one."""
-        files = [f for f in self.manifest["files"] if f["kind"] == kind and f["station_mm"] is not None]
+        files = [f for f in self.manifest["files"]
+                 if f["kind"] == kind and f["station_mm"] is not None and f["role"] not in WOOD]
         pairs = [(shape, [self.folder / f["path"] for f in files if abs(f["station_mm"] - shape.at) < 1e-6])
                  for shape in self.design.shapes]
         assert all(found for _, found in pairs), f"a station without a {kind}"

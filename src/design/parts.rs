@@ -1,0 +1,60 @@
+//! From the design to what lies over the wood and how the flap is hinged.
+
+use super::model::{Design, FlapKind, PlySide};
+use crate::parts::{Covers, Hinge, HingeKind, Laminate, Ply, PlyMaterial};
+use crate::section::Side;
+
+impl Design {
+    /// The skin: plies, filler and paint.
+    #[must_use]
+    pub fn skin(&self) -> Laminate {
+        let plies = self.plies.iter().map(|ply| {
+            let material = PlyMaterial {
+                areal_weight: ply.weight,
+                fibre_density: ply.fibre_density,
+                resin_density: ply.resin_density,
+                fibre_share: ply.fibre_share,
+            };
+            Ply {
+                thickness: ply.thickness.map_or_else(|| material.thickness(), |measured| measured.mm()),
+                covers: match ply.on {
+                    PlySide::Both => Covers::Both,
+                    PlySide::Upper => Covers::Upper,
+                    PlySide::Lower => Covers::Lower,
+                },
+                span: ply.from.mm()..=ply.to.mm(),
+                chord: ply.chord_from..=ply.chord_to,
+            }
+        });
+        Laminate { plies: plies.collect(), finish: self.laminate.finish.mm(), rise: self.laminate.rise.mm() }
+    }
+
+    /// Whether wood and finished surface differ.
+    #[must_use]
+    pub fn has_skin(&self) -> bool {
+        !self.plies.is_empty() || self.laminate.finish.mm() > 0.0
+    }
+
+    /// The hinge at `at` mm from the root, where the chord has so many mm; `None` where no flap is.
+    #[must_use]
+    pub fn hinge_at(&self, at: f64, chord: f64) -> Option<Hinge> {
+        let flap = self.flap?;
+        let (from, to) = (flap.from.mm(), flap.to.mm());
+        if !(from..=to).contains(&at) {
+            return None;
+        }
+        let share = (at - from) / (to - from);
+        Some(Hinge {
+            at: chord * (flap.hinge + share * (flap.hinge_end - flap.hinge)),
+            kind: match flap.kind {
+                FlapKind::LaminateUpper => HingeKind::Laminate { side: Side::Upper },
+                FlapKind::LaminateLower => HingeKind::Laminate { side: Side::Lower },
+                FlapKind::Pin => HingeKind::Pin { height: flap.axis },
+            },
+            up: flap.up.radians(),
+            down: flap.down.radians(),
+            face: flap.face.mm(),
+            clearance: flap.clearance.mm(),
+        })
+    }
+}

@@ -1,0 +1,102 @@
+"""Wood templates: the outline less its laminate, by shapely; ply thickness by the rule of its fibre volume."""
+
+import tomllib
+
+import ezdxf
+import numpy as np
+import pytest
+from shapely import Point, Polygon
+
+import curves
+from conftest import FILES, WOOD
+from design_file import quantity
+
+DENSITY = {"kg/m3": 1.0, "g/cm3": 1000.0}
+WEIGHT = {"g/m2": 1.0, "kg/m2": 1000.0}
+# The designs that have a laminate.
+LAMINATED = pytest.mark.parametrize("pack", [p for p in FILES if "[[ply]]" in p.read_text(encoding="utf-8")], indirect=True)
+
+
+class Skin:
+    def __init__(self, path):
+        data = tomllib.loads(path.read_text(encoding="utf-8"))
+        laminate = data.get("laminate", {})
+        self.finish = quantity(laminate.get("finish", "0 mm"))
+        self.rise = quantity(laminate.get("rise", "5 mm"))
+        self.plies = data.get("ply", [])
+
+    def thickness(self, upper, at, x, chord):
+        total = self.finish
+        for ply in self.plies:
+            on = ply.get("on", "both")
+            inside = quantity(ply.get("from", "0 mm")) <= at <= quantity(ply.get("to", "99 m"))
+            if not inside or on == ("lower" if upper else "upper"):
+                continue
+            weight, unit = ply["weight"].split()
+            fibre, fibre_unit = ply.get("fibre-density", "1800 kg/m3").split()
+            thick = float(weight) * WEIGHT[unit] / (float(fibre) * DENSITY[fibre_unit] * ply.get("fibre-share", 0.45))
+            if "thickness" in ply:
+                thick = quantity(ply["thickness"])
+            front, back = ply.get("chord-from", 0), ply.get("chord-to", 1)
+            share = 1.0
+            if front > 0 or on != "both":
+                share *= smoothstep((x - front * chord) / self.rise)
+            if back < 1:
+                share *= smoothstep((back * chord - x) / self.rise)
+            total += thick * share
+        return total
+
+
+def smoothstep(s):
+    s = np.clip(s, 0, 1)
+    return s * s * (3 - 2 * s)
+
+
+def contour(path):
+    [entity] = ezdxf.readfile(path).modelspace().query("*[layer=='CUT_OUTSIDE']")
+    return np.array(curves.along_polyline(entity))
+
+
+@pytest.fixture
+def wood(pack):
+    found = [f for f in pack.manifest["files"] if f["kind"] == "dxf" and f["role"] in WOOD]
+    skin = Skin(pack.design.path)
+    assert found
+    return skin, [(pack.design.shape(f["station_mm"]), pack.folder / f["path"], f["role"]) for f in found]
+
+
+@LAMINATED
+def test_wood_lies_the_skin_inside(wood, pack, measured):
+    """Every point of a core's contour lies as deep as the skin is thick where it is nearest to the finished surface. On a
+    tapered foil the depth in the plane is a trace more than across the skin: the loft's lean, below a thousandth here."""
+    skin, templates = wood
+    for shape, path, role in templates:
+        finished = Polygon(shape.ring)
+        outline = shape.outline
+        for x, y in contour(path)[::7]:
+            assert finished.contains(Point(x, y)), path.name
+            distances = np.hypot(*(outline - [x, y]).T)
+            nearest = int(np.argmin(distances))
+            foot = outline[nearest]
+            upper = nearest < len(outline) // 2
+            depth = skin.thickness(upper, shape.at, foot[0], shape.chord)
+            off = distances[nearest] - depth
+            # A cut face lies deeper.
+            assert off > -(pack.design.tolerance + 0.004), f"{path.name} at {x:.2f}, {y:.2f}: {off:.4f}"
+            if role == "core template" and foot[0] < 0.93 * shape.chord:
+                measured("depth of the wood less the skin, mm", off)
+                assert off < pack.design.tolerance + 0.004 + 2e-3 * depth, f"{path.name} at {x:.2f}, {y:.2f}: {off:.4f}"
+
+
+@LAMINATED
+def test_two_pieces_keep_apart(wood):
+    _, templates = wood
+    by_station = {}
+    for shape, path, role in templates:
+        by_station.setdefault(shape.at, {})[role] = Polygon(contour(path))
+    for at, pieces in by_station.items():
+        assert all(piece.is_valid and piece.exterior.is_simple for piece in pieces.values()), at
+        if "flap template" in pieces:
+            gap = pieces["main body template"].distance(pieces["flap template"])
+            assert gap > 0.3, f"station {at}: {gap}"
+            assert pieces["main body template"].centroid.x < pieces["flap template"].centroid.x

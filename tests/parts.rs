@@ -1,7 +1,9 @@
 //! The core under its laminate: distances in the plane and in space, where the wood ends, weights.
 
 use plankform::geometry::{Curve, Point, follow_with_arcs};
-use plankform::parts::{Core, Covers, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, split};
+use plankform::parts::{
+    Core, Covers, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, split, wood_pieces,
+};
 use plankform::section::{Section, Side, TrailingEdge};
 use plankform::wing::{Station, Wing};
 
@@ -279,4 +281,37 @@ fn hinges_that_cannot_be_are_refused() {
     assert!(matches!(split(&shape, &laminate, &behind, 0.01), Err(PartError::OffTheWood { .. })));
     let thick = Hinge { face: 9.0, ..hinge(HingeKind::Pin { height: 0.5 }) };
     assert!(matches!(split(&shape, &laminate, &thick, 0.01), Err(PartError::OffTheWood { .. })));
+}
+
+/// Prismatoids in closed form: a straight loft of one section with chords a and b over a length l holds
+/// l (a² + a b + b²)/3 times the section's area at unit chord.
+#[test]
+fn volumes_agree_with_prismatoids() {
+    let foil = foil(["NACA 2412"; 2], [120.0, 80.0], 10.0, 0.0, TrailingEdge::Published);
+    let bare = Laminate { plies: vec![], finish: 0.0, rise: 5.0 };
+    let [whole] = &wood_pieces(&foil, &bare, &|_, _| None, None, 0.001).expect("pieces")[..] else {
+        panic!("one piece")
+    };
+    let unit =
+        Section::from_designation("NACA 2412", TrailingEdge::Published).expect("a section").numbers().area;
+    let exact = 300.0 * (120.0_f64.powi(2) + 120.0 * 80.0 + 80.0_f64.powi(2)) / 3.0 * unit;
+    // What outlines within 0.001 mm can differ by: their length times that, along the span.
+    let perimeter = 2.04 * 100.0;
+    assert!((whole.volume - exact).abs() < perimeter * 0.001 * 300.0, "{} {exact}", whole.volume);
+    assert_eq!((whole.name, whole.count), ("core", 2));
+    assert!((whole.blank[0] - 300.0).abs() < 0.01 && whole.blank[1] > 120.0 && whole.blank[1] < 122.0);
+
+    // Under a skin of constant thickness less wood, by the skin's share of the outline to first order;
+    // in two pieces less by the gap between them.
+    let skinned = laminate(vec![plain(0.4)]);
+    let core = wood_pieces(&foil, &skinned, &|_, _| None, None, 0.002).expect("pieces")[0].volume;
+    assert!(((exact - core) / (0.5 * perimeter * 300.0) - 1.0).abs() < 0.05, "{}", exact - core);
+    let hinge_at = |_: f64, chord: f64| {
+        Some(Hinge { at: 0.7 * chord, ..hinge(HingeKind::Laminate { side: Side::Upper }) })
+    };
+    let parted = wood_pieces(&foil, &skinned, &hinge_at, Some([50.0, 250.0]), 0.002).expect("pieces");
+    assert_eq!(parted.iter().map(|piece| piece.name).collect::<Vec<_>>(), ["main body", "flap"]);
+    assert!((parted[1].blank[0] - 200.0).abs() < 0.01);
+    let both = parted[0].volume + parted[1].volume;
+    assert!(both < core && both > 0.95 * core, "{both} {core}");
 }

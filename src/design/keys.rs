@@ -216,6 +216,30 @@ pub(super) static LAMINATE: Table = Table {
     ],
 };
 
+/// The wood.
+pub(super) static WOOD: Table = Table {
+    name: "wood",
+    times: Times::AtMostOnce,
+    doc: "What the core is made of.",
+    keys: &[
+        key("species", Text(60), Default("paulownia"), "What you call it.", "paulownia"),
+        key(
+            "density",
+            Amount(&DENSITY, 30.0, 1500.0),
+            Default("300 kg/m3"),
+            "Density as it lies in your shop; weigh a piece. Paulownia is about 300, cedar 380, balsa 160, foam 40 to 100 kg/m3.",
+            "300 kg/m3",
+        ),
+        key(
+            "allowance",
+            Length(0.0, 50.0),
+            Default("10 mm"),
+            "Added to a blank on every side for holding and trimming.",
+            "10 mm",
+        ),
+    ],
+};
+
 /// One ply.
 pub(super) static PLY: Table = Table {
     name: "ply",
@@ -447,9 +471,9 @@ pub(super) static ROUTER: Table = Table {
 };
 
 /// Every table, in the order of the hand-book.
-pub(super) static TABLES: [&Table; 13] = [
-    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &LAMINATE, &PLY, &FLAP, &LIFT, &MASKS, &PRINTER, &PAPER, &STOCK,
-    &ROUTER,
+pub(super) static TABLES: [&Table; 14] = [
+    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &LIFT, &MASKS, &PRINTER, &PAPER,
+    &STOCK, &ROUTER,
 ];
 
 impl Table {

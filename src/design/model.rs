@@ -61,6 +61,8 @@ pub struct Design {
     pub stations: Vec<Station>,
     /// Where templates are cut, ascending: every station, and the places the file names besides.
     pub templates: Vec<Length>,
+    /// What the core is made of.
+    pub wood: Wood,
     /// What lies between wood and finished surface besides the plies.
     pub laminate: Laminate,
     /// The plies, from the wood outwards.
@@ -121,6 +123,17 @@ pub struct Station {
     pub twist: Angle,
     /// How far the quarter chord lies aft of the first station's.
     pub sweep: Length,
+}
+
+/// What the core is made of.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Wood {
+    /// What its maker calls it.
+    pub species: String,
+    /// Density, kg/m³, 30 to 1500.
+    pub density: f64,
+    /// Added to a blank on every side, 0 to 50 mm.
+    pub allowance: Length,
 }
 
 /// What lies between wood and finished surface besides the plies.

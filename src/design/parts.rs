@@ -1,8 +1,9 @@
 //! From the design to what lies over the wood and how the flap is hinged.
 
 use super::model::{Design, FlapKind, PlySide};
-use crate::parts::{Covers, Hinge, HingeKind, Laminate, Ply, PlyMaterial};
+use crate::parts::{Covers, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, WoodPiece, wood_pieces};
 use crate::section::Side;
+use crate::wing::Wing;
 
 impl Design {
     /// The skin: plies, filler and paint.
@@ -33,6 +34,16 @@ impl Design {
     #[must_use]
     pub fn has_skin(&self) -> bool {
         !self.plies.is_empty() || self.laminate.finish.mm() > 0.0
+    }
+
+    /// The wooden pieces of the foil, which is the design's own.
+    ///
+    /// # Errors
+    /// When the wood cannot be made at some place.
+    pub fn pieces(&self, wing: &Wing) -> Result<Vec<WoodPiece>, PartError> {
+        let flap = self.flap.map(|flap| [flap.from.mm(), flap.to.mm()]);
+        let hinge_at = |at, chord| self.hinge_at(at, chord);
+        wood_pieces(wing, &self.skin(), &hinge_at, flap, self.router.tolerance.mm())
     }
 
     /// The hinge at `at` mm from the root, where the chord has so many mm; `None` where no flap is.

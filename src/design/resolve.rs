@@ -5,7 +5,7 @@ use std::ops::Range;
 use super::keys;
 use super::model::{
     Design, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide, Printer, Router,
-    Station, Stock,
+    Station, Stock, Wood,
 };
 use super::reader::{Row, Sheet};
 use crate::problems::{Problems, Wrong};
@@ -30,6 +30,7 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let stations = stations(sheet.all(&keys::STATION), reach.as_ref(), beside, problems);
     let templates = templates(sheet.one(&keys::TEMPLATES), reach.as_ref(), problems);
     let flap = sheet.one(&keys::FLAP).map(|row| flap(row, reach.as_ref(), problems));
+    let wood = wood(sheet.one(&keys::WOOD)?);
     let laminate = laminate(sheet.one(&keys::LAMINATE)?);
     let plies: Vec<_> = sheet.all(&keys::PLY).iter().map(|row| ply(row, reach.as_ref(), problems)).collect();
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
@@ -47,6 +48,7 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         span: span?,
         templates: with_stations(templates.unwrap_or_default(), &stations),
         stations,
+        wood: wood?,
         laminate: laminate?,
         plies: plies.into_iter().collect::<Option<_>>()?,
         flap: match flap {
@@ -238,6 +240,14 @@ fn stretch(
         problems.add(row.place("from"), wrong);
     }
     Some((from, to))
+}
+
+fn wood(row: &Row) -> Option<Wood> {
+    Some(Wood {
+        species: row.text("species")?.to_owned(),
+        density: row.number("density")?,
+        allowance: row.length("allowance")?,
+    })
 }
 
 fn laminate(row: &Row) -> Option<Laminate> {

@@ -54,7 +54,9 @@ pub fn build(design: &Design, kinds: Kinds) -> Result<Pack, PackError> {
         files.add_tables(design, &stations, &flows)?;
     }
     if kinds.sheet {
-        let page = sheet::html(design, &planform, &stations, &pattern, &flows, &checks, &files.files);
+        let pieces = design.pieces(&wing)?;
+        let page =
+            sheet::html(design, &planform, &stations, &pattern, &flows, &pieces, &checks, &files.files);
         files.add("sheet.html".to_owned(), "html", "build sheet", None, page.into_bytes());
     }
     Ok(pack(design, checks, files.files))

@@ -10,6 +10,7 @@ use crate::export::html::{document, escaped, table};
 use crate::export::picture;
 use crate::flow::PressurePoint;
 use crate::geometry::Point;
+use crate::parts::WoodPiece;
 use crate::units::number;
 use crate::wing::Planform;
 use crate::workshop::{Drawing, turn};
@@ -25,6 +26,7 @@ pub(super) fn html(
     stations: &[StationAids<'_>],
     pattern: &Drawing,
     flows: &[SectionFlow<'_>],
+    pieces: &[WoodPiece],
     checks: &[Check],
     files: &[PackFile],
 ) -> String {
@@ -32,7 +34,7 @@ pub(super) fn html(
     heading(&mut body, design, checks);
     cautions(&mut body);
     shape(&mut body, design, planform, stations, pattern);
-    wood(&mut body, design, stations);
+    wood(&mut body, design, stations, pieces);
     lift(&mut body, design, flows);
     steps(&mut body, design, files);
     check_table(&mut body, checks);
@@ -135,14 +137,13 @@ fn shape(
 }
 
 /// What is cut before anything is laid over it: plies, where the wood ends, the gap of the flap.
-fn wood(body: &mut String, design: &Design, stations: &[StationAids<'_>]) {
-    if stations.iter().all(|station| station.wood.templates.is_empty()) {
-        return;
-    }
+fn wood(body: &mut String, design: &Design, stations: &[StationAids<'_>], pieces: &[WoodPiece]) {
     body.push_str("<h2>Wood, laminate and flap</h2>\n");
     let skin = design.skin();
     if design.plies.is_empty() {
-        body.push_str("<p>No plies are named: wood and finished surface differ by the finish alone.</p>\n");
+        body.push_str(
+            "<p>No plies are named: wood and finished surface differ by the finish alone, if at all.</p>\n",
+        );
     } else {
         let rows: Vec<[String; 6]> = design
             .plies
@@ -168,6 +169,10 @@ fn wood(body: &mut String, design: &Design, stations: &[StationAids<'_>]) {
             "of the chord, %",
         ];
         body.push_str(&table(heading, &rows, |_| false));
+    }
+    pieces_table(body, design, pieces);
+    if stations.iter().all(|station| station.wood.templates.is_empty()) {
+        return;
     }
     let mm = |value: Option<f64>| value.map_or("–".to_owned(), |v| format!("{v:.1}"));
     let rows: Vec<[String; 6]> = stations
@@ -211,6 +216,36 @@ fn wood(body: &mut String, design: &Design, stations: &[StationAids<'_>]) {
             );
         }
     }
+}
+
+/// What to saw out before anything is shaped.
+fn pieces_table(body: &mut String, design: &Design, pieces: &[WoodPiece]) {
+    let around = 2.0 * design.wood.allowance.mm();
+    let rows: Vec<[String; 6]> = pieces
+        .iter()
+        .map(|piece| {
+            let [length, width, height] = piece.blank.map(|side| format!("{:.0}", (side + around).ceil()));
+            [
+                piece.name.to_owned(),
+                piece.count.to_string(),
+                format!("{length} by {width} by {height}"),
+                format!("{:.1}", piece.volume / 1000.0),
+                // mm³ times kg/m³ is a millionth of a gram.
+                format!("{:.0}", piece.volume * design.wood.density * 1e-6),
+                "along the length".to_owned(),
+            ]
+        })
+        .collect();
+    let heading = ["piece", "how many", "blank, mm", "volume of one, cm³", "weight of one, g", "grain"];
+    let _ = writeln!(
+        body,
+        "<h3>Pieces of wood</h3>\n<p>{}, {:.0} kg/m³. Blanks have {} more on every side for holding and trimming; mirrored \
+         halves are a left and a right one.</p>",
+        escaped(&design.wood.species),
+        design.wood.density,
+        design.wood.allowance
+    );
+    body.push_str(&table(heading, &rows, |_| false));
 }
 
 fn lift(body: &mut String, design: &Design, flows: &[SectionFlow<'_>]) {

@@ -5,8 +5,10 @@ mod core;
 mod error;
 mod hinge;
 mod laminate;
+mod pieces;
 
 pub use self::core::Core;
 pub use error::PartError;
 pub use hinge::{Hinge, HingeKind, Piece, Split, split};
 pub use laminate::{Covers, Laminate, Ply, PlyMaterial};
+pub use pieces::{WoodPiece, wood_pieces};

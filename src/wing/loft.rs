@@ -84,6 +84,12 @@ impl StationShape<'_> {
         }
     }
 
+    /// From the shape's own frame to the foil's axes, x aft and y up.
+    #[must_use]
+    pub fn to_foil(&self) -> Affine {
+        self.to_chord.inverse()
+    }
+
     /// How the outline moves for each mm along the span away from the root, at a parameter held
     /// fast, in the shape's own frame.
     #[must_use]

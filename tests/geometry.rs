@@ -14,7 +14,15 @@ fn section(name: &str, edge: TrailingEdge) -> Section {
 }
 
 fn foil(name: &str, edge: TrailingEdge, chord: f64) -> Wing {
-    let station = |at| Station { at, chord, section: section(name, edge), twist: 0.0, sweep: 0.0 };
+    let station = |at| Station {
+        at,
+        chord,
+        section: section(name, edge),
+        twist: 0.0,
+        sweep: 0.0,
+        rise: 0.0,
+        twist_about: 0.25,
+    };
     Wing::new(vec![station(0.0), station(100.0)], false).expect("a foil")
 }
 

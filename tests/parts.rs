@@ -15,6 +15,8 @@ fn foil(sections: [&str; 2], chords: [f64; 2], sweep: f64, twist: f64, edge: Tra
         section: Section::from_designation(sections[i], edge).expect("a section"),
         twist: twist.to_radians() * i as f64,
         sweep: sweep * i as f64,
+        rise: 0.0,
+        twist_about: 0.25,
     };
     Wing::new(vec![station(0), station(1)], true).expect("a foil")
 }
@@ -289,7 +291,8 @@ fn hinges_that_cannot_be_are_refused() {
 fn volumes_agree_with_prismatoids() {
     let foil = foil(["NACA 2412"; 2], [120.0, 80.0], 10.0, 0.0, TrailingEdge::Published);
     let bare = Laminate { plies: vec![], finish: 0.0, rise: 5.0 };
-    let [whole] = &wood_pieces(&foil, &bare, &|_, _| None, None, 0.001).expect("pieces")[..] else {
+    let [whole] = &wood_pieces(&foil, &[0.0, 300.0], &bare, &|_, _| None, None, 0.001).expect("pieces")[..]
+    else {
         panic!("one piece")
     };
     let unit =
@@ -304,12 +307,14 @@ fn volumes_agree_with_prismatoids() {
     // Under a skin of constant thickness less wood, by the skin's share of the outline to first order;
     // in two pieces less by the gap between them.
     let skinned = laminate(vec![plain(0.4)]);
-    let core = wood_pieces(&foil, &skinned, &|_, _| None, None, 0.002).expect("pieces")[0].volume;
+    let core =
+        wood_pieces(&foil, &[0.0, 300.0], &skinned, &|_, _| None, None, 0.002).expect("pieces")[0].volume;
     assert!(((exact - core) / (0.5 * perimeter * 300.0) - 1.0).abs() < 0.05, "{}", exact - core);
     let hinge_at = |_: f64, chord: f64| {
         Some(Hinge { at: 0.7 * chord, ..hinge(HingeKind::Laminate { side: Side::Upper }) })
     };
-    let parted = wood_pieces(&foil, &skinned, &hinge_at, Some([50.0, 250.0]), 0.002).expect("pieces");
+    let parted =
+        wood_pieces(&foil, &[0.0, 300.0], &skinned, &hinge_at, Some([50.0, 250.0]), 0.002).expect("pieces");
     assert_eq!(parted.iter().map(|piece| piece.name).collect::<Vec<_>>(), ["main body", "flap"]);
     assert!((parted[1].blank[0] - 200.0).abs() < 0.01);
     let both = parted[0].volume + parted[1].volume;

@@ -6,7 +6,7 @@ use plankform::wing::{Station, Wing, WingError};
 
 fn station(at: f64, chord: f64, twist_deg: f64, sweep: f64, name: &str) -> Station {
     let section = Section::from_designation(name, TrailingEdge::Published).expect("a section");
-    Station { at, chord, section, twist: twist_deg.to_radians(), sweep }
+    Station { at, chord, section, twist: twist_deg.to_radians(), sweep, rise: 0.0, twist_about: 0.25 }
 }
 
 #[test]

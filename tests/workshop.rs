@@ -8,7 +8,15 @@ use proptest::prelude::*;
 
 fn foil(name: &str, edge: TrailingEdge, chord: f64) -> Wing {
     let section = Section::from_designation(name, edge).expect("a section");
-    let station = |at| Station { at, chord, section: section.clone(), twist: 0.02, sweep: 0.0 };
+    let station = |at| Station {
+        at,
+        chord,
+        section: section.clone(),
+        twist: 0.02,
+        sweep: 0.0,
+        rise: 0.0,
+        twist_about: 0.25,
+    };
     Wing::new(vec![station(0.0), station(100.0)], false).expect("a foil")
 }
 

@@ -33,17 +33,23 @@ impl Design {
         let mut lines = vec![
             "plankform shape 1".to_owned(),
             format!("kind {}", self.kind.word()),
-            format!("span {}", mm(self.span)),
+            format!(
+                "span {} {} twist about {}",
+                mm(self.span),
+                self.law.word(),
+                fixed(self.twist_about, PLACES)
+            ),
         ];
         lines.extend(self.stations.iter().map(|station| {
             format!(
-                "station {} chord {} section {} {} twist {} sweep {}",
+                "station {} chord {} section {} {} twist {} sweep {} rise {}",
                 mm(station.at),
                 mm(station.chord),
                 section(station),
                 finish(station.finish),
                 degrees(station.twist),
-                mm(station.sweep)
+                mm(station.sweep),
+                mm(station.rise)
             )
         }));
         lines.extend(self.templates.iter().map(|at| format!("template {}", mm(*at))));

@@ -6,6 +6,7 @@
 
 use super::model::{FlapKind, Kind, PaperSize, PlySide};
 use crate::units::{AREAL_WEIGHT, DENSITY, Quantity};
+use crate::wing::Law;
 
 /// One table of the file.
 pub(super) struct Table {
@@ -117,13 +118,29 @@ pub(super) static PLANFORM: Table = Table {
     name: "planform",
     times: Times::Once,
     doc: "The size along the span.",
-    keys: &[key(
-        "span",
-        Length(20.0, LONGEST),
-        Required,
-        "Tip to tip for a main foil or an elevator, made as two mirrored halves; end to end for a strut or a fin.",
-        "900 mm",
-    )],
+    keys: &[
+        key(
+            "span",
+            Length(20.0, LONGEST),
+            Required,
+            "Tip to tip for a main foil or an elevator, made as two mirrored halves; end to end for a strut or a fin.",
+            "900 mm",
+        ),
+        key(
+            "law",
+            Word(Law::WORDS),
+            Default("straight"),
+            "How chord, twist, sweep and rise run between the stations: in straight lines, by a smooth curve through all, or the chord as half an ellipse cut at the tip's chord (two stations).",
+            "smooth",
+        ),
+        key(
+            "twist-about",
+            Number(0.0, 1.0),
+            Default("0.25"),
+            "Place on the chord about which twist turns, a fraction from the nose.",
+            "0.25",
+        ),
+    ],
 };
 
 /// One station.
@@ -165,7 +182,7 @@ pub(super) static STATION: Table = Table {
             "twist",
             Angle(-30.0, 30.0),
             Default("0 deg"),
-            "Nose-up positive, about the quarter chord.",
+            "Nose-up positive, about twist-about of [planform].",
             "-1.5 deg",
         ),
         key(
@@ -174,6 +191,13 @@ pub(super) static STATION: Table = Table {
             Default("0 mm"),
             "How far the quarter chord lies aft of the first station's.",
             "20 mm",
+        ),
+        key(
+            "rise",
+            Length(-2000.0, 2000.0),
+            Default("0 mm"),
+            "How far the quarter chord lies above the first station's: dihedral.",
+            "12 mm",
         ),
     ],
 };

@@ -2,6 +2,7 @@
 
 use crate::section::{Finish, Section};
 use crate::units::{Angle, Length};
+use crate::wing::Law;
 
 /// What is built.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
@@ -57,6 +58,10 @@ pub struct Design {
     pub notes: Option<String>,
     /// Tip to tip for mirrored kinds, from one end to the other for the rest.
     pub span: Length,
+    /// How chord, twist, sweep and rise run between the stations.
+    pub law: Law,
+    /// Place on the chord about which twist turns, 0 to 1.
+    pub twist_about: f64,
     /// From the root outwards, two at least: the first at 0, the last at [`Design::reach`].
     pub stations: Vec<Station>,
     /// Where templates are cut, ascending: every station, and the places the file names besides.
@@ -119,10 +124,12 @@ pub struct Station {
     pub designation: String,
     /// How its trailing edge is finished.
     pub finish: Finish,
-    /// Nose-up about the quarter chord, -30 to 30 degrees.
+    /// Nose-up about [`Design::twist_about`], -30 to 30 degrees.
     pub twist: Angle,
     /// How far the quarter chord lies aft of the first station's.
     pub sweep: Length,
+    /// How far it lies above the first station's.
+    pub rise: Length,
 }
 
 /// What the core is made of.

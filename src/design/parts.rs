@@ -3,7 +3,10 @@
 use super::model::{Design, FlapKind, PlySide};
 use crate::parts::{Covers, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, WoodPiece, wood_pieces};
 use crate::section::Side;
-use crate::wing::Wing;
+use crate::wing::{Law, Wing};
+
+/// Stretches of a curved foil over which a volume is taken from three cross-sections.
+const CURVED: usize = 16;
 
 impl Design {
     /// The skin: plies, filler and paint.
@@ -43,7 +46,12 @@ impl Design {
     pub fn pieces(&self, wing: &Wing) -> Result<Vec<WoodPiece>, PartError> {
         let flap = self.flap.map(|flap| [flap.from.mm(), flap.to.mm()]);
         let hinge_at = |at, chord| self.hinge_at(at, chord);
-        wood_pieces(wing, &self.skin(), &hinge_at, flap, self.router.tolerance.mm())
+        let mut joints: Vec<f64> = self.stations.iter().map(|station| station.at.mm()).collect();
+        if self.law != Law::Straight {
+            // A curve has no corners, but a volume from few cross-sections wants them near each other.
+            joints.extend((0..CURVED).map(|i| self.reach().mm() * i as f64 / CURVED as f64));
+        }
+        wood_pieces(wing, &joints, &self.skin(), &hinge_at, flap, self.router.tolerance.mm())
     }
 
     /// The hinge at `at` mm from the root, where the chord has so many mm; `None` where no flap is.

@@ -11,6 +11,7 @@ use super::reader::{Row, Sheet};
 use crate::problems::{Problems, Wrong};
 use crate::section::{Beside, Finish, SectionFileError};
 use crate::units::{Angle, Length, clipped};
+use crate::wing::Law;
 
 /// Two places along the span nearer than this are one, millimetres.
 const SAME: f64 = 0.001;
@@ -41,7 +42,17 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let router = router(sheet.one(&keys::ROUTER)?);
 
     let stations = stations?;
+    let planform = sheet.one(&keys::PLANFORM)?;
+    let law = planform.text("law").and_then(Law::from_word)?;
+    if law == Law::Elliptic && stations.len() != 2 {
+        let message =
+            format!("an elliptic chord goes with two stations, root and tip: there are {}", stations.len());
+        let help = "name the others under [templates], or write law = \"smooth\"";
+        problems.add(planform.place("law"), Wrong::new(message).help(help));
+    }
     Some(Design {
+        law,
+        twist_about: planform.number("twist-about")?,
         name: root.text("name")?.to_owned(),
         kind: kind?,
         notes: root.text("notes").map(str::to_owned),
@@ -181,6 +192,7 @@ fn station(row: &Row, beside: &Beside<'_>, problems: &mut Problems) -> Option<St
         finish: finish?,
         twist: row.angle("twist")?,
         sweep: row.length("sweep")?,
+        rise: row.length("rise")?,
     })
 }
 

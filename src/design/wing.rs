@@ -1,7 +1,7 @@
 //! From the design to the foil it describes.
 
 use super::Design;
-use crate::wing::{Station, Wing, WingError};
+use crate::wing::{Station, Wing, WingError, along};
 
 impl Design {
     /// The foil that the design describes.
@@ -16,7 +16,9 @@ impl Design {
             section: station.section.clone(),
             twist: station.twist.radians(),
             sweep: station.sweep.mm(),
+            rise: station.rise.mm(),
+            twist_about: self.twist_about,
         });
-        Wing::new(stations.collect(), self.kind.mirrored())
+        Wing::new(along(self.law, stations.collect())?, self.kind.mirrored())
     }
 }

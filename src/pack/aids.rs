@@ -4,7 +4,7 @@ use super::PackError;
 use crate::design::Design;
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
 use crate::geometry::{ArcPath, follow_with_arcs};
-use crate::parts::{Core, Laminate, Split, split};
+use crate::parts::{Core, Laminate, Split, WoodPiece, split};
 use crate::section::Section;
 use crate::wing::{Planform, StationShape, Wing};
 use crate::workshop::{
@@ -13,6 +13,29 @@ use crate::workshop::{
 
 /// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
 const PRINT_TOLERANCE: f64 = 0.02;
+
+/// All of it.
+pub(super) struct Aids<'a> {
+    pub(super) planform: Planform,
+    pub(super) pattern: Drawing,
+    pub(super) stations: Vec<StationAids<'a>>,
+    pub(super) flows: Vec<SectionFlow<'a>>,
+    pub(super) pieces: Vec<WoodPiece>,
+}
+
+impl<'a> Aids<'a> {
+    /// Works out a design, whose own foil `wing` is.
+    pub(super) fn of(design: &'a Design, wing: &'a Wing) -> Result<Self, PackError> {
+        let planform = wing.planform();
+        Ok(Self {
+            pattern: pattern(design, &planform),
+            planform,
+            stations: station_aids(design, wing)?,
+            flows: section_flows(design)?,
+            pieces: design.pieces(wing)?,
+        })
+    }
+}
 
 /// The aids of one template station.
 pub(super) struct StationAids<'a> {
@@ -65,7 +88,7 @@ fn hinge(design: &Design) -> Option<HingeLine> {
 }
 
 /// Shapes, templates and masks of every template station.
-pub(super) fn station_aids<'a>(design: &Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
+fn station_aids<'a>(design: &Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
     let (stamp, hinge) = (stamp(design), hinge(design));
     let settings = MaskSettings {
         clearance: design.masks.clearance.mm(),
@@ -127,22 +150,22 @@ fn wood(
 }
 
 /// The pattern of the planform.
-pub(super) fn pattern(design: &Design, planform: &Planform) -> Drawing {
+fn pattern(design: &Design, planform: &Planform) -> Drawing {
     let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
     planform_pattern(&stamp(design), planform, &stations, hinge(design).as_ref())
 }
 
 /// The flow about each section that the design names, each once.
-pub(super) fn section_flows(wing: &Wing) -> Result<Vec<SectionFlow<'_>>, PackError> {
+fn section_flows(design: &Design) -> Result<Vec<SectionFlow<'_>>, PackError> {
     let mut flows: Vec<SectionFlow<'_>> = Vec::new();
-    for station in wing.stations() {
+    for station in &design.stations {
         if let Some(known) = flows.iter_mut().find(|f| *f.section == station.section) {
-            known.stations.push(station.at);
+            known.stations.push(station.at.mm());
             continue;
         }
         let panelling = Panelling::of(&station.section, DEFAULT_PANELS)?;
         let flow = PotentialFlow::new(&panelling)?;
-        flows.push(SectionFlow { section: &station.section, stations: vec![station.at], flow });
+        flows.push(SectionFlow { section: &station.section, stations: vec![station.at.mm()], flow });
     }
     Ok(flows)
 }

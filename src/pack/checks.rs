@@ -3,7 +3,7 @@
 use serde::Serialize;
 
 use super::PackError;
-use super::aids::{self, SectionFlow, StationAids};
+use super::aids::{Aids, SectionFlow, StationAids};
 use crate::design::Design;
 use crate::geometry::{Rect, Solid};
 use crate::workshop::{Drawing, Half, Role};
@@ -34,18 +34,11 @@ pub struct Check {
 /// When a shape cannot be made at all.
 pub fn run_checks(design: &Design) -> Result<Vec<Check>, PackError> {
     let wing = design.wing()?;
-    let stations = aids::station_aids(design, &wing)?;
-    let pattern = aids::pattern(design, &wing.planform());
-    let flows = aids::section_flows(&wing)?;
-    Ok(all(design, &stations, &pattern, &flows))
+    Ok(all(design, &Aids::of(design, &wing)?))
 }
 
-pub(super) fn all(
-    design: &Design,
-    stations: &[StationAids<'_>],
-    pattern: &Drawing,
-    flows: &[SectionFlow<'_>],
-) -> Vec<Check> {
+pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
+    let Aids { stations, pattern, flows, .. } = aids;
     let mut checks = Vec::new();
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));

@@ -1,6 +1,6 @@
 //! From a design to the files of its pack, in memory.
 
-use super::aids::{self, SectionFlow, StationAids};
+use super::aids::{self, Aids, SectionFlow, StationAids};
 use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet, tables};
 use crate::design::Design;
 use crate::export::{dxf, pdf, stl, svg_page};
@@ -34,29 +34,24 @@ impl Kinds {
 /// pack says so.
 pub fn build(design: &Design, kinds: Kinds) -> Result<Pack, PackError> {
     let wing = design.wing()?;
-    let planform = wing.planform();
-    let stations = aids::station_aids(design, &wing)?;
-    let pattern = aids::pattern(design, &planform);
-    let flows = aids::section_flows(&wing)?;
-    let checks = checks::all(design, &stations, &pattern, &flows);
+    let aids = Aids::of(design, &wing)?;
+    let checks = checks::all(design, &aids);
 
     let mut files = Files { slug: design.slug(), files: Vec::new() };
     if kinds.cut {
-        files.add_cut(&stations, &pattern);
+        files.add_cut(&aids.stations, &aids.pattern);
     }
     if kinds.print {
-        files.add_print(design, &stations, &pattern)?;
+        files.add_print(design, &aids.stations, &aids.pattern)?;
     }
     if kinds.masks {
-        files.add_masks(design, &stations)?;
+        files.add_masks(design, &aids.stations)?;
     }
     if kinds.tables {
-        files.add_tables(design, &stations, &flows)?;
+        files.add_tables(design, &aids.stations, &aids.flows)?;
     }
     if kinds.sheet {
-        let pieces = design.pieces(&wing)?;
-        let page =
-            sheet::html(design, &planform, &stations, &pattern, &flows, &pieces, &checks, &files.files);
+        let page = sheet::html(design, &aids, &checks, &files.files);
         files.add("sheet.html".to_owned(), "html", "build sheet", None, page.into_bytes());
     }
     Ok(pack(design, checks, files.files))

@@ -2,7 +2,7 @@
 
 use std::fmt::Write as _;
 
-use super::aids::{SectionFlow, StationAids};
+use super::aids::{Aids, SectionFlow, StationAids};
 use super::{Check, PackFile};
 use crate::design::Design;
 use crate::export::chart::{Chart, Mark, Series};
@@ -20,16 +20,8 @@ const MARGIN: f64 = 4.0;
 /// The word for a check that does not hold.
 const OUTSIDE: &str = "OUTSIDE";
 
-pub(super) fn html(
-    design: &Design,
-    planform: &Planform,
-    stations: &[StationAids<'_>],
-    pattern: &Drawing,
-    flows: &[SectionFlow<'_>],
-    pieces: &[WoodPiece],
-    checks: &[Check],
-    files: &[PackFile],
-) -> String {
+pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[PackFile]) -> String {
+    let Aids { planform, pattern, stations, flows, pieces } = aids;
     let mut body = String::new();
     heading(&mut body, design, checks);
     cautions(&mut body);

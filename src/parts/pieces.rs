@@ -25,6 +25,7 @@ const STRETCH: f64 = 150.0;
 
 /// The wooden pieces of a foil.
 ///
+/// `joints`: where along the span the loft has a corner, mm from the root, with both ends.
 /// `hinge_at`: the hinge at a place, mm from the root, with the chord there; the flap runs from
 /// `flap` start to end.
 ///
@@ -32,12 +33,13 @@ const STRETCH: f64 = 150.0;
 /// When the wood cannot be made at some place.
 pub fn wood_pieces(
     wing: &Wing,
+    joints: &[f64],
     laminate: &Laminate,
     hinge_at: &dyn Fn(f64, f64) -> Option<Hinge>,
     flap: Option<[f64; 2]>,
     tolerance: f64,
 ) -> Result<Vec<WoodPiece>, PartError> {
-    let mut ends: Vec<f64> = wing.stations().iter().map(|station| station.at).collect();
+    let mut ends = joints.to_vec();
     ends.extend(flap.into_iter().flatten());
     ends.extend(laminate.plies.iter().flat_map(|ply| [*ply.span.start(), *ply.span.end()]));
     ends.retain(|at| (0.0..=wing.reach()).contains(at));

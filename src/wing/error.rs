@@ -37,4 +37,16 @@ pub enum WingError {
         /// Root to tip, mm.
         reach: f64,
     },
+    /// An elliptic law for other than root and tip.
+    #[error("an elliptic chord goes with two stations, root and tip: there are {count}")]
+    EllipticStations {
+        /// How many there are.
+        count: usize,
+    },
+    /// A section between two stations that cannot be made.
+    #[error("between two stations: {why}")]
+    Section {
+        /// What is wrong.
+        why: String,
+    },
 }

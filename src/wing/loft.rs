@@ -147,8 +147,11 @@ fn placed(station: &Station, t: f64) -> Jet {
     // x is aft and z is up, so nose-up turns clockwise.
     let turn = Affine::rotate(-station.twist) * Affine::scale(station.chord);
     let vector = |v: Vec2| (turn * v.to_point()).to_vec2();
+    // Sweep and rise are those of the untwisted quarter chord.
+    let about = Vec2::new(station.twist_about, 0.0);
+    let ahead = (station.twist_about - 0.25) * station.chord;
     Jet {
-        point: turn * (jet.point - Vec2::new(0.25, 0.0)) + Vec2::new(station.sweep, 0.0),
+        point: turn * (jet.point - about) + Vec2::new(station.sweep + ahead, station.rise),
         first: vector(jet.first),
         second: vector(jet.second),
     }

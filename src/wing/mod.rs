@@ -3,10 +3,12 @@
 //! Axes: x aft, z up, y along the span from the root (of a strut, from its upper end).
 
 mod error;
+mod law;
 mod loft;
 mod planform;
 
 pub use error::WingError;
+pub use law::{Law, along};
 pub use loft::StationShape;
 pub use planform::Planform;
 
@@ -21,10 +23,14 @@ pub struct Station {
     pub chord: f64,
     /// Section, at unit chord.
     pub section: Section,
-    /// Nose-up turn about the quarter chord, radians.
+    /// Nose-up turn about [`Station::twist_about`], radians.
     pub twist: f64,
     /// How far the quarter chord lies aft of the first station's, mm.
     pub sweep: f64,
+    /// How far it lies above the first station's, mm.
+    pub rise: f64,
+    /// Place on the chord about which the twist turns, a fraction of it from the nose.
+    pub twist_about: f64,
 }
 
 /// A foil, lofted in straight lines between its stations as a batten fairs it.
@@ -54,7 +60,8 @@ impl Wing {
             }
         }
         for station in &stations {
-            let finite = station.twist.is_finite() && station.sweep.is_finite();
+            let finite = [station.twist, station.sweep, station.rise, station.twist_about];
+            let finite = finite.iter().all(|value| value.is_finite());
             if !(station.chord > 0.0 && station.chord.is_finite() && finite) {
                 return Err(WingError::Station { at: station.at });
             }

@@ -16,6 +16,7 @@ const FINEST: f64 = 2e-10;
 const INTERVALS: f64 = 600.0;
 /// Weights of the roughness that are tried, as powers of ten.
 const STIFFEST: f64 = 3.0;
+const START: f64 = -7.0;
 const SOFTEST: f64 = -19.0;
 /// What the two ends of a sharp trailing edge weigh, so that it closes.
 const SHARP: f64 = 1e4;
@@ -67,24 +68,45 @@ pub(super) fn fit(
     let mut state = job.start(placing, nose);
     job.settle(&mut state, -6.0, 12);
     job.basis = basis(&state.roots);
-    job.settle(&mut state, -8.0, 8);
+    job.settle(&mut state, START, 12);
 
-    let mut best = state.clone();
-    job.settle(&mut best, SOFTEST, 12);
-    let target = (1.02 * job.worst(&best)).max(1.0);
-    let (mut soft, mut stiff) = (SOFTEST, STIFFEST);
-    for _ in 0..12 {
-        let middle = 0.5 * (soft + stiff);
-        let mut trial = best.clone();
-        job.settle(&mut trial, middle, 8);
+    // Softer by and by, each from where the stiffer one left nose and trailing edge: a soft spline
+    // over points that are not yet in their places goes wild.
+    let (mut best, mut softest) = (state.clone(), state);
+    let (mut stiff, mut soft) = (START, START);
+    let mut least = job.worst(&best);
+    while least > 1.0 && soft > SOFTEST {
+        (stiff, soft) = (soft, soft - 1.0);
+        let mut trial = softest.clone();
+        job.settle(&mut trial, soft, 8);
+        let worst = job.worst(&trial);
         // Not a number counts as too far.
-        if job.worst(&trial) <= target {
-            (best, soft) = (trial, middle);
-        } else {
-            stiff = middle;
+        let wild = worst > 4.0 * least;
+        if wild || worst.is_nan() {
+            break;
+        }
+        softest = trial;
+        if worst < least {
+            (best, least) = (softest.clone(), worst);
         }
     }
-    job.settle(&mut best, soft, 30);
+    if least <= 1.0 {
+        // And the stiffest that will do, between one that does not and one that does.
+        if soft == START {
+            stiff = STIFFEST;
+        }
+        for _ in 0..7 {
+            let middle = 0.5 * (soft + stiff);
+            let mut trial = best.clone();
+            job.settle(&mut trial, middle, 8);
+            if job.worst(&trial) <= 1.0 {
+                (best, soft) = (trial, middle);
+            } else {
+                stiff = middle;
+            }
+        }
+        job.settle(&mut best, soft, 30);
+    }
     job.finish(&best)
 }
 
@@ -104,8 +126,9 @@ struct State {
     coefficients: Vec<f64>,
 }
 
-/// Breaks at the points, but not at the three nearest to each end: there the spline takes its
-/// shape from its neighbours, and is as accurate as elsewhere.
+/// Breaks at the nose and at the points, but not at the three nearest to each end and the nearest
+/// to the nose on either side: there the spline takes its shape from its neighbours, and is as
+/// accurate as elsewhere.
 fn basis(roots: &[f64]) -> Basis {
     let mut sorted = roots.to_vec();
     sorted.sort_by(f64::total_cmp);
@@ -113,10 +136,20 @@ fn basis(roots: &[f64]) -> Basis {
         return Basis::new(&[-1.0, 1.0]);
     };
     let shortest = (0.3 / sorted.len() as f64).max((last - first) / INTERVALS);
+    let ahead = sorted.partition_point(|root| *root < 0.0);
+    let mut inner: Vec<f64> = Vec::new();
+    for (i, &root) in sorted.iter().enumerate() {
+        let at_nose = i + 1 == ahead || i == ahead || root.abs() < shortest;
+        if i >= 3 && i + 3 < sorted.len() && !at_nose {
+            inner.push(root);
+        }
+    }
+    inner.push(0.0);
+    inner.sort_by(f64::total_cmp);
     let mut breaks = vec![first];
-    for &root in sorted.iter().skip(3).take(sorted.len().saturating_sub(6)) {
+    for root in inner {
         let before = breaks.last().copied().unwrap_or(first);
-        if root - before >= shortest && last - root >= shortest {
+        if root == 0.0 || (root - before >= shortest && last - root >= shortest) {
             breaks.push(root);
         }
     }

@@ -6,13 +6,17 @@ use std::sync::Arc;
 const DEGREE: usize = 5;
 /// Coefficients that act at one place.
 const WIDTH: usize = DEGREE + 1;
+/// How often the nose counts as a break. A half thickness with terms in √x and in x, as the
+/// published ones have, is a y(t) whose second derivative steps there; the curvature of the
+/// outline does not, since it hangs on the slope alone where x' = 2t is nought.
+const NOSE_FOLD: usize = 4;
 
 /// Both surfaces of a section as one smooth function y(t) at unit chord.
 ///
 /// `t` runs from -1 (upper trailing edge) over 0 (nose) to 1 (lower trailing edge), x is its
-/// square. Four derivatives are continuous, so the curvature of the outline (t², y(t)) and its
-/// change along it are, through the nose as well. `y(0)` is nought, and so is the sum of the two
-/// ends.
+/// square. Four derivatives are continuous but at the nose, where value and slope are; since x' is
+/// nought there, the curvature of the outline (t², y(t)) is continuous through the nose as well.
+/// `y(0)` is nought, and so is the sum of the two ends.
 #[derive(Debug, Clone, PartialEq)]
 pub struct FittedSurfaces {
     knots: Arc<[f64]>,
@@ -21,7 +25,7 @@ pub struct FittedSurfaces {
 }
 
 impl FittedSurfaces {
-    /// y, dy/dt and d²y/dt² at `t`, in chords; beyond -1 and 1 those at the trailing edge.
+    /// y, dy/dt and d²y/dt² at `t`, in chords; at 0 those of the lower surface, and beyond -1 and 1 those at the trailing edge.
     #[must_use]
     pub fn at(&self, t: f64) -> [f64; 3] {
         let t = t.clamp(-1.0, 1.0);
@@ -38,7 +42,7 @@ impl FittedSurfaces {
         ]
     }
 
-    /// The values of `t` between which y is one polynomial: ascending, from -1 to 1.
+    /// The values of `t` between which y is one polynomial: ascending, from -1 to 1, with 0.
     #[must_use]
     pub fn knots(&self) -> &[f64] {
         &self.knots
@@ -54,10 +58,18 @@ pub(super) struct Basis {
 }
 
 impl Basis {
-    /// Over `breaks`, which ascend strictly and are two at least.
+    /// Over `breaks`, which ascend strictly and are two at least. Where one of them is nought, only
+    /// value and slope are continuous there.
     pub(super) fn new(breaks: &[f64]) -> Self {
-        let ends = |end: Option<&f64>| [end.copied().unwrap_or(0.0); DEGREE];
-        let knots = [&ends(breaks.first()), breaks, &ends(breaks.last())].concat();
+        let mut knots = Vec::with_capacity(breaks.len() + 2 * DEGREE + NOSE_FOLD);
+        for (i, &at) in breaks.iter().enumerate() {
+            let fold = match at {
+                _ if i == 0 || i + 1 == breaks.len() => WIDTH,
+                0.0 => NOSE_FOLD,
+                _ => 1,
+            };
+            knots.extend(std::iter::repeat_n(at, fold));
+        }
         Self { knots }
     }
 
@@ -65,8 +77,10 @@ impl Basis {
         self.knots.len() - WIDTH
     }
 
-    fn breaks(&self) -> &[f64] {
-        &self.knots[DEGREE..self.knots.len() - DEGREE]
+    /// The intervals that are more than a point, by the index of their first knot.
+    fn intervals(&self) -> impl Iterator<Item = (usize, f64, f64)> + '_ {
+        let ends = |span: usize| (span, self.knots[span], self.knots[span + 1]);
+        (DEGREE..self.count()).map(ends).filter(|(_, from, to)| from < to)
     }
 
     /// The interval that holds `t`, as the index of the last function that acts there; outside of
@@ -118,12 +132,12 @@ impl Basis {
     pub(super) fn roughness(&self) -> Vec<(usize, [f64; WIDTH])> {
         let away = 0.6_f64.sqrt();
         let mut rows = Vec::new();
-        for (i, ends) in self.breaks().windows(2).enumerate() {
-            let (middle, half) = (0.5 * (ends[0] + ends[1]), 0.5 * (ends[1] - ends[0]));
+        for (span, from, to) in self.intervals() {
+            let (middle, half) = (0.5 * (from + to), 0.5 * (to - from));
             for (at, weight) in [(-away, 5.0 / 9.0), (0.0, 8.0 / 9.0), (away, 5.0 / 9.0)] {
                 let scale = (weight * half).sqrt();
-                let row = self.row(i + DEGREE, middle + at * half, 3);
-                rows.push((i + DEGREE, row.map(|value| value * scale)));
+                let row = self.row(span, middle + at * half, 3);
+                rows.push((span, row.map(|value| value * scale)));
             }
         }
         rows
@@ -134,7 +148,7 @@ impl Basis {
         let at = |t| self.value(coefficients, t, 0);
         let nose = at(0.0);
         let tail = 0.5 * (at(-1.0) + at(1.0)) - nose;
-        let inner = self.breaks().iter().copied().filter(|knot| knot.abs() < 1.0 - 1e-9);
+        let inner = self.intervals().map(|(_, from, _)| from).filter(|knot| knot.abs() < 1.0 - 1e-9);
         let knots: Vec<f64> = [-1.0].into_iter().chain(inner).chain([1.0]).collect();
         let pieces = knots.windows(2).map(|ends| {
             let (from, span) = (ends[0], self.span(0.5 * (ends[0] + ends[1])));

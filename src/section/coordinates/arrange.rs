@@ -54,7 +54,6 @@ pub(super) fn arrange(blocks: Vec<Vec<Given>>, closed: bool) -> Result<Arranged,
         points = starting_at_tail(points, size);
         from_nose = true;
     }
-    let mut points = points;
     duplicates.sort_unstable();
     duplicates.dedup();
 

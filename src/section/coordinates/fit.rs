@@ -126,9 +126,8 @@ struct State {
     coefficients: Vec<f64>,
 }
 
-/// Breaks at the nose and at the points, but not at the three nearest to each end and the nearest
-/// to the nose on either side: there the spline takes its shape from its neighbours, and is as
-/// accurate as elsewhere.
+/// Breaks at the nose and at the points, but not at the three nearest to each end: there the spline
+/// takes its shape from its neighbours, and is as accurate as elsewhere.
 fn basis(roots: &[f64]) -> Basis {
     let mut sorted = roots.to_vec();
     sorted.sort_by(f64::total_cmp);
@@ -136,14 +135,8 @@ fn basis(roots: &[f64]) -> Basis {
         return Basis::new(&[-1.0, 1.0]);
     };
     let shortest = (0.3 / sorted.len() as f64).max((last - first) / INTERVALS);
-    let ahead = sorted.partition_point(|root| *root < 0.0);
-    let mut inner: Vec<f64> = Vec::new();
-    for (i, &root) in sorted.iter().enumerate() {
-        let at_nose = i + 1 == ahead || i == ahead || root.abs() < shortest;
-        if i >= 3 && i + 3 < sorted.len() && !at_nose {
-            inner.push(root);
-        }
-    }
+    let inner = sorted.iter().skip(3).take(sorted.len().saturating_sub(6)).copied();
+    let mut inner: Vec<f64> = inner.filter(|root| root.abs() >= shortest).collect();
     inner.push(0.0);
     inner.sort_by(f64::total_cmp);
     let mut breaks = vec![first];
@@ -284,7 +277,8 @@ impl<'a> Job<'a> {
         let wild = fit.distances.iter().position(|distance| !distance.is_finite());
         let (rank, distance) = wild.map_or(fit.furthest(), |rank| (rank, f64::INFINITY));
         let index = self.points.get(rank).map_or(1, |given| given.index);
-        if !(distance <= ASTRAY.max(self.tolerance.unwrap_or(0.0))) {
+        let near = distance <= ASTRAY.max(self.tolerance.unwrap_or(0.0));
+        if !near {
             return Err(CoordinateError::NotSmooth { index, distance });
         }
         self.refuse_bad_outline(&fit)?;
@@ -298,13 +292,15 @@ impl<'a> Job<'a> {
             best.and_then(|(rank, _)| self.points.get(rank)).map_or(1, |given| given.index)
         };
         // y runs down through the nose, and half the square of its slope there is the radius.
-        if !(fit.surfaces.at(0.0)[1] < -1e-3) {
+        let round = fit.surfaces.at(0.0)[1] < -1e-3;
+        if !round {
             return Err(CoordinateError::SharpNose { index: nearest(0.0) });
         }
         const STATIONS: u32 = 4000;
         for i in 1..STATIONS {
             let t = f64::from(i) / f64::from(STATIONS);
-            if !(fit.surfaces.at(-t)[0] > fit.surfaces.at(t)[0]) {
+            let apart = fit.surfaces.at(-t)[0] > fit.surfaces.at(t)[0];
+            if !apart {
                 return Err(CoordinateError::Crosses { index: nearest(t), percent: 100.0 * t * t });
             }
         }

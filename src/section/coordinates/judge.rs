@@ -44,8 +44,9 @@ pub(super) fn outliers(fit: &Fit, points: &[Given]) -> Vec<Outlier> {
         });
         let Some(i) = alone else { break };
         let rank = active.remove(i);
-        let index = points[rank].index;
-        found.push(Outlier { index, line: None, distance: misses[i].distance });
+        let side = if fit.roots[rank] < 0.0 { Side::Upper } else { Side::Lower };
+        let (index, x) = (points[rank].index, fit.places[rank].x);
+        found.push(Outlier { index, line: None, side, x, distance: misses[i].distance });
     }
     found.sort_by_key(|outlier| outlier.index);
     found

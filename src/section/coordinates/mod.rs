@@ -5,6 +5,8 @@
 //! points leave open, and the report says where points stand out and where there are waves.
 
 mod arrange;
+mod curves;
+mod drawing_text;
 mod error;
 mod fit;
 mod judge;
@@ -12,7 +14,9 @@ mod placing;
 mod report;
 mod spline;
 mod table;
+mod traced;
 
+pub use drawing_text::LARGEST_DRAWING;
 pub use error::CoordinateError;
 pub use placing::Placing;
 pub use report::{ChordUnit, CoordinateReport, Outlier, Wave};
@@ -106,6 +110,31 @@ pub fn from_table(text: &str, file_name: &str, tolerance: Option<f64>) -> Result
         wave.line = line(wave.index);
     }
     Ok(traced)
+}
+
+/// A section from the bytes of a drawing: an outline traced in a DXF file in text form.
+///
+/// The outline is a polyline, with arcs or without, a spline, or lines, arcs, polylines and
+/// splines that meet end to end. There must be one, closed or open at the trailing edge. The unit
+/// is that of the drawing's header. The outline is followed within `tolerance`, in chords, more
+/// than 0 and at most 0.01; where it is `None`, within 1e-5. `file_name` becomes the title where
+/// the outline lies on no layer of its own.
+///
+/// # Errors
+/// Why the drawing holds no section, and what would be right.
+pub fn from_dxf(bytes: &[u8], file_name: &str, tolerance: Option<f64>) -> Result<Traced, CoordinateError> {
+    let outline = traced::read(bytes)?;
+    let title = if outline.layer == "0" || outline.layer.is_empty() { file_name } else { &outline.layer };
+    let listing = Listing {
+        title: Some(crate::units::clipped(title)),
+        blocks: vec![outline.points],
+        closed: outline.closed,
+        unit: Some(outline.unit),
+        resolution: None,
+        decimal_comma: false,
+        notes: outline.notes,
+    };
+    listing.trace(tolerance.or(Some(traced::DRAWN)))
 }
 
 /// Points as a file gave them.

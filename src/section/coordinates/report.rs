@@ -71,6 +71,10 @@ pub struct Outlier {
     pub index: usize,
     /// Its line in the file.
     pub line: Option<usize>,
+    /// The surface.
+    pub side: Side,
+    /// Its station.
+    pub x: f64,
     /// How far it is from where its neighbours put it.
     pub distance: f64,
 }
@@ -144,7 +148,7 @@ impl CoordinateReport {
             ChordUnit::AssumedMillimetres => {
                 format!("The numbers are taken for millimetres: the chord is {chord} mm long.")
             }
-            ChordUnit::Named(unit, mm) if mm == 1.0 => {
+            ChordUnit::Named(unit, 1.0) => {
                 format!("The drawing is in {unit}: the chord is {chord} mm long.")
             }
             ChordUnit::Named(unit, mm) => format!(
@@ -230,15 +234,18 @@ impl CoordinateReport {
 
     fn findings(&self) -> Vec<String> {
         let mut lines = Vec::new();
-        for Outlier { index, line, distance } in &self.outliers {
+        for outlier in &self.outliers {
             lines.push(format!(
-                "Point {index}{} stands out by {} % of the chord from where its neighbours put it. It was kept: correct it if it is a slip.",
-                on_line(*line),
-                significant(100.0 * distance)
+                "Point {}{} on the {} surface, at {} % of the chord, stands out by {} % of the chord from where its neighbours put it. It was kept: correct it if it is a slip.",
+                outlier.index,
+                on_line(outlier.line),
+                word(outlier.side),
+                fixed(100.0 * outlier.x, 1),
+                significant(100.0 * outlier.distance)
             ));
         }
         for wave in &self.waves {
-            let side = if wave.side == Side::Upper { "upper" } else { "lower" };
+            let side = word(wave.side);
             let shape = if wave.hollow { "hollow" } else { "hump" };
             lines.push(format!(
                 "The {side} surface has a wave from {} % to {} % of the chord: its {shape} near point {}{} is {} % of the chord deep. It was kept.",
@@ -254,6 +261,10 @@ impl CoordinateReport {
         }
         lines
     }
+}
+
+fn word(side: Side) -> &'static str {
+    if side == Side::Upper { "upper" } else { "lower" }
 }
 
 fn on_line(line: Option<usize>) -> String {

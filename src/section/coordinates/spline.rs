@@ -109,11 +109,11 @@ impl Basis {
         // Each step up in degree differentiates once.
         for degree in DEGREE - order + 1..=DEGREE {
             let mut before = 0.0;
-            for r in 0..=degree {
+            for (r, value) in row.iter_mut().enumerate().take(degree + 1) {
                 let i = span + r - degree;
                 let share =
-                    if r < degree { degree as f64 * row[r] / (u[i + degree + 1] - u[i + 1]) } else { 0.0 };
-                row[r] = before - share;
+                    if r < degree { degree as f64 * *value / (u[i + degree + 1] - u[i + 1]) } else { 0.0 };
+                *value = before - share;
                 before = share;
             }
         }

@@ -72,7 +72,7 @@ fn tables_of_published_sections_come_back() {
                 assert!(report.reached && report.greatest_distance < 1e-9, "{name} {count}: {:?}", report);
                 assert!(report.waves.is_empty() && report.outliers.is_empty(), "{name} {count}: {report:?}");
                 assert_eq!(report.unit, ChordUnit::Chord);
-                assert_eq!(report.edge_gap < 1e-9, edge == TrailingEdge::Closed || name.is_empty());
+                assert_eq!(report.edge_gap < 1e-9, edge == TrailingEdge::Closed);
             }
         }
     }
@@ -101,7 +101,71 @@ fn five_decimals_give_no_waves_and_stay_within_a_unit() {
     }
 }
 
-/// Number of the point in a table, its line, and the table again with something done to it.
+/// Ordinates as they were printed: NACA Reports 460, 537 and 824, see the head of the file. Those of
+/// the cambered sections were computed by hand and stray by some units of their last digit.
+#[test]
+fn printed_ordinates_give_the_section() {
+    let text = include_str!("reference/sections.toml");
+    let reference: toml::Table = text.parse().expect("a table");
+    let numbers = |value: &toml::Value| -> Vec<f64> {
+        let number = |v: &toml::Value| v.as_float().or(v.as_integer().map(|v| v as f64)).expect("a number");
+        value.as_array().expect("a list").iter().map(number).collect()
+    };
+    for kind in ["symmetric", "cambered"] {
+        let group = &reference[kind];
+        let stations = numbers(&group["stations"]);
+        for printed in group["section"].as_array().expect("sections") {
+            let name = printed["name"].as_str().expect("a name");
+            let (upper, lower) = if kind == "symmetric" {
+                let upper = numbers(&printed["ordinates"]);
+                (upper.clone(), upper.iter().map(|y| -y).collect())
+            } else {
+                (
+                    [&[0.0], &numbers(&printed["upper"])[..]].concat(),
+                    [&[0.0], &numbers(&printed["lower"])[..]].concat(),
+                )
+            };
+            let stations =
+                if stations[0] == 0.0 { stations.clone() } else { [&[0.0], &stations[..]].concat() };
+            let block = |heights: &[f64]| -> String {
+                stations.iter().zip(heights).map(|(x, y)| format!("{x} {y}\n")).collect()
+            };
+            let found = read(&format!("NACA {name}\n{}\n{}", block(&upper), block(&lower)));
+            let strays = printed.get("strays").and_then(toml::Value::as_float).unwrap_or(0.0) / 100.0;
+            let unit = found.report.resolution.expect("a table");
+            let distance = apart(&found, &section(name, TrailingEdge::Published), Affine::scale(0.01));
+            assert!(distance < 0.5 * unit + strays.max(0.5 * unit), "{name}: {distance:.1e}");
+            assert_eq!(found.report.unit, ChordUnit::Percent);
+            assert!(found.report.waves.is_empty(), "{name}: {:?}", found.report.waves);
+        }
+    }
+}
+
+/// Points scattered by far more than their digits say: no outline is smooth through them, and the
+/// nearest that is stays with them.
+#[test]
+fn scattered_points_are_followed_and_it_is_said() {
+    let mut seed = 7_u64;
+    let mut random = || {
+        seed = seed.wrapping_mul(6_364_136_223_846_793_005).wrapping_add(1_442_695_040_888_963_407);
+        (seed >> 33) as f64 / f64::from(1 << 30) - 1.0
+    };
+    for name in ["0012", "2412", "23012"] {
+        let points = section(name, TrailingEdge::Published).points(61);
+        for scatter in [1e-6, 1e-5, 1e-4, 1e-3] {
+            for _ in 0..10 {
+                let moved: Vec<Point> =
+                    points.iter().map(|p| *p + scatter * Vec2::new(random(), random())).collect();
+                let report = read(&table(&moved, 7)).report;
+                assert!(report.greatest_distance < 3.0 * scatter, "{name} {scatter}: {report:?}");
+                let said = report.lines().iter().any(|line| line.contains("No smooth outline"));
+                assert_eq!(said, !report.reached);
+                assert!(!report.reached || scatter < 1e-4, "{name} {scatter}: {report:?}");
+            }
+        }
+    }
+}
+
 fn edited(points: &[Point], edit: impl Fn(usize, Point) -> Point, decimals: usize) -> String {
     let moved: Vec<Point> = points.iter().enumerate().map(|(i, p)| edit(i, *p)).collect();
     table(&moved, decimals)
@@ -280,7 +344,7 @@ fn a_wave_is_found_at_its_place() {
             assert_eq!(waves.len(), 1, "{name} {side:?} {place}: {waves:?}");
             let wave = waves[0];
             assert_eq!(wave.side, side);
-            assert!(wave.from < place + 0.012 && wave.to > place - 0.012, "{name}: {wave:?}");
+            assert!(wave.from < place + 0.03 && wave.to > place - 0.03, "{name}: {wave:?}");
             let near = points[wave.index - 1];
             assert!((near.x - place).abs() < 0.03, "{name}: {wave:?}");
             assert!(wave.amplitude > 2e-5 && wave.amplitude < 4e-4, "{wave:?}");
@@ -341,7 +405,7 @@ fn what_is_wrong_with_a_table_is_marked_where_it_stands() {
         edited(&points, |i, p| if (1..25).contains(&i) { Point::new(p.x, -p.y - 0.05) } else { p }, 6);
     let no_nose: Vec<Point> = points.iter().copied().filter(|p| p.x > 0.12 || p.y.abs() < 0.001).collect();
     let gap: Vec<Point> = points.iter().copied().filter(|p| p.y < 0.0 || p.x < 0.02 || p.x > 0.6).collect();
-    let stepped = edited(&points, |i, p| if i < 15 { p + Vec2::new(0.0, 0.03) } else { p }, 6);
+    let stepped = edited(&points, |i, p| if i < 15 { p + Vec2::new(0.0, 0.06) } else { p }, 6);
     for (text, line, says) in [
         (replaced(7, "0.9 nan"), 8, "not a finite number"),
         (replaced(7, "inf 0.1"), 8, "not a finite number"),
@@ -354,14 +418,18 @@ fn what_is_wrong_with_a_table_is_marked_where_it_stands() {
         (swapped(12, 14), 14, "turns back"),
         (crossed, 0, "crosses itself"),
         (stepped, 0, "steps at point"),
-        (table(&no_nose, 6), 0, "nothing between points"),
+        (table(&no_nose, 6), 0, "too few points"),
         (table(&gap, 6), 0, "nothing between points"),
         (table(&points[..25], 6), 25, "must lie at the trailing edge"),
         (table(&points[..6], 6), 6, "6 points"),
         (String::new(), 1, "0 points"),
         ("1 0\n".repeat(30), 0, "enclose nothing"),
-        ((0..30).map(|i| format!("{} 0\n", f64::from(i) / 29.0)).collect(), 0, "enclose nothing"),
-        (table(&points, 6).replace("0.", "1e300"), 0, "below 1e9"),
+        (
+            (-15..=15_i32).map(|i| format!("{} 0\n", f64::from(i.abs()) / 15.0)).collect(),
+            0,
+            "enclose nothing",
+        ),
+        (replaced(7, "1e12 0.1"), 8, "below 1e9"),
         (format!("40. 30.\n{good}"), 1, "gives 40 and 30 points, and 61 follow"),
         ("line\n".repeat(50), 21, "more text here"),
         ("0.5 0.1\n".repeat(LARGEST_TABLE / 8 + 1), 1, "bytes"),
@@ -374,16 +442,16 @@ fn what_is_wrong_with_a_table_is_marked_where_it_stands() {
         assert!(errors.to_string().contains("table.txt"));
     }
     // Each of several faults is told.
-    let both = replaced(7, "0.9 nan").replacen("\n0.", "\nx 0.", 1);
-    assert!(refused(&both).problems().len() >= 1);
+    let three = replaced(7, "0.9 nan").replacen("\n0.9", "\nx 0.9", 2);
+    assert_eq!(refused(&three).problems().len(), 3);
 }
 
 #[test]
 fn a_sharp_or_bare_nose_is_refused() {
     // Two wedges.
-    let wedge: String = (-20..=20_i32)
+    let wedge: String = (-40..=40_i32)
         .map(|i| {
-            let x = f64::from(i.abs()) / 20.0;
+            let x = f64::from(i.abs()) / 40.0;
             let y = 0.1 * x.min(1.0 - x) * -f64::from(i.signum());
             format!("{x:.5} {y:.5}\n")
         })
@@ -608,7 +676,7 @@ fn drawings_that_hold_no_outline_are_refused() {
             "radius",
         ),
         (vec![polyline(&points[..40], false)], "trailing edge"),
-        (vec![polyline(&points[..5], true)], "5 points"),
+        (vec![polyline(&points[..5], true)], "too few points"),
     ] {
         let error = error(&drawn(Units::Millimeters, objects)).to_string();
         assert!(error.contains(says), "{says}: {error}");

@@ -333,7 +333,8 @@ impl Arranged {
                     return Err(CoordinateError::TurnsBack { side, index, percent });
                 }
                 let rise = (b.y - a.y).abs();
-                if b.x > 0.05 && rise > 1e-4 + 2.0 * (open.x + open.y) && b.x - a.x < 0.2 * rise {
+                let steep = b.x - a.x < if b.x > 0.15 { rise } else { 0.2 * rise };
+                if b.x > 0.05 && rise > 1e-4 + 2.0 * (open.x + open.y) && steep {
                     return Err(CoordinateError::Steps { side, index, percent });
                 }
                 if b.x.max(0.0).sqrt() - a.x.max(0.0).sqrt() > GAP {
@@ -343,9 +344,10 @@ impl Arranged {
                 }
             }
             let count = ranks.iter().skip(1).filter(|&&rank| places[rank].x <= 0.1).count();
-            if count < 2 {
+            let first = ranks.get(1).map_or(1.0, |&rank| places[rank].x);
+            if count < 2 || first > 0.05 {
                 let index = self.points[self.nose].index;
-                return Err(CoordinateError::NoseBare { side, count, index });
+                return Err(CoordinateError::NoseBare { side, count, percent: 100.0 * first, index });
             }
         }
         self.refuse_crossing(&places)

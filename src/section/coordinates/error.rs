@@ -87,13 +87,15 @@ pub enum CoordinateError {
     },
     /// A nose that nothing describes.
     #[error(
-        "the nose has too few points: the {side} surface has {count} within 10 % of the chord from the nose (point {index}), and takes 2 at least"
+        "the nose has too few points: behind it (point {index}) the {side} surface has {count} within 10 % of the chord, the first at {percent:.2} %; it takes 2 at least, the first within 5 %"
     )]
     NoseBare {
         /// `upper` or `lower`.
         side: &'static str,
         /// How many there are.
         count: usize,
+        /// Station of the first, percent of chord.
+        percent: f64,
         /// The point at the nose.
         index: usize,
     },

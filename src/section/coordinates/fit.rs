@@ -72,41 +72,44 @@ pub(super) fn fit(
 
     // Softer by and by, each from where the stiffer one left nose and trailing edge: a soft spline
     // over points that are not yet in their places goes wild.
-    let (mut best, mut softest) = (state.clone(), state);
-    let (mut stiff, mut soft) = (START, START);
-    let mut least = job.worst(&best);
-    while least > 1.0 && soft > SOFTEST {
-        (stiff, soft) = (soft, soft - 1.0);
-        let mut trial = softest.clone();
-        job.settle(&mut trial, soft, 8);
-        let worst = job.worst(&trial);
-        // Not a number counts as too far.
-        let wild = worst > 4.0 * least;
-        if wild || worst.is_nan() {
-            break;
-        }
-        softest = trial;
-        if worst < least {
-            (best, least) = (softest.clone(), worst);
+    let nose_slope = job.slope_at_nose(&state);
+    let tried = |state: &State, weight: f64| {
+        let mut trial = state.clone();
+        job.settle(&mut trial, weight, 8);
+        let steeper = job.slope_at_nose(&trial) / nose_slope;
+        // Not a number counts as wild.
+        let sane = (0.6..1.6).contains(&steeper);
+        let worst = if sane { job.worst(&trial) } else { f64::INFINITY };
+        (trial, worst)
+    };
+    let first = job.worst(&state);
+    let mut walk = vec![(START, first, state)];
+    let mut least = first;
+    while let Some((weight, worst, state)) = walk.last()
+        && least > 1.0
+        && *weight > SOFTEST
+        && *worst < 4.0 * least
+    {
+        let softer = weight - 1.0;
+        let (trial, worst) = tried(state, softer);
+        least = least.min(worst);
+        walk.push((softer, worst, trial));
+    }
+    // Where nothing is near enough, the stiffest that is about as near as any.
+    let target = if least <= 1.0 { 1.0 } else { 1.5 * least };
+    let chosen = walk.iter().position(|(_, worst, _)| *worst <= target).unwrap_or(0);
+    let mut stiff = chosen.checked_sub(1).map_or(STIFFEST, |before| walk[before].0);
+    let (mut soft, _, mut best) = walk.swap_remove(chosen);
+    for _ in 0..7 {
+        let middle = 0.5 * (soft + stiff);
+        let (trial, worst) = tried(&best, middle);
+        if worst <= target {
+            (best, soft) = (trial, middle);
+        } else {
+            stiff = middle;
         }
     }
-    if least <= 1.0 {
-        // And the stiffest that will do, between one that does not and one that does.
-        if soft == START {
-            stiff = STIFFEST;
-        }
-        for _ in 0..7 {
-            let middle = 0.5 * (soft + stiff);
-            let mut trial = best.clone();
-            job.settle(&mut trial, middle, 8);
-            if job.worst(&trial) <= 1.0 {
-                (best, soft) = (trial, middle);
-            } else {
-                stiff = middle;
-            }
-        }
-        job.settle(&mut best, soft, 30);
-    }
+    job.settle(&mut best, soft, 30);
     job.finish(&best)
 }
 
@@ -255,6 +258,10 @@ impl<'a> Job<'a> {
         });
         let rows = rows.collect();
         (places, rows)
+    }
+
+    fn slope_at_nose(&self, state: &State) -> f64 {
+        self.basis.value(&state.coefficients, 0.0, 1)
     }
 
     fn worst(&self, state: &State) -> f64 {

@@ -115,7 +115,11 @@ fn read_table(text: &str, problems: &mut Problems) -> Option<Table> {
         problems.add(place, Wrong::new(message).help(help));
         return None;
     }
-    let units = [column_units(&rows, 0), column_units(&rows, 1)];
+    let mut units = [column_units(&rows, 0), column_units(&rows, 1)];
+    // Stations are often round numbers, exact though they are printed with few digits.
+    if let [ColumnUnit::Decimals(x), ColumnUnit::Decimals(y)] = units {
+        units[0] = ColumnUnit::Decimals(x.max(y));
+    }
     let mut points: Vec<Given> = Vec::with_capacity(rows.len());
     for (i, row) in rows.iter().enumerate() {
         let [x, y] = row.printed;
@@ -261,8 +265,8 @@ fn printed(part: &str) -> Option<Printed> {
 enum ColumnUnit {
     /// So many decimals in each number, whether or not noughts at the end were left out.
     Decimals(i32),
-    /// So many digits in each number.
-    Digits(i32),
+    /// So many digits in each number, and at most so many decimals.
+    Digits(i32, i32),
 }
 
 impl ColumnUnit {
@@ -270,8 +274,8 @@ impl ColumnUnit {
         let decimals = match self {
             Self::Decimals(decimals) => decimals,
             // Of nought itself nothing is known but that it is as good as the others.
-            Self::Digits(digits) if printed.value == 0.0 => digits,
-            Self::Digits(digits) => digits - 1 - printed.value.abs().log10().floor() as i32,
+            Self::Digits(_, finest) if printed.value == 0.0 => finest,
+            Self::Digits(digits, _) => digits - 1 - printed.value.abs().log10().floor() as i32,
         };
         10_f64.powi(-decimals.clamp(-18, 18))
     }
@@ -282,12 +286,17 @@ impl ColumnUnit {
 fn column_units(rows: &[Row], column: usize) -> ColumnUnit {
     let all = || rows.iter().map(move |row| row.printed[column]);
     let greatest = all().map(|printed| printed.value.abs()).fold(0.0, f64::max);
-    let most = |few: &dyn Fn(&Printed) -> bool| all().filter(few).map(|printed| printed.decimals).max();
-    let decimals = most(&|printed| printed.value != 0.0).unwrap_or(0);
-    let of_great = most(&|printed| printed.value.abs() >= 0.1 * greatest).unwrap_or(decimals);
-    if decimals > of_great {
-        ColumnUnit::Digits(all().map(|printed| printed.digits).max().unwrap_or(1).max(1))
+    let most = |low: f64, high: f64| {
+        let within = |printed: &Printed| (low * greatest..=high * greatest).contains(&printed.value.abs());
+        all().filter(|printed| printed.value != 0.0 && within(printed)).map(|printed| printed.decimals).max()
+    };
+    let (small, great) = (most(0.0, 0.1), most(0.5, 1.0));
+    let finest = most(0.0, 1.0).unwrap_or(0);
+    let digits = all().map(|printed| printed.digits).max().unwrap_or(1).max(1);
+    let full = all().filter(|printed| printed.digits == digits).count();
+    if small > great && 2 * full > rows.len() {
+        ColumnUnit::Digits(digits, finest)
     } else {
-        ColumnUnit::Decimals(decimals)
+        ColumnUnit::Decimals(finest)
     }
 }

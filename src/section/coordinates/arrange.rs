@@ -246,10 +246,12 @@ fn refuse_open(points: &[Given], size: f64) -> Result<(), CoordinateError> {
 fn cut_round(points: &mut Vec<Given>) -> Vec<usize> {
     let (tail, nose) = ends(points);
     let placing = Placing::new(nose, tail, false);
-    let places: Vec<Point> = points.iter().map(|given| placing.place(given.point)).collect();
+    let unit = placing.chord().recip();
+    let seen = |given: &Given| (placing.place(given.point), (given.half.x + given.half.y) * unit);
+    let places: Vec<(Point, f64)> = points.iter().map(seen).collect();
     let middle = furthest(points, tail).0;
-    let fore: Vec<Point> = places[..=middle].to_vec();
-    let aft: Vec<Point> = places[middle..].iter().rev().copied().collect();
+    let fore: Vec<(Point, f64)> = places[..=middle].to_vec();
+    let aft: Vec<(Point, f64)> = places[middle..].iter().rev().copied().collect();
     let (from_start, from_end) = (round_points(&fore), round_points(&aft));
     let kept = from_start..points.len().saturating_sub(from_end).max(from_start);
     let all = std::mem::take(points);
@@ -260,30 +262,36 @@ fn cut_round(points: &mut Vec<Given>) -> Vec<usize> {
     gone
 }
 
-/// How many points at the beginning of a surface, given from tail to nose, belong to the round.
+/// How many points at the beginning of a surface, given from tail to nose with what rounding leaves
+/// open of each, belong to the round.
 ///
 /// The surface ends where it begins to turn away from its direction ahead of the edge, if it then
 /// turns steeper than 45°.
-fn round_points(surface: &[Point]) -> usize {
-    let zone = surface.iter().position(|place| place.x < ROUND).unwrap_or(surface.len());
-    let backwards = |i: usize| surface[i - 1] - surface[i];
+fn round_points(surface: &[(Point, f64)]) -> usize {
+    let zone = surface.iter().position(|(place, _)| place.x < ROUND).unwrap_or(surface.len());
+    // From a point to the one behind it; nothing where rounding alone could give the direction.
+    let backwards = |i: usize| {
+        let ((to, open_to), (from, open_from)) = (surface[i - 1], surface[i]);
+        let run = to - from;
+        (run.hypot() > 4.0 * (open_to + open_from)).then_some(run)
+    };
     let inner = zone.min(surface.len().saturating_sub(1));
     let steep = |run: Vec2| run.x <= run.y.abs();
-    if !(1..=inner).any(|i| steep(backwards(i))) {
+    if !(1..=inner).filter_map(backwards).any(steep) {
         return 0;
     }
     let height = |x: f64| {
-        let i = surface.iter().position(|place| place.x < x).unwrap_or(0).max(1);
+        let i = surface.iter().position(|(place, _)| place.x < x).unwrap_or(0).max(1);
         match (surface.get(i - 1), surface.get(i)) {
-            (Some(a), Some(b)) if a.x > b.x => b.y + (a.y - b.y) * (x - b.x) / (a.x - b.x),
+            (Some((a, _)), Some((b, _))) if a.x > b.x => b.y + (a.y - b.y) * (x - b.x) / (a.x - b.x),
             _ => f64::NAN,
         }
     };
     let direction = Vec2::new(0.075, height(0.975) - height(0.90)).atan2();
     for i in (1..=inner).rev() {
-        let run = backwards(i);
+        let Some(run) = backwards(i) else { continue };
         let turned = (run.atan2() - direction).abs() > 4_f64.to_radians();
-        if steep(run) || (turned && surface[i].x > 0.97) {
+        if steep(run) || (turned && surface[i].0.x > 0.97) {
             return i;
         }
     }
@@ -353,23 +361,29 @@ impl Arranged {
         self.refuse_crossing(&places)
     }
 
+    /// Both surfaces run backwards from the nose by now, so it is enough to hold each point against
+    /// the other surface at its station. What rounding makes of a thin edge is no crossing.
     fn refuse_crossing(&self, places: &[Point]) -> Result<(), CoordinateError> {
-        let mut ring = places.to_vec();
-        if let (Some(first), Some(last)) = (ring.first(), ring.last())
-            && first.distance(*last) < 1e-9
-        {
-            ring.pop();
+        let unit = self.placing.chord().recip();
+        let upper: Vec<Point> = places[..=self.nose].iter().rev().copied().collect();
+        let lower = &places[self.nose..];
+        for (rank, place) in places.iter().enumerate() {
+            let (other, sign) = if rank < self.nose { (lower, 1.0) } else { (&upper[..], -1.0) };
+            let behind = other.partition_point(|p| p.x < place.x);
+            let (Some(a), Some(b)) = (behind.checked_sub(1).and_then(|i| other.get(i)), other.get(behind))
+            else {
+                continue;
+            };
+            let share = if b.x > a.x { (place.x - a.x) / (b.x - a.x) } else { 0.0 };
+            let open = self.points[rank].half * unit;
+            let over = sign * (place.y - a.lerp(*b, share).y);
+            if place.x > 0.002 && over < -2.0 * (open.x + open.y) - 1e-9 {
+                return Err(CoordinateError::Crosses {
+                    index: self.points[rank].index,
+                    percent: 100.0 * place.x,
+                });
+            }
         }
-        let Err(error) = polygon::refuse_crossings(&ring) else {
-            return Ok(());
-        };
-        let at = match error {
-            crate::geometry::GeometryError::Crosses { x, y } => Point::new(x, y),
-            _ => Point::ORIGIN,
-        };
-        let nearest = (0..places.len())
-            .min_by(|&a, &b| places[a].distance_squared(at).total_cmp(&places[b].distance_squared(at)));
-        let index = nearest.map_or(1, |rank| self.points[rank].index);
-        Err(CoordinateError::Crosses { index, percent: 100.0 * at.x })
+        Ok(())
     }
 }

@@ -18,6 +18,8 @@ const INTERVALS: f64 = 600.0;
 const STIFFEST: f64 = 3.0;
 const START: f64 = -7.0;
 const SOFTEST: f64 = -19.0;
+/// Points that are further off than so many times what is allowed are not brought near by weight.
+const CLOSE: f64 = 4.0;
 /// What the two ends of a sharp trailing edge weigh, so that it closes.
 const SHARP: f64 = 1e4;
 /// Distance at which no one would call the outline that of the points, in chords.
@@ -95,6 +97,15 @@ pub(super) fn fit(
         least = least.min(worst);
         walk.push((softer, worst, trial));
     }
+    // A few points just too far may come near enough when they weigh more.
+    if least > 1.0
+        && let Some(best) = walk
+            .iter()
+            .filter(|(_, worst, _)| *worst < CLOSE)
+            .find_map(|(weight, _, state)| job.nudged(state, *weight))
+    {
+        return job.finish(&best);
+    }
     // Where nothing is near enough, the stiffest that is about as near as any.
     let target = if least <= 1.0 { 1.0 } else { 1.5 * least };
     let chosen = walk.iter().position(|(_, worst, _)| *worst <= target).unwrap_or(0);
@@ -127,6 +138,8 @@ struct State {
     roots: Vec<f64>,
     normals: Vec<Vec2>,
     coefficients: Vec<f64>,
+    /// What each point weighs.
+    weights: Vec<f64>,
 }
 
 /// Breaks at the nose and at the points, but not at the three nearest to each end: there the spline
@@ -177,7 +190,35 @@ impl<'a> Job<'a> {
             roots: roots(self.points, &placing, nose),
             normals: normals.collect(),
             coefficients: vec![0.0; self.basis.count()],
+            weights: self.weights(),
         }
+    }
+
+    /// One for each point, and more for the two that are a sharp edge.
+    fn weights(&self) -> Vec<f64> {
+        let last = self.points.len().saturating_sub(1);
+        let at_edge = |i: usize| self.sharp && (i == 0 || i == last);
+        (0..self.points.len()).map(|i| if at_edge(i) { SHARP } else { 1.0 }).collect()
+    }
+
+    /// The same with the points that are too far made to weigh more, by and by, if that brings
+    /// them near enough (the idea is Lawson's).
+    fn nudged(&self, state: &State, weight: f64) -> Option<State> {
+        const TURNS: usize = 12;
+        let mut state = state.clone();
+        for _ in 0..TURNS {
+            for (row, weight) in self.judge(&state).1.iter().zip(&mut state.weights) {
+                let share = row[0].abs() / row[1];
+                if share > 0.9 {
+                    *weight = (*weight * share * 1.2).min(SHARP);
+                }
+            }
+            self.settle(&mut state, weight, 6);
+            if self.worst(&state) <= 1.0 {
+                return Some(state);
+            }
+        }
+        None
     }
 
     fn places(&self, placing: &Placing) -> Vec<Point> {
@@ -199,11 +240,10 @@ impl<'a> Job<'a> {
     /// One step of Gauss and Newton, and the chord laid anew; gives how far its ends moved.
     fn turn(&self, state: &mut State, roughness: &[(usize, [f64; 6])]) -> f64 {
         let places = self.places(&state.placing);
-        let last = places.len().saturating_sub(1);
         let mut equations = Vec::with_capacity(places.len() + roughness.len());
         for (i, place) in places.iter().enumerate() {
             let (t, normal) = (state.roots[i], state.normals[i]);
-            let weight = if self.sharp && (i == 0 || i == last) { SHARP } else { 1.0 };
+            let weight = state.weights[i];
             let span = self.basis.span(t);
             equations.push(Equation {
                 span,

@@ -86,8 +86,8 @@ const SHAPE: usize = 3;
 const SHORT: f64 = 0.08;
 /// What a stretch must rise over its own chord to be more than a figure.
 const LOW: f64 = 2e-5;
-/// And turn, in radians: half a degree.
-const TURN: f64 = 0.008;
+/// And turn, in radians: half a degree and a little.
+const TURN: f64 = 0.01;
 
 /// A part of a surface over which the curvature keeps its sign.
 #[derive(Clone, Copy)]
@@ -110,7 +110,7 @@ impl Stretch {
 /// A surface is let change the sign of its curvature three times, as the lower one of a cambered
 /// section does whose mean line is of two pieces. A stretch between two changes is a wave if it is
 /// shorter than 8 % of the chord or there are more changes than three; and if it rises over its
-/// own chord by 2e-5 of the chord and by a unit of the last digit, and turns by 0.008 rad.
+/// own chord by 2e-5 of the chord and by a unit of the last digit, and turns by 0.01 rad.
 /// Neighbouring ones are one wave.
 pub(super) fn waves(fit: &Fit, points: &[Given]) -> Vec<Wave> {
     let unit =

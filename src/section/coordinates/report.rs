@@ -226,9 +226,7 @@ impl CoordinateReport {
                 "The outline is the smoothest that stays within {basis}; it passes the points at {distance} at most."
             )
         } else {
-            format!(
-                "No smooth outline stays within {basis}: the nearest passes the points at up to {distance}."
-            )
+            format!("Not every point is within {basis}: the outline passes them at up to {distance}.")
         }
     }
 

@@ -158,9 +158,10 @@ fn scattered_points_are_followed_and_it_is_said() {
                     points.iter().map(|p| *p + scatter * Vec2::new(random(), random())).collect();
                 let report = read(&table(&moved, 7)).report;
                 assert!(report.greatest_distance < 3.0 * scatter, "{name} {scatter}: {report:?}");
-                let said = report.lines().iter().any(|line| line.contains("No smooth outline"));
+                let said = report.lines().iter().any(|line| line.contains("Not every point"));
                 assert_eq!(said, !report.reached);
-                assert!(!report.reached || scatter < 1e-4, "{name} {scatter}: {report:?}");
+                let found = !report.waves.is_empty() || !report.outliers.is_empty();
+                assert!(!report.reached || scatter < 1e-4 || found, "{name} {scatter}: {report:?}");
             }
         }
     }

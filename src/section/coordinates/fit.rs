@@ -14,12 +14,14 @@ use crate::geometry::{Point, Vec2};
 const FINEST: f64 = 2e-10;
 /// The most intervals of the spline.
 const INTERVALS: f64 = 600.0;
+/// The shortest interval, as a share of what even ones would be.
+const CROWDED: f64 = 0.02;
 /// Weights of the roughness that are tried, as powers of ten.
 const STIFFEST: f64 = 3.0;
 const START: f64 = -7.0;
 const SOFTEST: f64 = -19.0;
 /// Points that are further off than so many times what is allowed are not brought near by weight.
-const CLOSE: f64 = 4.0;
+const CLOSE: f64 = 2.0;
 /// What the two ends of a sharp trailing edge weigh, so that it closes.
 const SHARP: f64 = 1e4;
 /// Distance at which no one would call the outline that of the points, in chords.
@@ -75,9 +77,9 @@ pub(super) fn fit(
     // Softer by and by, each from where the stiffer one left nose and trailing edge: a soft spline
     // over points that are not yet in their places goes wild.
     let nose_slope = job.slope_at_nose(&state);
-    let tried = |state: &State, weight: f64| {
+    let tried = |state: &State, weight: f64, turns: usize| {
         let mut trial = state.clone();
-        job.settle(&mut trial, weight, 8);
+        job.settle(&mut trial, weight, turns);
         let steeper = job.slope_at_nose(&trial) / nose_slope;
         // Not a number counts as wild.
         let sane = (0.6..1.6).contains(&steeper);
@@ -93,18 +95,19 @@ pub(super) fn fit(
         && *worst < 4.0 * least
     {
         let softer = weight - 1.0;
-        let (trial, worst) = tried(state, softer);
+        let (trial, worst) = tried(state, softer, 8);
         least = least.min(worst);
         walk.push((softer, worst, trial));
     }
     // A few points just too far may come near enough when they weigh more.
-    if least > 1.0
-        && let Some(best) = walk
-            .iter()
-            .filter(|(_, worst, _)| *worst < CLOSE)
-            .find_map(|(weight, _, state)| job.nudged(state, *weight))
-    {
-        return job.finish(&best);
+    if least > 1.0 {
+        let close = walk.iter().find(|(_, worst, _)| *worst < CLOSE);
+        let closest = walk.iter().find(|(_, worst, _)| *worst == least && least < CLOSE);
+        let nudged =
+            close.into_iter().chain(closest).find_map(|(weight, _, state)| job.nudged(state, *weight));
+        if let Some(best) = nudged {
+            return job.finish(&best);
+        }
     }
     // Where nothing is near enough, the stiffest that is about as near as any.
     let target = if least <= 1.0 { 1.0 } else { 1.5 * least };
@@ -113,15 +116,15 @@ pub(super) fn fit(
     let (mut soft, _, mut best) = walk.swap_remove(chosen);
     for _ in 0..7 {
         let middle = 0.5 * (soft + stiff);
-        let (trial, worst) = tried(&best, middle);
+        let (trial, worst) = tried(&best, middle, 8);
         if worst <= target {
             (best, soft) = (trial, middle);
         } else {
             stiff = middle;
         }
     }
-    job.settle(&mut best, soft, 30);
-    job.finish(&best)
+    let (settled, worst) = tried(&best, soft, 30);
+    job.finish(if worst <= 1.01 * target { &settled } else { &best })
 }
 
 struct Job<'a> {
@@ -150,7 +153,10 @@ fn basis(roots: &[f64]) -> Basis {
     let (Some(&first), Some(&last)) = (sorted.first(), sorted.last()) else {
         return Basis::new(&[-1.0, 1.0]);
     };
-    let shortest = (0.3 / sorted.len() as f64).max((last - first) / INTERVALS);
+    let count = sorted.len() as f64;
+    let even = (last - first) / count.min(INTERVALS);
+    // Points crowd at the trailing edge; in a table that is not too long each has its break.
+    let shortest = if count <= INTERVALS { CROWDED * even } else { even };
     let inner = sorted.iter().skip(3).take(sorted.len().saturating_sub(6)).copied();
     let mut inner: Vec<f64> = inner.filter(|root| root.abs() >= shortest).collect();
     inner.push(0.0);
@@ -204,7 +210,7 @@ impl<'a> Job<'a> {
     /// The same with the points that are too far made to weigh more, by and by, if that brings
     /// them near enough (the idea is Lawson's).
     fn nudged(&self, state: &State, weight: f64) -> Option<State> {
-        const TURNS: usize = 12;
+        const TURNS: usize = 10;
         let mut state = state.clone();
         for _ in 0..TURNS {
             for (row, weight) in self.judge(&state).1.iter().zip(&mut state.weights) {
@@ -213,7 +219,7 @@ impl<'a> Job<'a> {
                     *weight = (*weight * share * 1.2).min(SHARP);
                 }
             }
-            self.settle(&mut state, weight, 6);
+            self.settle(&mut state, weight, 2);
             if self.worst(&state) <= 1.0 {
                 return Some(state);
             }

@@ -83,11 +83,11 @@ fn miss(fit: &Fit, active: &[usize], i: usize) -> Miss {
 /// Changes of the curvature's sign on a surface that are a matter of shape.
 const SHAPE: usize = 3;
 /// A stretch between two changes that is shorter than this share of the chord is no shape.
-const SHORT: f64 = 0.08;
+const SHORT: f64 = 0.06;
 /// What a stretch must rise over its own chord to be more than a figure.
 const LOW: f64 = 2e-5;
-/// And turn, in radians: half a degree and a little.
-const TURN: f64 = 0.01;
+/// And turn, in radians: half a degree.
+const TURN: f64 = 0.008;
 
 /// A part of a surface over which the curvature keeps its sign.
 #[derive(Clone, Copy)]
@@ -109,8 +109,8 @@ impl Stretch {
 ///
 /// A surface is let change the sign of its curvature three times, as the lower one of a cambered
 /// section does whose mean line is of two pieces. A stretch between two changes is a wave if it is
-/// shorter than 8 % of the chord or there are more changes than three; and if it rises over its
-/// own chord by 2e-5 of the chord and by a unit of the last digit, and turns by 0.01 rad.
+/// shorter than 6 % of the chord or there are more changes than three; and if it rises over its
+/// own chord by 2e-5 of the chord and by a unit of the last digit, and turns by 0.008 rad.
 /// Neighbouring ones are one wave.
 pub(super) fn waves(fit: &Fit, points: &[Given]) -> Vec<Wave> {
     let unit =

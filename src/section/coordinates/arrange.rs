@@ -11,6 +11,8 @@ const SAME: f64 = 1e-9;
 const OPEN: f64 = 0.25;
 /// From this station on the round of a trailing edge is looked for.
 const ROUND: f64 = 0.98;
+/// By how much the ends of the surfaces may have passed each other, in chords.
+const CROSSED: f64 = 1e-3;
 /// The longest stretch without points, in √x.
 const GAP: f64 = 0.35;
 
@@ -27,6 +29,9 @@ pub(super) struct Arranged {
     pub(super) from_nose: bool,
     pub(super) duplicates: Vec<usize>,
     pub(super) rounded: Vec<usize>,
+    /// By how much the ends of the surfaces had passed each other before they were joined, in
+    /// chords; nought where they had not.
+    pub(super) joined: f64,
 }
 
 /// Orders the points of one block that goes round, or of two for the two surfaces. `closed` says
@@ -75,9 +80,19 @@ pub(super) fn arrange(blocks: Vec<Vec<Given>>, closed: bool) -> Result<Arranged,
     if points.len() < FEWEST {
         return Err(CoordinateError::Count { count: points.len(), least: FEWEST, most: MOST });
     }
+    let joined = join_crossed_ends(&mut points);
     let (placing, nose) = first_placing(&points, mirrored);
-    let arranged =
-        Arranged { points, placing, nose, upper_first, blocks: block_count, from_nose, duplicates, rounded };
+    let arranged = Arranged {
+        points,
+        placing,
+        nose,
+        upper_first,
+        blocks: block_count,
+        from_nose,
+        duplicates,
+        rounded,
+        joined,
+    };
     arranged.refuse_bad_surfaces()?;
     Ok(arranged)
 }
@@ -260,6 +275,21 @@ fn cut_round(points: &mut Vec<Given>) -> Vec<usize> {
     gone.retain(|index| !points.iter().any(|given| given.index == *index));
     gone.dedup();
     gone
+}
+
+/// Brings the ends of the surfaces together where they have passed each other by a little, as a
+/// sharp edge does that was measured or drawn by hand; gives by how much, in chords.
+fn join_crossed_ends(points: &mut [Given]) -> f64 {
+    let (tail, nose) = ends(points);
+    let placing = Placing::new(nose, tail, false);
+    if let [first, .., last] = points {
+        let apart = placing.place(first.point).y - placing.place(last.point).y;
+        if apart < 0.0 && apart > -CROSSED {
+            (first.point, last.point) = (tail, tail);
+            return -apart;
+        }
+    }
+    0.0
 }
 
 /// How many points at the beginning of a surface, given from tail to nose with what rounding leaves

@@ -124,7 +124,7 @@ pub(super) fn fit(
         }
     }
     let (settled, worst) = tried(&best, soft, 30);
-    job.finish(if worst <= 1.01 * target { &settled } else { &best })
+    job.finish(if worst <= 1.001 * target { &settled } else { &best })
 }
 
 struct Job<'a> {

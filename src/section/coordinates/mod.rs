@@ -178,6 +178,7 @@ impl Listing {
             edge_gap,
             duplicates: arranged.duplicates,
             rounded: arranged.rounded,
+            joined: arranged.joined,
             resolution: self.resolution.map(|unit| unit / chord),
             tolerance,
             greatest_distance,

@@ -31,6 +31,9 @@ pub struct CoordinateReport {
     pub duplicates: Vec<usize>,
     /// Points on a rounded or blunt trailing edge that were left out.
     pub rounded: Vec<usize>,
+    /// By how much the ends of the surfaces had passed each other before they were joined to a
+    /// sharp edge; nought where they had not.
+    pub joined: f64,
     /// One unit of the last digit of the heights; `None` for a drawing.
     pub resolution: Option<f64>,
     /// How far the outline may be from the points, where the user said so.
@@ -201,6 +204,12 @@ impl CoordinateReport {
     }
 
     fn edge(&self) -> String {
+        if self.joined > 0.0 {
+            let by = significant(100.0 * self.joined);
+            return format!(
+                "At the trailing edge the surfaces had passed each other by {by} % of the chord: their ends were joined, and the edge is sharp."
+            );
+        }
         if self.edge_gap < 1e-9 {
             return "The trailing edge is sharp.".to_owned();
         }
@@ -219,14 +228,15 @@ impl CoordinateReport {
             ),
             (None, None) => "what a drawing is followed by".to_owned(),
         };
-        let distance =
-            format!("{} of the chord, at point {}", significant(self.greatest_distance), self.greatest_at);
+        let (far, at) = (significant(self.greatest_distance), self.greatest_at);
         if self.reached {
             format!(
-                "The outline is the smoothest that stays within {basis}; it passes the points at {distance} at most."
+                "The outline is the smoothest that stays within {basis} of each point; it is furthest from point {at}, by {far} of the chord."
             )
         } else {
-            format!("Not every point is within {basis}: the outline passes them at up to {distance}.")
+            format!(
+                "Not every point is within {basis} of the outline: it is furthest from point {at}, by {far} of the chord."
+            )
         }
     }
 

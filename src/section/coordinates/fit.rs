@@ -150,10 +150,11 @@ struct State {
 fn basis(roots: &[f64]) -> Basis {
     let mut sorted = roots.to_vec();
     sorted.sort_by(f64::total_cmp);
-    let (Some(&first), Some(&last)) = (sorted.first(), sorted.last()) else {
-        return Basis::new(&[-1.0, 1.0]);
-    };
-    let count = sorted.len() as f64;
+    let ends = (sorted.first().copied().unwrap_or(-1.0), sorted.last().copied().unwrap_or(1.0));
+    // Points whose places were lost, as where they are not numbers, give none.
+    let (first, last) = if ends.0 < -0.5 && ends.1 > 0.5 { ends } else { (-1.0, 1.0) };
+    sorted.retain(|root| (first..=last).contains(root));
+    let count = sorted.len().max(1) as f64;
     let even = (last - first) / count.min(INTERVALS);
     // Points crowd at the trailing edge; in a table that is not too long each has its break.
     let shortest = if count <= INTERVALS { CROWDED * even } else { even };

@@ -8,7 +8,7 @@ use dxf::LwPolylineVertex;
 use dxf::entities::{Arc, Entity, EntityType, Line, LwPolyline, Polyline, Spline, Vertex};
 use dxf::enums::{AcadVersion, Units};
 use plankform::export;
-use plankform::geometry::{Affine, ArcPath, Curve, Jet, Point, Vec2, follow_with_arcs};
+use plankform::geometry::{Affine, Curve, Jet, Point, Vec2, follow_with_arcs};
 use plankform::section::coordinates::{ChordUnit, CoordinateError, LARGEST_DRAWING, Traced, from_dxf};
 use plankform::section::{Section, TrailingEdge};
 use plankform::workshop::{Drawing, Role};

@@ -1,5 +1,6 @@
 //! A foil section at unit chord: nose at the origin, trailing edge at x = 1, y upwards.
 
+pub mod coordinates;
 mod designation;
 mod equations;
 mod error;

@@ -66,6 +66,7 @@ fn pictures_are_what_the_tool_draws() {
         ("16-series", "NACA 16-209"),
         ("equations", "Flat-backed foil"),
         ("surfaces", "Flat-bottomed"),
+        ("coordinates", "Rudder from the shed wall"),
         ("worked", "Thinner, and an edge that can be glassed"),
         ("flap", "Flap ten degrees down"),
     ] {
@@ -73,6 +74,8 @@ fn pictures_are_what_the_tool_draws() {
             section
         } else {
             bench.file("example.toml", example(section));
+            let points = std::fs::read_to_string(common::demo("sections/old-rudder.txt")).expect("points");
+            bench.file("old-rudder.txt", &points);
             "example.toml"
         };
         let answer = bench.run(&["section", named, "--chord", "160 mm", "--svg", "picture.svg"]);

@@ -3,6 +3,7 @@
 mod common;
 
 use common::{Bench, DESIGN};
+use plankform::section::{Section, Side, TrailingEdge};
 
 #[test]
 fn section_prints_the_promised_keys() {
@@ -249,4 +250,120 @@ fn missing_and_unreadable_designs_are_a_failure_to_read() {
     let answer = bench.run(&["build", "binary.toml"]);
     assert_eq!(answer.status, 2);
     assert!(answer.err.contains("UTF-8"));
+}
+
+/// Equations, points, drawings and designations are taken alike, and what was done is said.
+#[test]
+fn section_takes_files_of_every_kind() {
+    let bench = Bench::new();
+    let table = std::fs::read_to_string(common::demo("sections/old-rudder.txt")).expect("a table");
+    bench.file("rudder.txt", &table);
+    bench.file(
+        "worked.toml",
+        "name = \"Worked\"\n[coordinates]\nfile = \"rudder.txt\"\n[work]\nthickness = \"11 %\"\n",
+    );
+    // The router file of a template is an outline that can be traced in turn.
+    bench.file("trial.toml", DESIGN);
+    assert_eq!(bench.run(&["build", "trial.toml", "--out", "pack"]).status, 0);
+    std::fs::copy(bench.path().join("pack/cut/trial-foil-station-0.dxf"), bench.path().join("traced.dxf"))
+        .expect("a copy");
+
+    for (named, says) in [
+        ("rudder.txt", "Rudder from the shed wall"),
+        ("worked.toml", "thickness            11.0000 % of chord"),
+        ("traced.dxf", "The drawing is in millimetres: the chord is 100 mm long"),
+    ] {
+        let answer = bench.run(&["section", named]);
+        assert_eq!((answer.status, answer.err.as_str()), (0, ""), "{named}");
+        assert!(answer.out.contains(says), "{}", answer.out);
+        assert_eq!(bench.run(&["lift", named, "--inviscid", "--angles", "2"]).status, 0, "{named}");
+        // And at a station of a design.
+        bench.file("own.toml", &DESIGN.replacen("NACA 4412", named, 1));
+        let built = bench.run(&["build", "own.toml", "--out", "own", "--format", "json"]);
+        assert_eq!(built.status, 0, "{}", built.err);
+    }
+    // Traced again, the outline is the one that it was, thickness and camber now across the chord.
+    let traced = bench.run(&["section", "traced.dxf", "--format", "json"]).json();
+    let known = Section::from_designation("NACA 4412", TrailingEdge::Published).expect("a section");
+    let greatest = |value: &dyn Fn(f64, f64) -> f64| {
+        let at = |x: f64| value(known.surface(Side::Upper, x), known.surface(Side::Lower, x));
+        (1..1000).map(|i| at(f64::from(i) / 1000.0)).fold(0.0, f64::max)
+    };
+    for (key, expected) in [
+        ("thickness", greatest(&|upper, lower| upper - lower)),
+        ("camber", greatest(&|upper, lower| 0.5 * (upper + lower))),
+        ("area", known.numbers().area),
+    ] {
+        let value = traced[key].as_f64().expect("a number");
+        // The router file keeps within 0.01 mm on a chord of 100.
+        assert!((value - expected).abs() < 2e-4, "{key}: {value} {expected}");
+    }
+    assert!(!traced["remarks"].as_array().expect("remarks").is_empty());
+}
+
+#[test]
+fn files_that_are_none_are_answered() {
+    let bench = Bench::new();
+    std::fs::create_dir(bench.path().join("folder.toml")).expect("a folder");
+    bench.file("one-column.txt", "1\n2\n3\n");
+    bench.file("not.dxf", "this is no drawing\n");
+    bench.file("outside.toml", "name = \"a\"\n[coordinates]\nfile = \"../rudder.txt\"\n");
+    for (named, status, says) in [
+        ("folder.toml", 3, "folder.toml"),
+        ("missing.txt", 3, "missing.txt"),
+        ("one-column.txt", 2, "one-column.txt:2"),
+        ("not.dxf", 2, "not.dxf"),
+        ("outside.toml", 2, "beside the one that names it"),
+    ] {
+        let answer = bench.run(&["section", named]);
+        assert_eq!((answer.status, answer.out.as_str()), (status, ""), "{named}: {}", answer.err);
+        assert!(answer.err.contains(says), "{named}: {}", answer.err);
+    }
+}
+
+/// A link in the design's folder does not lead out of it.
+#[cfg(unix)]
+#[test]
+fn links_do_not_lead_out_of_the_folder() {
+    let (bench, elsewhere) = (Bench::new(), Bench::new());
+    let table = std::fs::read_to_string(common::demo("sections/old-rudder.txt")).expect("a table");
+    let outside = elsewhere.file("rudder.txt", &table);
+    std::os::unix::fs::symlink(&outside, bench.path().join("linked.txt")).expect("a link");
+    bench.file("own.toml", &DESIGN.replacen("NACA 4412", "linked.txt", 1));
+    let answer = bench.run(&["check", "own.toml"]);
+    assert_eq!(answer.status, 2);
+    assert!(answer.err.contains("a link leads out of the folder"), "{}", answer.err);
+    // Named by the user it is read: that is the user's own doing.
+    assert_eq!(bench.run(&["section", "linked.txt"]).status, 0);
+}
+
+#[test]
+fn a_trailing_edge_is_opened_at_the_real_chord() {
+    let bench = Bench::new();
+    let answer = bench.run(&[
+        "section",
+        "NACA 4412",
+        "--chord",
+        "140 mm",
+        "--trailing-edge",
+        "1.2 mm",
+        "--edge-from",
+        "0.7",
+        "--format",
+        "json",
+    ]);
+    assert_eq!(answer.status, 0, "{}", answer.err);
+    let thickness = answer.json()["trailing_edge_thickness"].as_f64().expect("mm");
+    assert!((thickness - 1.2).abs() < 1e-8, "{thickness}");
+    for (arguments, says) in [
+        (&["NACA 4412", "--trailing-edge", "1.2 mm"][..], "needs the chord"),
+        (&["NACA 4412", "--trailing-edge", "40 %"], "out of bounds"),
+        (&["NACA 4412", "--trailing-edge", "blunt"], "write published, closed"),
+        (&["NACA 4412", "--edge-from", "0.7"], "--trailing-edge"),
+        (&["NACA 4412", "--trailing-edge", "closed", "--edge-from", "0.7"], "goes with a thickness"),
+    ] {
+        let answer = bench.run(&[&["section"], arguments].concat());
+        assert_eq!((answer.status, answer.out.as_str()), (2, ""), "{arguments:?}");
+        assert!(answer.err.contains(says), "{}", answer.err);
+    }
 }

@@ -102,10 +102,13 @@ impl SectionSource {
 /// Reads files beside `path` or in folders below it, never such as a link leads out of there.
 pub(super) fn reader_beside(path: &Path) -> impl Fn(&str, usize) -> io::Result<Vec<u8>> + use<> {
     let folder = path.parent().filter(|folder| !folder.as_os_str().is_empty()).unwrap_or(Path::new("."));
-    let (folder, own) = (folder.to_owned(), path.to_owned());
+    let (folder, own) = (folder.to_owned(), path.file_name().map(Path::new).map(Path::to_owned));
     move |name, most| {
         let wanted = folder.join(name);
-        if wanted != own && !wanted.canonicalize()?.starts_with(folder.canonicalize()?) {
+        // The file that the user named may be a link; what it names in turn may not lead out.
+        if own.as_deref() != Some(Path::new(name))
+            && !wanted.canonicalize()?.starts_with(folder.canonicalize()?)
+        {
             return Err(io::Error::other("a link leads out of the folder"));
         }
         let file = std::fs::File::open(wanted)?;

@@ -18,46 +18,7 @@ mod upright;
 mod work;
 mod working;
 
-#[allow(missing_docs, dead_code, unreachable_pub)]
-mod coordinates {
-    use crate::geometry::Point;
-    use crate::problems::FileErrors;
-    pub const LARGEST_COORDINATE_FILE: usize = 1_000_000;
-    #[derive(Debug, Clone, PartialEq)]
-    pub struct FittedSurfaces;
-    impl FittedSurfaces {
-        pub fn at(&self, t: f64) -> [f64; 3] {
-            [t; 3]
-        }
-        pub fn knots(&self) -> &[f64] {
-            &[]
-        }
-    }
-    pub struct CoordinateReport {
-        pub title: Option<String>,
-    }
-    impl CoordinateReport {
-        pub fn lines(&self) -> Vec<String> {
-            Vec::new()
-        }
-    }
-    pub struct Traced {
-        pub surfaces: FittedSurfaces,
-        pub points: Vec<Point>,
-        pub report: CoordinateReport,
-    }
-    #[derive(Debug, thiserror::Error)]
-    #[error("x")]
-    pub struct CoordinateError;
-    pub fn from_table(_: &str, _: &str, _: Option<f64>) -> Result<Traced, FileErrors> {
-        Ok(Traced { surfaces: FittedSurfaces, points: vec![], report: CoordinateReport { title: None } })
-    }
-    pub fn from_dxf(_: &[u8], _: &str, _: Option<f64>) -> Result<Traced, CoordinateError> {
-        Err(CoordinateError)
-    }
-}
-pub use coordinates::FittedSurfaces;
-
+pub use coordinates::{CoordinateReport, FittedSurfaces};
 pub use equations::{EquationError, Equations, Piece};
 pub use error::SectionError;
 pub use expression::{

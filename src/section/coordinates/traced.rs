@@ -80,7 +80,14 @@ pub(super) fn read(bytes: &[u8]) -> Result<Outline, CoordinateError> {
             Err(why) => return Err(CoordinateError::Curve { kind, layer, handle, why }),
         }
     }
-    let chains = join(pieces, JOIN * size);
+    let mut chains = join(pieces, JOIN * size);
+    let mut lines = 0;
+    if chains.iter().filter(|chain| meets(chain, JOIN * size)).count() == 1 {
+        // Chord lines and the like do not close; an outline beside them does.
+        let all = chains.len();
+        chains.retain(|chain| meets(chain, JOIN * size));
+        lines = all - chains.len();
+    }
     let [chain] = chains.as_slice() else {
         let which: Vec<String> = chains
             .iter()
@@ -95,12 +102,15 @@ pub(super) fn read(bytes: &[u8]) -> Result<Outline, CoordinateError> {
     let half = Vec2::new(0.5 * DRAWN * size, 0.5 * DRAWN * size);
     let points = chain.points.iter().enumerate();
     let points = points.map(|(i, &point)| Given { point, index: i + 1, half }).collect();
-    let notes = if passed_over.is_empty() {
+    let mut notes = if passed_over.is_empty() {
         Vec::new()
     } else {
         let kinds: Vec<String> = passed_over.iter().map(|(kind, count)| format!("{count} {kind}")).collect();
         vec![format!("Passed over in the drawing, since they are no outline: {}.", kinds.join(", "))]
     };
+    if lines > 0 {
+        notes.push(format!("Passed over in the drawing beside the one closed outline: {lines} open lines."));
+    }
     let unit = unit(drawing.header.default_drawing_units);
     Ok(Outline { layer: chain.layer.clone(), points, closed, unit, notes })
 }

@@ -223,7 +223,7 @@ fn coordinates(reader: &mut Reader<'_>, raw: &Raw<'_>, beside: &Beside<'_>) -> O
     let table = reader.table("coordinates", raw)?;
     reader.refuse_unknown(table, &["file", "tolerance"], "[coordinates]");
     let file = reader.text(table, "file").ok()?;
-    let tolerance = reader.share(table, "tolerance", 0.0..=0.01).ok()?;
+    let tolerance = reader.share(table, "tolerance", 1e-7..=0.01).ok()?;
     let Some(file) = file else {
         let help =
             "write file = \"friend.txt\", a table of points or a traced outline (.dxf) beside this file";

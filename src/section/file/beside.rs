@@ -4,7 +4,7 @@ use std::fmt;
 use std::io;
 
 use crate::problems::FileErrors;
-use crate::section::coordinates::{self, LARGEST_COORDINATE_FILE};
+use crate::section::coordinates::{self, LARGEST_DRAWING, LARGEST_TABLE};
 use crate::section::{Finish, LARGEST_SECTION_FILE, Section, SectionError};
 
 /// Reads the files that a design or a section file names.
@@ -102,11 +102,11 @@ impl<'a> Beside<'a> {
     ) -> Result<Section, SectionFileError> {
         let (path, _) = self.at(name)?;
         let traced = if ends_in(name, "dxf") {
-            let bytes = self.bytes(&path, LARGEST_COORDINATE_FILE)?;
+            let bytes = self.bytes(&path, LARGEST_DRAWING)?;
             coordinates::from_dxf(&bytes, &path, tolerance)
                 .map_err(|why| SectionFileError::Drawing { file: path.clone(), why })?
         } else {
-            let text = self.text(&path, LARGEST_COORDINATE_FILE)?;
+            let text = self.text(&path, LARGEST_TABLE)?;
             coordinates::from_table(&text, &path, tolerance).map_err(SectionFileError::Text)?
         };
         let title = traced.report.title.clone().filter(|title| !title.trim().is_empty());

@@ -207,13 +207,22 @@ pub(super) static TEMPLATES: Table = Table {
     name: "templates",
     times: Times::AtMostOnce,
     doc: "Where templates and masks are made, besides the stations.",
-    keys: &[key(
-        "at",
-        Lengths(200, 0.0, LONGEST),
-        Left("none but the stations"),
-        "Places from the root outwards, in ascending order.",
-        "0 mm, 150 mm, 300 mm, 450 mm",
-    )],
+    keys: &[
+        key(
+            "fairing",
+            Length(0.01, 5.0),
+            Left("no places are added"),
+            "For a curved law: as many places as it takes for a straight batten from one template to the next to lie this near to the design.",
+            "0.3 mm",
+        ),
+        key(
+            "at",
+            Lengths(200, 0.0, LONGEST),
+            Left("none but the stations"),
+            "Places from the root outwards, in ascending order.",
+            "0 mm, 150 mm, 300 mm, 450 mm",
+        ),
+    ],
 };
 
 /// What the laminate takes up besides its plies.

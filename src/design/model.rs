@@ -66,6 +66,8 @@ pub struct Design {
     pub stations: Vec<Station>,
     /// Where templates are cut, ascending: every station, and the places the file names besides.
     pub templates: Vec<Length>,
+    /// How near to a curved design a batten between two templates is to lie.
+    pub fairing: Option<Length>,
     /// What the core is made of.
     pub wood: Wood,
     /// What lies between wood and finished surface besides the plies.

@@ -41,6 +41,7 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let stock = stock(sheet.one(&keys::STOCK)?, problems);
     let router = router(sheet.one(&keys::ROUTER)?);
 
+    let fairing = sheet.one(&keys::TEMPLATES).and_then(|row| row.length("fairing"));
     let stations = stations?;
     let planform = sheet.one(&keys::PLANFORM)?;
     let law = planform.text("law").and_then(Law::from_word)?;
@@ -50,8 +51,9 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         let help = "name the others under [templates], or write law = \"smooth\"";
         problems.add(planform.place("law"), Wrong::new(message).help(help));
     }
-    Some(Design {
+    let mut design = Design {
         law,
+        fairing,
         twist_about: planform.number("twist-about")?,
         name: root.text("name")?.to_owned(),
         kind: kind?,
@@ -72,7 +74,17 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         paper: paper?,
         stock: stock?,
         router: router?,
-    })
+    };
+    // What is wrong with the foil as a whole is found when it is made; here it only adds no places.
+    if let Some(fairing) = fairing.filter(|_| design.law != Law::Straight)
+        && problems.is_empty()
+        && let Ok(places) = design.wing().and_then(|wing| wing.fewest_templates(fairing.mm()))
+    {
+        design.templates.extend(places.into_iter().map(Length::from_mm));
+        design.templates = with_stations(std::mem::take(&mut design.templates), &[]);
+        design.templates.dedup_by(|a, b| (a.mm() - b.mm()).abs() <= SAME);
+    }
+    Some(design)
 }
 
 /// The places named and the stations, ascending: the foil bends at a station, and a batten laid past

@@ -6,7 +6,7 @@ use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
 use crate::geometry::{ArcPath, follow_with_arcs};
 use crate::parts::{Core, Laminate, Split, WoodPiece, split};
 use crate::section::Section;
-use crate::wing::{Planform, StationShape, Wing};
+use crate::wing::{Law, Planform, StationShape, Wing};
 use crate::workshop::{
     Drawing, HingeLine, Mask, MaskSettings, Stamp, part_template, planform_pattern, station_template,
 };
@@ -21,6 +21,8 @@ pub(super) struct Aids<'a> {
     pub(super) stations: Vec<StationAids<'a>>,
     pub(super) flows: Vec<SectionFlow<'a>>,
     pub(super) pieces: Vec<WoodPiece>,
+    /// From one template to the next of a curved foil, and how far a batten between them is from it.
+    pub(super) battens: Vec<(f64, f64, f64)>,
 }
 
 impl<'a> Aids<'a> {
@@ -33,8 +35,18 @@ impl<'a> Aids<'a> {
             stations: station_aids(design, wing)?,
             flows: section_flows(design)?,
             pieces: design.pieces(wing)?,
+            battens: battens(design, wing)?,
         })
     }
+}
+
+fn battens(design: &Design, wing: &Wing) -> Result<Vec<(f64, f64, f64)>, PackError> {
+    if design.law == Law::Straight {
+        return Ok(Vec::new());
+    }
+    let places: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
+    let gap = |pair: &[f64]| Ok((pair[0], pair[1], wing.batten_gap(pair[0], pair[1])?));
+    places.windows(2).map(gap).collect()
 }
 
 /// The aids of one template station.

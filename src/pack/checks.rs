@@ -37,11 +37,16 @@ pub fn run_checks(design: &Design) -> Result<Vec<Check>, PackError> {
     Ok(all(design, &Aids::of(design, &wing)?))
 }
 
+/// How near to a curved design a batten is to lie where the design does not say, mm: what filler
+/// makes up without being noticed. Common practice, no source.
+const FAIRING: f64 = 0.5;
+
 pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     let Aids { stations, pattern, flows, .. } = aids;
     let mut checks = Vec::new();
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
+    checks.extend(aids.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
     checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));
     checks.extend(stations.iter().flat_map(|station| printer(design, station)));
     checks.push(stock(design, "planform pattern", pattern));
@@ -139,6 +144,27 @@ fn least_thickness(shape: &crate::wing::StationShape<'_>) -> f64 {
             (upper - lower).hypot() * (upper.y - lower.y).signum()
         })
         .fold(f64::INFINITY, f64::min)
+}
+
+/// A batten from one template to the next must lie near a curved design.
+fn batten(design: &Design, from: f64, to: f64, gap: f64) -> Check {
+    let limit = design.fairing.map_or(FAIRING, |fairing| fairing.mm());
+    let passed = gap <= limit;
+    Check {
+        name: "a batten between templates lies near the design".to_owned(),
+        place: format!("{} to {} mm", crate::units::number(from, 3), crate::units::number(to, 3)),
+        value: gap,
+        limit,
+        unit: "mm".to_owned(),
+        passed,
+        why: if passed {
+            "this is what a straight batten takes off or leaves on a curved foil".to_owned()
+        } else {
+            format!(
+                "name more places under [templates], or write fairing = \"{limit} mm\" there and have them chosen"
+            )
+        },
+    }
 }
 
 /// What the outlines of flap and main body may take of the clearance, mm: each is followed with arcs.

@@ -21,7 +21,7 @@ const MARGIN: f64 = 4.0;
 const OUTSIDE: &str = "OUTSIDE";
 
 pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[PackFile]) -> String {
-    let Aids { planform, pattern, stations, flows, pieces } = aids;
+    let Aids { planform, pattern, stations, flows, pieces, .. } = aids;
     let mut body = String::new();
     heading(&mut body, design, checks);
     cautions(&mut body);
@@ -76,7 +76,8 @@ fn shape(
 ) {
     let _ = writeln!(
         body,
-        "<h2>Shape</h2>\n<p>Seen from {}: span {:.1} mm, area {:.1} cm², aspect ratio {:.2}, mean chord {:.1} mm, taper {:.3}.</p>\n\
+        "<h2>Shape</h2>\n<p>Seen from {}: span {:.1} mm, area {:.1} cm², aspect ratio {:.2}, mean chord {:.1} mm, taper {:.3}, mean \
+         aerodynamic chord {:.1} mm, aerodynamic centre {:.1} mm aft of the root's quarter chord.</p>\n\
          <figure>{}<figcaption>Planform, leading edge up; distances from the root in mm{}.</figcaption></figure>",
         if planform.is_mirrored() { "above" } else { "the side" },
         planform.span(),
@@ -84,6 +85,8 @@ fn shape(
         planform.aspect_ratio(),
         planform.mean_chord(),
         planform.taper(),
+        planform.aerodynamic_chord(),
+        planform.aerodynamic_centre(),
         picture(&pattern.without_caption(), MARGIN),
         design.flap.map_or(String::new(), |flap| format!(
             "; hinge line at {} % of chord",

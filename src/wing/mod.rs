@@ -3,6 +3,7 @@
 //! Axes: x aft, z up, y along the span from the root (of a strut, from its upper end).
 
 mod error;
+mod fairing;
 mod law;
 mod loft;
 mod planform;

@@ -89,6 +89,44 @@ impl Planform {
         self.area() / self.span()
     }
 
+    /// Mean aerodynamic chord, mm: ∫ c² dy over the area.
+    #[must_use]
+    pub fn aerodynamic_chord(&self) -> f64 {
+        let [area, square, _] = self.chord_moments();
+        square / area
+    }
+
+    /// How far the aerodynamic centre lies aft of the root's quarter chord, mm, taken at the quarter
+    /// of every chord; flow along the span and the free surface move it.
+    ///
+    /// Source: the usual strip rule, as in Abbott and von Doenhoff, "Theory of Wing Sections" (1959),
+    /// chapter 1.
+    #[must_use]
+    pub fn aerodynamic_centre(&self) -> f64 {
+        let [area, _, moment] = self.chord_moments();
+        moment / area
+    }
+
+    /// ∫ c dy, ∫ c² dy and ∫ x c dy of one half, x the quarter chord; exact between straight edges.
+    fn chord_moments(&self) -> [f64; 3] {
+        let strip = |i: usize| {
+            let (front, back) = (self.leading[i], self.trailing[i]);
+            let chord = back.y - front.y;
+            (front.x, chord, front.y + 0.25 * chord)
+        };
+        let mut sums = [0.0; 3];
+        for i in 1..self.leading.len() {
+            let ((y0, c0, x0), (y1, c1, x1)) = (strip(i - 1), strip(i));
+            let (step, c, x) = (y1 - y0, 0.5 * (c0 + c1), 0.5 * (x0 + x1));
+            // Simpson's rule, exact for these.
+            let simpson = |first: f64, middle: f64, last: f64| step * (first + 4.0 * middle + last) / 6.0;
+            sums[0] += step * c;
+            sums[1] += simpson(c0 * c0, c * c, c1 * c1);
+            sums[2] += simpson(x0 * c0, x * c, x1 * c1);
+        }
+        sums
+    }
+
     /// Tip chord over root chord, as seen from above.
     #[must_use]
     pub fn taper(&self) -> f64 {

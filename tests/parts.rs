@@ -2,7 +2,7 @@
 
 use plankform::geometry::{Curve, Point, follow_with_arcs};
 use plankform::parts::{
-    Core, Covers, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, split, wood_pieces,
+    Core, Covers, CutOut, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, split, wood_pieces,
 };
 use plankform::section::{Section, Side, TrailingEdge};
 use plankform::wing::{Station, Wing};
@@ -319,4 +319,30 @@ fn volumes_agree_with_prismatoids() {
     assert!((parted[1].blank[0] - 200.0).abs() < 0.01);
     let both = parted[0].volume + parted[1].volume;
     assert!(both < core && both > 0.95 * core, "{both} {core}");
+}
+
+/// Slots and bores in a core of known faces: what is left is the thickness less what is taken.
+#[test]
+fn cut_outs_say_what_wood_is_left() {
+    let foil = foil(["NACA 0012"; 2], [200.0; 2], 0.0, 0.0, TrailingEdge::Published);
+    let shape = foil.shape_at(100.0).expect("a shape");
+    let laminate = laminate(vec![plain(0.4)]);
+    let core = Core::of(&shape, &laminate).expect("a core");
+    // At the thickest place the faces are level, 24.007 mm less two skins of 0.5 mm apart.
+    let (at, thick) = (0.299_828, 0.120_034_5 * 200.0 - 1.0);
+    let slot = |depth, from| CutOut::Slot { from, at, width: 4.0, depth }.of(&core);
+    for from in [Side::Upper, Side::Lower] {
+        let cut = slot(9.0, from);
+        assert!((cut.wood_left - (thick - 9.0)).abs() < 0.02, "{} {}", cut.wood_left, thick - 9.0);
+        let bounds = cut.outline.bounds();
+        assert!((bounds.width() - 4.0).abs() < 1e-3 && (bounds.height() - 10.0).abs() < 1e-3);
+        assert!(cut.outline.area() > 0.0);
+    }
+    assert!(slot(40.0, Side::Upper).wood_left < 0.0);
+    let bore = CutOut::Bore { at, height: 0.5, diameter: 10.0 }.of(&core);
+    assert!((bore.wood_left - (0.5 * thick - 5.0)).abs() < 0.02, "{}", bore.wood_left);
+    assert!((bore.outline.area() - std::f64::consts::PI * 25.0).abs() < 1e-9);
+    let low = CutOut::Bore { at, height: 0.25, diameter: 10.0 }.of(&core);
+    assert!((low.wood_left - (0.25 * thick - 5.0)).abs() < 0.02);
+    assert!(CutOut::Bore { at, height: 0.1, diameter: 10.0 }.of(&core).wood_left < 0.0);
 }

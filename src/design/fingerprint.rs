@@ -4,7 +4,7 @@ use std::fmt::Write;
 
 use sha2::{Digest, Sha256};
 
-use super::model::{Design, Flap, Ply, Station};
+use super::model::{Cut, Design, Flap, Ply, Station};
 use crate::section::{Finish, names_a_file};
 use crate::units::{Angle, Length, fixed};
 
@@ -59,6 +59,7 @@ impl Design {
             lines.push(format!("laminate finish {} rise {}", mm(laminate.finish), mm(laminate.rise)));
         }
         lines.extend(self.flap.as_ref().map(flap));
+        lines.extend(self.cuts.iter().map(cut));
         let all = |what: &str, lengths: &[Length]| {
             let each: Vec<String> = lengths.iter().map(|&length| mm(length)).collect();
             format!("{what} {}", each.join(" "))
@@ -104,6 +105,12 @@ fn flap(flap: &Flap) -> String {
     let travel = [flap.up, flap.down].map(degrees);
     let lengths = [flap.from, flap.to, flap.clearance, flap.face].map(mm);
     format!("flap {} {} {} {}", flap.kind.word(), numbers.join(" "), travel.join(" "), lengths.join(" "))
+}
+
+fn cut(cut: &Cut) -> String {
+    let lengths = [cut.width, cut.depth, cut.from, cut.to].map(mm);
+    let numbers = [cut.at, cut.height].map(|v| fixed(v, PLACES));
+    format!("cut {:?} {} {} {}", cut.kind, cut.from_upper, numbers.join(" "), lengths.join(" "))
 }
 
 fn finish(finish: Finish) -> String {

@@ -4,7 +4,7 @@
 //! down. The reader, its messages, the schema for editors and the page of the hand-book all follow
 //! from them.
 
-use super::model::{FlapKind, Kind, PaperSize, PlySide};
+use super::model::{CutKind, FlapKind, Kind, PaperSize, PlySide};
 use crate::units::{AREAL_WEIGHT, DENSITY, Quantity};
 use crate::wing::Law;
 
@@ -396,6 +396,73 @@ pub(super) static FLAP: Table = Table {
     ],
 };
 
+/// Cut-outs.
+pub(super) static CUT: Table = Table {
+    name: "cut",
+    times: Times::Many(0, 40),
+    doc: "A slot or a bore along the span, in the wood: for a control rod, a tube, a spar, the bolts of a joint.",
+    keys: &[
+        key("for", Text(60), Required, "What it is for.", "control rod"),
+        key("kind", Word(CutKind::WORDS), Required, "A slot sunk from a face, or a round bore.", "slot"),
+        key(
+            "at",
+            Number(0.02, 0.98),
+            Required,
+            "Its middle, as a fraction of the chord from the nose.",
+            "0.3",
+        ),
+        key(
+            "width",
+            Length(0.5, 500.0),
+            Required,
+            "Width of a slot along the chord, diameter of a bore.",
+            "8 mm",
+        ),
+        key(
+            "depth",
+            Length(0.0, 200.0),
+            Default("0 mm"),
+            "Depth of a slot below the face of the wood.",
+            "6 mm",
+        ),
+        key(
+            "face",
+            Word(&["upper", "lower"]),
+            Default("upper"),
+            "The face that a slot is sunk from.",
+            "upper",
+        ),
+        key(
+            "height",
+            Number(0.0, 1.0),
+            Default("0.5"),
+            "Centre of a bore between the lower (0) and the upper (1) face of the wood.",
+            "0.5",
+        ),
+        key(
+            "from",
+            Length(0.0, LONGEST),
+            Default("0 mm"),
+            "Where it begins, from the root along the span.",
+            "0 mm",
+        ),
+        key(
+            "to",
+            Length(0.0, LONGEST),
+            Left("the far end"),
+            "Where it ends, from the root along the span.",
+            "800 mm",
+        ),
+        key(
+            "least-left",
+            Length(0.0, 100.0),
+            Default("3 mm"),
+            "The least wood that is to be left beside it.",
+            "3 mm",
+        ),
+    ],
+};
+
 /// Lift curves.
 pub(super) static LIFT: Table = Table {
     name: "lift",
@@ -504,9 +571,9 @@ pub(super) static ROUTER: Table = Table {
 };
 
 /// Every table, in the order of the hand-book.
-pub(super) static TABLES: [&Table; 14] = [
-    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &LIFT, &MASKS, &PRINTER, &PAPER,
-    &STOCK, &ROUTER,
+pub(super) static TABLES: [&Table; 15] = [
+    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &MASKS, &PRINTER,
+    &PAPER, &STOCK, &ROUTER,
 ];
 
 impl Table {

@@ -74,6 +74,8 @@ pub struct Design {
     pub laminate: Laminate,
     /// The plies, from the wood outwards.
     pub plies: Vec<Ply>,
+    /// Slots and bores.
+    pub cuts: Vec<Cut>,
     /// The flap, if any.
     pub flap: Option<Flap>,
     /// What the lift curves cover.
@@ -265,6 +267,55 @@ pub struct Flap {
     pub from: Length,
     /// Where it ends, at most at [`Design::reach`].
     pub to: Length,
+}
+
+/// What kind of cut-out.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum CutKind {
+    /// A slot sunk from a face.
+    Slot,
+    /// A round bore.
+    Bore,
+}
+
+impl CutKind {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["slot", "bore"];
+
+    /// The kind of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        [Self::Slot, Self::Bore]
+            .into_iter()
+            .zip(Self::WORDS)
+            .find(|(_, known)| **known == word)
+            .map(|(kind, _)| kind)
+    }
+}
+
+/// A slot or a bore along the span.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Cut {
+    /// What it is for.
+    pub purpose: String,
+    /// Which of the two.
+    pub kind: CutKind,
+    /// Its middle, a fraction of the chord from the nose, 0.02 to 0.98.
+    pub at: f64,
+    /// Width of a slot, diameter of a bore, 0.5 to 500 mm.
+    pub width: Length,
+    /// Depth of a slot below the face of the wood, 0 to 200 mm.
+    pub depth: Length,
+    /// Whether a slot is sunk from the upper face.
+    pub from_upper: bool,
+    /// Centre of a bore between the lower (0) and the upper (1) face.
+    pub height: f64,
+    /// Where it begins along the span, from the root.
+    pub from: Length,
+    /// Where it ends.
+    pub to: Length,
+    /// The least wood that is to be left beside it, 0 to 100 mm.
+    pub least_left: Length,
 }
 
 /// What the lift curves cover.

@@ -18,7 +18,9 @@ pub fn key_tables() -> String {
             Times::Once => "",
             Times::AtMostOnce => " May be left out; then the defaults hold.",
             Times::Absent => " Leave it out if there is none.",
-            Times::Many(0, _) => " Stands once for each layer, as often as there are.",
+            Times::Many(0, _) => {
+                " Stands once for each, as often as there are; leave it out if there is none."
+            }
             Times::Many(..) => " Stands once for each station, two at least.",
         };
         let head = "| key | takes | if left out | meaning | example |\n| --- | --- | --- | --- | --- |";

@@ -1,7 +1,9 @@
 //! From the design to what lies over the wood and how the flap is hinged.
 
-use super::model::{Design, FlapKind, PlySide};
-use crate::parts::{Covers, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, WoodPiece, wood_pieces};
+use super::model::{Cut, CutKind, Design, FlapKind, PlySide};
+use crate::parts::{
+    Covers, CutOut, Hinge, HingeKind, Laminate, PartError, Ply, PlyMaterial, WoodPiece, wood_pieces,
+};
 use crate::section::Side;
 use crate::wing::{Law, Wing};
 
@@ -37,6 +39,23 @@ impl Design {
     #[must_use]
     pub fn has_skin(&self) -> bool {
         !self.plies.is_empty() || self.laminate.finish.mm() > 0.0
+    }
+
+    /// The cut-outs at `at` mm from the root, each with what the design says of it.
+    pub fn cuts_at(&self, at: f64) -> impl Iterator<Item = (&Cut, CutOut)> {
+        let there = move |cut: &&Cut| (cut.from.mm()..=cut.to.mm()).contains(&at);
+        self.cuts.iter().filter(there).map(|cut| {
+            let shape = match cut.kind {
+                CutKind::Slot => CutOut::Slot {
+                    from: if cut.from_upper { Side::Upper } else { Side::Lower },
+                    at: cut.at,
+                    width: cut.width.mm(),
+                    depth: cut.depth.mm(),
+                },
+                CutKind::Bore => CutOut::Bore { at: cut.at, height: cut.height, diameter: cut.width.mm() },
+            };
+            (cut, shape)
+        })
     }
 
     /// The wooden pieces of the foil, which is the design's own.

@@ -4,8 +4,8 @@ use std::ops::Range;
 
 use super::keys;
 use super::model::{
-    Design, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide, Printer, Router,
-    Station, Stock, Wood,
+    Cut, CutKind, Design, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
+    Printer, Router, Station, Stock, Wood,
 };
 use super::reader::{Row, Sheet};
 use crate::problems::{Problems, Wrong};
@@ -34,6 +34,7 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let wood = wood(sheet.one(&keys::WOOD)?);
     let laminate = laminate(sheet.one(&keys::LAMINATE)?);
     let plies: Vec<_> = sheet.all(&keys::PLY).iter().map(|row| ply(row, reach.as_ref(), problems)).collect();
+    let cuts: Vec<_> = sheet.all(&keys::CUT).iter().map(|row| cut(row, reach.as_ref(), problems)).collect();
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
     let masks = masks(sheet.one(&keys::MASKS)?);
     let printer = printer(sheet.one(&keys::PRINTER)?, problems);
@@ -63,6 +64,7 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         stations,
         wood: wood?,
         laminate: laminate?,
+        cuts: cuts.into_iter().collect::<Option<_>>()?,
         plies: plies.into_iter().collect::<Option<_>>()?,
         flap: match flap {
             Some(flap) => Some(flap?),
@@ -264,6 +266,27 @@ fn stretch(
         problems.add(row.place("from"), wrong);
     }
     Some((from, to))
+}
+
+fn cut(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Cut> {
+    let (from, to) = stretch(row, "the cut", reach, problems)?;
+    let (kind, depth) = (row.text("kind").and_then(CutKind::from_word)?, row.length("depth")?);
+    if kind == CutKind::Slot && depth.mm() <= 0.0 {
+        let wrong = Wrong::new("a slot has a depth").help("write depth = \"6 mm\"");
+        problems.add(row.place("depth"), wrong);
+    }
+    Some(Cut {
+        purpose: row.text("for")?.to_owned(),
+        kind,
+        at: row.number("at")?,
+        width: row.length("width")?,
+        depth,
+        from_upper: row.text("face")? == "upper",
+        height: row.number("height")?,
+        from,
+        to,
+        least_left: row.length("least-left")?,
+    })
 }
 
 fn wood(row: &Row) -> Option<Wood> {

@@ -23,6 +23,7 @@ pub fn dxf(drawing: &Drawing) -> String {
 fn colour(role: Role) -> u8 {
     match role {
         Role::CutOutside => 1,
+        Role::CutInside => 2,
         Role::Reference => 5,
         Role::Label | Role::Caption => 3,
         Role::Check => 8,

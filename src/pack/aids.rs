@@ -1,14 +1,14 @@
 //! Everything that a design's pack and its checks are made from, worked out once.
 
 use super::PackError;
-use crate::design::Design;
+use crate::design::{Cut, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
 use crate::geometry::{ArcPath, follow_with_arcs};
-use crate::parts::{Core, Laminate, Split, WoodPiece, split};
+use crate::parts::{Core, CutShape, Laminate, Split, WoodPiece, split};
 use crate::section::Section;
 use crate::wing::{Law, Planform, StationShape, Wing};
 use crate::workshop::{
-    Drawing, HingeLine, Mask, MaskSettings, Stamp, part_template, planform_pattern, station_template,
+    Drawing, HingeLine, Mask, MaskSettings, Role, Stamp, part_template, planform_pattern, station_template,
 };
 
 /// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
@@ -54,11 +54,11 @@ pub(super) struct StationAids<'a> {
     pub(super) shape: StationShape<'a>,
     pub(super) template: Drawing,
     pub(super) mask: Mask,
-    pub(super) wood: Wood,
+    pub(super) wood: Wood<'a>,
 }
 
 /// The wood of a station: what is cut before anything is laid over it.
-pub(super) struct Wood {
+pub(super) struct Wood<'a> {
     /// Templates of the pieces, each with its role and the ending of its file's name.
     pub(super) templates: Vec<(&'static str, &'static str, Drawing)>,
     /// Where the wood ends behind, mm from the nose along the chord, where the skins meet there.
@@ -67,6 +67,8 @@ pub(super) struct Wood {
     pub(super) thin_behind: Option<f64>,
     /// The flap, parted.
     pub(super) split: Option<Split>,
+    /// Slots and bores: what the design says of each, and its shape.
+    pub(super) cuts: Vec<(&'a Cut, CutShape)>,
 }
 
 /// The flow about one of the design's sections, and the stations that use it.
@@ -100,7 +102,7 @@ fn hinge(design: &Design) -> Option<HingeLine> {
 }
 
 /// Shapes, templates and masks of every template station.
-fn station_aids<'a>(design: &Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
+fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
     let (stamp, hinge) = (stamp(design), hinge(design));
     let settings = MaskSettings {
         clearance: design.masks.clearance.mm(),
@@ -123,15 +125,16 @@ fn station_aids<'a>(design: &Design, wing: &'a Wing) -> Result<Vec<StationAids<'
 }
 
 /// The wood at a station and its templates; none where the finished surface itself is cut.
-fn wood(
-    design: &Design,
+fn wood<'a>(
+    design: &'a Design,
     skin: &Laminate,
     stamp: &Stamp,
     shape: &StationShape<'_>,
-) -> Result<Wood, PackError> {
-    let mut wood = Wood { templates: Vec::new(), ends_at: None, thin_behind: None, split: None };
+) -> Result<Wood<'a>, PackError> {
+    let mut wood =
+        Wood { templates: Vec::new(), ends_at: None, thin_behind: None, split: None, cuts: Vec::new() };
     let hinge = design.hinge_at(shape.at, shape.chord);
-    if hinge.is_none() && !design.has_skin() {
+    if hinge.is_none() && !design.has_skin() && design.cuts_at(shape.at).next().is_none() {
         return Ok(wood);
     }
     let tolerance = design.router.tolerance.mm();
@@ -140,8 +143,20 @@ fn wood(
     let core = Core::of(shape, skin)?;
     wood.ends_at = core.ends_in_laminate().then(|| core.tail().x);
     wood.thin_behind = core.thin_behind(design.laminate.least_wood.mm());
+    wood.cuts = design.cuts_at(shape.at).map(|(cut, shape)| (cut, shape.of(&core))).collect();
+    let cuts = &wood.cuts;
+    let templates = &mut wood.templates;
     let mut add = |role, ending, name, path: &ArcPath, words: &[String]| {
-        wood.templates.push((role, ending, part_template(stamp, shape, &finished, name, path, words)));
+        let mut drawing = part_template(stamp, shape, &finished, name, path, words);
+        // Each cut is drawn where its middle lies in this piece.
+        let within = |cut: &CutShape| {
+            let (middle, bounds) = (cut.outline.bounds().center(), path.bounds());
+            bounds.x0 <= middle.x && middle.x <= bounds.x1
+        };
+        for (_, cut) in cuts.iter().filter(|(_, cut)| within(cut)) {
+            drawing.add(Role::CutInside, cut.outline.clone());
+        }
+        templates.push((role, ending, drawing));
     };
     match hinge {
         None => {

@@ -48,6 +48,7 @@ pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
     checks.extend(aids.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
     checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));
+    checks.extend(stations.iter().flat_map(cuts));
     checks.extend(stations.iter().flat_map(|station| printer(design, station)));
     checks.push(stock(design, "planform pattern", pattern));
     checks.extend(stations.iter().map(|s| stock(design, &place(s.shape.at), &s.template)));
@@ -144,6 +145,29 @@ fn least_thickness(shape: &crate::wing::StationShape<'_>) -> f64 {
             (upper - lower).hypot() * (upper.y - lower.y).signum()
         })
         .fold(f64::INFINITY, f64::min)
+}
+
+/// Wood must be left beside every slot and bore.
+fn cuts<'a>(station: &'a StationAids<'_>) -> impl Iterator<Item = Check> + 'a {
+    station.wood.cuts.iter().map(|(cut, shape)| {
+        let limit = cut.least_left.mm();
+        let passed = shape.wood_left >= limit;
+        Check {
+            name: "wood is left beside the cut".to_owned(),
+            place: format!("{}, {}", place(station.shape.at), cut.purpose),
+            value: shape.wood_left,
+            limit,
+            unit: "mm".to_owned(),
+            passed,
+            why: match (passed, shape.wood_left > 0.0) {
+                (true, _) => "least distance from it to another face of the wood".to_owned(),
+                (_, true) => {
+                    "make it shallower or narrower, or move it to where the section is thicker".to_owned()
+                }
+                (_, false) => "it goes through the other face: it is too deep or too wide there".to_owned(),
+            },
+        }
+    })
 }
 
 /// A batten from one template to the next must lie near a curved design.

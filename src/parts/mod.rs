@@ -2,12 +2,14 @@
 //! flap's hinge.
 
 mod core;
+mod cut_out;
 mod error;
 mod hinge;
 mod laminate;
 mod pieces;
 
 pub use self::core::Core;
+pub use cut_out::{CutOut, CutShape};
 pub use error::PartError;
 pub use hinge::{Hinge, HingeKind, Piece, Split, split};
 pub use laminate::{Covers, Laminate, Ply, PlyMaterial};

@@ -9,6 +9,8 @@ use crate::geometry::{ArcPath, Point, Rect};
 pub enum Role {
     /// A contour whose outside is cut.
     CutOutside,
+    /// A contour whose inside is taken out: a slot, a bore.
+    CutInside,
     /// A line to measure from: chord line, root line, hinge line. Never cut.
     Reference,
     /// Words beside a line. Never cut.
@@ -21,7 +23,8 @@ pub enum Role {
 
 impl Role {
     /// One role for each layer, in the order in which files list them.
-    pub const LAYERS: [Self; 4] = [Self::CutOutside, Self::Reference, Self::Label, Self::Check];
+    pub const LAYERS: [Self; 5] =
+        [Self::CutOutside, Self::CutInside, Self::Reference, Self::Label, Self::Check];
 
     /// How it is drawn on paper: width of the line and lengths of dashes and gaps, mm. The types
     /// differ in pattern, not only in weight, so that they survive a photocopier.
@@ -29,6 +32,7 @@ impl Role {
     pub fn stroke(self) -> (f64, &'static [f64]) {
         match self {
             Self::CutOutside => (0.35, &[]),
+            Self::CutInside => (0.35, &[3.0, 1.2]),
             Self::Reference => (0.2, &[6.0, 1.5, 1.0, 1.5]),
             Self::Label | Self::Caption | Self::Check => (0.2, &[]),
         }
@@ -39,6 +43,7 @@ impl Role {
     pub fn layer(self) -> &'static str {
         match self {
             Self::CutOutside => "CUT_OUTSIDE",
+            Self::CutInside => "CUT_INSIDE",
             Self::Reference => "REFERENCE",
             Self::Label | Self::Caption => "LABEL",
             Self::Check => "CHECK",

@@ -3,7 +3,7 @@
 use plankform::geometry::{ArcPath, Point, Vec2, follow_with_arcs};
 use plankform::section::{Section, TrailingEdge};
 use plankform::wing::{Station, Wing};
-use plankform::workshop::{Drawing, Mask, MaskSettings, PaperSettings, Role, single_page, tiled};
+use plankform::workshop::{Drawing, Mask, MaskMarks, MaskSettings, PaperSettings, Role, single_page, tiled};
 use proptest::prelude::*;
 
 fn foil(name: &str, edge: TrailingEdge, chord: f64) -> Wing {
@@ -39,14 +39,21 @@ proptest! {
         let wing = foil(&format!("NACA {digits}{thickness:02}"), edge, chord);
         let shape = wing.shape_at(40.0).unwrap();
         let settings = MaskSettings { clearance, wall: 8.0, thickness: 5.0, tolerance: 0.02 };
-        let mask = Mask::of(&shape, settings).unwrap();
+        let mask = Mask::of(&shape, settings, MaskMarks { label: "", sights: &[] }).unwrap();
 
         let outline = follow_with_arcs(&shape, 0.001).unwrap();
         let length: f64 = outline.segments().map(|s| s.length()).sum();
         let opening = outline.area() + length * clearance + std::f64::consts::PI * clearance * clearance;
         let bounds = outline.bounds().inflate(clearance + 8.0, clearance + 8.0);
-        let expected = 5.0 * (bounds.area() - opening);
-        let found = mask.upper.volume() + mask.lower.volume();
+        // A peg of 0.4 by 0.22 walls in each parting face, its flanks leaning in by 0.15; its socket is
+        // wider by 0.15 mm each side and deeper by as much. Five letters of the half are engraved.
+        let peg = |play: f64| {
+            let (half, depth) = (0.2 * 8.0 + play, 0.22 * 8.0 + play);
+            depth * (2.0 * half - 0.15 * depth)
+        };
+        let expected = 5.0 * (bounds.area() - opening + 2.0 * (peg(0.0) - peg(0.15)));
+        let engraved = |half: &str| 0.8 * engraved_area(half, 8.0, bounds.width());
+        let found = mask.upper.volume() + mask.lower.volume() + engraved("upper") + engraved("lower");
         // The opening may stray by the tolerance all along.
         prop_assert!((found - expected).abs() < 5.0 * 0.02 * (length + 4.0), "{} for {}", found, expected);
         for half in [&mask.upper, &mask.lower] {
@@ -55,6 +62,37 @@ proptest! {
             prop_assert!(half.volume() > 0.0);
         }
     }
+}
+
+/// What the strokes of a label take of the wall: 3.6 mm letters (0.45 of it), a stroke of 0.15 of that.
+/// Only their number and lengths matter here: straight strokes of the segments of each letter.
+fn engraved_area(label: &str, wall: f64, width: f64) -> f64 {
+    let letters = label.len() as f64 + 1.0;
+    let height = (0.45 * wall).min((width - wall) / ((letters - 1.0) * 0.9 + 0.7));
+    if height < 2.4 {
+        return 0.0;
+    }
+    // Long, half and level strokes of u, p, e, r and l, o, w, e, r; the slanting one of the r.
+    // Each ends in points a stroke's half long, which hold half of what a square end would.
+    let level = (0.56 - 2.0 * 0.035 - 0.075) * height;
+    let half_level = (0.28 - 2.0 * 0.035 - 0.075) * height;
+    let upright = (0.425 - 2.0 * 0.035 - 0.075) * height;
+    let slanting = (0.28_f64.hypot(0.425) - 2.0 * (0.15 + 0.035)) * height;
+    let counts = |c: char| match c {
+        // Uprights, level ones over the whole width, over half of it, slanting ones.
+        'u' => [4, 1, 0, 0],
+        'p' => [3, 1, 2, 0],
+        'e' => [2, 2, 1, 0],
+        'r' => [3, 1, 2, 1],
+        'l' => [2, 1, 0, 0],
+        'o' => [4, 2, 0, 0],
+        // The middle one of w is shorter by half a stroke and a gap.
+        _ => [5, 1, 0, 0],
+    };
+    let lengths = [upright, level, half_level, slanting];
+    let all = label.chars().flat_map(|c| counts(c).into_iter().zip(lengths));
+    let shorter = label.chars().filter(|c| *c == 'w').count() as f64 * (0.075 + 0.035) * height;
+    (all.map(|(count, length)| f64::from(count) * length).sum::<f64>() - shorter) * 0.15 * height
 }
 
 fn drawing(width: f64, height: f64) -> Drawing {

@@ -28,32 +28,63 @@ impl Solid {
     /// # Errors
     /// When the face crosses itself or cannot be triangulated.
     pub fn extruded(face: &[Point], height: f64) -> Result<Self, GeometryError> {
-        // Rounded first: a polygon that is simple in double precision need not stay so.
-        let mut rounded: Vec<Point> =
-            face.iter().map(|p| Point::new(f64::from(p.x as f32), f64::from(p.y as f32))).collect();
-        rounded.dedup_by(|a, b| a.distance(*b) < WELD);
-        while rounded.len() > 1 && rounded[0].distance(rounded[rounded.len() - 1]) < WELD {
-            rounded.pop();
-        }
-        polygon::refuse_crossings(&rounded)?;
-        if polygon::area(&rounded) < 0.0 {
-            rounded.reverse();
-        }
-        let count = rounded.len();
-        let level = |z: f32| rounded.iter().map(move |p| [p.x as f32, p.y as f32, z]);
-        let vertices = level(0.0).chain(level(height as f32)).collect();
+        Self::engraved(face, height, &[], 0.0)
+    }
 
-        let top = triangulated(&rounded)?;
-        let mut facets: Vec<[usize; 3]> = top.iter().map(|&[a, b, c]| [a, c, b]).collect();
-        facets.extend(top.iter().map(|t| t.map(|i| i + count)));
-        for i in 0..count {
-            let j = (i + 1) % count;
-            facets.push([i, j, j + count]);
-            facets.push([i, j + count, i + count]);
+    /// The same with `pockets` sunk `depth` into its upper side.
+    ///
+    /// # Errors
+    /// When an outline crosses itself or another, a pocket reaches out of the face or through it, or
+    /// it cannot be triangulated.
+    pub fn engraved(
+        face: &[Point],
+        height: f64,
+        pockets: &[Vec<Point>],
+        depth: f64,
+    ) -> Result<Self, GeometryError> {
+        let outer = in_single_precision(face)?;
+        let pockets: Vec<Vec<Point>> =
+            pockets.iter().map(|pocket| in_single_precision(pocket)).collect::<Result<_, _>>()?;
+        if !pockets.is_empty() && !(depth > 0.0 && depth < height) {
+            return Err(GeometryError::Triangulation { why: "a pocket is deeper than the block".to_owned() });
         }
-        let solid = Self { vertices, facets };
+        let mut solid = Self { vertices: Vec::new(), facets: Vec::new() };
+        let bottom = solid.ring(&outer, 0.0);
+        let top = solid.ring(&outer, height);
+        let rims: Vec<usize> = pockets.iter().map(|pocket| solid.ring(pocket, height)).collect();
+        let floors: Vec<usize> = pockets.iter().map(|pocket| solid.ring(pocket, height - depth)).collect();
+
+        let plain = triangulated(&[&outer])?;
+        solid.facets.extend(plain.iter().map(|&[a, b, c]| [a + bottom, c + bottom, b + bottom]));
+        let mut rings = vec![outer.as_slice()];
+        rings.extend(pockets.iter().map(Vec::as_slice));
+        // The rings of the upper side follow one another in the list of vertices.
+        solid.facets.extend(triangulated(&rings)?.iter().map(|t| t.map(|i| i + top)));
+        solid.wall(bottom, top, outer.len());
+        for ((pocket, rim), floor) in pockets.iter().zip(rims).zip(floors) {
+            solid.facets.extend(triangulated(&[pocket])?.iter().map(|t| t.map(|i| i + floor)));
+            // A pocket's wall faces inwards.
+            solid.wall(rim, floor, pocket.len());
+        }
         solid.refuse_leaks()?;
         Ok(solid)
+    }
+
+    /// Adds the corners of a polygon at a height; the index of the first.
+    fn ring(&mut self, points: &[Point], z: f64) -> usize {
+        let first = self.vertices.len();
+        self.vertices.extend(points.iter().map(|p| [p.x as f32, p.y as f32, z as f32]));
+        first
+    }
+
+    /// The wall between two rings of `count` corners each, outwards when the second lies above the
+    /// first and they run anticlockwise.
+    fn wall(&mut self, from: usize, to: usize, count: usize) {
+        for i in 0..count {
+            let j = (i + 1) % count;
+            self.facets.push([from + i, from + j, to + j]);
+            self.facets.push([from + i, to + j, to + i]);
+        }
     }
 
     /// The corners of each facet, anticlockwise seen from outside.
@@ -102,13 +133,42 @@ impl Solid {
     }
 }
 
-/// Cuts a simple anticlockwise polygon into triangles without adding or losing a point.
-fn triangulated(points: &[Point]) -> Result<Vec<[usize; 3]>, GeometryError> {
+/// A polygon as the file will hold it, anticlockwise. Rounded first: one that is simple in double
+/// precision need not stay so.
+fn in_single_precision(face: &[Point]) -> Result<Vec<Point>, GeometryError> {
+    let mut rounded: Vec<Point> =
+        face.iter().map(|p| Point::new(f64::from(p.x as f32), f64::from(p.y as f32))).collect();
+    rounded.dedup_by(|a, b| a.distance(*b) < WELD);
+    while rounded.len() > 1 && rounded[0].distance(rounded[rounded.len() - 1]) < WELD {
+        rounded.pop();
+    }
+    polygon::refuse_crossings(&rounded)?;
+    if polygon::area(&rounded) < 0.0 {
+        rounded.reverse();
+    }
+    Ok(rounded)
+}
+
+/// Cuts an anticlockwise polygon with holes, the rings after the first, into triangles without adding
+/// or losing a point. Corners are counted through all rings.
+fn triangulated(rings: &[&[Point]]) -> Result<Vec<[usize; 3]>, GeometryError> {
     let failed = |why: String| GeometryError::Triangulation { why };
+    let points: Vec<Point> = rings.iter().flat_map(|ring| ring.iter().copied()).collect();
+    let mut edges = Vec::with_capacity(points.len());
+    let mut first = 0;
+    for ring in rings {
+        edges.extend((0..ring.len()).map(|i| [first + i, first + (i + 1) % ring.len()]));
+        first += ring.len();
+    }
     let vertices = points.iter().map(|p| Point2::new(p.x, p.y)).collect();
-    let edges = (0..points.len()).map(|i| [i, (i + 1) % points.len()]).collect();
-    let mesh = ConstrainedDelaunayTriangulation::<Point2<f64>>::try_bulk_load_cdt(vertices, edges, |_| {})
-        .map_err(|error| failed(format!("{error:?}")))?;
+    let mut crossed = false;
+    let mesh = ConstrainedDelaunayTriangulation::<Point2<f64>>::try_bulk_load_cdt(vertices, edges, |_| {
+        crossed = true;
+    })
+    .map_err(|error| failed(format!("{error:?}")))?;
+    if crossed {
+        return Err(failed("two outlines cross".to_owned()));
+    }
     if mesh.num_vertices() != points.len() {
         return Err(failed("two corners coincide".to_owned()));
     }
@@ -117,7 +177,9 @@ fn triangulated(points: &[Point]) -> Result<Vec<[usize; 3]>, GeometryError> {
         points.iter().enumerate().map(|(i, p)| ([p.x.to_bits(), p.y.to_bits()], i)).collect();
     let inside = mesh.inner_faces().filter(|face| {
         let centre = face.center();
-        polygon::contains(points, Point::new(centre.x, centre.y))
+        let centre = Point::new(centre.x, centre.y);
+        let within = |ring: &&[Point]| polygon::contains(ring, centre);
+        rings.first().is_some_and(|outer| within(outer)) && !rings.iter().skip(1).any(|hole| within(hole))
     });
     inside
         .map(|face| {

@@ -8,7 +8,8 @@ use crate::parts::{Core, CutShape, Laminate, Split, WoodPiece, split};
 use crate::section::Section;
 use crate::wing::{Law, Planform, StationShape, Wing};
 use crate::workshop::{
-    Drawing, HingeLine, Mask, MaskSettings, Role, Stamp, part_template, planform_pattern, station_template,
+    Drawing, HingeLine, Mask, MaskMarks, MaskSettings, Role, Stamp, part_template, planform_pattern,
+    station_template,
 };
 
 /// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
@@ -117,7 +118,11 @@ fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAid
         let tolerance = design.router.tolerance.mm();
         let template = station_template(&stamp, &shape, hinge.as_ref(), wing.is_mirrored(), tolerance)
             .map_err(failed)?;
-        let mask = Mask::of(&shape, settings).map_err(failed)?;
+        let label = format!("{} {}", crate::units::number(at, 1), stamp.fingerprint);
+        let mut sights = vec![0.0, shape.chord];
+        sights.extend(design.hinge_at(at, shape.chord).map(|hinge| hinge.at));
+        let marks = MaskMarks { label: &label, sights: &sights };
+        let mask = Mask::of(&shape, settings, marks).map_err(failed)?;
         let wood = wood(design, &skin, &stamp, &shape)?;
         Ok(StationAids { shape, template, mask, wood })
     };

@@ -322,14 +322,32 @@ fn steps(body: &mut String, design: &Design, files: &[PackFile]) {
             " On this upright foil the upper half is the starboard one, the lower half the port one."
         };
         steps.push(format!(
-            "Print the {plates} mask halves in <code>masks/</code> flat as they lie, without support. Write station, half \
-             and fingerprint on each one as it leaves the bed: they look alike.{sides}"
+            "Print the {plates} mask halves in <code>masks/</code> flat as they lie, without support. Station, fingerprint and \
+             half are engraved; notches in the far side show nose, trailing edge and hinge.{sides}"
         ));
     }
     if stations_are_marked(files) {
+        let wood =
+            files.iter().any(|file| file.role.ends_with("template") && file.role != "station template");
+        if wood {
+            steps.push(
+                "Saw out the blanks, mark the root line and the stations on them from the planform, and shape the wood to \
+                 the templates of the wood. Test fit, with the spacer, before any resin is mixed."
+                    .to_owned(),
+            );
+            steps.push(
+                "Laminate as in the table of plies, on a sample first: measure its cured thickness and correct the design if it \
+                 differs."
+                    .to_owned(),
+            );
+        } else {
+            steps.push(
+                "Cut the planform, mark the root line and the stations on it, and shape down to the masks."
+                    .to_owned(),
+            );
+        }
         steps.push(
-            "Cut the planform, mark the root line and the stations on it, and shape down to the masks. When a pair \
-             closes, the gap all round is the set clearance."
+            "Fill and sand to the masks. When a pair closes, the gap all round is the set clearance."
                 .to_owned(),
         );
         steps.push(
@@ -343,9 +361,7 @@ fn steps(body: &mut String, design: &Design, files: &[PackFile]) {
     for step in steps {
         let _ = writeln!(body, "<li>{step}</li>");
     }
-    body.push_str(
-        "</ol>\n<p>The outlines are the finished surface. The allowance for the laminate is not taken off yet.</p>",
-    );
+    body.push_str("</ol>\n");
 }
 
 /// Whether the pack holds anything to shape by.

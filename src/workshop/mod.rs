@@ -5,9 +5,10 @@ mod mask;
 mod paper;
 mod pattern;
 mod section_picture;
+mod strokes;
 
 pub use drawing::{Drawing, Label, Line, Role};
-pub use mask::{Half, Mask, MaskSettings};
+pub use mask::{Half, Mask, MaskMarks, MaskSettings};
 pub use paper::{Page, PaperSettings, single_page, tiled};
 pub(crate) use pattern::turn;
 pub use pattern::{HingeLine, part_template, planform_pattern, station_template};

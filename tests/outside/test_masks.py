@@ -69,10 +69,37 @@ def test_plates_lie_on_the_bed_and_fit_it(pack):
         assert all(size <= space for size, space in zip(sorted((high - low)[:2]), room, strict=True)), path.name
 
 
-def test_volume_is_face_times_thickness(pack):
+# Depth of the engraved letters, mm.
+ENGRAVED = 0.8
+
+
+def letters(path, pack) -> list[Polygon]:
+    """What is sunk into the upper side: the holes of a cut just below it."""
+    depth = min(ENGRAVED, 0.35 * pack.design.mask_thickness)
+    cut = load(path).section(plane_origin=[0, 0, pack.design.mask_thickness - 0.5 * depth], plane_normal=[0, 0, 1])
+    outer, *holes = sorted((Polygon(ring[:, :2]) for ring in cut.discrete), key=lambda ring: -ring.area)
+    assert all(outer.contains(hole) for hole in holes), path.name
+    return holes
+
+
+def test_volume_is_face_times_thickness_less_the_letters(pack):
     for path in pack.paths("stl"):
-        expected = face(path, 0.4 * pack.design.mask_thickness).area * pack.design.mask_thickness
+        depth = min(ENGRAVED, 0.35 * pack.design.mask_thickness)
+        taken = depth * sum(letter.area for letter in letters(path, pack))
+        expected = face(path, 0.4 * pack.design.mask_thickness).area * pack.design.mask_thickness - taken
         assert load(path).volume == pytest.approx(expected, rel=1e-5), path.name
+
+
+def test_strokes_keep_apart_and_leave_a_rim(pack):
+    """A nozzle of 0.4 mm needs a gap between strokes, and wood is read by what stands round a letter."""
+    for path in pack.paths("stl"):
+        strokes = letters(path, pack)
+        assert len(strokes) > 20, f"{path.name}: {len(strokes)} strokes"
+        for i, one in enumerate(strokes):
+            for other in strokes[i + 1 :]:
+                assert one.distance(other) > 0.1, path.name
+        plate = face(path, 0.4 * pack.design.mask_thickness)
+        assert min(plate.exterior.distance(stroke) for stroke in strokes) > 0.8, path.name
 
 
 def pairs(pack):
@@ -87,17 +114,19 @@ def test_halves_close_to_one_opening(pack):
         assert upper.intersection(lower).area < 1e-3, f"station {shape.at}: the halves overlap"
         closed = upper.union(lower)
         assert closed.geom_type == "Polygon", f"station {shape.at}: the halves do not meet"
-        assert len(closed.interiors) == 1, f"station {shape.at}: {len(closed.interiors)} openings"
+        # Round each peg in its socket a slit stays free.
+        opening, *slits = sorted((Polygon(ring) for ring in closed.interiors), key=lambda ring: -ring.area)
+        assert all(slit.area < 3 for slit in slits), f"station {shape.at}: {len(slits) + 1} openings"
         # The upper half lies over the upper surface, the lower below.
         assert upper.centroid.y > lower.centroid.y
-        opening = Polygon(closed.interiors[0])
         assert opening.contains(Polygon(shape.ring)), f"station {shape.at}: the opening cuts the section"
 
 
 def test_clearance_all_round(pack, measured):
     """Both ways: no point of the opening too near or too far, and no point of the section without its mask."""
     for shape, (upper, lower) in pairs(pack):
-        opening = shapely.segmentize(upper.union(lower).interiors[0], 0.02)
+        opening = max(upper.union(lower).interiors, key=lambda ring: Polygon(ring).area)
+        opening = shapely.segmentize(opening, 0.02)
         opening = shapely.get_coordinates(opening)
         section = curves.closed(shape.ring)
         for gap in (curves.distances(opening, section), curves.distances(section, opening)):

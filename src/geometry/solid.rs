@@ -45,7 +45,8 @@ impl Solid {
         let outer = in_single_precision(face)?;
         let pockets: Vec<Vec<Point>> =
             pockets.iter().map(|pocket| in_single_precision(pocket)).collect::<Result<_, _>>()?;
-        if !pockets.is_empty() && !(depth > 0.0 && depth < height) {
+        let sinks = depth > 0.0 && depth < height;
+        if !(pockets.is_empty() || sinks) {
             return Err(GeometryError::Triangulation { why: "a pocket is deeper than the block".to_owned() });
         }
         let mut solid = Self { vertices: Vec::new(), facets: Vec::new() };
@@ -179,7 +180,7 @@ fn triangulated(rings: &[&[Point]]) -> Result<Vec<[usize; 3]>, GeometryError> {
         let centre = face.center();
         let centre = Point::new(centre.x, centre.y);
         let within = |ring: &&[Point]| polygon::contains(ring, centre);
-        rings.first().is_some_and(|outer| within(outer)) && !rings.iter().skip(1).any(|hole| within(hole))
+        rings.first().is_some_and(&within) && !rings.iter().skip(1).any(within)
     });
     inside
         .map(|face| {

@@ -5,7 +5,7 @@
 //! from them.
 
 use super::model::{CutKind, FlapKind, Kind, PaperSize, PlySide};
-use crate::units::{AREAL_WEIGHT, DENSITY, Quantity};
+use crate::units::{AREAL_WEIGHT, DENSITY, Quantity, SPEED, TEMPERATURE};
 use crate::wing::Law;
 
 /// One table of the file.
@@ -467,8 +467,38 @@ pub(super) static CUT: Table = Table {
 pub(super) static LIFT: Table = Table {
     name: "lift",
     times: Times::AtMostOnce,
-    doc: "The angles of attack of the lift curves, and the lift that is asked of the sections.",
+    doc: "The angles of attack of the lift curves, the lift that is asked of the sections, and what they run in.",
     keys: &[
+        key(
+            "speed",
+            Amount(&SPEED, 0.5, 25.0),
+            Default("9 kn"),
+            "Speed of the curves: with chord and water it makes the Reynolds number.",
+            "9 kn",
+        ),
+        key(
+            "depth",
+            Length(0.0, 5000.0),
+            Default("400 mm"),
+            "Depth of the foil below the surface, for cavitation.",
+            "400 mm",
+        ),
+        key(
+            "top-speed",
+            Amount(&SPEED, 0.5, 25.0),
+            Left("not checked"),
+            "Speed up to which the sections may not cavitate at the design lift.",
+            "18 kn",
+        ),
+        key("water", Word(&["sea", "fresh"]), Default("sea"), "Sea water, or fresh.", "sea"),
+        key("temperature", Amount(&TEMPERATURE, 0.0, 40.0), Default("15 °C"), "Of the water.", "15 °C"),
+        key(
+            "quietness",
+            Number(1.0, 12.0),
+            Default("6"),
+            "How far the water lets waves in the boundary layer grow before it turns turbulent (N of the e^N method): 9 in a clean tank, less in natural water.",
+            "6",
+        ),
         key("from", Angle(-20.0, 20.0), Default("-4 deg"), "First angle of attack.", "-4 deg"),
         key("to", Angle(-20.0, 20.0), Default("10 deg"), "Last angle of attack, above the first.", "10 deg"),
         key(

@@ -327,6 +327,18 @@ pub struct Lift {
     pub to: Angle,
     /// From one to the next, positive; at most [`Lift::MOST_POINTS`] in all.
     pub step: Angle,
+    /// Speed that the curves are for, m/s, 0.5 to 25.
+    pub speed: f64,
+    /// Depth below the surface.
+    pub depth: Length,
+    /// Speed up to which the sections may not cavitate, m/s.
+    pub top_speed: Option<f64>,
+    /// Whether the water is salt.
+    pub sea: bool,
+    /// Temperature of the water, °C, 0 to 40.
+    pub temperature: f64,
+    /// N of the e^N method, 1 to 12.
+    pub quietness: f64,
     /// Section lift coefficient that every station must reach within that range, -3 to 3.
     pub design: f64,
 }

@@ -333,7 +333,18 @@ fn ply(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply>
 
 fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
     let (from, to, step): (Angle, Angle, Angle) = (row.angle("from")?, row.angle("to")?, row.angle("step")?);
-    let lift = Lift { from, to, step, design: row.number("design")? };
+    let lift = Lift {
+        from,
+        to,
+        step,
+        speed: row.number("speed")?,
+        depth: row.length("depth")?,
+        top_speed: row.number("top-speed"),
+        sea: row.text("water")? == "sea",
+        temperature: row.number("temperature")?,
+        quietness: row.number("quietness")?,
+        design: row.number("design")?,
+    };
     if to.degrees() <= from.degrees() {
         let wrong =
             Wrong::new(format!("the angles run from {from} to {to}: the last must lie above the first"));

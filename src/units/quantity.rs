@@ -20,6 +20,8 @@ pub struct Unit {
 enum Factor {
     /// Whole tenths of the base unit (254 for an inch in millimetres), so that the table is exact.
     Tenths(u32),
+    /// The first over the second.
+    Ratio(u32, u32),
     /// A radian in degrees.
     Radians,
 }
@@ -52,6 +54,22 @@ pub static ANGLE: Quantity = Quantity {
         Unit { symbol: "deg", also: &["°", "degree", "degrees"], factor: Factor::Tenths(10) },
         Unit { symbol: "rad", also: &[], factor: Factor::Radians },
     ],
+};
+
+/// Speeds; the base unit is the metre a second. A knot is 1852 metres an hour.
+pub static SPEED: Quantity = Quantity {
+    name: "a speed",
+    units: &[
+        Unit { symbol: "m/s", also: &[], factor: Factor::Tenths(10) },
+        Unit { symbol: "kn", also: &["kt", "knots"], factor: Factor::Ratio(1852, 3600) },
+        Unit { symbol: "km/h", also: &[], factor: Factor::Ratio(1000, 3600) },
+    ],
+};
+
+/// Temperatures in degrees Celsius.
+pub static TEMPERATURE: Quantity = Quantity {
+    name: "a temperature",
+    units: &[Unit { symbol: "°C", also: &["C", "degC"], factor: Factor::Tenths(10) }],
 };
 
 /// Weights of cloth for each area; the base unit is the gram for each square metre.
@@ -148,6 +166,7 @@ impl Factor {
             // Whole factors go in whole, and the others divide last: one rounding, not two.
             Self::Tenths(tenths) if tenths % 10 == 0 => number * f64::from(tenths / 10),
             Self::Tenths(tenths) => number * f64::from(tenths) / 10.0,
+            Self::Ratio(over, under) => number * f64::from(over) / f64::from(under),
             Self::Radians => number.to_degrees(),
         }
     }

@@ -9,7 +9,9 @@ mod loads;
 mod lu;
 mod panelling;
 mod potential;
+mod viscous;
 
 pub use error::FlowError;
 pub use panelling::{DEFAULT_PANELS, LEAST_PANELS, MOST_PANELS, Panelling};
 pub use potential::{PotentialFlow, PressurePoint, Solution};
+pub use viscous::{Conditions, Viscous};

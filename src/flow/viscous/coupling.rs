@@ -1,0 +1,214 @@
+//! What the flow outside makes of the layers: speeds along surface and wake as a linear function
+//! of incidence and mass defect, put up and factored once for an outline.
+//!
+//! The layers displace the outer flow by δ*. That is the same as sources of strength dm/ds along
+//! surface and wake, m = u δ* being the mass defect (Lighthill 1958, "On displacement
+//! thickness", Journal of Fluid Mechanics 4). Here they are even over each panel, so that each
+//! panel gives what the mass defect grows by between its nodes.
+
+use super::sources::{mean_speed_in_line, surface_stream_function, velocities, wake_stream_function};
+use super::wake::wake_line;
+use crate::flow::edge::Base;
+use crate::flow::potential::surface_speeds;
+use crate::flow::{FlowError, Panelling};
+use crate::geometry::{Point, Vec2};
+
+/// Stations are the nodes of the outline, from the upper trailing edge over the nose to the lower
+/// one, then those of the wake from the trailing edge on. Speeds and mass defects are positive
+/// that way.
+#[derive(Debug, Clone, PartialEq)]
+pub(super) struct Coupling {
+    /// Nodes of the outline.
+    pub(super) surface: usize,
+    /// Places of all stations.
+    pub(super) points: Vec<Point>,
+    /// Length along the outline, and along the wake from the trailing edge on.
+    pub(super) length: Vec<f64>,
+    /// Speeds at the surface without layers, for onset along x and along y.
+    surface_speed: [Vec<f64>; 2],
+    /// Velocities in the wake for both onsets.
+    wake_velocity: [Vec<Vec2>; 2],
+    /// Change of the surface speeds by mass defect: a row for each node.
+    surface_response: Vec<f64>,
+    /// Change of the velocities in the wake: rows of x, and rows of y.
+    wake_response: [Vec<f64>; 2],
+}
+
+/// Speeds at one incidence: those without layers and their change by each mass defect.
+#[derive(Debug, Clone)]
+pub(super) struct OuterFlow<'a> {
+    coupling: &'a Coupling,
+    /// Without layers, at all stations.
+    pub(super) speed: Vec<f64>,
+    wake_response: Vec<f64>,
+}
+
+impl Coupling {
+    pub(super) fn of(panelling: &Panelling) -> Result<Self, FlowError> {
+        let nodes = panelling.nodes();
+        let wake = wake_line(panelling);
+        let (surface, count) = (nodes.len(), nodes.len() + wake.len());
+        let surface_sources = surface_stream_function(panelling);
+        let wake_sources = wake_stream_function(panelling, &wake);
+
+        // Each mass defect feeds the panel before it and drains the one after it.
+        let (surface_speed, columns) = surface_speeds(panelling, count, |block, stride| {
+            let mut add = |station: usize, source: &[f64], weight: f64| {
+                for (entry, value) in block[station * stride..].iter_mut().zip(source) {
+                    *entry += weight * value;
+                }
+            };
+            for (k, source) in surface_sources.iter().enumerate() {
+                let weight = 1.0 / nodes[k].distance(nodes[k + 1]);
+                add(k + 1, source, weight);
+                add(k, source, -weight);
+            }
+            for (k, source) in wake_sources.iter().enumerate() {
+                let weight = 1.0 / wake[k].distance(wake[k + 1]);
+                add(surface + k + 1, source, weight);
+                add(surface + k, source, -weight);
+            }
+        })?;
+        let mut surface_response = vec![0.0; surface * count];
+        for (j, column) in columns.iter().enumerate() {
+            for (i, &value) in column.iter().enumerate() {
+                surface_response[i * count + j] = value;
+            }
+        }
+
+        let mut length = vec![0.0];
+        for (k, panel) in panelling.panels().iter().enumerate() {
+            length.push(length[k] + 2.0 * panel.half_length());
+        }
+        length.push(0.0);
+        for (k, ends) in wake.windows(2).enumerate() {
+            length.push(length[surface + k] + ends[0].distance(ends[1]));
+        }
+        let fields: Vec<Fields> = wake.iter().map(|&z| Fields::at(panelling, z)).collect();
+        let wake_velocity = [0, 1].map(|k| {
+            let onset = [Vec2::new(1.0, 0.0), Vec2::new(0.0, 1.0)][k];
+            fields.iter().map(|fields| onset + fields.of_vorticity(&surface_speed[k])).collect()
+        });
+        let wake_response = wake_response(&fields, &wake, &length[surface..], &columns);
+        let points = nodes.iter().chain(&wake).copied().collect();
+        let coupling =
+            Self { surface, points, length, surface_speed, wake_velocity, surface_response, wake_response };
+        if coupling.wake_response.iter().flatten().all(|value| value.is_finite()) {
+            Ok(coupling)
+        } else {
+            Err(FlowError::Singular)
+        }
+    }
+
+    /// All stations.
+    pub(super) fn count(&self) -> usize {
+        self.points.len()
+    }
+
+    pub(super) fn at(&self, incidence: f64) -> OuterFlow<'_> {
+        let (sin, cos) = incidence.sin_cos();
+        let (count, surface) = (self.count(), self.surface);
+        let mut speed: Vec<f64> = std::iter::zip(&self.surface_speed[0], &self.surface_speed[1])
+            .map(|(along, across)| along * cos + across * sin)
+            .collect();
+        let last = surface - 1;
+        // The wake begins with the speed of both sides at the edge.
+        speed.push(0.5 * (speed[last] - speed[0]));
+        let row = |i: usize| &self.surface_response[i * count..][..count];
+        let mut wake_response: Vec<f64> =
+            std::iter::zip(row(last), row(0)).map(|(lower, upper)| 0.5 * (lower - upper)).collect();
+        for i in 1..count - surface {
+            let velocity = cos * self.wake_velocity[0][i] + sin * self.wake_velocity[1][i];
+            let size = velocity.hypot().max(1e-6);
+            let direction = velocity / size;
+            speed.push(size);
+            let [x, y] = [0, 1].map(|k| &self.wake_response[k][i * count..][..count]);
+            wake_response.extend(std::iter::zip(x, y).map(|(x, y)| direction.x * x + direction.y * y));
+        }
+        OuterFlow { coupling: self, speed, wake_response }
+    }
+}
+
+impl OuterFlow<'_> {
+    /// Change of the speed at a station by the mass defect of each.
+    pub(super) fn response(&self, station: usize) -> &[f64] {
+        let count = self.coupling.count();
+        match station.checked_sub(self.coupling.surface) {
+            None => &self.coupling.surface_response[station * count..][..count],
+            Some(wake) => &self.wake_response[wake * count..][..count],
+        }
+    }
+
+    /// Speeds with these mass defects, positive along the way.
+    pub(super) fn speeds(&self, mass: &[f64]) -> Vec<f64> {
+        let change =
+            |i: usize| std::iter::zip(self.response(i), mass).map(|(response, mass)| response * mass).sum::<f64>();
+        self.speed.iter().enumerate().map(|(i, speed)| speed + change(i)).collect()
+    }
+}
+
+/// Velocities at one point by unit strengths on the outline.
+struct Fields {
+    /// Of vorticity at each node, the base's included.
+    vorticity: Vec<Vec2>,
+    /// Of even sources on each panel.
+    sources: Vec<Vec2>,
+}
+
+impl Fields {
+    fn at(panelling: &Panelling, z: Point) -> Self {
+        let nodes = panelling.nodes();
+        let last = nodes.len() - 1;
+        let mut vorticity = vec![Vec2::ZERO; nodes.len()];
+        let mut sources = Vec::with_capacity(last);
+        for (k, ends) in nodes.windows(2).enumerate() {
+            let [source, first, second] = velocities(ends[0], ends[1], z);
+            sources.push(source / ends[0].distance(ends[1]));
+            vorticity[k] += first;
+            vorticity[k + 1] += second;
+        }
+        if let Some(base) = Base::of(panelling) {
+            let [source, first, second] = velocities(nodes[last], nodes[0], z);
+            let [along, across] = base.strengths();
+            let by_edge_speed = along * (first + second) + across * source;
+            vorticity[0] -= 0.5 * by_edge_speed;
+            vorticity[last] += 0.5 * by_edge_speed;
+        }
+        Self { vorticity, sources }
+    }
+
+    fn of_vorticity(&self, strength: &[f64]) -> Vec2 {
+        std::iter::zip(&self.vorticity, strength).fold(Vec2::ZERO, |sum, (&field, &s)| sum + s * field)
+    }
+}
+
+fn wake_response(fields: &[Fields], wake: &[Point], length: &[f64], columns: &[Vec<f64>]) -> [Vec<f64>; 2] {
+    let count = columns.len();
+    let surface = count - wake.len();
+    let mut response = [vec![0.0; wake.len() * count], vec![0.0; wake.len() * count]];
+    for (i, fields) in fields.iter().enumerate().skip(1) {
+        let mut row: Vec<Vec2> = columns.iter().map(|column| fields.of_vorticity(column)).collect();
+        for (k, &source) in fields.sources.iter().enumerate() {
+            row[k + 1] += source;
+            row[k] -= source;
+        }
+        let middle = |i: usize| 0.5 * (length[i] + length[i + 1]);
+        let (from, to) =
+            (middle(i - 1), if i + 1 < wake.len() { middle(i) } else { 2.0 * length[i] - middle(i - 1) });
+        let before = (wake[i] - wake[i - 1]).normalize();
+        let along = match wake.get(i + 1) {
+            Some(&next) => (before + (next - wake[i]).normalize()).normalize(),
+            None => before,
+        };
+        for (k, ends) in length.windows(2).enumerate() {
+            let speed = mean_speed_in_line(from, to, ends[0], ends[1]) / (ends[1] - ends[0]);
+            row[surface + k + 1] += speed * along;
+            row[surface + k] -= speed * along;
+        }
+        for (j, velocity) in row.into_iter().enumerate() {
+            response[0][i * count + j] = velocity.x;
+            response[1][i * count + j] = velocity.y;
+        }
+    }
+    response
+}

@@ -2,9 +2,7 @@
 //! gives way where no layer goes with it.
 //!
 //! Where a layer separates, no thickness belongs to a given speed (Goldstein 1948). From there the
-//! shape factor is given instead, and the speed follows: the inverse problem. What comes of it is smoothed
-//! by sweeps in which the speed at each station follows the mass defect there, those of all others
-//! being held (quasi-simultaneous coupling, A. E. P. Veldman, AIAA Journal 19 (1), 1981).
+//! shape factor is given instead, and the speed follows: the inverse problem.
 
 use super::dual::Dual;
 use super::interval::{SECOND, Residual, VARIABLES, similar};
@@ -21,16 +19,11 @@ const LEAST_SHAPE: f64 = 1.02;
 const MOST_LAMINAR_SHAPE: f64 = 3.7;
 const MOST_TURBULENT_SHAPE: f64 = 2.3;
 
-/// Least speed on the way.
-const LEAST_SPEED: f64 = 0.01;
-
 /// What is given at a station.
 #[derive(Debug, Clone, Copy, PartialEq)]
 enum Given {
     Speed,
     Shape(f64),
-    /// Speed without the mass defect of the station itself, and its change with that.
-    Response { rest: f64, slope: f64 },
 }
 
 /// Sets θ, mass defect and, where it gives way, speed of all stations. `exponent` is that of
@@ -77,32 +70,6 @@ pub(super) fn march(
         }
     }
     (transition, departed)
-}
-
-/// One sweep along a side: `response` gives, for a station and the mass defects as they have become
-/// so far, the speed without its own mass defect and the change with it. `changed` hears of each
-/// new mass defect.
-pub(super) fn sweep(
-    stations: &mut [Station],
-    around: &Surroundings,
-    mut response: impl FnMut(&[Station], usize) -> [f64; 2],
-) {
-    let mut transition = None;
-    if around.wake {
-        settle_station(stations, 0, around, &mut transition);
-    } else {
-        start(&mut stations[0], around, 1.0);
-    }
-    for i in 1..stations.len() {
-        let old = stations[i];
-        let [rest, slope] = response(stations, i);
-        let given = Given::Response { rest, slope };
-        if slope <= 0.0 || !solve_station(stations, i, around, &mut transition, given) {
-            stations[i] = old;
-            transition = transition.filter(|transition: &Transition| transition.behind < i);
-            settle_station(stations, i, around, &mut transition);
-        }
-    }
 }
 
 fn shape(station: &Station) -> f64 {
@@ -154,11 +121,8 @@ fn solve_station(
     let mut second = match given {
         Given::Speed => ahead.delta_star,
         Given::Shape(_) => here.speed,
-        Given::Response { .. } => here.mass,
     };
-    if !matches!(given, Given::Response { .. }) {
-        here.theta = ahead.theta;
-    }
+    here.theta = ahead.theta;
     for _ in 0..MOST_STEPS {
         let here = &mut stations[i];
         match given {
@@ -167,16 +131,12 @@ fn solve_station(
                 here.speed = second;
                 here.delta_star = shape * here.theta;
             }
-            Given::Response { rest, slope } => {
-                here.speed = (rest + slope * second).max(LEAST_SPEED);
-                here.delta_star = (second / here.speed - here.gap).max(LEAST_SHAPE * here.theta);
-            }
         }
         here.mass = here.own_mass();
         *transition = transition.filter(|transition| transition.behind < i);
         settle_station(stations, i, around, transition);
         let r = equations(stations, i, transition.as_ref(), around.reynolds);
-        let [step_theta, step_second] = newton_step(&r, given, &stations[i]);
+        let [step_theta, step_second] = newton_step(&r, given);
         let here = &mut stations[i];
         let size = (step_theta / here.theta).abs().max((step_second / second).abs());
         if !size.is_finite() {
@@ -197,7 +157,7 @@ fn solve_station(
 
 /// Newton's step of θ and δ*, or of θ and the speed, at the second station of an interval; the
 /// shear stress is a function of them by its own equation.
-fn newton_step(r: &Residual<VARIABLES>, given: Given, here: &Station) -> [f64; 2] {
+fn newton_step(r: &Residual<VARIABLES>, given: Given) -> [f64; 2] {
     let [shear, theta, delta_star, speed] = SECOND;
     let by_shear = r.shear.slope[shear];
     let reduced = |equation: &Dual<VARIABLES>| {
@@ -208,10 +168,6 @@ fn newton_step(r: &Residual<VARIABLES>, given: Given, here: &Station) -> [f64; 2
         match given {
             Given::Speed => [by(theta), by(delta_star), value],
             Given::Shape(shape) => [by(theta) + shape * by(delta_star), by(speed), value],
-            Given::Response { slope, .. } => {
-                let by_speed = by(speed) - by(delta_star) * (here.delta_star + here.gap) / here.speed;
-                [by(theta), by(delta_star) / here.speed + slope * by_speed, value]
-            }
         }
     };
     let (a, b) = (reduced(&r.momentum), reduced(&r.shape));

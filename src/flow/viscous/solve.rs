@@ -1,6 +1,6 @@
 //! From a first account to the converged flow at one incidence.
 
-use super::march::{march, sweep};
+use super::march::march;
 use super::newton::{Step, newton_step};
 use super::side::Station;
 use super::state::{Layers, Problem, Unknowns, begin_wake};
@@ -18,9 +18,8 @@ const SPEED_CHANGE: f64 = 0.25;
 /// Least shape factor that a step may leave.
 const LEAST_SHAPE: f64 = 1.02;
 
-/// Sweeps that smooth the first account.
-const SWEEPS: usize = 6;
-
+/// Part of the chord ahead of the trailing edge where the first account keeps the speed level.
+const RELIEF: f64 = 0.05;
 /// How it went.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub(super) struct Convergence {
@@ -33,7 +32,7 @@ pub(super) struct Convergence {
 /// A first account by one march along the speeds without layers.
 pub(super) fn first_account(problem: &Problem, nose: usize) -> Option<Unknowns> {
     let count = problem.coupling.count();
-    let speed = problem.outer.speed.clone();
+    let speed = relieved(problem);
     let stagnation = problem.stagnation_node(&speed, nose)?;
     let mut unknowns =
         Unknowns { theta: vec![1e-4; count], delta_star: vec![2e-4; count], mass: vec![2e-4; count], stagnation };
@@ -43,7 +42,6 @@ pub(super) fn first_account(problem: &Problem, nose: usize) -> Option<Unknowns> 
     for (side, stations) in [&mut *upper, &mut *lower].into_iter().enumerate() {
         march(stations, &problem.around(side, place.length), 1.0);
     }
-    if std::env::var("VISCOUS_MARCH").is_ok() { for s in upper.iter() { eprintln!("{} xi {:.5} ue {:.4} inv {:.4} th {:.3e} H {:.3} N {:.2} {} {:?}", s.index, s.xi, s.speed, problem.outer.speed[s.index], s.theta, s.delta_star/s.theta, s.amplification, s.turbulent, problem.outer.response(s.index)[s.index]); } }
     begin_wake(upper, lower, wake, problem.reynolds);
     if let (Some(a), Some(b), Some(first)) = (upper.last(), lower.last(), wake.first_mut()) {
         first.mass = a.mass + b.mass + problem.base() * first.speed;
@@ -51,44 +49,31 @@ pub(super) fn first_account(problem: &Problem, nose: usize) -> Option<Unknowns> 
     }
     march(wake, &problem.around(2, place.length), 1.0);
     unknowns.take(&sides);
-    let mut mass = Problem::signed_mass(&unknowns);
-    let edge = problem.coupling.surface;
-    for _ in 0..std::env::var("SWEEPS").ok().and_then(|s| s.parse().ok()).unwrap_or(SWEEPS) {
-        for side in 0..3 {
-            let (before, rest) = sides.split_at_mut(2);
-            let stations = if side < 2 { &mut before[side] } else { &mut rest[0] };
-            let last = stations.len() - 1;
-            sweep(stations, &problem.around(side, place.length), |stations, i| {
-                // What lies ahead has been settled anew.
-                let ahead = &stations[i - 1];
-                mass[ahead.index] = ahead.sign * ahead.mass;
-                let here = &stations[i];
-                let row = problem.outer.response(here.index);
-                let mut slope = row[here.index];
-                if side < 2 && i == last {
-                    slope += here.sign * row[edge];
-                }
-                let all: f64 = std::iter::zip(row, &mass).map(|(row, mass)| row * mass).sum();
-                let speed = here.sign * (problem.outer.speed[here.index] + all);
-                [speed - slope * here.mass, slope]
-            });
-            mass[stations[last].index] = stations[last].sign * stations[last].mass;
-            if side == 1 {
-                let [upper, lower, wake] = &mut sides;
-                begin_wake(upper, lower, wake, problem.reynolds);
-                if let (Some(a), Some(b), Some(first)) = (upper.last(), lower.last(), wake.first_mut()) {
-                    first.speed = 0.5 * (a.speed + b.speed);
-                    first.mass = a.mass + b.mass + problem.base() * first.speed;
-                    first.delta_star = first.mass / first.speed - first.gap;
-        first.delta_star = first.mass / first.speed - first.gap;
-                    mass[first.index] = first.mass;
-                }
-            }
-        }
-        if std::env::var("VISCOUS_TRACE").is_ok() { let u = &sides[0][sides[0].len()-1]; eprintln!("sweep te H {} u {}", u.delta_star/u.theta, u.speed); }
-    }
-    unknowns.take(&sides);
     Some(unknowns)
+}
+
+/// Speeds without layers, but for the fall towards the trailing edge, which the layers relieve: it
+/// stops a little ahead of the edge, and the wake begins from there.
+fn relieved(problem: &Problem) -> Vec<f64> {
+    let coupling = problem.coupling;
+    let mut speed = problem.outer.speed.clone();
+    let last = coupling.surface - 1;
+    let ahead = |station: usize| coupling.points[station].x < 1.0 - RELIEF;
+    let upper = (0..last).find(|&i| ahead(i)).map_or(-1.0, |i| speed[i]);
+    let lower = (0..last).rev().find(|&i| ahead(i)).map_or(1.0, |i| speed[i]);
+    let edge = 0.5 * (lower - upper);
+    for i in (0..last).take_while(|&i| !ahead(i)) {
+        let part = (1.0 - coupling.points[i].x).max(0.0) / RELIEF;
+        speed[i] = part * upper - (1.0 - part) * edge;
+    }
+    for i in (0..=last).rev().take_while(|&i| !ahead(i)) {
+        let part = (1.0 - coupling.points[i].x).max(0.0) / RELIEF;
+        speed[i] = part * lower + (1.0 - part) * edge;
+    }
+    for speed in &mut speed[coupling.surface..] {
+        *speed = speed.max(edge);
+    }
+    speed
 }
 
 /// Newton's method from `unknowns` on. Leaves the last layers whether or not it converged.
@@ -104,6 +89,7 @@ pub(super) fn converge(problem: &Problem, unknowns: &mut Unknowns) -> Option<(La
         apply(unknowns, &layers, &step, part);
         change = size;
         if std::env::var("VISCOUS_TRACE").is_ok() {
+            if let Some(w) = layers.sides.iter().flatten().max_by(|a, b| { let f = |s: &Station| (step.theta[s.index] / s.theta).abs().max((thicker(s, &step) / s.delta_star).abs()); f(a).total_cmp(&f(b)) }) { eprintln!("  worst {} u {:.4} held {} th {:.3e} dth {:.2e} H {:.3} dd {:.2e} xi {:.5}", w.index, w.speed, w.held, w.theta, step.theta[w.index]/w.theta, w.delta_star/w.theta, thicker(w,&step)/w.delta_star, w.xi); }
             eprintln!("step {steps} size {size:.2e} part {part:.3} residual {:.2e} stag {} tr {:?}", step.residual, layers.node,
                [0,1].map(|s| layers.transitions[s].map(|t| (t.behind, t.xi))));
         }

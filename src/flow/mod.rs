@@ -14,4 +14,6 @@ mod viscous;
 pub use error::FlowError;
 pub use panelling::{DEFAULT_PANELS, LEAST_PANELS, MOST_PANELS, Panelling};
 pub use potential::{PotentialFlow, PressurePoint, Solution};
-pub use viscous::{Conditions, Viscous};
+pub use viscous::{
+    Conditions, CurvePoint, LayerPoint, LiftCurve, SideFlow, Viscous, ViscousError, ViscousSolution, ViscousState,
+};

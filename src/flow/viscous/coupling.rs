@@ -105,6 +105,16 @@ impl Coupling {
         self.points.len()
     }
 
+    /// Incidence without lift and layers, in radians: that of no circulation.
+    pub(super) fn zero_lift(&self) -> f64 {
+        let sum = |speed: &[f64]| -> f64 {
+            let ends = std::iter::zip(self.length.windows(2), speed.windows(2)).take(self.surface - 1);
+            ends.map(|(length, speed)| 0.5 * (length[1] - length[0]) * (speed[0] + speed[1])).sum()
+        };
+        let [along, across] = [&self.surface_speed[0], &self.surface_speed[1]].map(|speed| sum(speed));
+        along.atan2(-across)
+    }
+
     pub(super) fn at(&self, incidence: f64) -> OuterFlow<'_> {
         let (sin, cos) = incidence.sin_cos();
         let (count, surface) = (self.count(), self.surface);

@@ -65,7 +65,7 @@ pub(super) struct Layer<const N: usize> {
 }
 
 /// Least shape factor that is looked at: closures are singular at one.
-const LEAST_SHAPE: f64 = 1.005;
+const LEAST_SHAPE: f64 = 1.0005;
 
 impl<const N: usize> Layer<N> {
     pub(super) fn of(regime: Regime, profile: &Profile<N>, reynolds: f64) -> Self {

@@ -1,80 +1,193 @@
 //! Viscous flow about a section: boundary layers and wake coupled to the potential flow.
+//!
+//! The method, with its equations and sources, stands in `docs/viscous-flow.md`.
 
 mod closure;
 mod coupling;
+mod curve;
 mod dual;
 mod interval;
 mod layer;
 mod march;
 mod newton;
 mod side;
+mod solution;
 mod solve;
 mod sources;
 mod state;
 mod wake;
 
+pub use curve::{CurvePoint, LiftCurve};
+pub use solution::{LayerPoint, SideFlow, ViscousSolution};
+
 use super::{FlowError, Panelling};
 use coupling::Coupling;
-use solve::{converge, first_account};
-use state::Problem;
+use solve::{Convergence, converge, first_account};
+use state::{Problem, Unknowns};
 
 /// What the water and the surface are like.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Conditions {
-    /// Reynolds number by chord and onset speed.
+    /// Reynolds number by chord and onset speed: 1e3 to 1e9.
     pub reynolds: f64,
-    /// Amplification exponent N at which transition takes place.
+    /// Amplification exponent N at which transition takes place, 0.1 to 20: nine for a clean tank,
+    /// less in natural water.
     pub amplification: f64,
-    /// Where a trip makes the upper side turbulent, in chords.
+    /// Where a trip makes the upper side turbulent, in chords along x, 0 to 1.
     pub trip_upper: Option<f64>,
     /// The same for the lower side.
     pub trip_lower: Option<f64>,
 }
 
-/// Solver.
+/// Why there is no viscous flow to show.
+#[derive(Debug, Clone, Copy, PartialEq, thiserror::Error)]
+pub enum ViscousError {
+    /// The Reynolds number is out of range.
+    #[error("a Reynolds number of {0} is outside 1e3 to 1e9")]
+    Reynolds(f64),
+    /// The amplification exponent is out of range.
+    #[error("an amplification exponent of {0} is outside 0.1 to 20")]
+    Amplification(f64),
+    /// A trip lies off the chord.
+    #[error("a trip at {0} of the chord is outside 0 to 1")]
+    Trip(f64),
+    /// The incidence is not a finite angle.
+    #[error("an incidence of {0} is not a finite angle")]
+    Incidence(f64),
+    /// The equations did not converge.
+    #[error("the flow at {:.2}° did not converge in {steps} steps: the last changed it by {change:.1e}", .incidence.to_degrees())]
+    NotConverged {
+        /// In radians.
+        incidence: f64,
+        /// Newton steps that were made.
+        steps: usize,
+        /// Greatest relative change of a thickness in the last of them.
+        change: f64,
+    },
+}
+
+impl Conditions {
+    /// Free transition at amplification exponent `amplification`.
+    #[must_use]
+    pub fn free(reynolds: f64, amplification: f64) -> Self {
+        Self { reynolds, amplification, trip_upper: None, trip_lower: None }
+    }
+
+    /// With trips on both sides at `x`.
+    #[must_use]
+    pub fn tripped(self, x: f64) -> Self {
+        Self { trip_upper: Some(x), trip_lower: Some(x), ..self }
+    }
+
+    fn check(&self) -> Result<(), ViscousError> {
+        if !(1e3..=1e9).contains(&self.reynolds) {
+            return Err(ViscousError::Reynolds(self.reynolds));
+        }
+        if !(0.1..=20.0).contains(&self.amplification) {
+            return Err(ViscousError::Amplification(self.amplification));
+        }
+        match [self.trip_upper, self.trip_lower].into_iter().flatten().find(|x| !(0.0..=1.0).contains(x)) {
+            Some(bad) => Err(ViscousError::Trip(bad)),
+            None => Ok(()),
+        }
+    }
+}
+
+/// Layers at one incidence, to start a neighbouring point from.
+#[derive(Debug, Clone, PartialEq)]
+pub struct ViscousState {
+    unknowns: Unknowns,
+}
+
+/// Viscous flow about one outline, put up and factored once for every incidence, Reynolds number
+/// and transition.
+#[derive(Debug, Clone, PartialEq)]
 pub struct Viscous {
     panelling: Panelling,
     coupling: Coupling,
 }
 
 impl Viscous {
-    /// Factors.
+    /// Assembles and factors the outer flow and its answer to sources on surface and wake.
+    ///
+    /// # Errors
+    /// When the equations have no finite solution.
     pub fn new(panelling: &Panelling) -> Result<Self, FlowError> {
         Ok(Self { panelling: panelling.clone(), coupling: Coupling::of(panelling)? })
     }
 
-    /// Debug.
-    pub fn debug(&self, incidence: f64, conditions: &Conditions) {
+    /// The nodes and panels it is solved on.
+    #[must_use]
+    pub fn panelling(&self) -> &Panelling {
+        &self.panelling
+    }
+
+    /// Flow at `incidence` in radians, from the state of a neighbouring point if one is given, or
+    /// if that does not lead there, from a first account of its own.
+    ///
+    /// # Errors
+    /// When conditions or incidence are out of range, or the equations do not converge: then there
+    /// is no flow to show, and none is made up.
+    pub fn at(
+        &self,
+        incidence: f64,
+        conditions: &Conditions,
+        start: Option<&ViscousState>,
+    ) -> Result<ViscousSolution, ViscousError> {
+        conditions.check()?;
+        if !incidence.is_finite() {
+            return Err(ViscousError::Incidence(incidence));
+        }
+        let from_start = start.map(|state| self.solve(incidence, conditions, Some(state)));
+        let last = match from_start {
+            Some(Ok(solution)) => return Ok(solution),
+            _ => self.solve(incidence, conditions, None),
+        };
+        last.map_err(|convergence| ViscousError::NotConverged {
+            incidence,
+            steps: convergence.steps,
+            change: convergence.change,
+        })
+    }
+
+    /// Incidence of zero lift without layers, in radians.
+    fn zero_lift(&self) -> f64 {
+        self.coupling.zero_lift()
+    }
+
+    fn attempt(
+        &self,
+        incidence: f64,
+        conditions: &Conditions,
+        start: Option<&ViscousState>,
+    ) -> Option<ViscousSolution> {
+        self.solve(incidence, conditions, start).ok()
+    }
+
+    fn solve(
+        &self,
+        incidence: f64,
+        conditions: &Conditions,
+        start: Option<&ViscousState>,
+    ) -> Result<ViscousSolution, Convergence> {
         let problem = Problem::new(&self.coupling, incidence, conditions);
-        let nose = self.panelling.len() / 2;
-        if std::env::var("VISCOUS_TE").is_ok() {
-            let ns = self.coupling.surface;
-            let mu: Vec<f64> = self.coupling.points.iter().enumerate().map(|(i,p)| if i < nose { -0.004*p.x*p.x } else if i < ns { 0.004*p.x*p.x } else { 0.008*(-(p.x-1.0)/0.3).exp()*(1.0+(p.x-1.0)*(2.0+1.0/0.3)) }).collect();
-            let zero = vec![0.0; mu.len()];
-            let a = problem.outer.speeds(&mu); let b = problem.outer.speeds(&zero);
-            for i in (0..12).chain(ns-4..ns+12) { eprintln!("{i} x {:.4} inv {:.4} change {:.4}", self.coupling.points[i].x, b[i], a[i]-b[i]); }
-        }
-        let Some(mut unknowns) = first_account(&problem, nose) else { eprintln!("no account"); return };
-        if std::env::var("VISCOUS_CHECK").is_ok() { solve::check(&problem, &unknowns); return; }
-        if std::env::var("VISCOUS_START").is_ok() {
-        let layers = problem.layers(&mut unknowns);
-        for side in &layers.sides { for s in side {
-            let p = self.coupling.points[s.index];
-            eprintln!("{} x {:.4} xi {:.4} ue {:.4} th {:.3e} H {:.3} N {:.2} C {:.4} turb {}", s.index, p.x, s.xi, s.speed, s.theta, s.delta_star/s.theta, s.amplification, s.shear, s.turbulent);
-        } }
-        }
-        let Some((layers, convergence)) = converge(&problem, &mut unknowns) else { eprintln!("broke"); return };
-        let last = layers.sides[2].last().expect("wake");
-        let cd = 2.0*last.theta*last.speed.powf(0.5*(last.delta_star/last.theta+5.0));
-        let loads = super::loads::loads(&self.panelling, &layers.speed[..self.coupling.surface]);
-        let cl = loads.force.y * incidence.cos() - loads.force.x * incidence.sin();
-        let tr = [0,1].map(|k| layers.transitions[k].map(|t| self.coupling.points[layers.sides[k][t.behind].index].x));
-        eprintln!("alpha {:.2} {convergence:?} cl {cl:.4} cd {cd:.5} cm {:.4} tr {tr:?}", incidence.to_degrees(), loads.moment);
-        if std::env::var("VISCOUS_END").is_ok() {
-        for side in &layers.sides { for s in side {
-            let p = self.coupling.points[s.index];
-            eprintln!("{} x {:.4} xi {:.4} ue {:.4} th {:.3e} H {:.3} N {:.2} C {:.4} turb {}", s.index, p.x, s.xi, s.speed, s.theta, s.delta_star/s.theta, s.amplification, s.shear, s.turbulent);
-        } }
-        }
+        let fits = |state: &&ViscousState| state.unknowns.theta.len() == self.coupling.count();
+        let unknowns = match start.filter(fits) {
+            Some(state) => Some(state.unknowns.clone()),
+            None => first_account(&problem, self.panelling.len() / 2),
+        };
+        let nothing = Convergence { steps: 0, change: f64::INFINITY, converged: false };
+        let mut unknowns = unknowns.ok_or(nothing)?;
+        let (layers, convergence) = converge(&problem, &mut unknowns).ok_or(nothing)?;
+        let solution = ViscousSolution::of(
+            &self.panelling,
+            &problem,
+            conditions,
+            incidence,
+            &layers,
+            unknowns,
+            convergence,
+        );
+        if convergence.converged && solution.is_finite() { Ok(solution) } else { Err(convergence) }
     }
 }

@@ -15,8 +15,8 @@ const FALL: f64 = 0.4;
 const RISE: f64 = 1.0;
 /// Largest change of a speed in a step.
 const SPEED_CHANGE: f64 = 0.25;
-/// Least shape factor that a step may leave.
-const LEAST_SHAPE: f64 = 1.02;
+/// Least shape factor that a step may leave, on the surface and in the wake.
+const LEAST_SHAPE: [f64; 2] = [1.05, 1.001];
 
 /// Part of the chord ahead of the trailing edge where the first account keeps the speed level.
 const RELIEF: f64 = 0.05;
@@ -137,12 +137,14 @@ fn thicker(station: &Station, step: &Step) -> f64 {
 }
 
 fn apply(unknowns: &mut Unknowns, layers: &Layers, step: &Step, part: f64) {
+    let surface = layers.sides[0].len() + layers.sides[1].len();
     for station in layers.sides.iter().flatten() {
         let i = station.index;
         let theta = station.theta + part * step.theta[i];
         let delta_star = station.delta_star + part * thicker(station, step);
         unknowns.theta[i] = theta;
-        unknowns.delta_star[i] = delta_star.max(LEAST_SHAPE * theta);
+        let least = LEAST_SHAPE[usize::from(i >= surface)] * theta;
+        unknowns.delta_star[i] = delta_star.max(least);
         unknowns.mass[i] = station.mass + part * station.sign * step.mass[i];
     }
 }

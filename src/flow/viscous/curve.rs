@@ -1,0 +1,174 @@
+//! Viscous flow over a range of incidence.
+
+use super::{Conditions, Viscous, ViscousError, ViscousSolution};
+
+/// Halvings of the way from a converged neighbour before a point is left as a gap.
+const HALVINGS: usize = 3;
+
+/// Lift, drag and moment over incidence.
+#[derive(Debug, Clone, PartialEq)]
+pub struct LiftCurve {
+    /// What it holds for.
+    pub conditions: Conditions,
+    /// How many panels it was solved on.
+    pub panels: usize,
+    /// In the order of growing incidence.
+    pub points: Vec<CurvePoint>,
+}
+
+/// One incidence of a curve.
+#[derive(Debug, Clone, PartialEq)]
+pub struct CurvePoint {
+    /// In radians.
+    pub incidence: f64,
+    /// `None` where no flow was found: a gap.
+    pub solution: Option<ViscousSolution>,
+}
+
+impl LiftCurve {
+    /// The flow at each of `incidences`, in radians.
+    ///
+    /// Starts where the layers have least to do, near zero lift, and goes on from neighbour to
+    /// neighbour both ways. A point that does not converge from its neighbour is started afresh,
+    /// then approached in smaller steps; what is left is tried again from the other side.
+    ///
+    /// # Errors
+    /// When the conditions or an incidence are out of range. A point that does not converge is a
+    /// gap and no error.
+    pub fn sweep(viscous: &Viscous, conditions: &Conditions, incidences: &[f64]) -> Result<Self, ViscousError> {
+        conditions.check()?;
+        let mut sorted = incidences.to_vec();
+        if let Some(&bad) = sorted.iter().find(|angle| !angle.is_finite()) {
+            return Err(ViscousError::Incidence(bad));
+        }
+        sorted.sort_by(f64::total_cmp);
+        sorted.dedup();
+        let mut points: Vec<CurvePoint> =
+            sorted.into_iter().map(|incidence| CurvePoint { incidence, solution: None }).collect();
+        let easy = viscous.zero_lift();
+        let first = (0..points.len())
+            .min_by(|&a, &b| (points[a].incidence - easy).abs().total_cmp(&(points[b].incidence - easy).abs()));
+        if let Some(first) = first {
+            let up: Vec<usize> = (first..points.len()).collect();
+            let down: Vec<usize> = (0..=first).rev().collect();
+            carry(viscous, conditions, &mut points, &up)?;
+            carry(viscous, conditions, &mut points, &down)?;
+            // Gaps, from the side that was not tried.
+            let all: Vec<usize> = (0..points.len()).collect();
+            let back: Vec<usize> = all.iter().rev().copied().collect();
+            carry(viscous, conditions, &mut points, &back)?;
+            carry(viscous, conditions, &mut points, &all)?;
+        }
+        Ok(Self { conditions: *conditions, panels: viscous.panelling().len(), points })
+    }
+
+    /// How many points converged.
+    #[must_use]
+    pub fn converged(&self) -> usize {
+        self.points.iter().filter(|point| point.solution.is_some()).count()
+    }
+
+    /// What was found, without the gaps.
+    pub fn solutions(&self) -> impl Iterator<Item = &ViscousSolution> {
+        self.points.iter().filter_map(|point| point.solution.as_ref())
+    }
+
+    /// Greatest lift coefficient and its incidence in radians, by the parabola through the greatest
+    /// point and its neighbours; `None` when the greatest is at an end of the curve, where lift may
+    /// still grow.
+    #[must_use]
+    pub fn greatest_lift(&self) -> Option<(f64, f64)> {
+        let found: Vec<[f64; 2]> = self.solutions().map(|s| [s.incidence, s.cl]).collect();
+        let best = (0..found.len()).max_by(|&a, &b| found[a][1].total_cmp(&found[b][1]))?;
+        if best == 0 || best + 1 == found.len() {
+            return None;
+        }
+        let [[a0, c0], [a1, c1], [a2, c2]] = [found[best - 1], found[best], found[best + 1]];
+        let (before, after) = ((c1 - c0) / (a1 - a0), (c2 - c1) / (a2 - a1));
+        let bend = (after - before) / (a2 - a0);
+        if bend >= 0.0 {
+            return Some((c1, a1));
+        }
+        // Newton's form: c = c0 + before (a − a0) + bend (a − a0)(a − a1).
+        let at = (0.5 * (a0 + a1 - before / bend)).clamp(a0, a2);
+        Some((c0 + before * (at - a0) + bend * (at - a0) * (at - a1), at))
+    }
+
+    /// Slope of lift per radian and incidence of zero lift in radians, by the straight line of
+    /// least squares through the points with a lift coefficient between -0.2 and 0.6; `None` with
+    /// fewer than two of them.
+    #[must_use]
+    pub fn slope_and_zero_lift(&self) -> Option<(f64, f64)> {
+        let used: Vec<[f64; 2]> =
+            self.solutions().map(|s| [s.incidence, s.cl]).filter(|p| (-0.2..=0.6).contains(&p[1])).collect();
+        let count = used.len() as f64;
+        let mean = |k: usize| used.iter().map(|p| p[k]).sum::<f64>() / count;
+        let (angle, lift) = (mean(0), mean(1));
+        let square: f64 = used.iter().map(|p| (p[0] - angle).powi(2)).sum();
+        let product: f64 = used.iter().map(|p| (p[0] - angle) * (p[1] - lift)).sum();
+        let slope = product / square;
+        (used.len() > 1 && slope.is_finite() && slope != 0.0).then(|| (slope, angle - lift / slope))
+    }
+
+    /// The point of least drag.
+    #[must_use]
+    pub fn least_drag(&self) -> Option<&ViscousSolution> {
+        self.solutions().min_by(|a, b| a.cd.total_cmp(&b.cd))
+    }
+}
+
+/// Solves what is still open along `order`, from neighbour to neighbour.
+fn carry(
+    viscous: &Viscous,
+    conditions: &Conditions,
+    points: &mut [CurvePoint],
+    order: &[usize],
+) -> Result<(), ViscousError> {
+    let mut last: Option<ViscousSolution> = None;
+    for &i in order {
+        if let Some(solution) = &points[i].solution {
+            last = Some(solution.clone());
+            continue;
+        }
+        let target = points[i].incidence;
+        let found = match &last {
+            Some(near) => match viscous.attempt(target, conditions, Some(&near.state)) {
+                Some(found) => Some(found),
+                None => match viscous.attempt(target, conditions, None) {
+                    Some(found) => Some(found),
+                    None => by_halves(viscous, conditions, near, target),
+                },
+            },
+            None => viscous.attempt(target, conditions, None),
+        };
+        if let Some(found) = found {
+            last = Some(found.clone());
+            points[i].solution = Some(found);
+        }
+    }
+    Ok(())
+}
+
+/// From a neighbour in steps that are halved when one fails.
+fn by_halves(
+    viscous: &Viscous,
+    conditions: &Conditions,
+    near: &ViscousSolution,
+    target: f64,
+) -> Option<ViscousSolution> {
+    let mut at = near.clone();
+    let mut step = 0.5 * (target - near.incidence);
+    let mut halvings = 1;
+    while halvings <= HALVINGS {
+        let next = if (target - at.incidence).abs() <= step.abs() * 1.001 { target } else { at.incidence + step };
+        match viscous.attempt(next, conditions, Some(&at.state)) {
+            Some(found) if next == target => return Some(found),
+            Some(found) => at = found,
+            None => {
+                step *= 0.5;
+                halvings += 1;
+            }
+        }
+    }
+    None
+}

@@ -16,4 +16,5 @@ pub use panelling::{DEFAULT_PANELS, LEAST_PANELS, MOST_PANELS, Panelling};
 pub use potential::{PotentialFlow, PressurePoint, Solution};
 pub use viscous::{
     Conditions, CurvePoint, LayerPoint, LiftCurve, SideFlow, Viscous, ViscousError, ViscousSolution, ViscousState,
+    layer_along,
 };

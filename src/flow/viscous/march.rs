@@ -45,7 +45,9 @@ pub(super) fn march(
         let wanted = stations[i].speed;
         let solved = solve_station(stations, i, around, &mut transition, Given::Speed);
         let most = if stations[i].turbulent { MOST_TURBULENT_SHAPE } else { MOST_LAMINAR_SHAPE };
-        if solved && shape(&stations[i]) < most {
+        // Behind transition the shape factor is still that of the laminar layer, but falls.
+        let falling = stations[i].turbulent && shape(&stations[i]) < shape(&stations[i - 1]);
+        if solved && (shape(&stations[i]) < most || falling) {
             continue;
         }
         departed = departed.or(Some(i));

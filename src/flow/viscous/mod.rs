@@ -10,6 +10,7 @@ mod interval;
 mod layer;
 mod march;
 mod newton;
+mod prescribed;
 mod side;
 mod solution;
 mod solve;
@@ -18,6 +19,7 @@ mod state;
 mod wake;
 
 pub use curve::{CurvePoint, LiftCurve};
+pub use prescribed::layer_along;
 pub use solution::{LayerPoint, SideFlow, ViscousSolution};
 
 use super::{FlowError, Panelling};
@@ -54,6 +56,9 @@ pub enum ViscousError {
     /// The incidence is not a finite angle.
     #[error("an incidence of {0} is not a finite angle")]
     Incidence(f64),
+    /// A station of a given edge speed is not finite, positive and beyond the one before.
+    #[error("station {0} of the edge speed is not finite, positive and beyond the one before")]
+    Station(usize),
     /// The equations did not converge.
     #[error("the flow at {:.2}° did not converge in {steps} steps: the last changed it by {change:.1e}", .incidence.to_degrees())]
     NotConverged {

@@ -89,7 +89,7 @@ impl LayerPoint {
         self.delta_star / self.theta
     }
 
-    fn of(station: &Station, at: Point, reynolds: f64, wake: bool) -> Self {
+    pub(super) fn of(station: &Station, at: Point, reynolds: f64, wake: bool) -> Self {
         let h: Dual<0> = Dual::constant((station.delta_star / station.theta).max(1.0005));
         let re_theta = station.speed * station.theta * reynolds;
         let cf = match (wake, station.turbulent) {

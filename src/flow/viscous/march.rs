@@ -4,6 +4,8 @@
 //! Where a layer separates, no thickness belongs to a given speed (Goldstein 1948). From there the
 //! shape factor is given instead, and the speed follows: the inverse problem.
 
+use std::ops::Range;
+
 use super::dual::Dual;
 use super::interval::{SECOND, Residual, VARIABLES, similar};
 use super::layer::Layer;
@@ -19,11 +21,16 @@ const LEAST_SHAPE: f64 = 1.02;
 const MOST_LAMINAR_SHAPE: f64 = 3.7;
 const MOST_TURBULENT_SHAPE: f64 = 2.3;
 
+/// Least speed on the way.
+const LEAST_SPEED: f64 = 0.01;
+
 /// What is given at a station.
 #[derive(Debug, Clone, Copy, PartialEq)]
 enum Given {
     Speed,
     Shape(f64),
+    /// Speed without the mass defect of the station itself, and its change with that.
+    Response { rest: f64, slope: f64 },
 }
 
 /// Sets θ, mass defect and, where it gives way, speed of all stations. `exponent` is that of
@@ -72,6 +79,34 @@ pub(super) fn march(
         }
     }
     (transition, departed)
+}
+
+/// Sets the stations of `range` anew, those ahead of it being settled: at each the speed follows the
+/// mass defect by `response(station, of)`, the change of speed at a station by the mass defect of
+/// another, both along the side (quasi-simultaneous coupling, A. E. P. Veldman, AIAA Journal 19
+/// (1), 1981). A station without solution stays as it is.
+pub(super) fn adjust(
+    stations: &mut [Station],
+    around: &Surroundings,
+    transition: Option<Transition>,
+    range: Range<usize>,
+    response: impl Fn(&Station, &Station) -> f64,
+) {
+    let mut transition = transition;
+    let old = stations.to_vec();
+    for i in range.clone() {
+        let changed: f64 = (range.start..i)
+            .map(|j| response(&old[i], &old[j]) * (stations[j].mass - old[j].mass))
+            .sum();
+        let slope = response(&old[i], &old[i]);
+        let rest = old[i].speed + changed - slope * old[i].mass;
+        let given = Given::Response { rest, slope };
+        if slope <= 0.0 || !solve_station(stations, i, around, &mut transition, given) {
+            stations[i] = old[i];
+            transition = transition.filter(|transition: &Transition| transition.behind < i);
+            settle_station(stations, i, around, &mut transition);
+        }
+    }
 }
 
 fn shape(station: &Station) -> f64 {
@@ -123,6 +158,7 @@ fn solve_station(
     let mut second = match given {
         Given::Speed => ahead.delta_star,
         Given::Shape(_) => here.speed,
+        Given::Response { .. } => here.mass,
     };
     here.theta = ahead.theta;
     for _ in 0..MOST_STEPS {
@@ -133,12 +169,16 @@ fn solve_station(
                 here.speed = second;
                 here.delta_star = shape * here.theta;
             }
+            Given::Response { rest, slope } => {
+                here.speed = (rest + slope * second).max(LEAST_SPEED);
+                here.delta_star = (second / here.speed - here.gap).max(LEAST_SHAPE * here.theta);
+            }
         }
         here.mass = here.own_mass();
         *transition = transition.filter(|transition| transition.behind < i);
         settle_station(stations, i, around, transition);
         let r = equations(stations, i, transition.as_ref(), around.reynolds);
-        let [step_theta, step_second] = newton_step(&r, given);
+        let [step_theta, step_second] = newton_step(&r, given, &stations[i]);
         let here = &mut stations[i];
         let size = (step_theta / here.theta).abs().max((step_second / second).abs());
         if !size.is_finite() {
@@ -147,7 +187,11 @@ fn solve_station(
         if size < TOLERANCE {
             return true;
         }
-        let part = (0.3 / size).min(1.0);
+        let mut part = (0.3 / size).min(1.0);
+        if let Given::Response { slope, .. } = given {
+            // The speed answers to a small part of the mass defect.
+            part = part.min(0.1 * here.speed / (slope * step_second).abs().max(1e-12));
+        }
         here.theta += part * step_theta;
         second += part * step_second;
         if given == Given::Speed {
@@ -159,7 +203,7 @@ fn solve_station(
 
 /// Newton's step of θ and δ*, or of θ and the speed, at the second station of an interval; the
 /// shear stress is a function of them by its own equation.
-fn newton_step(r: &Residual<VARIABLES>, given: Given) -> [f64; 2] {
+fn newton_step(r: &Residual<VARIABLES>, given: Given, here: &Station) -> [f64; 2] {
     let [shear, theta, delta_star, speed] = SECOND;
     let by_shear = r.shear.slope[shear];
     let reduced = |equation: &Dual<VARIABLES>| {
@@ -170,6 +214,10 @@ fn newton_step(r: &Residual<VARIABLES>, given: Given) -> [f64; 2] {
         match given {
             Given::Speed => [by(theta), by(delta_star), value],
             Given::Shape(shape) => [by(theta) + shape * by(delta_star), by(speed), value],
+            Given::Response { slope, .. } => {
+                let by_speed = by(speed) - by(delta_star) * (here.delta_star + here.gap) / here.speed;
+                [by(theta), by(delta_star) / here.speed + slope * by_speed, value]
+            }
         }
     };
     let (a, b) = (reduced(&r.momentum), reduced(&r.shape));

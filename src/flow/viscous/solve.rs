@@ -1,8 +1,8 @@
 //! From a first account to the converged flow at one incidence.
 
-use super::march::march;
+use super::march::{adjust, march};
 use super::newton::{Step, newton_step};
-use super::side::Station;
+use super::side::{Station, Transition};
 use super::state::{Layers, Problem, Unknowns, begin_wake};
 
 /// Newton steps before a point is given up.
@@ -18,6 +18,8 @@ const SPEED_CHANGE: f64 = 0.25;
 /// Least shape factor that a step may leave, on the surface and in the wake.
 const LEAST_SHAPE: [f64; 2] = [1.05, 1.001];
 
+/// Stations behind transition that are set anew when it moves, and those kept clear of at the end.
+const FOLLOWED: usize = 5;
 /// Part of the chord ahead of the trailing edge where the first account keeps the speed level.
 const RELIEF: f64 = 0.05;
 /// How it went.
@@ -87,6 +89,7 @@ pub(super) fn converge(problem: &Problem, unknowns: &mut Unknowns) -> Option<(La
             return None;
         }
         apply(unknowns, &layers, &step, part);
+        follow_transition(problem, unknowns, &layers);
         change = size;
         if std::env::var("VISCOUS_TRACE").is_ok() {
             if let Some(w) = layers.sides.iter().flatten().max_by(|a, b| { let f = |s: &Station| (step.theta[s.index] / s.theta).abs().max((thicker(s, &step) / s.delta_star).abs()); f(a).total_cmp(&f(b)) }) { eprintln!("  worst {} u {:.4} held {} th {:.3e} dth {:.2e} H {:.3} dd {:.2e} xi {:.5}", w.index, w.speed, w.held, w.theta, step.theta[w.index]/w.theta, w.delta_star/w.theta, thicker(w,&step)/w.delta_star, w.xi); }
@@ -100,6 +103,37 @@ pub(super) fn converge(problem: &Problem, unknowns: &mut Unknowns) -> Option<(La
     }
     let layers = problem.layers(unknowns);
     Some((layers, Convergence { steps: MOST_STEPS, change, converged: false }))
+}
+
+/// Where transition has moved over stations, sets the layers about it anew: they are still those of
+/// the other regime, and would throw the next step off.
+fn follow_transition(problem: &Problem, unknowns: &mut Unknowns, before: &Layers) {
+    let layers = problem.layers(unknowns);
+    if layers.node != before.node {
+        return;
+    }
+    let mut sides = layers.sides;
+    let mut any = false;
+    for side in [0, 1] {
+        let count = sides[side].len();
+        let place = |transition: Option<Transition>| transition.map_or(count, |transition| transition.behind);
+        let (old, new) = (place(before.transitions[side]), place(layers.transitions[side]));
+        if old == new {
+            continue;
+        }
+        let range = old.min(new)..(old.max(new) + FOLLOWED).min(count.saturating_sub(FOLLOWED));
+        if range.is_empty() || range.start < 2 {
+            continue;
+        }
+        any = true;
+        let around = problem.around(side, layers.stagnation.length);
+        adjust(&mut sides[side], &around, layers.transitions[side], range, |of, by| {
+            of.sign * by.sign * problem.outer.response(of.index)[by.index]
+        });
+    }
+    if any {
+        unknowns.take(&sides);
+    }
 }
 
 /// Part of the step that keeps changes within bounds, and the greatest relative change of θ and δ*.

@@ -182,32 +182,3 @@ fn apply(unknowns: &mut Unknowns, layers: &Layers, step: &Step, part: f64) {
         unknowns.mass[i] = station.mass + part * station.sign * step.mass[i];
     }
 }
-
-pub(super) fn check(problem: &Problem, unknowns: &Unknowns) {
-    use super::side::equations;
-    use super::interval::similar;
-    let all = |unknowns: &mut Unknowns| {
-        let layers = problem.layers(unknowns);
-        let mut out = Vec::new();
-        for (k, side) in layers.sides.iter().enumerate() {
-            if k < 2 { let s = &side[0]; let r = similar(&s.layer, super::dual::Dual::constant(s.xi), 1.0); out.push((s.index, [r.momentum.value, r.shape.value, 0.0])); }
-            for i in 1..side.len() {
-                let r = equations(side, i, layers.transitions.get(k).and_then(|t| t.as_ref()), problem.reynolds);
-                out.push((side[i].index, [r.momentum.value, r.shape.value, r.shear.value]));
-            }
-        }
-        (layers, out)
-    };
-    let mut u = unknowns.clone();
-    let (layers, _) = all(&mut u);
-    let (layers, before) = { let _ = layers; all(&mut u) };
-    let Some(step) = newton_step(problem, &layers) else { eprintln!("none"); return };
-    let part = 1e-6;
-    let mut v = u.clone();
-    apply(&mut v, &layers, &step, part);
-    let (_, after) = all(&mut v);
-    for (b, a) in before.iter().zip(&after) {
-        let e: Vec<String> = (0..3).map(|k| format!("{:.3e}/{:.3e}", (a.1[k] - b.1[k]) / part, -b.1[k])).collect();
-        eprintln!("{} {}", b.0, e.join("  "));
-    }
-}

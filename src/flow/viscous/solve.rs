@@ -11,10 +11,10 @@ const MOST_STEPS: usize = 60;
 /// the order of its square.
 const TOLERANCE: f64 = 1e-5;
 /// Largest part by which θ or δ* may fall, or rise, in a step.
-const FALL: f64 = 0.4;
-const RISE: f64 = 1.0;
+const FALL: f64 = 0.3;
+const RISE: f64 = 0.5;
 /// Largest change of a speed in a step.
-const SPEED_CHANGE: f64 = 0.25;
+const SPEED_CHANGE: f64 = 0.08;
 /// Least shape factor that a step may leave, on the surface and in the wake.
 const LEAST_SHAPE: [f64; 2] = [1.05, 1.001];
 

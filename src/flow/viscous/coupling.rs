@@ -6,7 +6,7 @@
 //! thickness", Journal of Fluid Mechanics 4). Here they are even over each panel, so that each
 //! panel gives what the mass defect grows by between its nodes.
 
-use super::sources::{mean_speed_in_line, surface_stream_function, velocities, wake_stream_function};
+use super::sources::{mean_speed_in_line, surface_stream_function, velocities, wake_stream_functions};
 use super::wake::wake_line;
 use crate::flow::edge::Base;
 use crate::flow::potential::surface_speeds;
@@ -32,6 +32,17 @@ pub(super) struct Coupling {
     surface_response: Vec<f64>,
     /// Change of the velocities in the wake: rows of x, and rows of y.
     wake_response: [Vec<f64>; 2],
+    /// Change of speeds and velocities by unit circulation on each panel of the wake.
+    bend_response: Vec<BendResponse>,
+}
+
+/// What anticlockwise circulation on a panel of the wake does.
+#[derive(Debug, Clone, PartialEq)]
+struct BendResponse {
+    /// To the speeds at the surface.
+    surface: Vec<f64>,
+    /// To the velocities in the wake; along itself the wake feels nothing of it.
+    wake: Vec<Vec2>,
 }
 
 /// Speeds at one incidence: those without layers and their change by each mass defect.
@@ -40,7 +51,14 @@ pub(super) struct OuterFlow<'a> {
     coupling: &'a Coupling,
     /// Without layers, at all stations.
     pub(super) speed: Vec<f64>,
-    wake_response: Vec<f64>,
+    /// Rows of the change by each mass defect.
+    response: Vec<f64>,
+    /// Change by unit circulation on each panel of the wake: a column for each panel.
+    bend: Vec<Vec<f64>>,
+    /// The last columns of the rows of the wake, as they are without bending.
+    unbent: Vec<f64>,
+    /// By how much the flow turns along each panel of the wake, in radians.
+    turn: Vec<f64>,
 }
 
 impl Coupling {
@@ -49,10 +67,11 @@ impl Coupling {
         let wake = wake_line(panelling);
         let (surface, count) = (nodes.len(), nodes.len() + wake.len());
         let surface_sources = surface_stream_function(panelling);
-        let wake_sources = wake_stream_function(panelling, &wake);
+        let [wake_sources, wake_vortices] = wake_stream_functions(panelling, &wake);
+        let bends = wake_vortices.len();
 
         // Each mass defect feeds the panel before it and drains the one after it.
-        let (surface_speed, columns) = surface_speeds(panelling, count, |block, stride| {
+        let (surface_speed, mut columns) = surface_speeds(panelling, count + bends, |block, stride| {
             let mut add = |station: usize, source: &[f64], weight: f64| {
                 for (entry, value) in block[station * stride..].iter_mut().zip(source) {
                     *entry += weight * value;
@@ -68,7 +87,11 @@ impl Coupling {
                 add(surface + k + 1, source, weight);
                 add(surface + k, source, -weight);
             }
+            for (k, vortex) in wake_vortices.iter().enumerate() {
+                add(count + k, vortex, 1.0 / wake[k].distance(wake[k + 1]));
+            }
         })?;
+        let bend_columns = columns.split_off(count);
         let mut surface_response = vec![0.0; surface * count];
         for (j, column) in columns.iter().enumerate() {
             for (i, &value) in column.iter().enumerate() {
@@ -90,9 +113,24 @@ impl Coupling {
             fields.iter().map(|fields| onset + fields.of_vorticity(&surface_speed[k])).collect()
         });
         let wake_response = wake_response(&fields, &wake, &length[surface..], &columns);
+        let bend_response = bend_columns
+            .into_iter()
+            .map(|column| {
+                let wake = fields.iter().map(|fields| fields.of_vorticity(&column)).collect();
+                BendResponse { surface: column, wake }
+            })
+            .collect();
         let points = nodes.iter().chain(&wake).copied().collect();
-        let coupling =
-            Self { surface, points, length, surface_speed, wake_velocity, surface_response, wake_response };
+        let coupling = Self {
+            surface,
+            points,
+            length,
+            surface_speed,
+            wake_velocity,
+            surface_response,
+            wake_response,
+            bend_response,
+        };
         if coupling.wake_response.iter().flatten().all(|value| value.is_finite()) {
             Ok(coupling)
         } else {
@@ -125,17 +163,32 @@ impl Coupling {
         // The wake begins with the speed of both sides at the edge.
         speed.push(0.5 * (speed[last] - speed[0]));
         let row = |i: usize| &self.surface_response[i * count..][..count];
-        let mut wake_response: Vec<f64> =
-            std::iter::zip(row(last), row(0)).map(|(lower, upper)| 0.5 * (lower - upper)).collect();
+        let mut response = Vec::with_capacity(count * count);
+        response.extend_from_slice(&self.surface_response);
+        response.extend(std::iter::zip(row(last), row(0)).map(|(lower, upper)| 0.5 * (lower - upper)));
+        let leaves = (self.points[surface + 1] - self.points[surface]).normalize();
+        let mut directions = vec![leaves];
         for i in 1..count - surface {
             let velocity = cos * self.wake_velocity[0][i] + sin * self.wake_velocity[1][i];
             let size = velocity.hypot().max(1e-6);
             let direction = velocity / size;
             speed.push(size);
             let [x, y] = [0, 1].map(|k| &self.wake_response[k][i * count..][..count]);
-            wake_response.extend(std::iter::zip(x, y).map(|(x, y)| direction.x * x + direction.y * y));
+            response.extend(std::iter::zip(x, y).map(|(x, y)| direction.x * x + direction.y * y));
+            directions.push(direction);
         }
-        OuterFlow { coupling: self, speed, wake_response }
+        let bend = self
+            .bend_response
+            .iter()
+            .map(|by| {
+                let edge = 0.5 * (by.surface[last] - by.surface[0]);
+                let wake = std::iter::zip(&by.wake, &directions).skip(1).map(|(v, direction)| v.dot(*direction));
+                by.surface.iter().copied().chain(std::iter::once(edge)).chain(wake).collect()
+            })
+            .collect();
+        let turn = directions.windows(2).map(|pair| pair[0].cross(pair[1]).atan2(pair[0].dot(pair[1]))).collect();
+        let unbent = (surface..count).flat_map(|i| response[i * count + surface..(i + 1) * count].to_vec()).collect();
+        OuterFlow { coupling: self, speed, response, bend, unbent, turn }
     }
 }
 
@@ -143,10 +196,7 @@ impl OuterFlow<'_> {
     /// Change of the speed at a station by the mass defect of each.
     pub(super) fn response(&self, station: usize) -> &[f64] {
         let count = self.coupling.count();
-        match station.checked_sub(self.coupling.surface) {
-            None => &self.coupling.surface_response[station * count..][..count],
-            Some(wake) => &self.wake_response[wake * count..][..count],
-        }
+        &self.response[station * count..][..count]
     }
 
     /// Speeds with these mass defects, positive along the way.
@@ -154,6 +204,32 @@ impl OuterFlow<'_> {
         let change =
             |i: usize| std::iter::zip(self.response(i), mass).map(|(response, mass)| response * mass).sum::<f64>();
         self.speed.iter().enumerate().map(|(i, speed)| speed + change(i)).collect()
+    }
+
+    /// Lets the bending of the wake act, for shape factors `shape` at its stations.
+    ///
+    /// Where the wake is bent, its slow fluid needs less pressure across than the outer flow has: to
+    /// that flow the wake is a vortex sheet of strength κ u (δ* + θ), κ being the curvature (R. C.
+    /// Lock and M. C. P. Firmin, "Survey of techniques for estimating viscous effects in external
+    /// aerodynamics", in *Numerical Methods in Aeronautical Fluid Dynamics*, 1982). A panel's
+    /// circulation is the mass defect times 1 + 1/H times the angle by which the flow turns along
+    /// it; so it adds to the answer to the mass defects. The turn is that without layers.
+    pub(super) fn bend(&mut self, shape: &[f64]) {
+        let (count, surface) = (self.coupling.count(), self.coupling.surface);
+        let share = |k: usize| 0.5 * (1.0 + 1.0 / shape[k]);
+        for i in 0..count {
+            // From the rows as they are without bending.
+            let row = &mut self.response[i * count + surface..(i + 1) * count];
+            match i.checked_sub(surface) {
+                None => row.copy_from_slice(&self.coupling.surface_response[i * count + surface..][..count - surface]),
+                Some(_) => row.copy_from_slice(&self.unbent[(i - surface) * (count - surface)..][..count - surface]),
+            }
+            for (k, (bend, turn)) in std::iter::zip(&self.bend, &self.turn).enumerate() {
+                let speed = bend[i] * turn;
+                row[k] += share(k) * speed;
+                row[k + 1] += share(k + 1) * speed;
+            }
+        }
     }
 }
 

@@ -175,7 +175,7 @@ impl Viscous {
         conditions: &Conditions,
         start: Option<&ViscousState>,
     ) -> Result<ViscousSolution, Convergence> {
-        let problem = Problem::new(&self.coupling, incidence, conditions);
+        let mut problem = Problem::new(&self.coupling, incidence, conditions);
         let fits = |state: &&ViscousState| state.unknowns.theta.len() == self.coupling.count();
         let unknowns = match start.filter(fits) {
             Some(state) => Some(state.unknowns.clone()),
@@ -183,7 +183,7 @@ impl Viscous {
         };
         let nothing = Convergence { steps: 0, change: f64::INFINITY, converged: false };
         let mut unknowns = unknowns.ok_or(nothing)?;
-        let (layers, convergence) = converge(&problem, &mut unknowns).ok_or(nothing)?;
+        let (layers, convergence) = converge(&mut problem, &mut unknowns).ok_or(nothing)?;
         let solution = ViscousSolution::of(
             &self.panelling,
             &problem,

@@ -22,6 +22,9 @@ const LEAST_SHAPE: [f64; 2] = [1.05, 1.001];
 const FOLLOWED: usize = 5;
 /// Part of the chord ahead of the trailing edge where the first account keeps the speed level.
 const RELIEF: f64 = 0.05;
+/// Change of a step below which the bending of the wake is kept as it is.
+const SETTLED: f64 = 1e-3;
+
 /// How it went.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub(super) struct Convergence {
@@ -79,9 +82,13 @@ fn relieved(problem: &Problem) -> Vec<f64> {
 }
 
 /// Newton's method from `unknowns` on. Leaves the last layers whether or not it converged.
-pub(super) fn converge(problem: &Problem, unknowns: &mut Unknowns) -> Option<(Layers, Convergence)> {
+pub(super) fn converge(problem: &mut Problem, unknowns: &mut Unknowns) -> Option<(Layers, Convergence)> {
     let mut change = f64::INFINITY;
     for steps in 1..=MOST_STEPS {
+        if change > SETTLED {
+            problem.bend_wake(unknowns);
+        }
+        let problem = &*problem;
         let layers = problem.layers(unknowns);
         let step = newton_step(problem, &layers)?;
         let (part, size) = admissible(&layers, &step);

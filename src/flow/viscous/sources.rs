@@ -22,20 +22,24 @@ pub(super) fn surface_stream_function(panelling: &Panelling) -> Vec<Vec<f64>> {
         .collect()
 }
 
-/// The same due to sources on panels between points downstream of the outline.
-pub(super) fn wake_stream_function(panelling: &Panelling, wake: &[Point]) -> Vec<Vec<f64>> {
+/// The same due to even sources of unit strength, and due to even anticlockwise vorticity of unit
+/// strength, on panels between points downstream of the outline.
+pub(super) fn wake_stream_functions(panelling: &Panelling, wake: &[Point]) -> [Vec<Vec<f64>>; 2] {
     let term = |z: Point, end: Point| {
         let from = z - end;
         // The cut runs downstream, where no node is.
         weighted_log(from, std::f64::consts::PI + (-from.y).atan2(-from.x))
     };
-    wake.windows(2)
-        .map(|ends| {
-            let along = (ends[1] - ends[0]).normalize();
-            let nodes = panelling.nodes().iter();
-            nodes.map(|&z| stream_of(term(z, ends[0]), term(z, ends[1]), along, ends[1] - ends[0])).collect()
-        })
-        .collect()
+    let each = |of: fn(Vec2, Vec2, Vec2, Vec2) -> f64| -> Vec<Vec<f64>> {
+        wake.windows(2)
+            .map(|ends| {
+                let panel = ends[1] - ends[0];
+                let along = panel.normalize();
+                panelling.nodes().iter().map(|&z| of(term(z, ends[0]), term(z, ends[1]), along, panel)).collect()
+            })
+            .collect()
+    };
+    [each(stream_of), each(|first, second, along, panel| -potential_of(first, second, along, panel))]
 }
 
 /// Angles at which each node is seen from each other, along the inside: entry `from * count + to`.
@@ -75,6 +79,11 @@ fn weighted_log(z: Vec2, angle: f64) -> Vec2 {
 /// (1/2π) Im of the difference of both terms less the panel, over its direction.
 fn stream_of(first: Vec2, second: Vec2, along: Vec2, panel: Vec2) -> f64 {
     along.cross(first - second - panel) / std::f64::consts::TAU
+}
+
+/// (1/2π) Re of the same: ∫ log|z − ζ| ds/2π, the stream function of clockwise vorticity.
+fn potential_of(first: Vec2, second: Vec2, along: Vec2, panel: Vec2) -> f64 {
+    along.dot(first - second - panel) / std::f64::consts::TAU
 }
 
 /// Velocities at `z` by a straight panel: of even sources of unit strength, and of vorticity,

@@ -193,6 +193,14 @@ impl<'a> Problem<'a> {
         Layers { stagnation, node, sides, transitions, speed }
     }
 
+    /// Lets the wake bend the outer flow as it is now.
+    pub(super) fn bend_wake(&mut self, unknowns: &Unknowns) {
+        let shape: Vec<f64> = (self.coupling.surface..self.coupling.count())
+            .map(|i| (unknowns.delta_star[i] / unknowns.theta[i]).clamp(1.0, 10.0))
+            .collect();
+        self.outer.bend(&shape);
+    }
+
     /// Thickness of the base.
     pub(super) fn base(&self) -> f64 {
         self.gap[0]

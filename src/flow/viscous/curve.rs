@@ -3,7 +3,7 @@
 use super::{Conditions, Viscous, ViscousError, ViscousSolution};
 
 /// Halvings of the way from a converged neighbour before a point is left as a gap.
-const HALVINGS: usize = 3;
+const HALVINGS: usize = 5;
 
 /// Lift, drag and moment over incidence.
 #[derive(Debug, Clone, PartialEq)]
@@ -149,7 +149,18 @@ fn carry(
     Ok(())
 }
 
-/// From a neighbour in steps that are halved when one fails.
+/// Offsets, in degrees, at which a start is looked for when a point has none of its own.
+const DETOURS: [f64; 8] = [1.0, -1.0, 2.0, -2.0, 3.5, -3.5, 5.0, -5.0];
+
+/// By way of a point nearby that can be started afresh.
+pub(super) fn by_detour(viscous: &Viscous, conditions: &Conditions, target: f64) -> Option<ViscousSolution> {
+    DETOURS.iter().find_map(|offset| {
+        let near = viscous.attempt(target + offset.to_radians(), conditions, None)?;
+        by_halves(viscous, conditions, &near, target)
+    })
+}
+
+/// From a neighbour in steps that are halved when one fails, and grow again when they do not.
 fn by_halves(
     viscous: &Viscous,
     conditions: &Conditions,
@@ -163,7 +174,10 @@ fn by_halves(
         let next = if (target - at.incidence).abs() <= step.abs() * 1.001 { target } else { at.incidence + step };
         match viscous.attempt(next, conditions, Some(&at.state)) {
             Some(found) if next == target => return Some(found),
-            Some(found) => at = found,
+            Some(found) => {
+                at = found;
+                step *= 1.5;
+            }
             None => {
                 step *= 0.5;
                 halvings += 1;

@@ -128,7 +128,8 @@ impl Viscous {
     }
 
     /// Flow at `incidence` in radians, from the state of a neighbouring point if one is given, or
-    /// if that does not lead there, from a first account of its own.
+    /// if that does not lead there, from a first account of its own, or at last by way of points
+    /// nearby.
     ///
     /// # Errors
     /// When conditions or incidence are out of range, or the equations do not converge: then there
@@ -148,10 +149,13 @@ impl Viscous {
             Some(Ok(solution)) => return Ok(solution),
             _ => self.solve(incidence, conditions, None),
         };
-        last.map_err(|convergence| ViscousError::NotConverged {
-            incidence,
-            steps: convergence.steps,
-            change: convergence.change,
+        last.or_else(|convergence| {
+            let found = curve::by_detour(self, conditions, incidence);
+            found.ok_or(ViscousError::NotConverged {
+                incidence,
+                steps: convergence.steps,
+                change: convergence.change,
+            })
         })
     }
 

@@ -6,7 +6,7 @@ use super::side::{Station, Transition};
 use super::state::{Layers, Problem, Unknowns, begin_wake};
 
 /// Newton steps before a point is given up.
-const MOST_STEPS: usize = 60;
+const MOST_STEPS: usize = 45;
 /// Relative change of the unknowns in the last step: with Newton's method what is left then is of
 /// the order of its square.
 const TOLERANCE: f64 = 1e-5;

@@ -159,7 +159,7 @@ impl System<'_> {
             if laminar_ahead {
                 self.grow(&mut carried, stations, i);
                 if let Some(transition) = transition.filter(|t| t.behind == i) {
-                    place = self.place_of_transition(&carried, stations, i, transition.tripped);
+                    place = self.place_of_transition(&carried, stations, i, transition.tripped || transition.held);
                 }
             }
             let r = equations(stations, i, transition.as_ref(), self.problem.reynolds);
@@ -200,10 +200,10 @@ impl System<'_> {
     }
 
     /// Where transition takes place, when `carried.amplification` is that at station `i`.
-    fn place_of_transition(&self, carried: &Carried, stations: &[Station], i: usize, tripped: bool) -> Row {
+    fn place_of_transition(&self, carried: &Carried, stations: &[Station], i: usize, given: bool) -> Row {
         let mut row = self.row();
         row[self.count] -= stations[i].sign;
-        if tripped {
+        if given {
             return row;
         }
         let growth = stations[i].growth;

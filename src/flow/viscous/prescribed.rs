@@ -41,6 +41,7 @@ pub fn layer_along(stations: &[[f64; 2]], conditions: &Conditions) -> Result<Vec
         reynolds: conditions.reynolds,
         critical: conditions.amplification,
         trip: conditions.trip_upper,
+        window: None,
         wake: false,
     };
     let (_, departed) = march(&mut layer, &around, exponent);

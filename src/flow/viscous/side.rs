@@ -48,6 +48,8 @@ pub(super) struct Transition {
     pub(super) xi: f64,
     /// Whether a trip made it.
     pub(super) tripped: bool,
+    /// Whether it would be elsewhere, were it not held within a window.
+    pub(super) held: bool,
 }
 
 /// What the march along a side needs to know.
@@ -58,6 +60,8 @@ pub(super) struct Surroundings {
     pub(super) critical: f64,
     /// Length from the stagnation point to a trip.
     pub(super) trip: Option<f64>,
+    /// Between which lengths natural transition is held for the time being.
+    pub(super) window: Option<[f64; 2]>,
     pub(super) wake: bool,
 }
 
@@ -166,23 +170,28 @@ pub(super) fn settle_station(
     let reached = stations[i - 1].amplification + rate * (here - before);
     stations[i].growth = rate;
     stations[i].amplification = reached.min(GREATEST_AMPLIFICATION);
-    let natural =
-        (reached >= around.critical).then(|| before + (around.critical - stations[i - 1].amplification) / rate);
+    let [earliest, latest] = around.window.unwrap_or([0.0, f64::INFINITY]);
+    let natural = if reached >= around.critical {
+        let free = before + (around.critical - stations[i - 1].amplification) / rate.max(1e-9);
+        Some((free.max(earliest), free < earliest)).filter(|&(place, _)| place <= here)
+    } else {
+        (here >= latest).then_some((latest, true))
+    };
     let tripped = around.trip.filter(|&trip| trip <= here);
     let place = match (natural, tripped) {
-        (Some(natural), Some(trip)) => Some((natural.min(trip), trip < natural)),
-        (Some(natural), None) => Some((natural, false)),
-        (None, Some(trip)) => Some((trip, true)),
+        (Some((natural, held)), Some(trip)) => Some((natural.min(trip), trip < natural, held && trip >= natural)),
+        (Some((natural, held)), None) => Some((natural, false, held)),
+        (None, Some(trip)) => Some((trip, true, false)),
         (None, None) => None,
     };
-    let Some((xi, tripped)) = place else {
+    let Some((xi, tripped, held)) = place else {
         stations[i].turbulent = false;
         stations[i].layer = Layer::of(Regime::Laminar, &stations[i].profile(), around.reynolds);
         return false;
     };
     let margin = 1e-4 * (here - before);
     let xi = xi.clamp(before + margin, here - margin);
-    *transition = Some(Transition { behind: i, xi, tripped });
+    *transition = Some(Transition { behind: i, xi, tripped, held });
     stations[i].turbulent = true;
     let part = (xi - before) / (here - before);
     let between = |a: f64, b: f64| a + part * (b - a);

@@ -88,7 +88,6 @@ pub(super) fn converge(problem: &mut Problem, unknowns: &mut Unknowns) -> Option
         if change > SETTLED {
             problem.bend_wake(unknowns);
         }
-        let problem = &*problem;
         let layers = problem.layers(unknowns);
         let step = newton_step(problem, &layers)?;
         let (part, size) = admissible(&layers, &step);
@@ -96,14 +95,11 @@ pub(super) fn converge(problem: &mut Problem, unknowns: &mut Unknowns) -> Option
             return None;
         }
         apply(unknowns, &layers, &step, part);
+        problem.hold_transition(&layers);
         follow_transition(problem, unknowns, &layers);
         change = size;
-        if std::env::var("VISCOUS_TRACE").is_ok() {
-            if let Some(w) = layers.sides.iter().flatten().max_by(|a, b| { let f = |s: &Station| (step.theta[s.index] / s.theta).abs().max((thicker(s, &step) / s.delta_star).abs()); f(a).total_cmp(&f(b)) }) { eprintln!("  worst {} u {:.4} held {} th {:.3e} dth {:.2e} H {:.3} dd {:.2e} xi {:.5}", w.index, w.speed, w.held, w.theta, step.theta[w.index]/w.theta, w.delta_star/w.theta, thicker(w,&step)/w.delta_star, w.xi); }
-            eprintln!("step {steps} size {size:.2e} part {part:.3} residual {:.2e} stag {} tr {:?}", step.residual, layers.node,
-               [0,1].map(|s| layers.transitions[s].map(|t| (t.behind, t.xi))));
-        }
-        if size < TOLERANCE {
+        let held = layers.transitions.iter().flatten().any(|transition| transition.held);
+        if size < TOLERANCE && !held {
             let layers = problem.layers(unknowns);
             return Some((layers, Convergence { steps, change, converged: true }));
         }

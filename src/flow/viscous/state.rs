@@ -63,6 +63,9 @@ const LEAST_SPEED: f64 = 1e-3;
 /// The dead air behind a blunt edge is closed within this many thicknesses of the base.
 const DEAD_AIR: f64 = 2.5;
 
+/// Stations that transition may move by in a step.
+const HELD: usize = 3;
+
 /// The coupled problem at one incidence.
 pub(super) struct Problem<'a> {
     pub(super) coupling: &'a Coupling,
@@ -73,6 +76,8 @@ pub(super) struct Problem<'a> {
     trip: [Option<f64>; 2],
     /// Dead air at the stations of the wake.
     gap: Vec<f64>,
+    /// Where transition is held on either side for the time being.
+    window: [Option<[f64; 2]>; 2],
 }
 
 impl<'a> Problem<'a> {
@@ -98,6 +103,20 @@ impl<'a> Problem<'a> {
             critical: conditions.amplification,
             trip: [trip(conditions.trip_upper, true), trip(conditions.trip_lower, false)],
             gap,
+            window: [None; 2],
+        }
+    }
+
+    /// Holds transition within some stations of where it is: where the amplification grows slowly, a
+    /// small error would send it to the other end of the section.
+    pub(super) fn hold_transition(&mut self, layers: &Layers) {
+        for (side, window) in self.window.iter_mut().enumerate() {
+            let stations = &layers.sides[side];
+            let last = stations.len() - 1;
+            let behind = layers.transitions[side].map_or(last + 1, |transition| transition.behind);
+            let earliest = stations[behind.saturating_sub(HELD + 1).min(last)].xi;
+            let latest = stations.get(behind + HELD).map_or(f64::INFINITY, |station| station.xi);
+            *window = Some([earliest, latest]);
         }
     }
 
@@ -108,6 +127,7 @@ impl<'a> Problem<'a> {
             reynolds: self.reynolds,
             critical: self.critical,
             trip: trip.map(|trip| (sign * (trip - stagnation)).max(0.0)),
+            window: self.window.get(side).copied().flatten(),
             wake: side == 2,
         }
     }

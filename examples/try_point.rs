@@ -2,7 +2,7 @@
 use plankform::flow::*; use plankform::section::*;
 fn main(){ let a:Vec<String>=std::env::args().collect();
  let s=Section::from_designation(&a[1], TrailingEdge::Closed).expect("s");
- let p=Panelling::of(&s, 200).expect("p"); let v=Viscous::new(&p).expect("v");
+ let p=Panelling::of(&s, 140).expect("p"); let v=Viscous::new(&p).expect("v");
  let re:f64=a[2].parse().unwrap(); let from:f64=a[3].parse().unwrap(); let to:f64=a[4].parse().unwrap(); let st:f64=a[5].parse().unwrap();
  let c=Conditions::free(re,9.0);
  let mut angles=vec![]; let mut x=from; while x<=to+1e-9 { angles.push(x.to_radians()); x+=st; }

@@ -132,14 +132,8 @@ fn carry(
         }
         let target = points[i].incidence;
         let found = match &last {
-            Some(near) => match viscous.attempt(target, conditions, Some(&near.state)) {
-                Some(found) => Some(found),
-                None => match viscous.attempt(target, conditions, None) {
-                    Some(found) => Some(found),
-                    None => by_halves(viscous, conditions, near, target),
-                },
-            },
-            None => viscous.attempt(target, conditions, None),
+            Some(near) => from_neighbour(viscous, conditions, near, target),
+            None => viscous.at(target, conditions, None).ok(),
         };
         if let Some(found) = found {
             last = Some(found.clone());
@@ -147,6 +141,45 @@ fn carry(
         }
     }
     Ok(())
+}
+
+/// Difference of the speeds of both sides near the trailing edge, over that of the neighbour, from
+/// which on a solution is doubted.
+const DOUBTED: f64 = 0.03;
+
+/// Newton steps from which on a solution is doubted that was started from a neighbour: it has come
+/// from afar.
+const MANY_STEPS: usize = 9;
+
+/// From a neighbour, afresh, or from the neighbour in smaller steps.
+///
+/// The equations can have a second solution, in which the sides run together at the very edge only
+/// and not, as the Kutta condition means, ahead of it. So where they differ there more than at the
+/// neighbour, or the way was long, all three ways are gone and that taken which brings the sides
+/// together best.
+fn from_neighbour(
+    viscous: &Viscous,
+    conditions: &Conditions,
+    near: &ViscousSolution,
+    target: f64,
+) -> Option<ViscousSolution> {
+    let believed = |found: &ViscousSolution| {
+        found.steps <= MANY_STEPS && found.edge_difference() < near.edge_difference() + DOUBTED
+    };
+    let ways: [&dyn Fn() -> Option<ViscousSolution>; 3] = [
+        &|| viscous.attempt(target, conditions, Some(&near.state)),
+        &|| viscous.attempt(target, conditions, None),
+        &|| by_halves(viscous, conditions, near, target),
+    ];
+    let mut best: Option<ViscousSolution> = None;
+    for way in ways {
+        let Some(found) = way() else { continue };
+        if best.is_none() && believed(&found) {
+            return Some(found);
+        }
+        best = best.filter(|best| best.edge_difference() <= found.edge_difference()).or(Some(found));
+    }
+    best
 }
 
 /// Offsets, in degrees, at which a start is looked for when a point has none of its own.

@@ -163,6 +163,20 @@ impl ViscousSolution {
         [self.cl, self.cd, self.cd_friction, self.cm, self.cp_min].iter().all(|value| value.is_finite())
     }
 
+    /// Difference of the speeds of both sides a fiftieth of the chord ahead of the trailing edge.
+    pub(super) fn edge_difference(&self) -> f64 {
+        let at = |side: &SideFlow| -> Option<f64> {
+            let end = side.layers.last()?.x - 0.02;
+            let next = side.layers.iter().rposition(|layer| layer.x <= end)?;
+            let (a, b) = (&side.layers[next], side.layers.get(next + 1)?);
+            Some(a.speed + (b.speed - a.speed) * (end - a.x) / (b.x - a.x))
+        };
+        match (at(&self.upper), at(&self.lower)) {
+            (Some(upper), Some(lower)) => (upper - lower).abs(),
+            _ => 0.0,
+        }
+    }
+
     /// Moment of the pressure on the part behind `hinge` about it, for unit length of flap chord
     /// (the distance from the hinge to the trailing edge), as a coefficient: positive tail down.
     ///

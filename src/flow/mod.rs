@@ -15,6 +15,6 @@ pub use error::FlowError;
 pub use panelling::{DEFAULT_PANELS, LEAST_PANELS, MOST_PANELS, Panelling};
 pub use potential::{PotentialFlow, PressurePoint, Solution};
 pub use viscous::{
-    Conditions, CurvePoint, LayerPoint, LiftCurve, SideFlow, Viscous, ViscousError, ViscousSolution, ViscousState,
-    layer_along,
+    Conditions, CurvePoint, LayerPoint, LiftCurve, SideFlow, Viscous, ViscousError, ViscousSolution,
+    ViscousState, layer_along,
 };

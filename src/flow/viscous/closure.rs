@@ -145,8 +145,8 @@ pub(super) fn amplification<const N: usize>(h: Dual<N>, re_theta: Dual<N>) -> Du
     const HALF_WIDTH: f64 = 0.08;
     let inverse = (h - 1.0).at_least(0.05).recip();
     let critical = 2.492 * inverse.powf(0.43) + 0.7 * ((14.0 * inverse - 9.24).tanh() + 1.0);
-    let beyond = (re_theta.at_least(1.0).ln() / std::f64::consts::LN_10 - critical + HALF_WIDTH)
-        / (2.0 * HALF_WIDTH);
+    let beyond =
+        (re_theta.at_least(1.0).ln() / std::f64::consts::LN_10 - critical + HALF_WIDTH) / (2.0 * HALF_WIDTH);
     if beyond.value <= 0.0 {
         return Dual::constant(0.0);
     }

@@ -182,12 +182,15 @@ impl Coupling {
             .iter()
             .map(|by| {
                 let edge = 0.5 * (by.surface[last] - by.surface[0]);
-                let wake = std::iter::zip(&by.wake, &directions).skip(1).map(|(v, direction)| v.dot(*direction));
+                let wake =
+                    std::iter::zip(&by.wake, &directions).skip(1).map(|(v, direction)| v.dot(*direction));
                 by.surface.iter().copied().chain(std::iter::once(edge)).chain(wake).collect()
             })
             .collect();
-        let turn = directions.windows(2).map(|pair| pair[0].cross(pair[1]).atan2(pair[0].dot(pair[1]))).collect();
-        let unbent = (surface..count).flat_map(|i| response[i * count + surface..(i + 1) * count].to_vec()).collect();
+        let turn =
+            directions.windows(2).map(|pair| pair[0].cross(pair[1]).atan2(pair[0].dot(pair[1]))).collect();
+        let unbent =
+            (surface..count).flat_map(|i| response[i * count + surface..(i + 1) * count].to_vec()).collect();
         OuterFlow { coupling: self, speed, response, bend, unbent, turn }
     }
 }
@@ -201,8 +204,9 @@ impl OuterFlow<'_> {
 
     /// Speeds with these mass defects, positive along the way.
     pub(super) fn speeds(&self, mass: &[f64]) -> Vec<f64> {
-        let change =
-            |i: usize| std::iter::zip(self.response(i), mass).map(|(response, mass)| response * mass).sum::<f64>();
+        let change = |i: usize| {
+            std::iter::zip(self.response(i), mass).map(|(response, mass)| response * mass).sum::<f64>()
+        };
         self.speed.iter().enumerate().map(|(i, speed)| speed + change(i)).collect()
     }
 
@@ -221,8 +225,12 @@ impl OuterFlow<'_> {
             // From the rows as they are without bending.
             let row = &mut self.response[i * count + surface..(i + 1) * count];
             match i.checked_sub(surface) {
-                None => row.copy_from_slice(&self.coupling.surface_response[i * count + surface..][..count - surface]),
-                Some(_) => row.copy_from_slice(&self.unbent[(i - surface) * (count - surface)..][..count - surface]),
+                None => row.copy_from_slice(
+                    &self.coupling.surface_response[i * count + surface..][..count - surface],
+                ),
+                Some(_) => {
+                    row.copy_from_slice(&self.unbent[(i - surface) * (count - surface)..][..count - surface])
+                }
             }
             for (k, (bend, turn)) in std::iter::zip(&self.bend, &self.turn).enumerate() {
                 let speed = bend[i] * turn;

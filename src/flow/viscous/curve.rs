@@ -35,7 +35,11 @@ impl LiftCurve {
     /// # Errors
     /// When the conditions or an incidence are out of range. A point that does not converge is a
     /// gap and no error.
-    pub fn sweep(viscous: &Viscous, conditions: &Conditions, incidences: &[f64]) -> Result<Self, ViscousError> {
+    pub fn sweep(
+        viscous: &Viscous,
+        conditions: &Conditions,
+        incidences: &[f64],
+    ) -> Result<Self, ViscousError> {
         conditions.check()?;
         let mut sorted = incidences.to_vec();
         if let Some(&bad) = sorted.iter().find(|angle| !angle.is_finite()) {
@@ -46,18 +50,19 @@ impl LiftCurve {
         let mut points: Vec<CurvePoint> =
             sorted.into_iter().map(|incidence| CurvePoint { incidence, solution: None }).collect();
         let easy = viscous.zero_lift();
-        let first = (0..points.len())
-            .min_by(|&a, &b| (points[a].incidence - easy).abs().total_cmp(&(points[b].incidence - easy).abs()));
+        let first = (0..points.len()).min_by(|&a, &b| {
+            (points[a].incidence - easy).abs().total_cmp(&(points[b].incidence - easy).abs())
+        });
         if let Some(first) = first {
             let up: Vec<usize> = (first..points.len()).collect();
             let down: Vec<usize> = (0..=first).rev().collect();
-            carry(viscous, conditions, &mut points, &up)?;
-            carry(viscous, conditions, &mut points, &down)?;
+            carry(viscous, conditions, &mut points, &up);
+            carry(viscous, conditions, &mut points, &down);
             // Gaps, from the side that was not tried.
             let all: Vec<usize> = (0..points.len()).collect();
             let back: Vec<usize> = all.iter().rev().copied().collect();
-            carry(viscous, conditions, &mut points, &back)?;
-            carry(viscous, conditions, &mut points, &all)?;
+            carry(viscous, conditions, &mut points, &back);
+            carry(viscous, conditions, &mut points, &all);
         }
         Ok(Self { conditions: *conditions, panels: viscous.panelling().len(), points })
     }
@@ -118,12 +123,7 @@ impl LiftCurve {
 }
 
 /// Solves what is still open along `order`, from neighbour to neighbour.
-fn carry(
-    viscous: &Viscous,
-    conditions: &Conditions,
-    points: &mut [CurvePoint],
-    order: &[usize],
-) -> Result<(), ViscousError> {
+fn carry(viscous: &Viscous, conditions: &Conditions, points: &mut [CurvePoint], order: &[usize]) {
     let mut last: Option<ViscousSolution> = None;
     for &i in order {
         if let Some(solution) = &points[i].solution {
@@ -140,7 +140,6 @@ fn carry(
             points[i].solution = Some(found);
         }
     }
-    Ok(())
 }
 
 /// Difference of the speeds of both sides near the trailing edge, over that of the neighbour, from
@@ -204,7 +203,8 @@ fn by_halves(
     let mut step = 0.5 * (target - near.incidence);
     let mut halvings = 1;
     while halvings <= HALVINGS {
-        let next = if (target - at.incidence).abs() <= step.abs() * 1.001 { target } else { at.incidence + step };
+        let next =
+            if (target - at.incidence).abs() <= step.abs() * 1.001 { target } else { at.incidence + step };
         match viscous.attempt(next, conditions, Some(&at.state)) {
             Some(found) if next == target => return Some(found),
             Some(found) => {

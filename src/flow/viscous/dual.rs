@@ -192,7 +192,8 @@ mod tests {
     fn slopes_agree_with_differences() {
         let function = |x: Dual<2>, y: Dual<2>| {
             let quotient = (x * y - x / y + 2.0) / (x.square() + 1.0);
-            (quotient.exp() + y.tanh() * x.sqrt() - (x + y).ln()).square() * y.powf(1.3) + x.recip() - 3.0 * -y
+            (quotient.exp() + y.tanh() * x.sqrt() - (x + y).ln()).square() * y.powf(1.3) + x.recip()
+                - 3.0 * -y
         };
         let value = |x: f64, y: f64| function(Dual::constant(x), Dual::constant(y)).value;
         let (x, y, step) = (1.7, 0.6, 1e-5);

@@ -44,11 +44,7 @@ pub(super) struct Residual<const N: usize> {
 }
 
 /// Between two stations of one regime; the last equation means nothing where laminar.
-pub(super) fn residual<const N: usize>(
-    first: End<N>,
-    second: End<N>,
-    turbulent: bool,
-) -> Residual<N> {
+pub(super) fn residual<const N: usize>(first: End<N>, second: End<N>, turbulent: bool) -> Residual<N> {
     let (one, two) = (first.layer, second.layer);
     let log_speed = two.log_speed - one.log_speed;
     let log_xi = (second.xi / first.xi).ln();
@@ -125,13 +121,8 @@ pub(super) fn through_transition(
 
     let [before, ahead] = [&one, &middle].map(|profile| Layer::of(Regime::Laminar, profile, reynolds));
     let [behind, after] = [&middle, &two].map(|profile| Layer::of(Regime::Turbulent, profile, reynolds));
-    let laminar = residual(
-        End { layer: &before, xi: first_xi },
-        End { layer: &ahead, xi: place },
-        false,
-    );
-    let turbulent =
-        residual(End { layer: &behind, xi: place }, End { layer: &after, xi: second_xi }, true);
+    let laminar = residual(End { layer: &before, xi: first_xi }, End { layer: &ahead, xi: place }, false);
+    let turbulent = residual(End { layer: &behind, xi: place }, End { layer: &after, xi: second_xi }, true);
     Residual {
         momentum: laminar.momentum + turbulent.momentum,
         shape: laminar.shape + turbulent.shape,

@@ -7,7 +7,7 @@
 use std::ops::Range;
 
 use super::dual::Dual;
-use super::interval::{SECOND, Residual, VARIABLES, similar};
+use super::interval::{Residual, SECOND, VARIABLES, similar};
 use super::layer::Layer;
 use super::side::{Station, Surroundings, Transition, equations, settle_station};
 
@@ -30,7 +30,10 @@ enum Given {
     Speed,
     Shape(f64),
     /// Speed without the mass defect of the station itself, and its change with that.
-    Response { rest: f64, slope: f64 },
+    Response {
+        rest: f64,
+        slope: f64,
+    },
 }
 
 /// Sets θ, mass defect and, where it gives way, speed of all stations. `exponent` is that of
@@ -95,9 +98,8 @@ pub(super) fn adjust(
     let mut transition = transition;
     let old = stations.to_vec();
     for i in range.clone() {
-        let changed: f64 = (range.start..i)
-            .map(|j| response(&old[i], &old[j]) * (stations[j].mass - old[j].mass))
-            .sum();
+        let changed: f64 =
+            (range.start..i).map(|j| response(&old[i], &old[j]) * (stations[j].mass - old[j].mass)).sum();
         let slope = response(&old[i], &old[i]);
         let rest = old[i].speed + changed - slope * old[i].mass;
         let given = Given::Response { rest, slope };

@@ -6,8 +6,8 @@
 //! met, as a row over the unknowns. What is left, the shape equation of every station, is one
 //! dense system.
 
-use super::interval::{FIRST, FIRST_XI, Residual, SECOND, SECOND_XI, TRANSITION, VARIABLES, similar};
 use super::dual::Dual;
+use super::interval::{FIRST, FIRST_XI, Residual, SECOND, SECOND_XI, TRANSITION, VARIABLES, similar};
 use super::side::{Station, equations, growth_ahead};
 use super::state::{Layers, Problem, shear_at_edge};
 use crate::flow::lu::solve_in_place;
@@ -19,8 +19,6 @@ pub(super) struct Step {
     pub(super) mass: Vec<f64>,
     /// Of the speeds, positive along the outline.
     pub(super) speed: Vec<f64>,
-    /// Greatest residual of the equations.
-    pub(super) residual: f64,
 }
 
 /// Coefficients of the mass defects, of the place of stagnation, and a constant.
@@ -34,7 +32,6 @@ struct System<'a> {
     /// Columns of the dense system one after the other, right-hand side last.
     block: Vec<f64>,
     stride: usize,
-    residual: f64,
     /// θ of every station.
     theta: Vec<Row>,
 }
@@ -49,13 +46,12 @@ pub(super) fn newton_step(problem: &Problem, layers: &Layers) -> Option<Step> {
         count,
         block: vec![0.0; (size + 1) * stride],
         stride,
-        residual: 0.0,
         theta: vec![Vec::new(); count],
     };
     system.place_of_stagnation();
     let ends = [0, 1].map(|side| system.side(side));
     system.wake(&ends);
-    let System { mut block, residual, theta, .. } = system;
+    let System { mut block, theta, .. } = system;
     solve_in_place(&mut block, stride, size);
     let solution = &block[size * stride..][..size];
     if !solution.iter().all(|value| value.is_finite()) {
@@ -64,7 +60,7 @@ pub(super) fn newton_step(problem: &Problem, layers: &Layers) -> Option<Step> {
     let theta = theta.iter().map(|row| evaluate(row, solution)).collect();
     let mass = solution[..count].to_vec();
     let speed = (0..count).map(|i| dot(problem.outer.response(i), &mass)).collect();
-    Some(Step { theta, mass, speed, residual })
+    Some(Step { theta, mass, speed })
 }
 
 fn dot(a: &[f64], b: &[f64]) -> f64 {
@@ -159,7 +155,12 @@ impl System<'_> {
             if laminar_ahead {
                 self.grow(&mut carried, stations, i);
                 if let Some(transition) = transition.filter(|t| t.behind == i) {
-                    place = self.place_of_transition(&carried, stations, i, transition.tripped || transition.held);
+                    place = self.place_of_transition(
+                        &carried,
+                        stations,
+                        i,
+                        transition.tripped || transition.held,
+                    );
                 }
             }
             let r = equations(stations, i, transition.as_ref(), self.problem.reynolds);
@@ -266,9 +267,6 @@ impl System<'_> {
         add(&mut left, by[2].shear, &stress);
         let right = -left[self.count + 1];
         self.put(second.index, &left, right);
-        for equation in equations {
-            self.residual = self.residual.max(equation.value.abs());
-        }
         self.theta[second.index] = theta.clone();
         carried.theta = theta;
         carried.shear = stress;
@@ -307,7 +305,6 @@ impl System<'_> {
         }
         add(&mut mass, -self.problem.base(), self.problem.outer.response(first.index));
         self.put(first.index, &mass, -defect);
-        self.residual = self.residual.max(defect.abs() / first.mass.max(1e-9));
         self.theta[first.index].clone_from(&carried.theta);
         let nothing = self.row();
         for i in 1..wake.len() {

@@ -1,8 +1,10 @@
 //! The stations of one side of the section, or of the wake, in the order of the flow, with
 //! transition and shear stress marched along them.
 
-use super::interval::{End, Residual, VARIABLES, FIRST, FIRST_XI, SECOND, SECOND_XI, residual, through_transition};
 use super::dual::Dual;
+use super::interval::{
+    End, FIRST, FIRST_XI, Residual, SECOND, SECOND_XI, VARIABLES, residual, through_transition,
+};
 use super::layer::{Layer, Profile, Regime, shear_behind_transition};
 
 /// Greatest amplification exponent that is kept: beyond transition it says nothing.
@@ -120,11 +122,7 @@ pub(super) fn growth_ahead(stations: &[Station], next: usize) -> (f64, [f64; 2])
     let ratio = 0.5 * (stations[next].xi - last.xi) / (last.xi - before.xi);
     let (one, two) = (last.layer.growth.value, before.layer.growth.value);
     let rate = one + ratio * (one - two);
-    if rate < 0.5 * one {
-        (0.5 * one, [0.5, 0.0])
-    } else {
-        (rate, [1.0 + ratio, -ratio])
-    }
+    if rate < 0.5 * one { (0.5 * one, [0.5, 0.0]) } else { (rate, [1.0 + ratio, -ratio]) }
 }
 
 /// Marches amplification, transition and shear stress along the side for the given thicknesses
@@ -179,7 +177,9 @@ pub(super) fn settle_station(
     };
     let tripped = around.trip.filter(|&trip| trip <= here);
     let place = match (natural, tripped) {
-        (Some((natural, held)), Some(trip)) => Some((natural.min(trip), trip < natural, held && trip >= natural)),
+        (Some((natural, held)), Some(trip)) => {
+            Some((natural.min(trip), trip < natural, held && trip >= natural))
+        }
         (Some((natural, held)), None) => Some((natural, false, held)),
         (None, Some(trip)) => Some((trip, true, false)),
         (None, None) => None,

@@ -232,8 +232,12 @@ impl SideFlow {
             let (a, b) = (&layers[i - 1], &layers[i]);
             a.x + (b.x - a.x) * a.cf / (a.cf - b.cf)
         };
-        let falls = |from: usize| (from.max(1)..layers.len()).find(|&i| layers[i].cf < 0.0 && layers[i - 1].cf >= 0.0);
-        let rises = |from: usize| (from.max(1)..layers.len()).find(|&i| layers[i].cf > 0.0 && layers[i - 1].cf <= 0.0);
+        let falls = |from: usize| {
+            (from.max(1)..layers.len()).find(|&i| layers[i].cf < 0.0 && layers[i - 1].cf >= 0.0)
+        };
+        let rises = |from: usize| {
+            (from.max(1)..layers.len()).find(|&i| layers[i].cf > 0.0 && layers[i - 1].cf <= 0.0)
+        };
         let mut bubble = None;
         let mut separation = None;
         let mut from = 1;

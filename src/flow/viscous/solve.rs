@@ -39,8 +39,12 @@ pub(super) fn first_account(problem: &Problem, nose: usize) -> Option<Unknowns> 
     let count = problem.coupling.count();
     let speed = relieved(problem);
     let stagnation = problem.stagnation_node(&speed, nose)?;
-    let mut unknowns =
-        Unknowns { theta: vec![1e-4; count], delta_star: vec![2e-4; count], mass: vec![2e-4; count], stagnation };
+    let mut unknowns = Unknowns {
+        theta: vec![1e-4; count],
+        delta_star: vec![2e-4; count],
+        mass: vec![2e-4; count],
+        stagnation,
+    };
     let place = problem.stagnation(&speed, stagnation);
     let mut sides = problem.stations(&unknowns, &speed, place);
     let [upper, lower, wake] = &mut sides;

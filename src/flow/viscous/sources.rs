@@ -17,7 +17,9 @@ pub(super) fn surface_stream_function(panelling: &Panelling) -> Vec<Vec<f64>> {
     (0..count - 1)
         .map(|k| {
             let along = (nodes[k + 1] - nodes[k]).normalize();
-            (0..count).map(|i| stream_of(term(i, k), term(i, k + 1), along, nodes[k + 1] - nodes[k])).collect()
+            (0..count)
+                .map(|i| stream_of(term(i, k), term(i, k + 1), along, nodes[k + 1] - nodes[k]))
+                .collect()
         })
         .collect()
 }
@@ -35,7 +37,11 @@ pub(super) fn wake_stream_functions(panelling: &Panelling, wake: &[Point]) -> [V
             .map(|ends| {
                 let panel = ends[1] - ends[0];
                 let along = panel.normalize();
-                panelling.nodes().iter().map(|&z| of(term(z, ends[0]), term(z, ends[1]), along, panel)).collect()
+                panelling
+                    .nodes()
+                    .iter()
+                    .map(|&z| of(term(z, ends[0]), term(z, ends[1]), along, panel))
+                    .collect()
             })
             .collect()
     };
@@ -106,7 +112,8 @@ pub(super) fn velocities(from: Point, to: Point, z: Point) -> [Vec2; 3] {
     };
     let source = turned(log);
     // Vorticity has the field of sources turned by a right angle.
-    let share = |sign: f64| turned([0.5 * (log[0] + sign * rest[0]), 0.5 * (log[1] + sign * rest[1])]).turn_90();
+    let share =
+        |sign: f64| turned([0.5 * (log[0] + sign * rest[0]), 0.5 * (log[1] + sign * rest[1])]).turn_90();
     [source, share(-1.0), share(1.0)]
 }
 

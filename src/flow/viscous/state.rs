@@ -163,7 +163,12 @@ impl<'a> Problem<'a> {
     }
 
     /// Stations of the three sides for these speeds, without layers yet.
-    pub(super) fn stations(&self, unknowns: &Unknowns, speed: &[f64], stagnation: Stagnation) -> [Vec<Station>; 3] {
+    pub(super) fn stations(
+        &self,
+        unknowns: &Unknowns,
+        speed: &[f64],
+        stagnation: Stagnation,
+    ) -> [Vec<Station>; 3] {
         let coupling = self.coupling;
         let node = unknowns.stagnation;
         let rise = (speed[node + 1] - speed[node]).max(1e-9);
@@ -195,7 +200,9 @@ impl<'a> Problem<'a> {
     /// The layers that go with these unknowns.
     pub(super) fn layers(&self, unknowns: &mut Unknowns) -> Layers {
         let mut speed = self.outer.speeds(&Self::signed_mass(unknowns));
-        if let Some(node) = self.stagnation_node(&speed, unknowns.stagnation).filter(|&n| n != unknowns.stagnation) {
+        if let Some(node) =
+            self.stagnation_node(&speed, unknowns.stagnation).filter(|&n| n != unknowns.stagnation)
+        {
             // Nodes that the stagnation point has passed carry little; still their sources turn.
             unknowns.stagnation = node;
             speed = self.outer.speeds(&Self::signed_mass(unknowns));

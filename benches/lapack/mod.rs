@@ -23,14 +23,14 @@ print(' '.join(repr(t) for t in times[5:]))
 ";
 
 /// The Python that LAPACK is asked of.
-pub fn python() -> String {
+pub(crate) fn python() -> String {
     let ours = "target/outside-venv/bin/python";
     std::env::var("PLANKFORM_PYTHON")
         .unwrap_or_else(|_| if Path::new(ours).exists() { ours } else { "python3" }.to_owned())
 }
 
 /// Seconds that each of `repeats` factorisations took.
-pub fn lapack_times(python: &str, size: usize, repeats: usize) -> Result<Vec<f64>, String> {
+pub(crate) fn lapack_times(python: &str, size: usize, repeats: usize) -> Result<Vec<f64>, String> {
     let mut command = Command::new(python);
     command.args(["-c", LAPACK, &size.to_string(), &repeats.to_string()]);
     for variable in ["OPENBLAS_NUM_THREADS", "OMP_NUM_THREADS", "MKL_NUM_THREADS"] {
@@ -50,7 +50,7 @@ pub fn lapack_times(python: &str, size: usize, repeats: usize) -> Result<Vec<f64
 }
 
 /// Median and least, in milliseconds.
-pub fn summary(mut times: Vec<f64>) -> [f64; 2] {
+pub(crate) fn summary(mut times: Vec<f64>) -> [f64; 2] {
     times.sort_by(f64::total_cmp);
     [times[times.len() / 2], times[0]].map(|seconds| 1e3 * seconds)
 }

@@ -6,6 +6,7 @@
 //! thickness", Journal of Fluid Mechanics 4). Here they are even over each panel, so that each
 //! panel gives what the mass defect grows by between its nodes.
 
+use super::dense::dot;
 use super::sources::{mean_speed_in_line, surface_stream_function, velocities, wake_stream_functions};
 use super::wake::wake_line;
 use crate::flow::edge::Base;
@@ -204,9 +205,7 @@ impl OuterFlow<'_> {
 
     /// Speeds with these mass defects, positive along the way.
     pub(super) fn speeds(&self, mass: &[f64]) -> Vec<f64> {
-        let change = |i: usize| {
-            std::iter::zip(self.response(i), mass).map(|(response, mass)| response * mass).sum::<f64>()
-        };
+        let change = |i: usize| dot(self.response(i), mass);
         self.speed.iter().enumerate().map(|(i, speed)| speed + change(i)).collect()
     }
 

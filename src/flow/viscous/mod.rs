@@ -5,6 +5,7 @@
 mod closure;
 mod coupling;
 mod curve;
+mod dense;
 mod dual;
 mod interval;
 mod layer;

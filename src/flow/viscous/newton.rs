@@ -6,6 +6,7 @@
 //! met, as a row over the unknowns. What is left, the shape equation of every station, is one
 //! dense system.
 
+use super::dense::{add, combine, dot, transpose};
 use super::dual::Dual;
 use super::interval::{FIRST, FIRST_XI, Residual, SECOND, SECOND_XI, TRANSITION, VARIABLES, similar};
 use super::side::{Station, equations, growth_ahead};
@@ -24,59 +25,50 @@ pub(super) struct Step {
 /// Coefficients of the mass defects, of the place of stagnation, and a constant.
 type Row = Vec<f64>;
 
+/// Room for the equations, kept from step to step.
+#[derive(Default)]
+pub(super) struct Workspace {
+    /// θ of every station.
+    theta: Vec<Row>,
+    /// What is left after elimination: a row for each equation.
+    rows: Vec<f64>,
+    /// The same by columns, the last of them the right-hand side.
+    block: Vec<f64>,
+}
+
 struct System<'a> {
     problem: &'a Problem<'a>,
     layers: &'a Layers,
     /// Mass defects.
     count: usize,
-    /// Columns of the dense system one after the other, right-hand side last.
-    block: Vec<f64>,
-    stride: usize,
-    /// θ of every station.
-    theta: Vec<Row>,
+    workspace: &'a mut Workspace,
 }
 
-pub(super) fn newton_step(problem: &Problem, layers: &Layers) -> Option<Step> {
+pub(super) fn newton_step(problem: &Problem, layers: &Layers, workspace: &mut Workspace) -> Option<Step> {
     let count = problem.coupling.count();
-    let size = count + 1;
+    let (size, width) = (count + 1, count + 2);
     let stride = size.next_multiple_of(8);
-    let mut system = System {
-        problem,
-        layers,
-        count,
-        block: vec![0.0; (size + 1) * stride],
-        stride,
-        theta: vec![Vec::new(); count],
-    };
+    workspace.theta.resize_with(count, || vec![0.0; width]);
+    workspace.rows.resize(size * width, 0.0);
+    workspace.block.resize(width * stride, 0.0);
+    let mut system = System { problem, layers, count, workspace: &mut *workspace };
     system.place_of_stagnation();
     let ends = [0, 1].map(|side| system.side(side));
     system.wake(&ends);
-    let System { mut block, theta, .. } = system;
-    solve_in_place(&mut block, stride, size);
+    let Workspace { theta, rows, block } = workspace;
+    transpose(rows, width, block, stride, size);
+    for right in &mut block[size * stride..] {
+        *right = -*right;
+    }
+    solve_in_place(block, stride, size);
     let solution = &block[size * stride..][..size];
     if !solution.iter().all(|value| value.is_finite()) {
         return None;
     }
-    let theta = theta.iter().map(|row| evaluate(row, solution)).collect();
+    let theta = theta.iter().map(|row| dot(&row[..size], solution) + row[size]).collect();
     let mass = solution[..count].to_vec();
     let speed = (0..count).map(|i| dot(problem.outer.response(i), &mass)).collect();
     Some(Step { theta, mass, speed })
-}
-
-fn dot(a: &[f64], b: &[f64]) -> f64 {
-    std::iter::zip(a, b).map(|(a, b)| a * b).sum()
-}
-
-fn evaluate(row: &[f64], solution: &[f64]) -> f64 {
-    dot(row, solution) + row[solution.len()]
-}
-
-fn add(row: &mut [f64], factor: f64, other: &[f64]) {
-    if factor != 0.0 {
-        for (entry, value) in row.iter_mut().zip(other) {
-            *entry += factor * value;
-        }
-    }
 }
 
 /// Derivatives of an equation by what is not eliminated at a station: speed and mass defect in
@@ -104,9 +96,9 @@ fn by_station(equation: &Dual<VARIABLES>, places: [usize; 4], xi: usize, station
     }
 }
 
-/// What is carried from one station to the next.
+/// What is carried from one station to the next; θ is that of the last station.
 struct Carried {
-    theta: Row,
+    last: usize,
     shear: Row,
     amplification: Row,
     /// Growth of the amplification at the last station and the one before.
@@ -118,11 +110,10 @@ impl System<'_> {
         vec![0.0; self.count + 2]
     }
 
-    fn put(&mut self, equation: usize, row: &[f64], right: f64) {
-        for (column, value) in row[..=self.count].iter().enumerate() {
-            self.block[column * self.stride + equation] = *value;
-        }
-        self.block[(self.count + 1) * self.stride + equation] = right;
+    /// Room of an equation: sum of the row and the unknowns is nothing.
+    fn equation(&mut self, equation: usize) -> &mut [f64] {
+        let width = self.count + 2;
+        &mut self.workspace.rows[equation * width..][..width]
     }
 
     fn place_of_stagnation(&mut self) {
@@ -131,7 +122,7 @@ impl System<'_> {
         for (k, slope) in self.layers.stagnation.slope.into_iter().enumerate() {
             add(&mut row, -slope, self.problem.outer.response(self.layers.node + k));
         }
-        self.put(self.count, &row, 0.0);
+        self.equation(self.count).copy_from_slice(&row);
     }
 
     /// Adds what the speed, mass defect and length at a station give to a row.
@@ -149,22 +140,25 @@ impl System<'_> {
         let stations = &layers.sides[side];
         let transition = layers.transitions[side];
         let mut carried = self.first_station(&stations[0]);
+        let nothing = self.row();
         for i in 1..stations.len() {
             let laminar_ahead = !stations[i - 1].turbulent;
-            let mut place = self.row();
+            let mut place = None;
             if laminar_ahead {
                 self.grow(&mut carried, stations, i);
                 if let Some(transition) = transition.filter(|t| t.behind == i) {
-                    place = self.place_of_transition(
-                        &carried,
-                        stations,
-                        i,
-                        transition.tripped || transition.held,
-                    );
+                    let given = transition.tripped || transition.held;
+                    place = Some(self.place_of_transition(&carried, stations, i, given));
                 }
             }
             let r = equations(stations, i, transition.as_ref(), self.problem.reynolds);
-            self.eliminate(&mut carried, &r, &stations[i - 1], &stations[i], &place);
+            self.eliminate(
+                &mut carried,
+                &r,
+                &stations[i - 1],
+                &stations[i],
+                place.as_ref().unwrap_or(&nothing),
+            );
         }
         carried
     }
@@ -173,7 +167,7 @@ impl System<'_> {
         let layer = first.layer.among::<VARIABLES>(SECOND);
         let r = similar(&layer, Dual::variable(first.xi, SECOND_XI), 1.0);
         let mut carried = Carried {
-            theta: self.row(),
+            last: first.index,
             shear: self.row(),
             amplification: self.row(),
             growth: [self.row(), self.row()],
@@ -189,7 +183,7 @@ impl System<'_> {
         let growth = ahead.layer.growth.among::<VARIABLES>(SECOND);
         let by = by_station(&growth, SECOND, SECOND_XI, ahead);
         let mut row = self.row();
-        add(&mut row, by.theta, &carried.theta);
+        add(&mut row, by.theta, &self.workspace.theta[carried.last]);
         self.add_station(&mut row, &by, ahead);
         carried.growth.swap(0, 1);
         carried.growth[0] = row;
@@ -233,43 +227,82 @@ impl System<'_> {
         second: &Station,
         place: &[f64],
     ) {
+        let count = self.count;
         let similar = first.index == second.index;
         let equations = [&r.momentum, &r.shear, &r.shape];
-        let rows = equations.map(|equation| {
-            let mut row = self.row();
-            row[self.count + 1] = equation.value;
-            if !similar {
-                let by = by_station(equation, FIRST, FIRST_XI, first);
-                add(&mut row, by.theta, &carried.theta);
-                add(&mut row, by.shear, &carried.shear);
-                self.add_station(&mut row, &by, first);
+        let ahead = equations.map(|equation| {
+            let by = by_station(equation, FIRST, FIRST_XI, first);
+            if similar {
+                ByStation { theta: 0.0, shear: 0.0, speed: 0.0, mass: 0.0, xi: 0.0, constant: 0.0 }
+            } else {
+                by
             }
-            let by = by_station(equation, SECOND, SECOND_XI, second);
-            self.add_station(&mut row, &by, second);
-            add(&mut row, equation.slope[TRANSITION], place);
-            row
         });
-        let by = equations.map(|equation| by_station(equation, SECOND, SECOND_XI, second));
-        let [momentum, shear, shape] = rows;
-        let mut theta = self.row();
-        let mut stress = self.row();
-        if second.turbulent {
-            let determinant = by[0].theta * by[1].shear - by[0].shear * by[1].theta;
-            add(&mut theta, -by[1].shear / determinant, &momentum);
-            add(&mut theta, by[0].shear / determinant, &shear);
-            add(&mut stress, by[1].theta / determinant, &momentum);
-            add(&mut stress, -by[0].theta / determinant, &shear);
+        let here = equations.map(|equation| by_station(equation, SECOND, SECOND_XI, second));
+        // θ, √C_τ and what is left of the shape equation, as sums of the equations.
+        let [momentum, shear, shape] = &here;
+        let [theta, stress] = if second.turbulent {
+            let determinant = momentum.theta * shear.shear - momentum.shear * shear.theta;
+            [
+                [-shear.shear / determinant, momentum.shear / determinant],
+                [shear.theta / determinant, -momentum.theta / determinant],
+            ]
         } else {
-            add(&mut theta, -1.0 / by[0].theta, &momentum);
+            [[-1.0 / momentum.theta, 0.0], [0.0; 2]]
+        };
+        let left = [0, 1].map(|k| shape.theta * theta[k] + shape.shear * stress[k]);
+        let sums = [[theta[0], theta[1], 0.0], [stress[0], stress[1], 0.0], [left[0], left[1], 1.0]];
+        let of = |part: fn(&ByStation) -> f64, by: &[ByStation; 3], sum: &[f64; 3]| -> f64 {
+            std::iter::zip(by, sum).map(|(by, factor)| factor * part(by)).sum()
+        };
+        let weights = sums.map(|sum| {
+            [
+                of(|by| by.theta, &ahead, &sum),
+                of(|by| by.shear, &ahead, &sum),
+                of(|by| by.speed, &ahead, &sum),
+                of(|by| by.speed, &here, &sum),
+            ]
+        });
+
+        let mut theta_row = std::mem::take(&mut self.workspace.theta[second.index]);
+        if theta_row.is_empty() {
+            theta_row = self.row();
         }
-        let mut left = shape;
-        add(&mut left, by[2].theta, &theta);
-        add(&mut left, by[2].shear, &stress);
-        let right = -left[self.count + 1];
-        self.put(second.index, &left, right);
-        self.theta[second.index] = theta.clone();
-        carried.theta = theta;
-        carried.shear = stress;
+        let mut stress_row = self.row();
+        let nothing: &[f64] = if similar { &stress_row.clone() } else { &[] };
+        let width = count + 2;
+        let Workspace { theta, rows, .. } = &mut *self.workspace;
+        let left_row = &mut rows[second.index * width..][..width];
+        let (before, shear_before): (&[f64], &[f64]) =
+            if similar { (nothing, nothing) } else { (&theta[carried.last], &carried.shear) };
+        let response = |station: &Station| self.problem.outer.response(station.index);
+        combine(
+            [&mut theta_row, &mut stress_row, &mut *left_row],
+            &weights,
+            [before, shear_before, response(first), response(second)],
+        );
+        let tail = |row: &[f64]| if row.len() == width { [row[count], row[count + 1]] } else { [0.0; 2] };
+        let tails = [tail(before), tail(shear_before)];
+        for ((row, sum), weights) in
+            [&mut theta_row[..], &mut stress_row[..], left_row].into_iter().zip(&sums).zip(&weights)
+        {
+            // Responses are shorter than rows by these two.
+            let xi = of(|by| by.xi, &ahead, sum) + of(|by| by.xi, &here, sum);
+            row[count] = weights[0] * tails[0][0] + weights[1] * tails[1][0] - xi;
+            let constant = of(|by| by.constant, &ahead, sum) + of(|by| by.constant, &here, sum);
+            let value: f64 =
+                std::iter::zip(equations, sum).map(|(equation, factor)| factor * equation.value).sum();
+            row[count + 1] = weights[0] * tails[0][1] + weights[1] * tails[1][1] + constant + value;
+            row[first.index] += of(|by| by.mass, &ahead, sum);
+            row[second.index] += of(|by| by.mass, &here, sum);
+            let by_place: f64 = std::iter::zip(equations, sum)
+                .map(|(equation, factor)| factor * equation.slope[TRANSITION])
+                .sum();
+            add(row, by_place, place);
+        }
+        theta[second.index] = theta_row;
+        carried.last = second.index;
+        carried.shear = stress_row;
     }
 
     /// The wake begins with the sums of both sides, and is a side of its own from there.
@@ -278,34 +311,36 @@ impl System<'_> {
         let wake = &layers.sides[2];
         let Some(first) = wake.first() else { return };
         let mut carried = Carried {
-            theta: self.row(),
+            last: first.index,
             shear: self.row(),
             amplification: Vec::new(),
             growth: [Vec::new(), Vec::new()],
         };
-        let mut mass = self.row();
+        let (mut mass, mut theta) = (self.row(), self.row());
         mass[first.index] = 1.0;
         let mut defect = first.mass - self.problem.base() * first.speed;
         for (end, stations) in ends.iter().zip(&layers.sides) {
             let Some(edge) = stations.last() else { return };
-            add(&mut carried.theta, 1.0, &end.theta);
+            let theta_at_edge = self.workspace.theta[end.last].clone();
+            add(&mut theta, 1.0, &theta_at_edge);
             mass[edge.index] -= edge.sign;
             defect -= edge.mass;
             // √C_τ is the mean of both sides by their momentum.
             let shear = shear_at_edge(edge, self.problem.reynolds);
             let by = by_station(&shear.among(SECOND), SECOND, SECOND_XI, edge);
             let mut row = self.row();
-            add(&mut row, by.theta, &end.theta);
+            add(&mut row, by.theta, &theta_at_edge);
             if edge.turbulent {
                 add(&mut row, 1.0, &end.shear);
             }
             self.add_station(&mut row, &by, edge);
             add(&mut carried.shear, edge.theta / first.theta, &row);
-            add(&mut carried.shear, (shear.value - first.shear) / first.theta, &end.theta);
+            add(&mut carried.shear, (shear.value - first.shear) / first.theta, &theta_at_edge);
         }
         add(&mut mass, -self.problem.base(), self.problem.outer.response(first.index));
-        self.put(first.index, &mass, -defect);
-        self.theta[first.index].clone_from(&carried.theta);
+        mass[self.count + 1] = defect;
+        self.equation(first.index).copy_from_slice(&mass);
+        self.workspace.theta[first.index] = theta;
         let nothing = self.row();
         for i in 1..wake.len() {
             let r = equations(wake, i, None, self.problem.reynolds);

@@ -1,7 +1,7 @@
 //! From a first account to the converged flow at one incidence.
 
 use super::march::{adjust, march};
-use super::newton::{Step, newton_step};
+use super::newton::{Step, Workspace, newton_step};
 use super::side::{Station, Transition};
 use super::state::{Layers, Problem, Unknowns, begin_wake};
 
@@ -88,38 +88,39 @@ fn relieved(problem: &Problem) -> Vec<f64> {
 /// Newton's method from `unknowns` on. Leaves the last layers whether or not it converged.
 pub(super) fn converge(problem: &mut Problem, unknowns: &mut Unknowns) -> Option<(Layers, Convergence)> {
     let mut change = f64::INFINITY;
+    let mut workspace = Workspace::default();
+    problem.bend_wake(unknowns);
+    let mut layers = problem.layers(unknowns);
     for steps in 1..=MOST_STEPS {
-        if change > SETTLED {
-            problem.bend_wake(unknowns);
-        }
-        let layers = problem.layers(unknowns);
-        let step = newton_step(problem, &layers)?;
+        let step = newton_step(problem, &layers, &mut workspace)?;
         let (part, size) = admissible(&layers, &step);
         if !size.is_finite() {
             return None;
         }
         apply(unknowns, &layers, &step, part);
         problem.hold_transition(&layers);
-        follow_transition(problem, unknowns, &layers);
         change = size;
         let held = layers.transitions.iter().flatten().any(|transition| transition.held);
         if size < TOLERANCE && !held {
             let layers = problem.layers(unknowns);
             return Some((layers, Convergence { steps, change, converged: true }));
         }
+        if change > SETTLED {
+            problem.bend_wake(unknowns);
+        }
+        layers = follow_transition(problem, unknowns, &layers);
     }
-    let layers = problem.layers(unknowns);
     Some((layers, Convergence { steps: MOST_STEPS, change, converged: false }))
 }
 
 /// Where transition has moved over stations, sets the layers about it anew: they are still those of
-/// the other regime, and would throw the next step off.
-fn follow_transition(problem: &Problem, unknowns: &mut Unknowns, before: &Layers) {
-    let layers = problem.layers(unknowns);
+/// the other regime, and would throw the next step off. Gives the layers as they are then.
+fn follow_transition(problem: &Problem, unknowns: &mut Unknowns, before: &Layers) -> Layers {
+    let mut layers = problem.layers(unknowns);
     if layers.node != before.node {
-        return;
+        return layers;
     }
-    let mut sides = layers.sides;
+    let sides = &mut layers.sides;
     let mut any = false;
     for side in [0, 1] {
         let count = sides[side].len();
@@ -139,8 +140,10 @@ fn follow_transition(problem: &Problem, unknowns: &mut Unknowns, before: &Layers
         });
     }
     if any {
-        unknowns.take(&sides);
+        unknowns.take(&layers.sides);
+        layers = problem.layers(unknowns);
     }
+    layers
 }
 
 /// Part of the step that keeps changes within bounds, and the greatest relative change of θ and δ*.

@@ -218,7 +218,13 @@ fn follow_shear(stations: &mut [Station], i: usize, regime: Regime, reynolds: f6
 /// Shear stress of `station` from the lag equation since a layer `ahead` of it.
 fn solve_shear(station: &mut Station, ahead: &Layer<4>, from: f64, regime: Regime, reynolds: f64) {
     station.shear = ahead.log_shear.value.exp();
-    let layer = Layer::of(regime, &station.profile(), reynolds);
+    let profile: Profile<1> = Profile {
+        shear: Dual::variable(station.shear, 0),
+        theta: Dual::constant(station.theta),
+        delta_star: Dual::constant(station.delta_star),
+        speed: Dual::constant(station.speed),
+    };
+    let layer = Layer::of(regime, &profile, reynolds);
     let length = station.xi - from;
     // The growth falls evenly with √C_τ: 2 ln c + ½ length · fall · c is known.
     let fall = -0.5 * length * layer.shear_growth.slope[0];

@@ -9,7 +9,7 @@ use super::state::{Layers, Problem, Unknowns, begin_wake};
 const MOST_STEPS: usize = 45;
 /// Relative change of the unknowns in the last step: with Newton's method what is left then is of
 /// the order of its square.
-const TOLERANCE: f64 = 1e-5;
+const TOLERANCE: f64 = 2e-4;
 /// Largest part by which θ or δ* may fall, or rise, in a step.
 const FALL: f64 = 0.3;
 const RISE: f64 = 0.5;
@@ -23,7 +23,7 @@ const FOLLOWED: usize = 5;
 /// Part of the chord ahead of the trailing edge where the first account keeps the speed level.
 const RELIEF: f64 = 0.05;
 /// Change of a step below which the bending of the wake is kept as it is.
-const SETTLED: f64 = 1e-3;
+const SETTLED: f64 = 3e-3;
 
 /// How it went.
 #[derive(Debug, Clone, Copy, PartialEq)]

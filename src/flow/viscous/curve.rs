@@ -1,5 +1,7 @@
 //! Viscous flow over a range of incidence.
 
+use std::sync::atomic::{AtomicUsize, Ordering};
+
 use super::{Conditions, Viscous, ViscousError, ViscousSolution};
 
 /// Halvings of the way from a converged neighbour before a point is left as a gap.
@@ -65,6 +67,41 @@ impl LiftCurve {
             carry(viscous, conditions, &mut points, &all);
         }
         Ok(Self { conditions: *conditions, panels: viscous.panelling().len(), points })
+    }
+
+    /// A curve for each of `conditions`, as many at a time as there are processors; in the same order,
+    /// and the same as one after the other.
+    ///
+    /// # Errors
+    /// As [`LiftCurve::sweep`], of the first that has one.
+    pub fn sweep_all(
+        viscous: &Viscous,
+        conditions: &[Conditions],
+        incidences: &[f64],
+    ) -> Result<Vec<Self>, ViscousError> {
+        let workers = std::thread::available_parallelism().map_or(1, usize::from).min(conditions.len());
+        let next = AtomicUsize::new(0);
+        let work = || {
+            let mut done = Vec::new();
+            loop {
+                let i = next.fetch_add(1, Ordering::Relaxed);
+                match conditions.get(i) {
+                    Some(conditions) => done.push((i, Self::sweep(viscous, conditions, incidences))),
+                    None => return done,
+                }
+            }
+        };
+        let mut curves: Vec<(usize, Result<Self, ViscousError>)> = std::thread::scope(|scope| {
+            let threads: Vec<_> = (1..workers).map(|_| scope.spawn(work)).collect();
+            let mut done = work();
+            for thread in threads {
+                // A thread can only fail by a panic, which is passed on.
+                done.extend(thread.join().unwrap_or_else(|panic| std::panic::resume_unwind(panic)));
+            }
+            done
+        });
+        curves.sort_by_key(|&(i, _)| i);
+        curves.into_iter().map(|(_, curve)| curve).collect()
     }
 
     /// How many points converged.

@@ -10,6 +10,7 @@ mod lu;
 mod panelling;
 mod potential;
 mod viscous;
+mod water;
 
 pub use error::FlowError;
 pub use panelling::{DEFAULT_PANELS, LEAST_PANELS, MOST_PANELS, Panelling};
@@ -18,3 +19,4 @@ pub use viscous::{
     Conditions, CurvePoint, LayerPoint, LiftCurve, SideFlow, Viscous, ViscousError, ViscousSolution,
     ViscousState, layer_along,
 };
+pub use water::{ATMOSPHERE, GRAVITY, Salinity, Water};

@@ -305,3 +305,57 @@ fn wake_response(fields: &[Fields], wake: &[Point], length: &[f64], columns: &[V
     }
     response
 }
+
+#[cfg(test)]
+#[allow(clippy::print_stdout)]
+mod tests {
+    use super::*;
+
+    /// Water blown evenly through the surface of a circle as cos nθ runs along it as sin nθ: the
+    /// potential is −cos nθ/(n rⁿ). Exact; it shares nothing with the panels.
+    #[test]
+    fn sources_on_a_circle_give_the_exact_speeds() {
+        let count = 200;
+        let circle = |i: usize| {
+            let angle = std::f64::consts::TAU * i as f64 / count as f64;
+            Point::new(0.5 + 0.5 * angle.cos(), 0.5 * angle.sin())
+        };
+        let mut points: Vec<Point> = (0..=count).map(circle).collect();
+        points[count] = points[0];
+        let coupling = Coupling::of(&Panelling::from_points(points).expect("panels")).expect("a flow");
+        let outer = coupling.at(0.0);
+        for waves in 1..=4 {
+            let phase = |i: usize| std::f64::consts::TAU * (waves * i) as f64 / count as f64;
+            // dm/ds = cos nθ on a radius of a half.
+            let mass: Vec<f64> = (0..coupling.count())
+                .map(|i| if i <= count { 0.5 * phase(i).sin() / waves as f64 } else { 0.0 })
+                .collect();
+            let worst = (0..count)
+                .map(|i| (dot(outer.response(i), &mass) - phase(i).sin()).abs())
+                .fold(0.0, f64::max);
+            println!("{waves} waves round the circle: speeds within {worst:.1e}");
+            assert!(worst < 3e-3, "{waves}: {worst:e}");
+        }
+    }
+
+    /// The fields of a panel against the sum of many points.
+    #[test]
+    fn panel_fields_agree_with_sums_of_points() {
+        let (from, to, z) = (Point::new(0.2, -0.1), Point::new(0.5, 0.15), Point::new(0.3, 0.4));
+        let count = 4000;
+        let mut sums = [Vec2::ZERO; 3];
+        for i in 0..count {
+            let part = (f64::from(i) + 0.5) / f64::from(count);
+            let away = z - from.lerp(to, part);
+            let field = away / (away.hypot2() * std::f64::consts::TAU) * from.distance(to) / f64::from(count);
+            for (sum, more) in
+                sums.iter_mut().zip([field, (1.0 - part) * field.turn_90(), part * field.turn_90()])
+            {
+                *sum += more;
+            }
+        }
+        for (closed, sum) in velocities(from, to, z).into_iter().zip(sums) {
+            assert!((closed - sum).hypot() < 1e-7, "{closed:?} {sum:?}");
+        }
+    }
+}

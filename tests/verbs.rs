@@ -76,11 +76,38 @@ fn lift_prints_the_promised_keys() {
 }
 
 #[test]
-fn lift_does_not_pretend_to_know_friction() {
-    let answer = Bench::new().run(&["lift", "NACA 4412", "--re", "1e6", "--angles", "-4:10:1"]);
-    assert_eq!(answer.status, 2);
-    assert!(answer.err.contains("viscous solution") && answer.err.contains("--inviscid"), "{}", answer.err);
-    assert_eq!(answer.out, "");
+fn lift_with_friction_says_what_it_rests_on() {
+    let bench = Bench::new();
+    let typed = ["lift", "NACA 4412", "--re", "5e5,1e6", "--angles", "0:4:2", "--trip", "0.1,0.6"];
+    let answer = bench.run(&[&typed[..], &["--format", "json"]].concat());
+    assert_eq!(answer.status, 0, "{}", answer.err);
+    let curves = answer.json()["curves"].as_array().expect("curves").clone();
+    assert_eq!(curves.len(), 2);
+    for (curve, reynolds) in curves.iter().zip([5e5, 1e6]) {
+        assert_eq!(curve["reynolds"].as_f64(), Some(reynolds));
+        assert_eq!((curve["amplification"].as_f64(), curve["trip_lower"].as_f64()), (Some(9.0), Some(0.6)));
+        for point in curve["points"].as_array().expect("points") {
+            assert_eq!(point["converged"].as_bool(), Some(true));
+            assert!(point["cd"].as_f64().is_some_and(|cd| cd > 0.004 && cd < 0.03));
+            assert!(point["transition_upper"].as_f64().is_some_and(|x| x < 0.1001));
+        }
+    }
+    let text = bench.run(&[&typed[..], &["--svg", "lift.svg"]].concat());
+    assert!(text.out.contains("trip at 0.6") && bench.path().join("lift.svg").exists(), "{}", text.out);
+    let csv = bench.run(&[&typed[..], &["--format", "csv"]].concat());
+    assert_eq!(csv.out.lines().count(), 7);
+    for (arguments, says) in [
+        (["--trip", "1.5"], "0 to 1"),
+        (["--trip", "0.1,0.2,0.3"], "comma"),
+        (["--amplification", "40"], "20"),
+    ] {
+        let answer =
+            bench.run(&[&["lift", "NACA 0012", "--re", "1e6", "--angles", "4"][..], &arguments].concat());
+        assert_eq!(answer.status, 2);
+        assert!(answer.err.contains(says), "{}", answer.err);
+    }
+    let answer = bench.run(&["lift", "NACA 0012", "--re", "10", "--angles", "4"]);
+    assert!(answer.status == 2 && answer.err.contains("Reynolds"), "{}", answer.err);
 }
 
 #[test]

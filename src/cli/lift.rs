@@ -1,22 +1,22 @@
-//! `plankform lift`: lift, moment and pressure of a section over a range of incidence.
+//! `plankform lift`: lift, drag, moment and pressure of a section over a range of incidence.
 
 use std::path::PathBuf;
 
 use plankform::export::chart::{Chart, Series};
 use plankform::export::csv::csv;
-use plankform::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
+use plankform::flow::{Conditions, DEFAULT_PANELS, LiftCurve, Panelling, PotentialFlow, Solution, Viscous};
 use plankform::units::fixed;
 use serde_json::{Value, json};
 
 use super::failure::Failure;
 use super::number_list;
 use super::section_source::SectionSource;
-use super::{Format, Outcome, print, print_json, save, say};
+use super::{Format, Outcome, print, print_json, save, say, viscous_lift};
 
-/// Lift curve of a section, with moment and pressure
+/// Lift curve of a section, with drag, moment, transition and pressure
 #[derive(Debug, clap::Args)]
 #[command(
-    after_help = "Example:\n  plankform lift \"NACA 4412\" --re 1e6 --angles -4:10:1 --inviscid --pressure --format json"
+    after_help = "Examples:\n  plankform lift \"NACA 4412\" --re 5e5,1e6 --angles -4:14:1\n  plankform lift \"NACA 4412\" --angles -4:10:1 --inviscid --pressure --format json"
 )]
 pub(super) struct Arguments {
     #[command(flatten)]
@@ -27,6 +27,13 @@ pub(super) struct Arguments {
     /// Incidence in degrees, nose up positive: from FROM in whole steps up to TO, or one value
     #[arg(long, value_name = "FROM:TO:STEP", allow_hyphen_values = true, value_parser = angles)]
     angles: std::vec::Vec<f64>,
+    /// Amplification exponent N at which the layers become turbulent: 9 in a clean tank, less in
+    /// natural water
+    #[arg(long, value_name = "N", default_value_t = 9.0, value_parser = amplification)]
+    amplification: f64,
+    /// Make the layers turbulent at this part of the chord: upper side, lower side, or one for both
+    #[arg(long, value_name = "X[,X]", value_parser = trips)]
+    trip: Option<[f64; 2]>,
     /// Flow without friction: lift, moment and pressure, but no drag and no stall
     #[arg(long)]
     inviscid: bool,
@@ -54,11 +61,7 @@ fn angles(text: &str) -> Result<Vec<f64>, String> {
 
 pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     if !arguments.inviscid {
-        return Err(Failure::Input(
-            "the viscous solution (boundary layer, drag, stall) is not there yet: add --inviscid for lift, moment and \
-             pressure without friction"
-                .to_owned(),
-        ));
+        return with_friction(arguments);
     }
     if arguments.re.is_some() {
         say("note: flow without friction is the same at every Reynolds number; --re is not used");
@@ -79,6 +82,62 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
             "trailing_edge": section.edge_word(),
             "curves": [curve(&flow, &points, arguments.pressure)],
         }))?,
+    }
+    Ok(Outcome::Passed)
+}
+
+fn amplification(text: &str) -> Result<f64, String> {
+    let value: f64 = text.parse().map_err(|_| format!("'{text}' is not a number"))?;
+    if (0.1..=20.0).contains(&value) { Ok(value) } else { Err(format!("{text} is outside 0.1 to 20")) }
+}
+
+fn trips(text: &str) -> Result<[f64; 2], String> {
+    let place = |text: &str| -> Result<f64, String> {
+        let value: f64 = text.trim().parse().map_err(|_| format!("'{text}' is not a number"))?;
+        if (0.0..=1.0).contains(&value) { Ok(value) } else { Err(format!("{text} is off the chord, 0 to 1")) }
+    };
+    let places: Vec<f64> = text.split(',').map(place).collect::<Result<_, _>>()?;
+    match *places.as_slice() {
+        [both] => Ok([both, both]),
+        [upper, lower] => Ok([upper, lower]),
+        _ => Err("write one value, or two with a comma between: upper side, lower side".to_owned()),
+    }
+}
+
+fn with_friction(arguments: &Arguments) -> Result<Outcome, Failure> {
+    let section = arguments.source.section()?;
+    let panelling = Panelling::of(&section, DEFAULT_PANELS).map_err(Failure::input)?;
+    let flow = Viscous::new(&panelling).map_err(Failure::input)?;
+    let incidences: Vec<f64> = arguments.angles.iter().map(|angle| angle.to_radians()).collect();
+    let conditions: Vec<Conditions> = arguments
+        .re
+        .iter()
+        .flatten()
+        .map(|&reynolds| Conditions {
+            trip_upper: arguments.trip.map(|[upper, _]| upper),
+            trip_lower: arguments.trip.map(|[_, lower]| lower),
+            ..Conditions::free(reynolds, arguments.amplification)
+        })
+        .collect();
+    let curves = LiftCurve::sweep_all(&flow, &conditions, &incidences).map_err(Failure::input)?;
+    if let Some(path) = &arguments.svg {
+        save(path, &format!("{}\n", viscous_lift::chart(section.name(), &curves).to_svg()))?;
+    }
+    match arguments.format {
+        Format::Text => print(&viscous_lift::text(section.name(), &curves, arguments.pressure))?,
+        Format::Csv => print(&viscous_lift::table(&curves, arguments.pressure).map_err(Failure::input)?)?,
+        Format::Json => print_json(&json!({
+            "section": section.name(),
+            "trailing_edge": section.thickness_form().edge_word(),
+            "curves": curves
+                .iter()
+                .map(|curve| viscous_lift::curve_json(curve, arguments.pressure))
+                .collect::<Vec<_>>(),
+        }))?,
+    }
+    let gaps: usize = curves.iter().map(|curve| curve.points.len() - curve.converged()).sum();
+    if gaps > 0 {
+        say(&format!("note: no solution was found at {gaps} of the angles; they are left out"));
     }
     Ok(Outcome::Passed)
 }

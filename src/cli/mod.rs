@@ -10,6 +10,7 @@ mod number_list;
 mod schema;
 mod section;
 mod section_source;
+mod viscous_lift;
 
 use std::io::{self, Write};
 use std::process::ExitCode;

@@ -53,6 +53,14 @@ impl Base {
         self.downstream.dot(self.base)
     }
 
+    /// Strengths of its sheets for unit edge speed: of the vortex sheet, anticlockwise, and of the
+    /// source sheet.
+    pub(super) fn strengths(&self) -> [f64; 2] {
+        let length = self.base.hypot();
+        // Outwards is to the right of the way from the lower edge to the upper one.
+        [self.base.dot(self.downstream) / length, -self.base.turn_90().dot(self.downstream) / length]
+    }
+
     /// What the base takes from the stream function at `z` for unit edge speed.
     ///
     /// From ∫ log(z - ζ) ds, whose real part belongs to the vortex and whose imaginary part to the
@@ -76,9 +84,7 @@ impl Base {
         let second = term(p[0] - 1.0, z - (self.from + self.base));
         let scale = length / (4.0 * std::f64::consts::PI);
         let [vortex, source] = [scale * (first[0] - second[0] - 2.0), scale * (first[1] - second[1])];
-        // Outwards is to the right of the way from the lower edge to the upper one.
-        let across = -self.base.turn_90().dot(self.downstream) / length;
-        let along = self.base.dot(self.downstream) / length;
+        let [along, across] = self.strengths();
         vortex * along - source * across
     }
 }

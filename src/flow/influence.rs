@@ -18,15 +18,14 @@ pub(super) struct VortexInfluence {
 
 /// Rows that a system may add below the nodes.
 const SPARE_ROWS: usize = 1;
-/// Columns that a system may add after the nodes.
-const SPARE_COLUMNS: usize = 3;
 
 impl VortexInfluence {
-    pub(super) fn of(panelling: &Panelling) -> Self {
+    /// With room for `spare` columns that a system may add after the nodes.
+    pub(super) fn of(panelling: &Panelling, spare: usize) -> Self {
         let nodes = panelling.nodes().len();
         let rows = (nodes + SPARE_ROWS).next_multiple_of(LANES);
         // One column more in front takes the weight, nought, of the node before the first.
-        let entries = vec![0.0; rows * (nodes + 1 + SPARE_COLUMNS)];
+        let entries = vec![0.0; rows * (nodes + 1 + spare)];
         let mut influence = Self { rows, entries };
         pulp::Arch::new().dispatch(Assembly { panelling, influence: &mut influence });
         influence
@@ -219,7 +218,7 @@ mod tests {
             let section = Section::from_designation(name, edge).expect("a section");
             let panelling = Panelling::of(&section, count).expect("panels");
             let nodes = panelling.nodes();
-            let matrix = VortexInfluence::of(&panelling);
+            let matrix = VortexInfluence::of(&panelling, 0);
             let mut expected = vec![vec![0.0; nodes.len() + 3]; nodes.len()];
             for (j, panel) in panelling.panels().iter().enumerate() {
                 let scale = constants_of(panel).scale;

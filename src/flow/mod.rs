@@ -9,7 +9,14 @@ mod loads;
 mod lu;
 mod panelling;
 mod potential;
+mod viscous;
+mod water;
 
 pub use error::FlowError;
 pub use panelling::{DEFAULT_PANELS, LEAST_PANELS, MOST_PANELS, Panelling};
 pub use potential::{PotentialFlow, PressurePoint, Solution};
+pub use viscous::{
+    Conditions, CurvePoint, LayerPoint, LiftCurve, SideFlow, Viscous, ViscousError, ViscousSolution,
+    ViscousState, layer_along,
+};
+pub use water::{ATMOSPHERE, GRAVITY, Salinity, Water};

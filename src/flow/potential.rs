@@ -62,46 +62,9 @@ impl PotentialFlow {
     /// # Errors
     /// When the equations have no finite solution.
     pub fn new(panelling: &Panelling) -> Result<Self, FlowError> {
-        let nodes = panelling.nodes();
-        let (count, size) = (nodes.len(), nodes.len() + 1);
-        let mut influence = VortexInfluence::of(panelling);
-        let stride = influence.stride();
-        let block = influence.block();
+        let [along, across] = surface_speeds(panelling, 0, |_, _| ())?.0;
+        let speed = [along, across];
         let base = Base::of(panelling);
-
-        block[count * stride..][..count].fill(1.0);
-        for (i, node) in nodes.iter().enumerate() {
-            block[size * stride + i] = node.y;
-            block[(size + 1) * stride + i] = -node.x;
-        }
-        if let Some(base) = &base {
-            // The edge speed is the mean of both sides, the upper one counted aft.
-            for (i, &node) in nodes.iter().enumerate() {
-                let half = 0.5 * base.stream_function(node);
-                block[i] -= half;
-                block[(count - 1) * stride + i] += half;
-            }
-        } else {
-            let row = count - 1;
-            for column in 0..size + 2 {
-                block[column * stride + row] = 0.0;
-            }
-            for (i, weight) in straight_run(panelling).into_iter().enumerate() {
-                block[i * stride + row] += weight;
-                block[(count - 1 - i) * stride + row] -= weight;
-            }
-        }
-        for column in 0..size + 2 {
-            block[column * stride + count] = 0.0;
-        }
-        block[count] = 1.0;
-        block[(count - 1) * stride + count] = 1.0;
-
-        solve_in_place(block, stride, size);
-        let speed = [size, size + 1].map(|column| block[column * stride..][..count].to_vec());
-        if !speed.iter().flatten().all(|speed| speed.is_finite()) {
-            return Err(FlowError::Singular);
-        }
         let base_circulation = base.map_or(0.0, |base| base.circulation());
         let circulation = [0, 1].map(|k| circulation(panelling, base_circulation, &speed[k]));
         Ok(Self { panelling: panelling.clone(), speed, circulation })
@@ -161,5 +124,64 @@ impl PotentialFlow {
     pub fn incidence_for_lift(&self, cl: f64) -> Option<f64> {
         let sine = cl / self.slope_per_radian();
         (sine.abs() <= 1.0).then(|| self.zero_lift() + sine.asin())
+    }
+}
+
+/// What [`surface_speeds`] gives: speeds at the nodes for onset along x and along y, and for each
+/// further stream function.
+pub(super) type SurfaceSpeeds = ([Vec<f64>; 2], Vec<Vec<f64>>);
+
+/// Speeds along the outline at the nodes for onset along x and along y, and for `further` other
+/// stream functions alone, whose values at the nodes `fill` puts into columns of a given length.
+pub(super) fn surface_speeds(
+    panelling: &Panelling,
+    further: usize,
+    fill: impl FnOnce(&mut [f64], usize),
+) -> Result<SurfaceSpeeds, FlowError> {
+    let nodes = panelling.nodes();
+    let (count, size) = (nodes.len(), nodes.len() + 1);
+    let onsets = 2;
+    // The stream function of the surface, the onsets and what is further asked for.
+    let mut influence = VortexInfluence::of(panelling, 1 + onsets + further);
+    let stride = influence.stride();
+    let block = influence.block();
+
+    block[count * stride..][..count].fill(1.0);
+    for (i, node) in nodes.iter().enumerate() {
+        block[size * stride + i] = node.y;
+        block[(size + 1) * stride + i] = -node.x;
+    }
+    fill(&mut block[(size + onsets) * stride..], stride);
+    if let Some(base) = Base::of(panelling) {
+        // The edge speed is the mean of both sides, the upper one counted aft.
+        for (i, &node) in nodes.iter().enumerate() {
+            let half = 0.5 * base.stream_function(node);
+            block[i] -= half;
+            block[(count - 1) * stride + i] += half;
+        }
+    } else {
+        let row = count - 1;
+        for column in block.chunks_exact_mut(stride) {
+            column[row] = 0.0;
+        }
+        for (i, weight) in straight_run(panelling).into_iter().enumerate() {
+            block[i * stride + row] += weight;
+            block[(count - 1 - i) * stride + row] -= weight;
+        }
+    }
+    for column in block.chunks_exact_mut(stride) {
+        column[count] = 0.0;
+    }
+    block[count] = 1.0;
+    block[(count - 1) * stride + count] = 1.0;
+
+    solve_in_place(block, stride, size);
+    let mut speeds = block[size * stride..].chunks_exact(stride).map(|column| column[..count].to_vec());
+    let speed = [(); 2].map(|()| speeds.next().unwrap_or_default());
+    let rest: Vec<Vec<f64>> = speeds.collect();
+    if speed.iter().chain(&rest).flatten().all(|speed| speed.is_finite()) {
+        Ok((speed, rest))
+    } else {
+        Err(FlowError::Singular)
     }
 }

@@ -1,0 +1,204 @@
+//! What `plankform lift` shows of curves with friction.
+
+use plankform::export::ExportError;
+use plankform::export::chart::{Chart, Series};
+use plankform::export::csv::csv;
+use plankform::flow::{CurvePoint, LiftCurve, ViscousSolution};
+use plankform::units::fixed;
+use serde_json::{Value, json};
+
+pub(super) fn curve_json(curve: &LiftCurve, pressure: bool) -> Value {
+    let straight = curve.slope_and_zero_lift();
+    let greatest = curve.greatest_lift();
+    json!({
+        "reynolds": curve.conditions.reynolds,
+        "amplification": curve.conditions.amplification,
+        "trip_upper": curve.conditions.trip_upper,
+        "trip_lower": curve.conditions.trip_lower,
+        "panels": curve.panels,
+        "converged": curve.converged(),
+        "flap_deg": 0.0,
+        "slope_per_deg": straight.map(|(slope, _)| slope.to_radians()),
+        "zero_lift_deg": straight.map(|(_, zero)| zero.to_degrees()),
+        "cl_max": greatest.map(|(lift, _)| lift),
+        "cl_max_deg": greatest.map(|(_, angle)| angle.to_degrees()),
+        "points": curve.points.iter().map(|point| point_json(point, pressure)).collect::<Vec<_>>(),
+    })
+}
+
+fn point_json(point: &CurvePoint, pressure: bool) -> Value {
+    let solution = point.solution.as_ref();
+    let number = |of: fn(&ViscousSolution) -> f64| solution.map(of);
+    let mut value = json!({
+        "angle_deg": angle(point),
+        "converged": solution.is_some(),
+        "cl": number(|s| s.cl),
+        "cd": number(|s| s.cd),
+        "cd_friction": number(|s| s.cd_friction),
+        "cd_pressure": number(|s| s.cd_pressure),
+        "cm": number(|s| s.cm),
+        "hinge_moment": null,
+        "cp_min": number(|s| s.cp_min),
+        "transition_upper": solution.and_then(|s| s.upper.transition),
+        "transition_lower": solution.and_then(|s| s.lower.transition),
+        "separation_upper": solution.and_then(|s| s.upper.separation),
+        "separation_lower": solution.and_then(|s| s.lower.separation),
+        "bubble_upper": solution.and_then(|s| s.upper.bubble),
+        "bubble_lower": solution.and_then(|s| s.lower.bubble),
+    });
+    if pressure {
+        value["pressure"] =
+            json!(solution.map(|s| s.pressure.iter().map(|p| [p.x, p.y, p.cp]).collect::<Vec<_>>()));
+    }
+    value
+}
+
+/// Incidence in degrees, without the dust of its way through radians.
+fn angle(point: &CurvePoint) -> f64 {
+    (point.incidence.to_degrees() * 1e9).round() / 1e9
+}
+
+pub(super) fn text(name: &str, curves: &[LiftCurve], pressure: bool) -> String {
+    let mut text = format!("{name}, with friction\n");
+    for curve in curves {
+        let conditions = &curve.conditions;
+        let trip = |x: Option<f64>| x.map_or_else(|| "free".to_owned(), |x| format!("trip at {x}"));
+        text.push_str(&format!(
+            "\nReynolds number {:.3e}, N = {}, upper side {}, lower side {}, {} panels, {} of {} points converged\n",
+            conditions.reynolds,
+            conditions.amplification,
+            trip(conditions.trip_upper),
+            trip(conditions.trip_lower),
+            curve.panels,
+            curve.converged(),
+            curve.points.len()
+        ));
+        if let Some((slope, zero)) = curve.slope_and_zero_lift() {
+            let zero = fixed(zero.to_degrees(), 2);
+            text.push_str(&format!(
+                "lift slope {:.4} per degree, zero lift at {zero}°\n",
+                slope.to_radians()
+            ));
+        }
+        match curve.greatest_lift() {
+            Some((lift, at)) => {
+                text.push_str(&format!("greatest lift {lift:.3} at {}°\n", fixed(at.to_degrees(), 1)));
+            }
+            None => text.push_str("greatest lift not within these angles\n"),
+        }
+        text.push_str(&format!(
+            "\n{:>10}{:>9}{:>10}{:>9}{:>11}  {:<21}{}\n",
+            "angle", "lift", "drag", "moment", "least cp", "turbulent from", "separation"
+        ));
+        for point in &curve.points {
+            text.push_str(&line(point));
+        }
+        for point in curve.points.iter().filter(|_| pressure) {
+            if let Some(solution) = &point.solution {
+                let heading =
+                    format!("\npressure at {:.2}°\n{:>10}{:>10}{:>10}\n", angle(point), "x", "y", "cp");
+                text.push_str(&heading);
+                for p in &solution.pressure {
+                    text.push_str(&format!("{:>10.5}{:>10.5}{:>10.4}\n", p.x, p.y, p.cp));
+                }
+            }
+        }
+    }
+    text
+}
+
+fn line(point: &CurvePoint) -> String {
+    let Some(s) = &point.solution else {
+        return format!("{:>9.2}°   no solution found\n", angle(point));
+    };
+    let place = |x: Option<f64>| x.map_or_else(|| "–".to_owned(), |x| fixed(x, 3));
+    let turbulent = format!("{} / {}", place(s.upper.transition), place(s.lower.transition));
+    let mut events = Vec::new();
+    for (word, side) in [("upper", &s.upper), ("lower", &s.lower)] {
+        if let Some([from, to]) = side.bubble {
+            events.push(format!("{word} bubble {from:.3} to {to:.3}"));
+        }
+        if let Some(from) = side.separation {
+            events.push(format!("{word} from {from:.3}"));
+        }
+    }
+    let line = format!(
+        "{:>9.2}°{:>9}{:>10}{:>9}{:>11}  {:<21}{}",
+        angle(point),
+        fixed(s.cl, 4),
+        fixed(s.cd, 5),
+        fixed(s.cm, 4),
+        fixed(s.cp_min, 3),
+        turbulent,
+        events.join(", ")
+    );
+    format!("{}\n", line.trim_end())
+}
+
+pub(super) fn table(curves: &[LiftCurve], pressure: bool) -> Result<String, ExportError> {
+    let text = |value: Option<f64>| value.map_or_else(String::new, |value| fixed(value, 6));
+    if pressure {
+        let rows = curves.iter().flat_map(|curve| {
+            curve.points.iter().flat_map(move |point| {
+                let nodes = point.solution.iter().flat_map(|solution| &solution.pressure);
+                nodes.map(move |p| {
+                    [curve.conditions.reynolds, angle(point), p.x, p.y, p.cp].map(|v| fixed(v, 6))
+                })
+            })
+        });
+        return csv(["reynolds", "angle_deg", "x_over_chord", "y_over_chord", "cp"], rows);
+    }
+    let rows = curves.iter().flat_map(|curve| {
+        curve.points.iter().map(move |point| {
+            let s = point.solution.as_ref();
+            let number = |of: fn(&ViscousSolution) -> f64| text(s.map(of));
+            [
+                fixed(curve.conditions.reynolds, 0),
+                fixed(angle(point), 6),
+                s.is_some().to_string(),
+                number(|s| s.cl),
+                number(|s| s.cd),
+                number(|s| s.cd_friction),
+                number(|s| s.cm),
+                number(|s| s.cp_min),
+                text(s.and_then(|s| s.upper.transition)),
+                text(s.and_then(|s| s.lower.transition)),
+                text(s.and_then(|s| s.upper.separation)),
+                text(s.and_then(|s| s.lower.separation)),
+            ]
+        })
+    });
+    let heading = [
+        "reynolds",
+        "angle_deg",
+        "converged",
+        "cl",
+        "cd",
+        "cd_friction",
+        "cm",
+        "cp_min",
+        "transition_upper",
+        "transition_lower",
+        "separation_upper",
+        "separation_lower",
+    ];
+    csv(heading, rows)
+}
+
+pub(super) fn chart(name: &str, curves: &[LiftCurve]) -> Chart {
+    let series = curves.iter().map(|curve| Series {
+        name: format!("Re {:.2e}", curve.conditions.reynolds),
+        points: curve
+            .points
+            .iter()
+            .map(|point| (angle(point), point.solution.as_ref().map_or(f64::NAN, |s| s.cl)))
+            .collect(),
+    });
+    Chart {
+        title: format!("{name}: lift with friction"),
+        across: "incidence, degrees".to_owned(),
+        up: "lift coefficient".to_owned(),
+        series: series.collect(),
+        ..Chart::default()
+    }
+}

@@ -1,0 +1,258 @@
+//! Viscous flow over a range of incidence.
+
+use std::sync::atomic::{AtomicUsize, Ordering};
+
+use super::{Conditions, Viscous, ViscousError, ViscousSolution};
+
+/// Halvings of the way from a converged neighbour before a point is left as a gap.
+const HALVINGS: usize = 5;
+
+/// Lift, drag and moment over incidence.
+#[derive(Debug, Clone, PartialEq)]
+pub struct LiftCurve {
+    /// What it holds for.
+    pub conditions: Conditions,
+    /// How many panels it was solved on.
+    pub panels: usize,
+    /// In the order of growing incidence.
+    pub points: Vec<CurvePoint>,
+}
+
+/// One incidence of a curve.
+#[derive(Debug, Clone, PartialEq)]
+pub struct CurvePoint {
+    /// In radians.
+    pub incidence: f64,
+    /// `None` where no flow was found: a gap.
+    pub solution: Option<ViscousSolution>,
+}
+
+impl LiftCurve {
+    /// The flow at each of `incidences`, in radians.
+    ///
+    /// Starts where the layers have least to do, near zero lift, and goes on from neighbour to
+    /// neighbour both ways. A point that does not converge from its neighbour is started afresh,
+    /// then approached in smaller steps; what is left is tried again from the other side.
+    ///
+    /// # Errors
+    /// When the conditions or an incidence are out of range. A point that does not converge is a
+    /// gap and no error.
+    pub fn sweep(
+        viscous: &Viscous,
+        conditions: &Conditions,
+        incidences: &[f64],
+    ) -> Result<Self, ViscousError> {
+        conditions.check()?;
+        let mut sorted = incidences.to_vec();
+        if let Some(&bad) = sorted.iter().find(|angle| !angle.is_finite()) {
+            return Err(ViscousError::Incidence(bad));
+        }
+        sorted.sort_by(f64::total_cmp);
+        sorted.dedup();
+        let mut points: Vec<CurvePoint> =
+            sorted.into_iter().map(|incidence| CurvePoint { incidence, solution: None }).collect();
+        let easy = viscous.zero_lift();
+        let first = (0..points.len()).min_by(|&a, &b| {
+            (points[a].incidence - easy).abs().total_cmp(&(points[b].incidence - easy).abs())
+        });
+        if let Some(first) = first {
+            let up: Vec<usize> = (first..points.len()).collect();
+            let down: Vec<usize> = (0..=first).rev().collect();
+            carry(viscous, conditions, &mut points, &up);
+            carry(viscous, conditions, &mut points, &down);
+            // Gaps, from the side that was not tried.
+            let all: Vec<usize> = (0..points.len()).collect();
+            let back: Vec<usize> = all.iter().rev().copied().collect();
+            carry(viscous, conditions, &mut points, &back);
+            carry(viscous, conditions, &mut points, &all);
+        }
+        Ok(Self { conditions: *conditions, panels: viscous.panelling().len(), points })
+    }
+
+    /// A curve for each of `conditions`, as many at a time as there are processors; in the same order,
+    /// and the same as one after the other.
+    ///
+    /// # Errors
+    /// As [`LiftCurve::sweep`], of the first that has one.
+    pub fn sweep_all(
+        viscous: &Viscous,
+        conditions: &[Conditions],
+        incidences: &[f64],
+    ) -> Result<Vec<Self>, ViscousError> {
+        let workers = std::thread::available_parallelism().map_or(1, usize::from).min(conditions.len());
+        let next = AtomicUsize::new(0);
+        let work = || {
+            let mut done = Vec::new();
+            loop {
+                let i = next.fetch_add(1, Ordering::Relaxed);
+                match conditions.get(i) {
+                    Some(conditions) => done.push((i, Self::sweep(viscous, conditions, incidences))),
+                    None => return done,
+                }
+            }
+        };
+        let mut curves: Vec<(usize, Result<Self, ViscousError>)> = std::thread::scope(|scope| {
+            let threads: Vec<_> = (1..workers).map(|_| scope.spawn(work)).collect();
+            let mut done = work();
+            for thread in threads {
+                // A thread can only fail by a panic, which is passed on.
+                done.extend(thread.join().unwrap_or_else(|panic| std::panic::resume_unwind(panic)));
+            }
+            done
+        });
+        curves.sort_by_key(|&(i, _)| i);
+        curves.into_iter().map(|(_, curve)| curve).collect()
+    }
+
+    /// How many points converged.
+    #[must_use]
+    pub fn converged(&self) -> usize {
+        self.points.iter().filter(|point| point.solution.is_some()).count()
+    }
+
+    /// What was found, without the gaps.
+    pub fn solutions(&self) -> impl Iterator<Item = &ViscousSolution> {
+        self.points.iter().filter_map(|point| point.solution.as_ref())
+    }
+
+    /// Greatest lift coefficient and its incidence in radians, by the parabola through the greatest
+    /// point and its neighbours; `None` when the greatest is at an end of the curve, where lift may
+    /// still grow.
+    #[must_use]
+    pub fn greatest_lift(&self) -> Option<(f64, f64)> {
+        let found: Vec<[f64; 2]> = self.solutions().map(|s| [s.incidence, s.cl]).collect();
+        let best = (0..found.len()).max_by(|&a, &b| found[a][1].total_cmp(&found[b][1]))?;
+        if best == 0 || best + 1 == found.len() {
+            return None;
+        }
+        let [[a0, c0], [a1, c1], [a2, c2]] = [found[best - 1], found[best], found[best + 1]];
+        let (before, after) = ((c1 - c0) / (a1 - a0), (c2 - c1) / (a2 - a1));
+        let bend = (after - before) / (a2 - a0);
+        if bend >= 0.0 {
+            return Some((c1, a1));
+        }
+        // Newton's form: c = c0 + before (a − a0) + bend (a − a0)(a − a1).
+        let at = (0.5 * (a0 + a1 - before / bend)).clamp(a0, a2);
+        Some((c0 + before * (at - a0) + bend * (at - a0) * (at - a1), at))
+    }
+
+    /// Slope of lift per radian and incidence of zero lift in radians, by the straight line of
+    /// least squares through the points with a lift coefficient between -0.2 and 0.6; `None` with
+    /// fewer than two of them.
+    #[must_use]
+    pub fn slope_and_zero_lift(&self) -> Option<(f64, f64)> {
+        let used: Vec<[f64; 2]> =
+            self.solutions().map(|s| [s.incidence, s.cl]).filter(|p| (-0.2..=0.6).contains(&p[1])).collect();
+        let count = used.len() as f64;
+        let mean = |k: usize| used.iter().map(|p| p[k]).sum::<f64>() / count;
+        let (angle, lift) = (mean(0), mean(1));
+        let square: f64 = used.iter().map(|p| (p[0] - angle).powi(2)).sum();
+        let product: f64 = used.iter().map(|p| (p[0] - angle) * (p[1] - lift)).sum();
+        let slope = product / square;
+        (used.len() > 1 && slope.is_finite() && slope != 0.0).then(|| (slope, angle - lift / slope))
+    }
+
+    /// The point of least drag.
+    #[must_use]
+    pub fn least_drag(&self) -> Option<&ViscousSolution> {
+        self.solutions().min_by(|a, b| a.cd.total_cmp(&b.cd))
+    }
+}
+
+/// Solves what is still open along `order`, from neighbour to neighbour.
+fn carry(viscous: &Viscous, conditions: &Conditions, points: &mut [CurvePoint], order: &[usize]) {
+    let mut last: Option<ViscousSolution> = None;
+    for &i in order {
+        if let Some(solution) = &points[i].solution {
+            last = Some(solution.clone());
+            continue;
+        }
+        let target = points[i].incidence;
+        let found = match &last {
+            Some(near) => from_neighbour(viscous, conditions, near, target),
+            None => viscous.at(target, conditions, None).ok(),
+        };
+        if let Some(found) = found {
+            last = Some(found.clone());
+            points[i].solution = Some(found);
+        }
+    }
+}
+
+/// Difference of the speeds of both sides near the trailing edge, over that of the neighbour, from
+/// which on a solution is doubted.
+const DOUBTED: f64 = 0.03;
+
+/// Newton steps from which on a solution is doubted that was started from a neighbour: it has come
+/// from afar.
+const MANY_STEPS: usize = 9;
+
+/// From a neighbour, afresh, or from the neighbour in smaller steps.
+///
+/// The equations can have a second solution, in which the sides run together at the very edge only
+/// and not, as the Kutta condition means, ahead of it. So where they differ there more than at the
+/// neighbour, or the way was long, all three ways are gone and that taken which brings the sides
+/// together best.
+fn from_neighbour(
+    viscous: &Viscous,
+    conditions: &Conditions,
+    near: &ViscousSolution,
+    target: f64,
+) -> Option<ViscousSolution> {
+    let believed = |found: &ViscousSolution| {
+        found.steps <= MANY_STEPS && found.edge_difference() < near.edge_difference() + DOUBTED
+    };
+    let ways: [&dyn Fn() -> Option<ViscousSolution>; 3] = [
+        &|| viscous.attempt(target, conditions, Some(&near.state)),
+        &|| viscous.attempt(target, conditions, None),
+        &|| by_halves(viscous, conditions, near, target),
+    ];
+    let mut best: Option<ViscousSolution> = None;
+    for way in ways {
+        let Some(found) = way() else { continue };
+        if best.is_none() && believed(&found) {
+            return Some(found);
+        }
+        best = best.filter(|best| best.edge_difference() <= found.edge_difference()).or(Some(found));
+    }
+    best
+}
+
+/// Offsets, in degrees, at which a start is looked for when a point has none of its own.
+const DETOURS: [f64; 8] = [1.0, -1.0, 2.0, -2.0, 3.5, -3.5, 5.0, -5.0];
+
+/// By way of a point nearby that can be started afresh.
+pub(super) fn by_detour(viscous: &Viscous, conditions: &Conditions, target: f64) -> Option<ViscousSolution> {
+    DETOURS.iter().find_map(|offset| {
+        let near = viscous.attempt(target + offset.to_radians(), conditions, None)?;
+        by_halves(viscous, conditions, &near, target)
+    })
+}
+
+/// From a neighbour in steps that are halved when one fails, and grow again when they do not.
+fn by_halves(
+    viscous: &Viscous,
+    conditions: &Conditions,
+    near: &ViscousSolution,
+    target: f64,
+) -> Option<ViscousSolution> {
+    let mut at = near.clone();
+    let mut step = 0.5 * (target - near.incidence);
+    let mut halvings = 1;
+    while halvings <= HALVINGS {
+        let next =
+            if (target - at.incidence).abs() <= step.abs() * 1.001 { target } else { at.incidence + step };
+        match viscous.attempt(next, conditions, Some(&at.state)) {
+            Some(found) if next == target => return Some(found),
+            Some(found) => {
+                at = found;
+                step *= 1.5;
+            }
+            None => {
+                step *= 0.5;
+                halvings += 1;
+            }
+        }
+    }
+    None
+}

@@ -105,7 +105,7 @@ fn trips(text: &str) -> Result<[f64; 2], String> {
 }
 
 fn with_friction(arguments: &Arguments) -> Result<Outcome, Failure> {
-    let section = arguments.source.section()?;
+    let section = arguments.source.section(None)?;
     let panelling = Panelling::of(&section, DEFAULT_PANELS).map_err(Failure::input)?;
     let flow = Viscous::new(&panelling).map_err(Failure::input)?;
     let incidences: Vec<f64> = arguments.angles.iter().map(|angle| angle.to_radians()).collect();
@@ -128,7 +128,7 @@ fn with_friction(arguments: &Arguments) -> Result<Outcome, Failure> {
         Format::Csv => print(&viscous_lift::table(&curves, arguments.pressure).map_err(Failure::input)?)?,
         Format::Json => print_json(&json!({
             "section": section.name(),
-            "trailing_edge": section.thickness_form().edge_word(),
+            "trailing_edge": section.edge_word(),
             "curves": curves
                 .iter()
                 .map(|curve| viscous_lift::curve_json(curve, arguments.pressure))

@@ -491,7 +491,7 @@ pub(super) static LIFT: Table = Table {
             "18 kn",
         ),
         key("water", Word(&["sea", "fresh"]), Default("sea"), "Sea water, or fresh.", "sea"),
-        key("temperature", Amount(&TEMPERATURE, 0.0, 40.0), Default("15 °C"), "Of the water.", "15 °C"),
+        key("temperature", Amount(&TEMPERATURE, 0.0, 30.0), Default("15 °C"), "Of the water.", "15 °C"),
         key(
             "quietness",
             Number(1.0, 12.0),

@@ -335,7 +335,7 @@ pub struct Lift {
     pub top_speed: Option<f64>,
     /// Whether the water is salt.
     pub sea: bool,
-    /// Temperature of the water, °C, 0 to 40.
+    /// Temperature of the water, °C, 0 to 30.
     pub temperature: f64,
     /// N of the e^N method, 1 to 12.
     pub quietness: f64,

@@ -1,6 +1,7 @@
 //! Everything that a design's pack and its checks are made from, worked out once.
 
 use super::PackError;
+use super::friction::StationCurves;
 use crate::design::{Cut, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
 use crate::geometry::{ArcPath, follow_with_arcs};
@@ -21,6 +22,7 @@ pub(super) struct Aids<'a> {
     pub(super) pattern: Drawing,
     pub(super) stations: Vec<StationAids<'a>>,
     pub(super) flows: Vec<SectionFlow<'a>>,
+    pub(super) curves: Vec<StationCurves<'a>>,
     pub(super) pieces: Vec<WoodPiece>,
     /// From one template to the next of a curved foil, and how far a batten between them is from it.
     pub(super) battens: Vec<(f64, f64, f64)>,
@@ -35,6 +37,7 @@ impl<'a> Aids<'a> {
             planform,
             stations: station_aids(design, wing)?,
             flows: section_flows(design)?,
+            curves: StationCurves::of(design)?,
             pieces: design.pieces(wing)?,
             battens: battens(design, wing)?,
         })

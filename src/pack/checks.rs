@@ -4,7 +4,9 @@ use serde::Serialize;
 
 use super::PackError;
 use super::aids::{Aids, SectionFlow, StationAids};
+use super::friction::{self, StationCurves};
 use crate::design::Design;
+use crate::flow::LiftCurve;
 use crate::geometry::{Rect, Solid};
 use crate::workshop::{Drawing, Half, Role};
 
@@ -42,9 +44,11 @@ pub fn run_checks(design: &Design) -> Result<Vec<Check>, PackError> {
 const FAIRING: f64 = 0.5;
 
 pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
-    let Aids { stations, pattern, flows, .. } = aids;
+    let Aids { stations, pattern, flows, curves, .. } = aids;
     let mut checks = Vec::new();
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
+    checks.extend(curves.iter().flat_map(|curves| stall(design, curves)));
+    checks.extend(curves.iter().flat_map(|curves| cavitation(design, curves)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
     checks.extend(aids.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
     checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));
@@ -93,6 +97,85 @@ fn lift<'a>(design: &'a Design, flow: &'a SectionFlow<'_>) -> impl Iterator<Item
         value,
         limit: wanted,
         unit: String::new(),
+        passed,
+        why: why.clone(),
+    })
+}
+
+/// With friction the design lift must lie below the greatest lift of the section at its speed.
+fn stall<'a>(design: &'a Design, curves: &'a StationCurves<'_>) -> impl Iterator<Item = Check> + 'a {
+    let wanted = design.lift.design;
+    // A section that is asked to lift downwards is held to its least lift.
+    let greatest = |curve: &LiftCurve| {
+        if wanted >= 0.0 {
+            StationCurves::greatest(curve)
+        } else {
+            (curve.solutions().map(|s| s.cl).fold(f64::INFINITY, f64::min), false)
+        }
+    };
+    let (value, is_peak) = greatest(&curves.smooth);
+    let (rough, _) = greatest(&curves.rough);
+    let passed = if wanted >= 0.0 { value >= wanted } else { value <= wanted };
+    let reynolds = curves.reynolds();
+    let drag = StationCurves::at_lift(&curves.smooth, wanted).map_or(String::new(), |at| {
+        format!(
+            "; at the design lift {:.2}° and a drag coefficient of {:.4}",
+            at.incidence.to_degrees(),
+            at.cd
+        )
+    });
+    let why = if passed {
+        format!(
+            "{} at Reynolds number {:.2e}{}, with a rough nose {rough:.2}{drag}",
+            curves.section.name(),
+            reynolds,
+            if is_peak { "" } else { ", the most in the range of incidence" },
+        )
+    } else {
+        format!(
+            "{} at Reynolds number {reynolds:.2e}: take a section with more camber or thickness, more chord, or ask for less lift",
+            curves.section.name()
+        )
+    };
+    curves.stations.iter().map(move |at| Check {
+        name: "design lift lies below the greatest lift, with friction".to_owned(),
+        place: place(*at),
+        value,
+        limit: wanted,
+        unit: String::new(),
+        passed,
+        why: why.clone(),
+    })
+}
+
+/// At the design lift the water must not boil below the top speed.
+fn cavitation<'a>(design: &'a Design, curves: &'a StationCurves<'_>) -> impl Iterator<Item = Check> + 'a {
+    let water = friction::water(design);
+    let depth = design.lift.depth.mm() * 1e-3;
+    let limit = design.lift.top_speed.unwrap_or(design.lift.speed);
+    let at = StationCurves::at_lift(&curves.smooth, design.lift.design);
+    let inception = at.and_then(|at| water.inception_speed(depth, at.cp_min));
+    let value = inception.unwrap_or(0.0);
+    let passed = value >= limit;
+    let why = match at {
+        None => "the section does not reach the design lift within the range of incidence".to_owned(),
+        Some(at) => format!(
+            "speed at which the water boils at {} mm depth, at the design lift, where the least pressure coefficient is {:.2}{}",
+            crate::units::number(design.lift.depth.mm(), 0),
+            at.cp_min,
+            if passed {
+                ""
+            } else {
+                ": less lift on more area, a thinner nose or a flatter pressure raises it"
+            }
+        ),
+    };
+    curves.stations.iter().map(move |at| Check {
+        name: "the section does not cavitate".to_owned(),
+        place: place(*at),
+        value,
+        limit,
+        unit: "m/s".to_owned(),
         passed,
         why: why.clone(),
     })

@@ -1,6 +1,6 @@
 //! From a design to the files of its pack, in memory.
 
-use super::aids::{self, Aids, SectionFlow, StationAids};
+use super::aids::{self, Aids, StationAids};
 use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet, tables};
 use crate::design::Design;
 use crate::export::{dxf, pdf, stl, svg_page};
@@ -48,7 +48,7 @@ pub fn build(design: &Design, kinds: Kinds) -> Result<Pack, PackError> {
         files.add_masks(design, &aids.stations)?;
     }
     if kinds.tables {
-        files.add_tables(design, &aids.stations, &aids.flows)?;
+        files.add_tables(design, &aids)?;
     }
     if kinds.sheet {
         let page = sheet::html(design, &aids, &checks, &files.files);
@@ -161,8 +161,7 @@ impl Files {
     fn add_tables(
         &mut self,
         design: &Design,
-        stations: &[StationAids<'_>],
-        flows: &[SectionFlow<'_>],
+        Aids { stations, flows, curves, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let fingerprint = design.fingerprint();
         let text = tables::stations(stations, &fingerprint)?;
@@ -171,6 +170,14 @@ impl Files {
         self.add("tables/offsets.csv".to_owned(), "csv", "table of offsets", None, text);
         let text = tables::lift(design, flows, &fingerprint)?;
         self.add("tables/lift.csv".to_owned(), "csv", "lift curves without friction", None, text);
+        let text = tables::friction(curves, &fingerprint)?;
+        self.add(
+            "tables/lift-with-friction.csv".to_owned(),
+            "csv",
+            "lift and drag with friction",
+            None,
+            text,
+        );
         let text = tables::pressure(design, flows, &fingerprint)?;
         let role = "pressure at the design lift, without friction";
         self.add("tables/pressure.csv".to_owned(), "csv", role, None, text);

@@ -4,7 +4,7 @@ use std::io;
 use std::path::PathBuf;
 
 use crate::export::ExportError;
-use crate::flow::FlowError;
+use crate::flow::{FlowError, ViscousError};
 use crate::geometry::GeometryError;
 use crate::parts::PartError;
 use crate::wing::WingError;
@@ -30,6 +30,12 @@ pub enum PackError {
     /// The flow cannot be solved.
     #[error(transparent)]
     Flow(#[from] FlowError),
+    /// The flow with friction is asked for out of its range.
+    #[error("flow with friction: {0}")]
+    Viscous(#[from] ViscousError),
+    /// A curve is missing.
+    #[error("flow with friction: a curve is missing")]
+    Curves,
     /// A format refuses what it was given.
     #[error(transparent)]
     Export(#[from] ExportError),

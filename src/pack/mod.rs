@@ -4,6 +4,7 @@ mod aids;
 mod checks;
 mod contents;
 mod error;
+mod friction;
 mod manifest;
 mod sheet;
 mod tables;

@@ -3,12 +3,13 @@
 use std::fmt::Write as _;
 
 use super::aids::{Aids, SectionFlow, StationAids};
+use super::friction::StationCurves;
 use super::{Check, PackFile};
 use crate::design::Design;
 use crate::export::chart::{Chart, Mark, Series};
 use crate::export::html::{document, escaped, table};
 use crate::export::picture;
-use crate::flow::PressurePoint;
+use crate::flow::{CurvePoint, LiftCurve, PressurePoint, ViscousSolution};
 use crate::geometry::Point;
 use crate::parts::WoodPiece;
 use crate::units::number;
@@ -21,12 +22,13 @@ const MARGIN: f64 = 4.0;
 const OUTSIDE: &str = "OUTSIDE";
 
 pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[PackFile]) -> String {
-    let Aids { planform, pattern, stations, flows, pieces, .. } = aids;
+    let Aids { planform, pattern, stations, flows, curves, pieces, .. } = aids;
     let mut body = String::new();
     heading(&mut body, design, checks);
     cautions(&mut body);
     shape(&mut body, design, planform, stations, pattern);
     wood(&mut body, design, stations, pieces);
+    friction(&mut body, design, curves);
     lift(&mut body, design, flows);
     steps(&mut body, design, files);
     check_table(&mut body, checks);
@@ -243,11 +245,95 @@ fn pieces_table(body: &mut String, design: &Design, pieces: &[WoodPiece]) {
     body.push_str(&table(heading, &rows, |_| false));
 }
 
+/// Lift and drag with friction, what to expect at the design lift, and cavitation.
+fn friction(body: &mut String, design: &Design, curves: &[StationCurves<'_>]) {
+    let (range, knots) = (&design.lift, |speed: f64| speed * 3600.0 / 1852.0);
+    let water = super::friction::water(design);
+    let depth = range.depth.mm() * 1e-3;
+    let _ = writeln!(
+        body,
+        "<h2>Lift and drag at {:.1} kn</h2>\n<p>{} water of {} °C, N = {} (how far waves in the boundary layer grow before it turns \
+         turbulent). Full lines: smooth. \u{201c}Rough\u{201d}: the layer is turbulent from 2 % of chord on, as dirt and wear make \
+         it. Of a section in steady flow; the foil as a whole has induced drag besides, and gaps in a line are angles at which \
+         no flow was found.</p>",
+        knots(range.speed),
+        if range.sea { "Sea" } else { "Fresh" },
+        number(range.temperature, 1),
+        number(range.quietness, 1),
+    );
+    let at = |stations: &[f64]| stations.iter().map(|at| number(*at, 1)).collect::<Vec<_>>().join(", ");
+    let rows: Vec<[String; 8]> = curves
+        .iter()
+        .map(|station| {
+            let wanted = StationCurves::at_lift(&station.smooth, range.design);
+            let rough = StationCurves::at_lift(&station.rough, range.design);
+            let greatest = |curve| {
+                let (cl, is_peak) = StationCurves::greatest(curve);
+                if is_peak { format!("{cl:.2}") } else { format!("over {cl:.2}") }
+            };
+            let or_dash = |value: Option<String>| value.unwrap_or("–".to_owned());
+            let inception = wanted.and_then(|w| water.inception_speed(depth, w.cp_min));
+            [
+                at(&station.stations),
+                escaped(station.section.name()),
+                format!("{:.0} 000", station.reynolds() / 1000.0),
+                or_dash(wanted.map(|w| format!("{:.2}°", w.incidence.to_degrees()))),
+                or_dash(wanted.map(|w| format!("{:.4}", w.cd))),
+                or_dash(rough.map(|w| format!("{:.4}", w.cd))),
+                format!("{}, rough {}", greatest(&station.smooth), greatest(&station.rough)),
+                or_dash(inception.map(|speed| format!("{:.1} kn", knots(speed)))),
+            ]
+        })
+        .collect();
+    let heading = [
+        "stations, mm from root",
+        "section",
+        "Reynolds number",
+        "incidence at the design lift",
+        "drag there",
+        "drag, rough",
+        "greatest lift",
+        "cavitates from",
+    ];
+    body.push_str(&table(heading, &rows, |_| false));
+    let lines = |value: fn(&ViscousSolution) -> (f64, f64)| -> Vec<Series> {
+        let one = |name: String, curve: &LiftCurve| {
+            let point = |p: &CurvePoint| p.solution.as_ref().map_or((f64::NAN, f64::NAN), value);
+            Series { name, points: curve.points.iter().map(point).collect() }
+        };
+        let of_station = |station: &StationCurves<'_>| {
+            let name = format!("{} at {:.0} mm chord", station.section.name(), station.chord);
+            [one(name.clone(), &station.smooth), one(format!("{name}, rough"), &station.rough)]
+        };
+        curves.iter().flat_map(of_station).collect()
+    };
+    let charts = [
+        Chart {
+            title: "Lift with friction".to_owned(),
+            across: "incidence, degrees".to_owned(),
+            up: "lift coefficient".to_owned(),
+            series: lines(|s| (s.incidence.to_degrees(), s.cl)),
+            marks: vec![Mark { at: range.design, name: format!("design {}", range.design) }],
+            ..Chart::default()
+        },
+        Chart {
+            title: "Lift against drag".to_owned(),
+            across: "drag coefficient".to_owned(),
+            up: "lift coefficient".to_owned(),
+            series: lines(|s| (s.cd, s.cl)),
+            marks: vec![Mark { at: range.design, name: format!("design {}", range.design) }],
+            ..Chart::default()
+        },
+    ];
+    for chart in charts {
+        let _ = writeln!(body, "<figure>{}</figure>", chart.to_svg());
+    }
+}
+
 fn lift(body: &mut String, design: &Design, flows: &[SectionFlow<'_>]) {
     let wanted = design.lift.design;
     body.push_str(
-        "<h2>Lift and pressure</h2>\n<p><strong>Flow without friction.</strong> These curves have no drag and no stall; \
-         real lift is a little lower, and falls off where the flow leaves the surface.</p>\n",
+        "<h2>Lift and pressure without friction</h2>\n<p>To compare with theory: these curves have no drag and no stall.</p>\n",
     );
     let curves = flows.iter().map(|flow| Series {
         name: flow.section.name().to_owned(),

@@ -2,9 +2,11 @@
 //! not taken for that of another.
 
 use super::aids::{SectionFlow, StationAids};
+use super::friction::StationCurves;
 use crate::design::Design;
 use crate::export::ExportError;
 use crate::export::csv::csv;
+use crate::flow::SideFlow;
 use crate::geometry::{Curve, Point, height_at};
 use crate::section::ORDINATE_STATIONS;
 use crate::units::{fixed, number};
@@ -75,6 +77,50 @@ pub(super) fn lift(
         })
     });
     csv(["section", "angle_deg", "cl", "cm", "cp_min", "fingerprint"], rows).map(String::into_bytes)
+}
+
+/// Lift, drag and moment of each station with friction, smooth and rough.
+pub(super) fn friction(curves: &[StationCurves<'_>], fingerprint: &str) -> Result<Vec<u8>, ExportError> {
+    let rows = curves.iter().flat_map(|station| {
+        let both = [("smooth", &station.smooth), ("rough", &station.rough)];
+        both.into_iter().flat_map(move |(finish, curve)| {
+            curve.solutions().map(move |s| {
+                let [angle, cl, cm, cp_min] =
+                    [s.incidence.to_degrees(), s.cl, s.cm, s.cp_min].map(|v| fixed(v, 4));
+                let turbulent = |side: &SideFlow| side.transition.map_or(String::new(), |x| fixed(x, 3));
+                let at: Vec<String> = station.stations.iter().map(|at| number(*at, 3)).collect();
+                [
+                    at.join(" "),
+                    station.section.name().to_owned(),
+                    fixed(station.reynolds(), 0),
+                    finish.to_owned(),
+                    angle,
+                    cl,
+                    fixed(s.cd, 5),
+                    cm,
+                    cp_min,
+                    turbulent(&s.upper),
+                    turbulent(&s.lower),
+                    fingerprint.to_owned(),
+                ]
+            })
+        })
+    });
+    let heading = [
+        "stations_mm",
+        "section",
+        "reynolds",
+        "finish",
+        "angle_deg",
+        "cl",
+        "cd",
+        "cm",
+        "cp_min",
+        "turbulent_from_upper",
+        "turbulent_from_lower",
+        "fingerprint",
+    ];
+    csv(heading, rows).map(String::into_bytes)
 }
 
 /// Pressure along each section at the design lift; places in chords.

@@ -1,0 +1,109 @@
+//! Flow with friction at each station of a design: lift, drag and cavitation at its own Reynolds
+//! number, with a smooth and with a rough nose.
+
+use super::PackError;
+use crate::design::Design;
+use crate::flow::{Conditions, LiftCurve, Panelling, Salinity, Viscous, ViscousSolution, Water};
+use crate::section::Section;
+
+/// The curves of one section at one chord.
+pub(super) struct StationCurves<'a> {
+    /// Stations that have both, mm from the root.
+    pub(super) stations: Vec<f64>,
+    /// Chord, mm.
+    pub(super) chord: f64,
+    pub(super) section: &'a Section,
+    /// With free transition.
+    pub(super) smooth: LiftCurve,
+    /// With the layer made turbulent at the nose, as dirt, wear or a poor finish make it.
+    pub(super) rough: LiftCurve,
+}
+
+/// What a section does at a lift coefficient between two points of its curve.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct AtLift {
+    /// Radians.
+    pub(super) incidence: f64,
+    pub(super) cd: f64,
+    pub(super) cm: f64,
+    pub(super) cp_min: f64,
+}
+
+/// Panels: half of what a single curve takes, for less than a hundredth of its lift.
+const PANELS: usize = 120;
+/// Where a rough nose makes the layer turbulent, a fraction of the chord.
+const ROUGH_FROM: f64 = 0.02;
+/// Least step of incidence, degrees, and the most points of a curve.
+const LEAST_STEP: f64 = 1.0;
+const MOST_POINTS: usize = 25;
+
+impl<'a> StationCurves<'a> {
+    /// The curves of every station, those alike once.
+    pub(super) fn of(design: &'a Design) -> Result<Vec<Self>, PackError> {
+        let water = water(design);
+        let mut all: Vec<Self> = Vec::new();
+        for station in &design.stations {
+            let (at, chord) = (station.at.mm(), station.chord.mm());
+            let alike = |known: &&mut Self| known.chord == chord && *known.section == station.section;
+            if let Some(known) = all.iter_mut().find(alike) {
+                known.stations.push(at);
+                continue;
+            }
+            let viscous = Viscous::new(&Panelling::of(&station.section, PANELS)?)?;
+            let reynolds = water.reynolds(chord * 1e-3, design.lift.speed);
+            let smooth = Conditions::free(reynolds, design.lift.quietness);
+            let curves =
+                LiftCurve::sweep_all(&viscous, &[smooth, smooth.tripped(ROUGH_FROM)], &incidences(design))?;
+            let [smooth, rough] = <[LiftCurve; 2]>::try_from(curves).map_err(|_| PackError::Curves)?;
+            all.push(Self { stations: vec![at], chord, section: &station.section, smooth, rough });
+        }
+        Ok(all)
+    }
+
+    /// By chord and speed.
+    pub(super) fn reynolds(&self) -> f64 {
+        self.smooth.conditions.reynolds
+    }
+
+    /// Greatest lift coefficient that was found, and whether it is a greatest value and not merely the
+    /// end of the range.
+    pub(super) fn greatest(curve: &LiftCurve) -> (f64, bool) {
+        match curve.greatest_lift() {
+            Some((cl, _)) => (cl, true),
+            None => (curve.solutions().map(|s| s.cl).fold(f64::NEG_INFINITY, f64::max), false),
+        }
+    }
+
+    /// What it does at a lift coefficient, on the branch below the greatest lift.
+    pub(super) fn at_lift(curve: &LiftCurve, cl: f64) -> Option<AtLift> {
+        let found: Vec<&ViscousSolution> = curve.solutions().collect();
+        found.windows(2).find(|pair| pair[0].cl <= cl && cl <= pair[1].cl).map(|pair| {
+            let share = (cl - pair[0].cl) / (pair[1].cl - pair[0].cl).max(f64::MIN_POSITIVE);
+            let mix = |value: fn(&ViscousSolution) -> f64| {
+                value(pair[0]) + share * (value(pair[1]) - value(pair[0]))
+            };
+            AtLift {
+                incidence: mix(|s| s.incidence),
+                cd: mix(|s| s.cd),
+                cm: mix(|s| s.cm),
+                cp_min: mix(|s| s.cp_min),
+            }
+        })
+    }
+}
+
+/// The water of a design.
+pub(super) fn water(design: &Design) -> Water {
+    let salinity = if design.lift.sea { Salinity::Sea } else { Salinity::Fresh };
+    // The bounds of the key are those of the tables.
+    let known = Water::at(salinity, design.lift.temperature.clamp(0.0, 30.0));
+    known.unwrap_or(Water { density: 1000.0, viscosity: 1.2e-6, vapour_pressure: 2000.0 })
+}
+
+/// The incidences of the curves, radians: the design's range in steps of a degree or more.
+fn incidences(design: &Design) -> Vec<f64> {
+    let (from, to) = (design.lift.from.degrees(), design.lift.to.degrees());
+    let step = design.lift.step.degrees().max(LEAST_STEP).max((to - from) / (MOST_POINTS - 1) as f64);
+    let count = ((to - from) / step + 1e-9).floor() as usize;
+    (0..=count).map(|i| (from + step * i as f64).to_radians()).collect()
+}

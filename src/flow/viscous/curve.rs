@@ -61,10 +61,8 @@ impl LiftCurve {
             carry(viscous, conditions, &mut points, &up);
             carry(viscous, conditions, &mut points, &down);
             // Gaps, from the side that was not tried.
-            let all: Vec<usize> = (0..points.len()).collect();
-            let back: Vec<usize> = all.iter().rev().copied().collect();
+            let back: Vec<usize> = (0..points.len()).rev().collect();
             carry(viscous, conditions, &mut points, &back);
-            carry(viscous, conditions, &mut points, &all);
         }
         Ok(Self { conditions: *conditions, panels: viscous.panelling().len(), points })
     }
@@ -161,19 +159,23 @@ impl LiftCurve {
 
 /// Solves what is still open along `order`, from neighbour to neighbour.
 fn carry(viscous: &Viscous, conditions: &Conditions, points: &mut [CurvePoint], order: &[usize]) {
-    let mut last: Option<ViscousSolution> = None;
+    let mut last: Option<(usize, ViscousSolution)> = None;
     for &i in order {
         if let Some(solution) = &points[i].solution {
-            last = Some(solution.clone());
+            last = Some((i, solution.clone()));
             continue;
         }
         let target = points[i].incidence;
         let found = match &last {
-            Some(near) => from_neighbour(viscous, conditions, near, target),
+            Some((near, solution)) if near.abs_diff(i) == 1 => {
+                from_neighbour(viscous, conditions, solution, target)
+            }
+            // Behind a gap the neighbour is far, and leads nowhere as a rule.
+            Some(_) => viscous.attempt(target, conditions, None),
             None => viscous.at(target, conditions, None).ok(),
         };
         if let Some(found) = found {
-            last = Some(found.clone());
+            last = Some((i, found.clone()));
             points[i].solution = Some(found);
         }
     }

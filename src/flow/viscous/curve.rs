@@ -4,6 +4,9 @@ use std::sync::atomic::{AtomicUsize, Ordering};
 
 use super::{Conditions, Viscous, ViscousError, ViscousSolution};
 
+/// Points from which a neighbour is still started from, over gaps.
+const FAR: usize = 3;
+
 /// Halvings of the way from a converged neighbour before a point is left as a gap.
 const HALVINGS: usize = 5;
 
@@ -167,10 +170,10 @@ fn carry(viscous: &Viscous, conditions: &Conditions, points: &mut [CurvePoint], 
         }
         let target = points[i].incidence;
         let found = match &last {
-            Some((near, solution)) if near.abs_diff(i) == 1 => {
+            Some((near, solution)) if near.abs_diff(i) <= FAR => {
                 from_neighbour(viscous, conditions, solution, target)
             }
-            // Behind a gap the neighbour is far, and leads nowhere as a rule.
+            // Behind several gaps the neighbour leads nowhere as a rule.
             Some(_) => viscous.attempt(target, conditions, None),
             None => viscous.at(target, conditions, None).ok(),
         };

@@ -4,6 +4,9 @@ use std::sync::atomic::{AtomicUsize, Ordering};
 
 use super::{Conditions, Viscous, ViscousError, ViscousSolution};
 
+/// Points from which a neighbour is still started from, over gaps.
+const FAR: usize = 3;
+
 /// Halvings of the way from a converged neighbour before a point is left as a gap.
 const HALVINGS: usize = 5;
 
@@ -61,10 +64,8 @@ impl LiftCurve {
             carry(viscous, conditions, &mut points, &up);
             carry(viscous, conditions, &mut points, &down);
             // Gaps, from the side that was not tried.
-            let all: Vec<usize> = (0..points.len()).collect();
-            let back: Vec<usize> = all.iter().rev().copied().collect();
+            let back: Vec<usize> = (0..points.len()).rev().collect();
             carry(viscous, conditions, &mut points, &back);
-            carry(viscous, conditions, &mut points, &all);
         }
         Ok(Self { conditions: *conditions, panels: viscous.panelling().len(), points })
     }
@@ -161,19 +162,23 @@ impl LiftCurve {
 
 /// Solves what is still open along `order`, from neighbour to neighbour.
 fn carry(viscous: &Viscous, conditions: &Conditions, points: &mut [CurvePoint], order: &[usize]) {
-    let mut last: Option<ViscousSolution> = None;
+    let mut last: Option<(usize, ViscousSolution)> = None;
     for &i in order {
         if let Some(solution) = &points[i].solution {
-            last = Some(solution.clone());
+            last = Some((i, solution.clone()));
             continue;
         }
         let target = points[i].incidence;
         let found = match &last {
-            Some(near) => from_neighbour(viscous, conditions, near, target),
+            Some((near, solution)) if near.abs_diff(i) <= FAR => {
+                from_neighbour(viscous, conditions, solution, target)
+            }
+            // Behind several gaps the neighbour leads nowhere as a rule.
+            Some(_) => viscous.attempt(target, conditions, None),
             None => viscous.at(target, conditions, None).ok(),
         };
         if let Some(found) = found {
-            last = Some(found.clone());
+            last = Some((i, found.clone()));
             points[i].solution = Some(found);
         }
     }

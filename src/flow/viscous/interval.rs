@@ -4,9 +4,11 @@
 //! and the lag of the shear stress (Drela and Giles 1987, equations (9), (10) and (24)), each
 //! divided by its quantity and taken between stations in logarithms:
 //!
+//! ```text
 //!     Δ ln θ  + (H + 2) Δ ln u − ∫ ξ (c_f/2θ) d ln ξ                 = 0
 //!     Δ ln H* + (1 − H) Δ ln u + ∫ ξ (c_f/2θ − 2c_D/(H*θ)) d ln ξ    = 0
 //!     2 Δ ln √C_τ + 2 Δ ln u − ∫ (shear growth) dξ                   = 0
+//! ```
 //!
 //! ξ is the length from the stagnation point. In ln ξ the flow near the stagnation point, where
 //! the integrands are constant, is exact.

@@ -394,3 +394,38 @@ fn a_trailing_edge_is_opened_at_the_real_chord() {
         assert!(answer.err.contains(says), "{}", answer.err);
     }
 }
+
+/// A flap moves the curve up, and its hinge carries a moment; each deflection is a curve of its own.
+#[test]
+fn lift_takes_a_flap() {
+    let bench = Bench::new();
+    let with_flap =
+        ["lift", "NACA 2412", "--angles", "0:2:2", "--flap", "-5,0,5", "--hinge", "0.7", "--format", "json"];
+    for extra in [&["--inviscid"][..], &["--re", "1e6"]] {
+        let answer = bench.run(&[&with_flap, extra].concat());
+        assert_eq!(answer.status, 0, "{}", answer.err);
+        let json = answer.json();
+        let curves = json["curves"].as_array().expect("curves");
+        let of = |key: &str| -> Vec<f64> {
+            curves.iter().map(|c| c["points"][0][key].as_f64().expect("a number")).collect()
+        };
+        assert_eq!(
+            curves.iter().map(|c| c["flap_deg"].as_f64()).collect::<Vec<_>>(),
+            [Some(-5.0), Some(0.0), Some(5.0)]
+        );
+        // Trailing edge down lifts, and the water pushes it back up.
+        let (lift, moment) = (of("cl"), of("hinge_moment"));
+        assert!(lift[0] < lift[1] && lift[1] < lift[2], "{lift:?}");
+        assert!(moment[0] > moment[1] && moment[1] > moment[2], "{moment:?}");
+    }
+    for (arguments, says) in [
+        (&["--flap", "5"][..], "--hinge"),
+        (&["--hinge", "0.7"], "--flap"),
+        (&["--flap", "70", "--hinge", "0.7"], "60° at most"),
+        (&["--flap", "5", "--hinge", "1.2"], "hinge is at 1.2"),
+    ] {
+        let answer = bench.run(&[&["lift", "NACA 2412", "--angles", "0", "--inviscid"], arguments].concat());
+        assert_eq!((answer.status, answer.out.as_str()), (2, ""), "{arguments:?}");
+        assert!(answer.err.contains(says), "{}", answer.err);
+    }
+}

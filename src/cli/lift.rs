@@ -4,13 +4,18 @@ use std::path::PathBuf;
 
 use plankform::export::chart::{Chart, Series};
 use plankform::export::csv::csv;
-use plankform::flow::{Conditions, DEFAULT_PANELS, LiftCurve, Panelling, PotentialFlow, Solution, Viscous};
+use plankform::flow::{
+    Conditions, DEFAULT_PANELS, LiftCurve, Panelling, PotentialFlow, Solution, Viscous, hinge_moment,
+};
+use plankform::geometry::Point;
+use plankform::section::{Flap, FlapSurface, HingeHeight, Section, Side};
 use plankform::units::fixed;
 use serde_json::{Value, json};
 
 use super::failure::Failure;
 use super::number_list;
 use super::section_source::SectionSource;
+use super::viscous_lift::FlapCurve;
 use super::{Format, Outcome, print, print_json, save, say, viscous_lift};
 
 /// Lift curve of a section, with drag, moment, transition and pressure
@@ -34,6 +39,15 @@ pub(super) struct Arguments {
     /// Make the layers turbulent at this part of the chord: upper side, lower side, or one for both
     #[arg(long, value_name = "X[,X]", value_parser = trips)]
     trip: Option<[f64; 2]>,
+    /// Deflections of a flap in degrees, trailing edge down positive, with commas between them
+    #[arg(long, value_name = "ANGLE[,ANGLE]", allow_hyphen_values = true, value_parser = number_list::list, requires = "hinge")]
+    flap: Option<std::vec::Vec<f64>>,
+    /// Where the flap's hinge lies, a fraction of the chord from the nose
+    #[arg(long, value_name = "X", requires = "flap", allow_hyphen_values = true)]
+    hinge: Option<f64>,
+    /// Where its axis lies across the chord
+    #[arg(long, value_name = "WHERE", requires = "flap", default_value = "middle")]
+    axis: Axis,
     /// Flow without friction: lift, moment and pressure, but no drag and no stall
     #[arg(long)]
     inviscid: bool,
@@ -48,6 +62,17 @@ pub(super) struct Arguments {
     svg: Option<PathBuf>,
 }
 
+/// Where a flap's axis lies.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, clap::ValueEnum)]
+enum Axis {
+    /// In the upper surface
+    Upper,
+    /// Midway between the surfaces
+    Middle,
+    /// In the lower surface
+    Lower,
+}
+
 /// Beyond this potential flow says nothing about a section.
 const GREATEST_ANGLE: f64 = 30.0;
 
@@ -59,6 +84,39 @@ fn angles(text: &str) -> Result<Vec<f64>, String> {
     }
 }
 
+/// A section with its flap at one angle; without a flap, the section alone.
+pub(super) struct Deflected {
+    section: Section,
+    /// Degrees.
+    pub(super) flap: f64,
+    /// The axis of the flap, if there is one.
+    pub(super) axis: Option<Point>,
+}
+
+impl Arguments {
+    /// The section at every deflection that is asked, or as it is, with its name.
+    fn deflected(&self) -> Result<(String, &'static str, Vec<Deflected>), Failure> {
+        let section = self.source.section(None)?;
+        let (name, edge) = (section.name().to_owned(), section.edge_word());
+        let (Some(angles), Some(hinge)) = (&self.flap, self.hinge) else {
+            return Ok((name, edge, vec![Deflected { section, flap: 0.0, axis: None }]));
+        };
+        let (height, across) = match self.axis {
+            Axis::Upper => (HingeHeight::Upper, 1.0),
+            Axis::Middle => (HingeHeight::Middle, 0.5),
+            Axis::Lower => (HingeHeight::Lower, 0.0),
+        };
+        let [upper, lower] = [Side::Upper, Side::Lower].map(|side| section.surface(side, hinge));
+        let axis = Point::new(hinge, lower + across * (upper - lower));
+        let at = |&flap: &f64| {
+            let deflection = Flap { hinge, height, angle: flap.to_radians(), surface: FlapSurface::Broken };
+            let section = section.flapped(deflection).map_err(Failure::input)?;
+            Ok(Deflected { section, flap, axis: Some(axis) })
+        };
+        Ok((name, edge, angles.iter().map(at).collect::<Result<_, Failure>>()?))
+    }
+}
+
 pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     if !arguments.inviscid {
         return with_friction(arguments);
@@ -66,24 +124,36 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     if arguments.re.is_some() {
         say("note: flow without friction is the same at every Reynolds number; --re is not used");
     }
-    let section = arguments.source.section(None)?;
-    let panelling = Panelling::of(&section, DEFAULT_PANELS).map_err(Failure::input)?;
-    let flow = PotentialFlow::new(&panelling).map_err(Failure::input)?;
-    let points: Vec<(f64, Solution)> =
-        arguments.angles.iter().map(|&angle| (angle, flow.at(angle.to_radians()))).collect();
+    let (name, edge, sections) = arguments.deflected()?;
+    let flow = |deflected: &Deflected| {
+        let panelling = Panelling::of(&deflected.section, DEFAULT_PANELS).map_err(Failure::input)?;
+        let flow = PotentialFlow::new(&panelling).map_err(Failure::input)?;
+        let at = |&angle: &f64| (angle, flow.at(angle.to_radians()));
+        let points = arguments.angles.iter().map(at).collect();
+        Ok(Frictionless { flap: deflected.flap, axis: deflected.axis, flow, points })
+    };
+    let curves: Vec<Frictionless> = sections.iter().map(flow).collect::<Result<_, Failure>>()?;
     if let Some(path) = &arguments.svg {
-        save(path, &format!("{}\n", chart(section.name(), &points).to_svg()))?;
+        save(path, &format!("{}\n", chart(&name, &curves).to_svg()))?;
     }
     match arguments.format {
-        Format::Text => print(&text(section.name(), &flow, &points, arguments.pressure))?,
-        Format::Csv => print(&table(&points, arguments.pressure).map_err(Failure::input)?)?,
+        Format::Text => print(&text(&name, &curves, arguments.pressure))?,
+        Format::Csv => print(&table(&curves, arguments.pressure).map_err(Failure::input)?)?,
         Format::Json => print_json(&json!({
-            "section": section.name(),
-            "trailing_edge": section.edge_word(),
-            "curves": [curve(&flow, &points, arguments.pressure)],
+            "section": name,
+            "trailing_edge": edge,
+            "curves": curves.iter().map(|c| curve(c, arguments.pressure)).collect::<Vec<_>>(),
         }))?,
     }
     Ok(Outcome::Passed)
+}
+
+/// A curve without friction.
+struct Frictionless {
+    flap: f64,
+    axis: Option<Point>,
+    flow: PotentialFlow,
+    points: Vec<(f64, Solution)>,
 }
 
 fn amplification(text: &str) -> Result<f64, String> {
@@ -105,9 +175,7 @@ fn trips(text: &str) -> Result<[f64; 2], String> {
 }
 
 fn with_friction(arguments: &Arguments) -> Result<Outcome, Failure> {
-    let section = arguments.source.section(None)?;
-    let panelling = Panelling::of(&section, DEFAULT_PANELS).map_err(Failure::input)?;
-    let flow = Viscous::new(&panelling).map_err(Failure::input)?;
+    let (name, edge, sections) = arguments.deflected()?;
     let incidences: Vec<f64> = arguments.angles.iter().map(|angle| angle.to_radians()).collect();
     let conditions: Vec<Conditions> = arguments
         .re
@@ -119,50 +187,56 @@ fn with_friction(arguments: &Arguments) -> Result<Outcome, Failure> {
             ..Conditions::free(reynolds, arguments.amplification)
         })
         .collect();
-    let curves = LiftCurve::sweep_all(&flow, &conditions, &incidences).map_err(Failure::input)?;
+    let mut curves = Vec::new();
+    for Deflected { section, flap, axis } in sections {
+        let panelling = Panelling::of(&section, DEFAULT_PANELS).map_err(Failure::input)?;
+        let flow = Viscous::new(&panelling).map_err(Failure::input)?;
+        let swept = LiftCurve::sweep_all(&flow, &conditions, &incidences).map_err(Failure::input)?;
+        curves.extend(swept.into_iter().map(|curve| FlapCurve { flap, axis, curve }));
+    }
     if let Some(path) = &arguments.svg {
-        save(path, &format!("{}\n", viscous_lift::chart(section.name(), &curves).to_svg()))?;
+        save(path, &format!("{}\n", viscous_lift::chart(&name, &curves).to_svg()))?;
     }
     match arguments.format {
-        Format::Text => print(&viscous_lift::text(section.name(), &curves, arguments.pressure))?,
+        Format::Text => print(&viscous_lift::text(&name, &curves, arguments.pressure))?,
         Format::Csv => print(&viscous_lift::table(&curves, arguments.pressure).map_err(Failure::input)?)?,
         Format::Json => print_json(&json!({
-            "section": section.name(),
-            "trailing_edge": section.edge_word(),
+            "section": name,
+            "trailing_edge": edge,
             "curves": curves
                 .iter()
                 .map(|curve| viscous_lift::curve_json(curve, arguments.pressure))
                 .collect::<Vec<_>>(),
         }))?,
     }
-    let gaps: usize = curves.iter().map(|curve| curve.points.len() - curve.converged()).sum();
+    let gaps: usize = curves.iter().map(|one| one.curve.points.len() - one.curve.converged()).sum();
     if gaps > 0 {
         say(&format!("note: no solution was found at {gaps} of the angles; they are left out"));
     }
     Ok(Outcome::Passed)
 }
 
-fn curve(flow: &PotentialFlow, points: &[(f64, Solution)], pressure: bool) -> Value {
+fn curve(Frictionless { flap, axis, flow, points }: &Frictionless, pressure: bool) -> Value {
     json!({
         "reynolds": null,
         "amplification": null,
-        "flap_deg": 0.0,
+        "flap_deg": flap,
         "slope_per_deg": flow.slope_per_radian().to_radians(),
         "zero_lift_deg": flow.zero_lift().to_degrees(),
         "cl_max": null,
         "cl_max_deg": null,
-        "points": points.iter().map(|(angle, s)| point(*angle, s, pressure)).collect::<Vec<_>>(),
+        "points": points.iter().map(|(angle, s)| point(*angle, s, *axis, pressure)).collect::<Vec<_>>(),
     })
 }
 
-fn point(angle: f64, solution: &Solution, pressure: bool) -> Value {
+fn point(angle: f64, solution: &Solution, axis: Option<Point>, pressure: bool) -> Value {
     let mut value = json!({
         "angle_deg": angle,
         "converged": true,
         "cl": solution.cl,
         "cd": null,
         "cm": solution.cm,
-        "hinge_moment": null,
+        "hinge_moment": axis.and_then(|axis| hinge_moment(&solution.pressure, axis)),
         "cp_min": solution.cp_min,
         "transition_upper": null,
         "transition_lower": null,
@@ -178,23 +252,27 @@ fn point(angle: f64, solution: &Solution, pressure: bool) -> Value {
     value
 }
 
-fn text(name: &str, flow: &PotentialFlow, points: &[(f64, Solution)], pressure: bool) -> String {
-    let mut text = format!(
-        "{name}, flow without friction: no drag, no stall; real lift is lower near stall\n\
-         lift slope {:.5} per degree, zero lift at {}°\n\n{:>10}{:>10}{:>10}{:>12}\n",
-        flow.slope_per_radian().to_radians(),
-        fixed(flow.zero_lift().to_degrees(), 3),
-        "angle",
-        "lift",
-        "moment",
-        "least cp",
-    );
-    for (angle, s) in points {
-        let [cl, cm] = [s.cl, s.cm].map(|v| fixed(v, 4));
-        text.push_str(&format!("{angle:>9.2}°{cl:>10}{cm:>10}{:>12.3}\n", s.cp_min));
-    }
-    if pressure {
+fn text(name: &str, curves: &[Frictionless], pressure: bool) -> String {
+    let mut text =
+        format!("{name}, flow without friction: no drag, no stall; real lift is lower near stall\n");
+    for Frictionless { flap, axis, flow, points } in curves {
+        if axis.is_some() {
+            text.push_str(&format!("\nflap {flap}°\n"));
+        }
+        text.push_str(&format!(
+            "lift slope {:.5} per degree, zero lift at {}°\n\n{:>10}{:>10}{:>10}{:>12}\n",
+            flow.slope_per_radian().to_radians(),
+            fixed(flow.zero_lift().to_degrees(), 3),
+            "angle",
+            "lift",
+            "moment",
+            "least cp",
+        ));
         for (angle, s) in points {
+            let [cl, cm] = [s.cl, s.cm].map(|v| fixed(v, 4));
+            text.push_str(&format!("{angle:>9.2}°{cl:>10}{cm:>10}{:>12.3}\n", s.cp_min));
+        }
+        for (angle, s) in points.iter().filter(|_| pressure) {
             text.push_str(&format!("\npressure at {angle:.2}°\n{:>10}{:>10}{:>10}\n", "x", "y", "cp"));
             for p in &s.pressure {
                 text.push_str(&format!("{:>10.5}{:>10.5}{:>10.4}\n", p.x, p.y, p.cp));
@@ -204,27 +282,31 @@ fn text(name: &str, flow: &PotentialFlow, points: &[(f64, Solution)], pressure: 
     text
 }
 
-fn table(points: &[(f64, Solution)], pressure: bool) -> Result<String, plankform::export::ExportError> {
+fn table(curves: &[Frictionless], pressure: bool) -> Result<String, plankform::export::ExportError> {
     let fixed = |v: f64| fixed(v, 6);
+    let points = curves.iter().flat_map(|c| c.points.iter().map(move |(angle, s)| (c.flap, *angle, s)));
     if pressure {
         let rows =
-            points.iter().flat_map(|(angle, s)| s.pressure.iter().map(move |p| [*angle, p.x, p.y, p.cp]));
-        csv(["angle_deg", "x_over_chord", "y_over_chord", "cp"], rows.map(|row| row.map(fixed)))
+            points.flat_map(|(flap, angle, s)| s.pressure.iter().map(move |p| [flap, angle, p.x, p.y, p.cp]));
+        csv(["flap_deg", "angle_deg", "x_over_chord", "y_over_chord", "cp"], rows.map(|row| row.map(fixed)))
     } else {
-        let rows = points.iter().map(|(angle, s)| [*angle, s.cl, s.cm, s.cp_min].map(fixed));
-        csv(["angle_deg", "cl", "cm", "cp_min"], rows)
+        let rows = points.map(|(flap, angle, s)| [flap, angle, s.cl, s.cm, s.cp_min].map(fixed));
+        csv(["flap_deg", "angle_deg", "cl", "cm", "cp_min"], rows)
     }
 }
 
-fn chart(name: &str, points: &[(f64, Solution)]) -> Chart {
+fn chart(name: &str, curves: &[Frictionless]) -> Chart {
     Chart {
         title: format!("{name}: lift without friction"),
         across: "incidence, degrees".to_owned(),
         up: "lift coefficient".to_owned(),
-        series: vec![Series {
-            name: String::new(),
-            points: points.iter().map(|(angle, s)| (*angle, s.cl)).collect(),
-        }],
+        series: curves
+            .iter()
+            .map(|c| Series {
+                name: c.axis.map_or(String::new(), |_| format!("flap {}°", c.flap)),
+                points: c.points.iter().map(|(angle, s)| (*angle, s.cl)).collect(),
+            })
+            .collect(),
         ..Chart::default()
     }
 }

@@ -32,6 +32,11 @@ pub(super) fn positive_list(text: &str) -> Result<Vec<f64>, String> {
     }
 }
 
+/// Values with commas between them.
+pub(super) fn list(text: &str) -> Result<Vec<f64>, String> {
+    text.split(',').map(number).collect()
+}
+
 fn number(text: &str) -> Result<f64, String> {
     match text.trim().parse::<f64>() {
         Ok(value) if value.is_finite() => Ok(value),

@@ -3,11 +3,28 @@
 use plankform::export::ExportError;
 use plankform::export::chart::{Chart, Series};
 use plankform::export::csv::csv;
-use plankform::flow::{CurvePoint, LiftCurve, ViscousSolution};
+use plankform::flow::{CurvePoint, LiftCurve, ViscousSolution, hinge_moment};
+use plankform::geometry::Point;
 use plankform::units::fixed;
 use serde_json::{Value, json};
 
-pub(super) fn curve_json(curve: &LiftCurve, pressure: bool) -> Value {
+/// A curve with the flap at one angle; without a flap, of the section alone.
+pub(super) struct FlapCurve {
+    /// Degrees.
+    pub(super) flap: f64,
+    /// The axis of the flap, if there is one.
+    pub(super) axis: Option<Point>,
+    pub(super) curve: LiftCurve,
+}
+
+impl FlapCurve {
+    fn hinge_moment(&self, solution: &ViscousSolution) -> Option<f64> {
+        hinge_moment(&solution.pressure, self.axis?)
+    }
+}
+
+pub(super) fn curve_json(one: &FlapCurve, pressure: bool) -> Value {
+    let FlapCurve { flap, curve, .. } = one;
     let straight = curve.slope_and_zero_lift();
     let greatest = curve.greatest_lift();
     json!({
@@ -17,16 +34,16 @@ pub(super) fn curve_json(curve: &LiftCurve, pressure: bool) -> Value {
         "trip_lower": curve.conditions.trip_lower,
         "panels": curve.panels,
         "converged": curve.converged(),
-        "flap_deg": 0.0,
+        "flap_deg": flap,
         "slope_per_deg": straight.map(|(slope, _)| slope.to_radians()),
         "zero_lift_deg": straight.map(|(_, zero)| zero.to_degrees()),
         "cl_max": greatest.map(|(lift, _)| lift),
         "cl_max_deg": greatest.map(|(_, angle)| angle.to_degrees()),
-        "points": curve.points.iter().map(|point| point_json(point, pressure)).collect::<Vec<_>>(),
+        "points": curve.points.iter().map(|point| point_json(one, point, pressure)).collect::<Vec<_>>(),
     })
 }
 
-fn point_json(point: &CurvePoint, pressure: bool) -> Value {
+fn point_json(one: &FlapCurve, point: &CurvePoint, pressure: bool) -> Value {
     let solution = point.solution.as_ref();
     let number = |of: fn(&ViscousSolution) -> f64| solution.map(of);
     let mut value = json!({
@@ -37,7 +54,7 @@ fn point_json(point: &CurvePoint, pressure: bool) -> Value {
         "cd_friction": number(|s| s.cd_friction),
         "cd_pressure": number(|s| s.cd_pressure),
         "cm": number(|s| s.cm),
-        "hinge_moment": null,
+        "hinge_moment": solution.and_then(|s| one.hinge_moment(s)),
         "cp_min": number(|s| s.cp_min),
         "transition_upper": solution.and_then(|s| s.upper.transition),
         "transition_lower": solution.and_then(|s| s.lower.transition),
@@ -58,13 +75,15 @@ fn angle(point: &CurvePoint) -> f64 {
     (point.incidence.to_degrees() * 1e9).round() / 1e9
 }
 
-pub(super) fn text(name: &str, curves: &[LiftCurve], pressure: bool) -> String {
+pub(super) fn text(name: &str, curves: &[FlapCurve], pressure: bool) -> String {
     let mut text = format!("{name}, with friction\n");
-    for curve in curves {
+    for one in curves {
+        let curve = &one.curve;
         let conditions = &curve.conditions;
         let trip = |x: Option<f64>| x.map_or_else(|| "free".to_owned(), |x| format!("trip at {x}"));
         text.push_str(&format!(
-            "\nReynolds number {:.3e}, N = {}, upper side {}, lower side {}, {} panels, {} of {} points converged\n",
+            "\n{}Reynolds number {:.3e}, N = {}, upper side {}, lower side {}, {} panels, {} of {} points converged\n",
+            one.axis.map_or(String::new(), |_| format!("flap {}°, ", one.flap)),
             conditions.reynolds,
             conditions.amplification,
             trip(conditions.trip_upper),
@@ -92,6 +111,14 @@ pub(super) fn text(name: &str, curves: &[LiftCurve], pressure: bool) -> String {
         ));
         for point in &curve.points {
             text.push_str(&line(point));
+        }
+        let moments = curve.points.iter().filter_map(|point| {
+            let moment = one.hinge_moment(point.solution.as_ref()?)?;
+            Some(format!("{:>9.2}°{:>10}\n", angle(point), fixed(moment, 4)))
+        });
+        if one.axis.is_some() {
+            text.push_str("\n     angle  moment about the hinge, by the flap's chord, tail down positive\n");
+            text.extend(moments);
         }
         for point in curve.points.iter().filter(|_| pressure) {
             if let Some(solution) = &point.solution {
@@ -135,31 +162,34 @@ fn line(point: &CurvePoint) -> String {
     format!("{}\n", line.trim_end())
 }
 
-pub(super) fn table(curves: &[LiftCurve], pressure: bool) -> Result<String, ExportError> {
+pub(super) fn table(curves: &[FlapCurve], pressure: bool) -> Result<String, ExportError> {
     let text = |value: Option<f64>| value.map_or_else(String::new, |value| fixed(value, 6));
     if pressure {
-        let rows = curves.iter().flat_map(|curve| {
+        let rows = curves.iter().flat_map(|FlapCurve { flap, curve, .. }| {
             curve.points.iter().flat_map(move |point| {
                 let nodes = point.solution.iter().flat_map(|solution| &solution.pressure);
                 nodes.map(move |p| {
-                    [curve.conditions.reynolds, angle(point), p.x, p.y, p.cp].map(|v| fixed(v, 6))
+                    [curve.conditions.reynolds, *flap, angle(point), p.x, p.y, p.cp].map(|v| fixed(v, 6))
                 })
             })
         });
-        return csv(["reynolds", "angle_deg", "x_over_chord", "y_over_chord", "cp"], rows);
+        return csv(["reynolds", "flap_deg", "angle_deg", "x_over_chord", "y_over_chord", "cp"], rows);
     }
-    let rows = curves.iter().flat_map(|curve| {
+    let rows = curves.iter().flat_map(|one| {
+        let curve = &one.curve;
         curve.points.iter().map(move |point| {
             let s = point.solution.as_ref();
             let number = |of: fn(&ViscousSolution) -> f64| text(s.map(of));
             [
                 fixed(curve.conditions.reynolds, 0),
+                fixed(one.flap, 6),
                 fixed(angle(point), 6),
                 s.is_some().to_string(),
                 number(|s| s.cl),
                 number(|s| s.cd),
                 number(|s| s.cd_friction),
                 number(|s| s.cm),
+                text(s.and_then(|s| one.hinge_moment(s))),
                 number(|s| s.cp_min),
                 text(s.and_then(|s| s.upper.transition)),
                 text(s.and_then(|s| s.lower.transition)),
@@ -170,12 +200,14 @@ pub(super) fn table(curves: &[LiftCurve], pressure: bool) -> Result<String, Expo
     });
     let heading = [
         "reynolds",
+        "flap_deg",
         "angle_deg",
         "converged",
         "cl",
         "cd",
         "cd_friction",
         "cm",
+        "hinge_moment",
         "cp_min",
         "transition_upper",
         "transition_lower",
@@ -185,10 +217,14 @@ pub(super) fn table(curves: &[LiftCurve], pressure: bool) -> Result<String, Expo
     csv(heading, rows)
 }
 
-pub(super) fn chart(name: &str, curves: &[LiftCurve]) -> Chart {
-    let series = curves.iter().map(|curve| Series {
-        name: format!("Re {:.2e}", curve.conditions.reynolds),
-        points: curve
+pub(super) fn chart(name: &str, curves: &[FlapCurve]) -> Chart {
+    let series = curves.iter().map(|one| Series {
+        name: one.axis.map_or_else(
+            || format!("Re {:.2e}", one.curve.conditions.reynolds),
+            |_| format!("{}°, Re {:.2e}", one.flap, one.curve.conditions.reynolds),
+        ),
+        points: one
+            .curve
             .points
             .iter()
             .map(|point| (angle(point), point.solution.as_ref().map_or(f64::NAN, |s| s.cl)))

@@ -3,6 +3,7 @@
 mod edge;
 mod error;
 mod far_field;
+mod hinge;
 mod influence;
 mod lanes;
 mod loads;
@@ -13,6 +14,7 @@ mod viscous;
 mod water;
 
 pub use error::FlowError;
+pub use hinge::hinge_moment;
 pub use panelling::{DEFAULT_PANELS, LEAST_PANELS, MOST_PANELS, Panelling};
 pub use potential::{PotentialFlow, PressurePoint, Solution};
 pub use viscous::{

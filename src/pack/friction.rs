@@ -33,6 +33,8 @@ pub(super) struct AtLift {
 const PANELS: usize = 120;
 /// Where a rough nose makes the layer turbulent, a fraction of the chord.
 const ROUGH_FROM: f64 = 0.02;
+/// Incidence to which every curve goes, degrees.
+const STALLED: f64 = 16.0;
 /// Least step of incidence, degrees, and the most points of a curve.
 const LEAST_STEP: f64 = 1.0;
 const MOST_POINTS: usize = 25;
@@ -100,9 +102,10 @@ pub(super) fn water(design: &Design) -> Water {
     known.unwrap_or(Water { density: 1000.0, viscosity: 1.2e-6, vapour_pressure: 2000.0 })
 }
 
-/// The incidences of the curves, radians: the design's range in steps of a degree or more.
+/// The incidences of the curves, radians: the design's range in steps of a degree or more, and on to
+/// where sections of this kind stall, so that the margin is seen.
 fn incidences(design: &Design) -> Vec<f64> {
-    let (from, to) = (design.lift.from.degrees(), design.lift.to.degrees());
+    let (from, to) = (design.lift.from.degrees(), design.lift.to.degrees().max(STALLED));
     let step = design.lift.step.degrees().max(LEAST_STEP).max((to - from) / (MOST_POINTS - 1) as f64);
     let count = ((to - from) / step + 1e-9).floor() as usize;
     (0..=count).map(|i| (from + step * i as f64).to_radians()).collect()

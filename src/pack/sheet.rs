@@ -253,7 +253,7 @@ fn friction(body: &mut String, design: &Design, curves: &[StationCurves<'_>]) {
     let _ = writeln!(
         body,
         "<h2>Lift and drag at {:.1} kn</h2>\n<p>{} water of {} °C, N = {} (how far waves in the boundary layer grow before it turns \
-         turbulent). Full lines: smooth. \u{201c}Rough\u{201d}: the layer is turbulent from 2 % of chord on, as dirt and wear make \
+         turbulent). The lines bear the chord of their station. \u{201c}Rough\u{201d}: the layer is turbulent from 2 % of chord on, as dirt and wear make \
          it. Of a section in steady flow; the foil as a whole has induced drag besides, and gaps in a line are angles at which \
          no flow was found.</p>",
         knots(range.speed),
@@ -302,7 +302,7 @@ fn friction(body: &mut String, design: &Design, curves: &[StationCurves<'_>]) {
             Series { name, points: curve.points.iter().map(point).collect() }
         };
         let of_station = |station: &StationCurves<'_>| {
-            let name = format!("{} at {:.0} mm chord", station.section.name(), station.chord);
+            let name = format!("{:.0} mm", station.chord);
             [one(name.clone(), &station.smooth), one(format!("{name}, rough"), &station.rough)]
         };
         curves.iter().flat_map(of_station).collect()

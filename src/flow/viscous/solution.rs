@@ -176,47 +176,6 @@ impl ViscousSolution {
             _ => 0.0,
         }
     }
-
-    /// Moment of the pressure on the part behind `hinge` about it, for unit length of flap chord
-    /// (the distance from the hinge to the trailing edge), as a coefficient: positive tail down.
-    ///
-    /// `hinge` lies within the outline; the flap is what is behind its abscissa, and the moment is
-    /// that of the pressure on both sides. `None` where there is no outline behind it.
-    #[must_use]
-    pub fn hinge_moment(&self, hinge: Point) -> Option<f64> {
-        let tail = self.pressure.first().map(|point| point.x)?;
-        let chord = tail - hinge.x;
-        if chord <= 0.0 || chord.is_nan() {
-            return None;
-        }
-        let moment: f64 = self
-            .pressure
-            .windows(2)
-            .map(|pair| {
-                let (a, b) = (pair[0], pair[1]);
-                let (mut from, mut to) = (Vec2::new(a.x, a.y), Vec2::new(b.x, b.y));
-                let (mut cp_from, mut cp_to) = (a.cp, b.cp);
-                if from.x <= hinge.x && to.x <= hinge.x {
-                    return 0.0;
-                }
-                // A panel across the hinge line counts from there.
-                let part = (hinge.x - from.x) / (to.x - from.x);
-                if from.x < hinge.x {
-                    (from, cp_from) = (from + part * (to - from), cp_from + part * (cp_to - cp_from));
-                } else if to.x < hinge.x {
-                    (to, cp_to) = (from + part * (to - from), cp_from + part * (cp_to - cp_from));
-                }
-                // Pressure acts inwards, to the left of the way.
-                let push = (to - from).turn_90();
-                let arm = |at: Vec2| (at - hinge.to_vec2()).cross(push);
-                let middle = 0.25 * (cp_from + cp_to) * arm(from) + 0.25 * (cp_from + cp_to) * arm(to);
-                let ends = 0.5 * (cp_from * arm(from) + cp_to * arm(to));
-                // Simpson's rule on what is linear times linear.
-                (2.0 * middle + ends) / 3.0
-            })
-            .sum();
-        Some(-moment / (chord * chord))
-    }
 }
 
 impl SideFlow {

@@ -155,28 +155,28 @@ fn cavitation<'a>(design: &'a Design, curves: &'a StationCurves<'_>) -> impl Ite
     let limit = design.lift.top_speed.unwrap_or(design.lift.speed);
     let at = StationCurves::at_lift(&curves.smooth, design.lift.design);
     let inception = at.and_then(|at| water.inception_speed(depth, at.cp_min));
-    let value = inception.unwrap_or(0.0);
-    let passed = value >= limit;
-    let why = match at {
-        None => "the section does not reach the design lift within the range of incidence".to_owned(),
-        Some(at) => format!(
-            "speed at which the water boils at {} mm depth, at the design lift, where the least pressure coefficient is {:.2}{}",
-            crate::units::number(design.lift.depth.mm(), 0),
-            at.cp_min,
-            if passed {
-                ""
-            } else {
-                ": less lift on more area, a thinner nose or a flatter pressure raises it"
-            }
-        ),
-    };
-    curves.stations.iter().map(move |at| Check {
+    // Where the section does not reach that lift, the check of stall says so.
+    let found = at.zip(inception);
+    let why = found.map_or(String::new(), |(at, speed)| {
+        let depth = crate::units::number(design.lift.depth.mm(), 0);
+        let advice = if speed >= limit {
+            ""
+        } else {
+            ": less lift on more area, a thinner nose or a flatter pressure raises it"
+        };
+        format!(
+            "speed at which the water boils at {depth} mm depth, at the design lift, where the least pressure coefficient is {:.2}{advice}",
+            at.cp_min
+        )
+    });
+    let stations = curves.stations.iter().filter_map(move |at| Some((at, found?.1)));
+    stations.map(move |(at, value)| Check {
         name: "the section does not cavitate".to_owned(),
         place: place(*at),
         value,
         limit,
         unit: "m/s".to_owned(),
-        passed,
+        passed: value >= limit,
         why: why.clone(),
     })
 }

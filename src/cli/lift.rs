@@ -57,7 +57,7 @@ pub(super) struct Arguments {
     /// How to print
     #[arg(long, default_value = "text")]
     format: Format,
-    /// Also draw the lift curve to this SVG file
+    /// Also draw lift, drag, moment and transition (without friction: lift) to this SVG file
     #[arg(long, value_name = "FILE")]
     svg: Option<PathBuf>,
 }
@@ -195,7 +195,7 @@ fn with_friction(arguments: &Arguments) -> Result<Outcome, Failure> {
         curves.extend(swept.into_iter().map(|curve| FlapCurve { flap, axis, curve }));
     }
     if let Some(path) = &arguments.svg {
-        save(path, &format!("{}\n", viscous_lift::chart(&name, &curves).to_svg()))?;
+        save(path, &format!("{}\n", viscous_lift::charts(&name, &curves)))?;
     }
     match arguments.format {
         Format::Text => print(&viscous_lift::text(&name, &curves, arguments.pressure))?,

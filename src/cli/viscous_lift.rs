@@ -1,7 +1,7 @@
 //! What `plankform lift` shows of curves with friction.
 
 use plankform::export::ExportError;
-use plankform::export::chart::{Chart, Series};
+use plankform::export::chart::{Chart, Series, stacked};
 use plankform::export::csv::csv;
 use plankform::flow::{CurvePoint, LiftCurve, ViscousSolution, hinge_moment};
 use plankform::geometry::Point;
@@ -217,24 +217,48 @@ pub(super) fn table(curves: &[FlapCurve], pressure: bool) -> Result<String, Expo
     csv(heading, rows)
 }
 
-pub(super) fn chart(name: &str, curves: &[FlapCurve]) -> Chart {
-    let series = curves.iter().map(|one| Series {
-        name: one.axis.map_or_else(
-            || format!("Re {:.2e}", one.curve.conditions.reynolds),
-            |_| format!("{}°, Re {:.2e}", one.flap, one.curve.conditions.reynolds),
-        ),
-        points: one
-            .curve
-            .points
-            .iter()
-            .map(|point| (angle(point), point.solution.as_ref().map_or(f64::NAN, |s| s.cl)))
-            .collect(),
-    });
-    Chart {
-        title: format!("{name}: lift with friction"),
-        across: "incidence, degrees".to_owned(),
-        up: "lift coefficient".to_owned(),
-        series: series.collect(),
+/// Lift against incidence and against drag, moment, and where the layers become turbulent.
+pub(super) fn charts(name: &str, curves: &[FlapCurve]) -> String {
+    let words = |one: &FlapCurve| {
+        let reynolds = format!("Re {:.2e}", one.curve.conditions.reynolds);
+        one.axis.map_or_else(|| reynolds.clone(), |_| format!("{}°, {reynolds}", one.flap))
+    };
+    let lines = |words: &dyn Fn(&FlapCurve) -> String,
+                 value: &dyn Fn(f64, &ViscousSolution) -> (f64, f64)|
+     -> Vec<Series> {
+        let line = |one: &FlapCurve| Series {
+            name: words(one),
+            points: one
+                .curve
+                .points
+                .iter()
+                .map(|point| point.solution.as_ref().map_or((f64::NAN, f64::NAN), |s| value(angle(point), s)))
+                .collect(),
+        };
+        curves.iter().map(line).collect()
+    };
+    let chart = |title: &str, across: &str, up: &str, series: Vec<Series>| Chart {
+        title: format!("{name}: {title}"),
+        across: across.to_owned(),
+        up: up.to_owned(),
+        series,
         ..Chart::default()
-    }
+    };
+    let (incidence, lift) = ("incidence, degrees", "lift coefficient");
+    let place = |x: Option<f64>| x.map_or(100.0, |x| 100.0 * x);
+    let mut turbulent =
+        lines(&|one| format!("{}, upper", words(one)), &|at, s| (at, place(s.upper.transition)));
+    turbulent
+        .extend(lines(&|one| format!("{}, lower", words(one)), &|at, s| (at, place(s.lower.transition))));
+    stacked(&[
+        chart("lift with friction", incidence, lift, lines(&words, &|at, s| (at, s.cl))),
+        chart("lift against drag", "drag coefficient", lift, lines(&words, &|_, s| (s.cd, s.cl))),
+        chart(
+            "moment about the quarter chord",
+            incidence,
+            "moment coefficient",
+            lines(&words, &|at, s| (at, s.cm)),
+        ),
+        chart("where the layers become turbulent", incidence, "percent of chord", turbulent),
+    ])
 }

@@ -50,7 +50,22 @@ const BOTTOM: f64 = 60.0;
 /// Line patterns, told apart without colour.
 const DASHES: [&str; 5] = ["", "9 4", "2 4", "12 4 2 4", "5 2 5 8"];
 /// Dark enough on paper, told apart by most eyes.
-const COLOURS: [&str; 5] = ["#003a70", "#a03000", "#1b5e20", "#4a148c", "#333333"];
+/// One more than patterns, so that thirty lines differ.
+const COLOURS: [&str; 6] = ["#003a70", "#a03000", "#1b5e20", "#4a148c", "#333333", "#00606a"];
+
+/// Charts one below the other in one picture.
+#[must_use]
+pub fn stacked(charts: &[Chart]) -> String {
+    let height = HEIGHT * charts.len() as f64;
+    let mut svg = format!(
+        "<svg xmlns=\"http://www.w3.org/2000/svg\" width=\"{WIDTH}\" height=\"{height}\" viewBox=\"0 0 {WIDTH} {height}\">\n"
+    );
+    for (i, chart) in charts.iter().enumerate() {
+        let _ = writeln!(svg, "<g transform=\"translate(0 {})\">{}</g>", HEIGHT * i as f64, chart.to_svg());
+    }
+    svg.push_str("</svg>");
+    svg
+}
 
 /// An axis: its ends on round values, and its ticks.
 struct Axis {
@@ -195,7 +210,8 @@ impl Chart {
                 continue;
             }
             // Names stand at the line's end, moved down where one stands already.
-            let mut at = series.points.last().map_or(TOP, |p| y(p.1) + 5.0).clamp(TOP, HEIGHT - BOTTOM);
+            let last = series.points.iter().rev().find(|p| p.0.is_finite() && p.1.is_finite());
+            let mut at = last.map_or(TOP, |p| y(p.1) + 5.0).clamp(TOP, HEIGHT - BOTTOM);
             while ends.iter().any(|end: &f64| (end - at).abs() < 17.0) {
                 at += 17.0;
             }

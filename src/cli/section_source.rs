@@ -1,12 +1,11 @@
 //! The section a command line names.
 
-use std::io::{self, Read};
 use std::path::Path;
 
 use plankform::section::{Beside, Finish, Section, SectionFileError, Work};
 use plankform::units::Length;
 
-use super::design_source::in_colour;
+use super::design_source::{in_colour, reader_beside};
 use super::failure::Failure;
 
 /// The trailing edge that a command line asks for.
@@ -96,27 +95,5 @@ impl SectionSource {
             SectionFileError::Reading { source, .. } => Failure::reading(path.display(), &source),
             other => Failure::Input(other.render(in_colour())),
         })
-    }
-}
-
-/// Reads files beside `path` or in folders below it, never such as a link leads out of there.
-pub(super) fn reader_beside(path: &Path) -> impl Fn(&str, usize) -> io::Result<Vec<u8>> + use<> {
-    let folder = path.parent().filter(|folder| !folder.as_os_str().is_empty()).unwrap_or(Path::new("."));
-    let (folder, own) = (folder.to_owned(), path.file_name().map(Path::new).map(Path::to_owned));
-    move |name, most| {
-        let wanted = folder.join(name);
-        // The file that the user named may be a link; what it names in turn may not lead out.
-        if own.as_deref() != Some(Path::new(name))
-            && !wanted.canonicalize()?.starts_with(folder.canonicalize()?)
-        {
-            return Err(io::Error::other("a link leads out of the folder"));
-        }
-        let file = std::fs::File::open(wanted)?;
-        if !file.metadata()?.is_file() {
-            return Err(io::Error::other("it is no file"));
-        }
-        let mut bytes = Vec::new();
-        file.take(most as u64).read_to_end(&mut bytes)?;
-        Ok(bytes)
     }
 }

@@ -6,6 +6,7 @@ use super::section_lift::{SectionLift, SectionPoint, mix};
 use super::strips::{Setting, Strip, Strips};
 use super::{GreatestLift, LoadingError, dense, error::checked};
 use crate::wing::Wing;
+use std::f64::consts::TAU;
 
 /// Most strips from the root to the tip.
 pub const MOST_STRIPS: usize = 200;
@@ -13,9 +14,11 @@ pub const MOST_STRIPS: usize = 200;
 const SETTLED: f64 = 1e-10;
 /// Newton steps, and halvings of one, before giving up.
 const STEPS: usize = 60;
-const HALVINGS: usize = 12;
+const HALVINGS: i32 = 12;
 /// Steps from no incidence in which a load that does not settle at once is approached.
 const RAMP: usize = 16;
+/// Rounds in which falling lift curves are eased.
+const EASINGS: usize = 25;
 /// Half width of the difference that gives a lift slope, radians.
 const SLOPE_STEP: f64 = 5e-4;
 
@@ -92,71 +95,144 @@ impl LiftingLine {
         checked("the incidence", state.incidence, "from -0.8 to 0.8 radians", |v| v.abs() <= 0.8)?;
         checked("the flap angle", state.flap, "from -0.8 to 0.8 radians", |v| v.abs() <= 0.8)?;
         let begin =
-            start.map_or_else(|| vec![0.0; self.strips.strips.len()], |loading| loading.over_speed.clone());
+            start.map_or_else(|| self.first_guess(sections, state), |loading| loading.over_speed.clone());
         let settled = self.settle(sections, state, begin).or_else(|_| {
             // From no incidence the attached load is followed up, so that of several that agree with a
             // falling lift curve it is the one that grew.
-            let mut circulation = vec![0.0; self.strips.strips.len()];
-            for step in 0..=RAMP {
+            let level = State { incidence: 0.0, ..*state };
+            let mut circulation = self.first_guess(sections, &level);
+            for step in 0..RAMP {
                 let incidence = state.incidence * step as f64 / RAMP as f64;
-                match self.settle(sections, &State { incidence, ..*state }, circulation) {
-                    Ok(found) => circulation = found,
-                    Err((_, error)) if step == RAMP => return Err(error),
-                    Err((best, _)) => circulation = best,
-                }
+                circulation = match self.settle(sections, &State { incidence, ..*state }, circulation) {
+                    Ok(found) => found.circulation,
+                    Err((best, _)) => best,
+                };
             }
-            Ok(circulation)
+            self.settle(sections, state, circulation).map_err(|(_, error)| error)
         });
         Ok(self.result(sections, state, settled?))
     }
 
-    /// Newton's method with steps halved until the disagreement falls. On failure the best that was found.
+    /// The load that agrees with the lift curves, eased where they fall; on failure the best that was found.
+    ///
+    /// Where lift falls with incidence, strips beside each other can settle on either side of the top in
+    /// turn, and the finer the strips the wilder. With a slope -s a wave k along the span is damped by
+    /// 1 - c s k/8 (its wake turns the flow by k Γ/4), which passes through zero; with ℓ² Γ'' added, where
+    /// ℓ = c s/8, it is 1 - u + u² for u = k ℓ and never below 3/4. So the load is eased over some third of a
+    /// chord there, and nowhere else. The thought of an added viscosity past the stall is Chattot's
+    /// (Computational Fluid Dynamics Journal, 2004, from memory); its size is worked out here.
     fn settle(
         &self,
         sections: &dyn SectionLift,
         state: &State,
         mut circulation: Vec<f64>,
-    ) -> Result<Vec<f64>, (Vec<f64>, LoadingError)> {
-        let mut misses = self.misses(sections, state, &circulation);
-        for _ in 0..STEPS {
-            if self.worst(&misses) < SETTLED {
-                return Ok(circulation);
+    ) -> Result<Settled, (Vec<f64>, LoadingError)> {
+        let mut easing = vec![0.0; circulation.len()];
+        let mut residual = f64::INFINITY;
+        for _ in 0..EASINGS {
+            (circulation, residual) = self.newton(sections, state, circulation, &easing);
+            // Easing only grows, so that this ends.
+            let needed = self.easing(sections, state, &circulation);
+            if needed.iter().zip(&easing).all(|(needed, ease)| *needed <= ease * (1.0 + 1e-6)) {
+                break;
             }
-            let matrix = self.slopes(sections, state, &circulation);
-            let Some(step) = dense::solve(matrix, misses.iter().map(|miss| -miss).collect()) else { break };
-            let size = sum_of_squares(&misses);
-            let mut share = 1.0;
-            let mut better = None;
-            for _ in 0..HALVINGS {
-                let tried: Vec<f64> = circulation.iter().zip(&step).map(|(g, d)| g + share * d).collect();
-                let missed = self.misses(sections, state, &tried);
-                if sum_of_squares(&missed) < size * (1.0 - 1e-4 * share) {
-                    better = Some((tried, missed));
-                    break;
-                }
-                share *= 0.5;
-            }
-            let Some(found) = better else { break };
-            (circulation, misses) = found;
+            easing.iter_mut().zip(needed).for_each(|(ease, needed)| *ease = ease.max(needed));
         }
-        let residual = self.worst(&misses);
+        // Strips that were past the top only on the way need none.
+        let needed = self.easing(sections, state, &circulation);
+        if residual < SETTLED && needed != easing {
+            let (tried, left) = self.newton(sections, state, circulation.clone(), &needed);
+            let again = self.easing(sections, state, &tried);
+            if left < SETTLED && again.iter().zip(&needed).all(|(again, ease)| *again <= ease * (1.0 + 1e-6))
+            {
+                return Ok(Settled { circulation: tried, easing: needed });
+            }
+        }
         if residual < SETTLED {
-            return Ok(circulation);
+            return Ok(Settled { circulation, easing });
         }
         Err((circulation, LoadingError::NotSettled { degrees: state.incidence.to_degrees(), residual }))
     }
 
-    /// Circulation over speed less what the lift curves ask, mm.
-    fn misses(&self, sections: &dyn SectionLift, state: &State, circulation: &[f64]) -> Vec<f64> {
-        self.asked(sections, state, circulation).iter().zip(circulation).map(|(asked, g)| g - asked).collect()
+    /// ℓ² of each strip, mm², for the slopes at which the sections work.
+    fn easing(&self, sections: &dyn SectionLift, state: &State, circulation: &[f64]) -> Vec<f64> {
+        let ease = |(i, strip): (usize, &Strip)| {
+            let slope = self.slope(i, sections, state, circulation);
+            (strip.chord * strip.cos_sweep * (-slope).max(0.0) / 8.0).powi(2)
+        };
+        self.strips.strips.iter().enumerate().map(ease).collect()
     }
 
-    fn asked(&self, sections: &dyn SectionLift, state: &State, circulation: &[f64]) -> Vec<f64> {
-        let ask = |(i, strip): (usize, &Strip)| {
+    /// The load by a slope of 2π from what each section lifts at no incidence: below a stall it is near, and
+    /// it starts no strip past its top because its wake was not there yet.
+    fn first_guess(&self, sections: &dyn SectionLift, state: &State) -> Vec<f64> {
+        let strips = &self.strips.strips;
+        let still = vec![0.0; strips.len()];
+        let rows = strips.iter().enumerate().map(|(i, strip)| {
+            let factor = 0.5 * strip.chord * strip.cos_sweep * TAU;
+            let turned = self.induced.by_wake[i].iter().zip(&self.induced.by_image[i]);
+            let mut row: Vec<f64> = turned.map(|(wake, image)| factor * (wake + image)).collect();
+            row[i] += 1.0;
+            row
+        });
+        let asked = strips.iter().enumerate().map(|(i, strip)| {
+            let cl = on_strip(sections, strip, 0.0, state.flap).cl
+                + TAU * self.section_incidence(i, state, &still);
+            0.5 * strip.chord * strip.cos_sweep.powi(2) * cl
+        });
+        dense::solve(rows.collect(), asked.collect()).unwrap_or(still)
+    }
+
+    /// Newton's method with steps halved until the disagreement falls; gives the largest that is left too.
+    fn newton(
+        &self,
+        sections: &dyn SectionLift,
+        state: &State,
+        mut circulation: Vec<f64>,
+        easing: &[f64],
+    ) -> (Vec<f64>, f64) {
+        let mut misses = self.misses(sections, state, &circulation, easing);
+        for _ in 0..STEPS {
+            if self.worst(&misses) < SETTLED {
+                break;
+            }
+            let matrix = self.change_of_misses(sections, state, &circulation, easing);
+            let Some(step) = dense::solve(matrix, misses.iter().map(|miss| -miss).collect()) else { break };
+            let size = sum_of_squares(&misses);
+            let shares = (0..HALVINGS).map(|halvings| 0.5_f64.powi(halvings));
+            let better = shares.into_iter().find_map(|share| {
+                let tried: Vec<f64> = circulation.iter().zip(&step).map(|(g, d)| g + share * d).collect();
+                let missed = self.misses(sections, state, &tried, easing);
+                (sum_of_squares(&missed) < size * (1.0 - 1e-4 * share)).then_some((tried, missed))
+            });
+            let Some(found) = better else { break };
+            (circulation, misses) = found;
+        }
+        let residual = self.worst(&misses);
+        (circulation, residual)
+    }
+
+    /// Circulation over speed less what the lift curves ask, mm.
+    fn misses(
+        &self,
+        sections: &dyn SectionLift,
+        state: &State,
+        circulation: &[f64],
+        easing: &[f64],
+    ) -> Vec<f64> {
+        let miss = |(i, strip): (usize, &Strip)| {
             let incidence = self.section_incidence(i, state, circulation);
-            0.5 * strip.chord * strip.cos_sweep.powi(2) * on_strip(sections, strip, incidence, state.flap).cl
+            let cl = on_strip(sections, strip, incidence, state.flap).cl;
+            let asked = 0.5 * strip.chord * strip.cos_sweep.powi(2) * cl;
+            let eased: f64 = match easing[i] {
+                0.0 => 0.0,
+                ease => {
+                    ease * self.bend(i).into_iter().map(|(j, factor)| factor * circulation[j]).sum::<f64>()
+                }
+            };
+            circulation[i] - asked - eased
         };
-        self.strips.strips.iter().enumerate().map(ask).collect()
+        self.strips.strips.iter().enumerate().map(miss).collect()
     }
 
     /// Largest miss, in chords.
@@ -166,18 +242,45 @@ impl LiftingLine {
     }
 
     /// Change of each miss with each circulation.
-    fn slopes(&self, sections: &dyn SectionLift, state: &State, circulation: &[f64]) -> Vec<Vec<f64>> {
+    fn change_of_misses(
+        &self,
+        sections: &dyn SectionLift,
+        state: &State,
+        circulation: &[f64],
+        easing: &[f64],
+    ) -> Vec<Vec<f64>> {
         let row = |(i, strip): (usize, &Strip)| {
-            let incidence = self.section_incidence(i, state, circulation);
-            let cl = |change: f64| on_strip(sections, strip, incidence + change, state.flap).cl;
-            let slope = (cl(SLOPE_STEP) - cl(-SLOPE_STEP)) / (2.0 * SLOPE_STEP);
+            let slope = self.slope(i, sections, state, circulation);
             let factor = 0.5 * strip.chord * strip.cos_sweep * slope;
             let turned = self.induced.by_wake[i].iter().zip(&self.induced.by_image[i]);
             let mut row: Vec<f64> = turned.map(|(wake, image)| factor * (wake + image)).collect();
             row[i] += 1.0;
+            for (j, bend) in self.bend(i) {
+                row[j] -= easing[i] * bend;
+            }
             row
         };
         self.strips.strips.iter().enumerate().map(row).collect()
+    }
+
+    /// Lift slope of a strip's section where it works, per radian.
+    fn slope(&self, i: usize, sections: &dyn SectionLift, state: &State, circulation: &[f64]) -> f64 {
+        let incidence = self.section_incidence(i, state, circulation);
+        let cl = |change: f64| on_strip(sections, &self.strips.strips[i], incidence + change, state.flap).cl;
+        (cl(SLOPE_STEP) - cl(-SLOPE_STEP)) / (2.0 * SLOPE_STEP)
+    }
+
+    /// Factors of the circulations in the second derivative along the line at a strip, 1/mm²; level at both
+    /// ends.
+    fn bend(&self, i: usize) -> [(usize, f64); 3] {
+        let strips = &self.strips.strips;
+        let factor = |j: usize| {
+            let apart = 0.5 * (strips[i].length + strips[j].length);
+            if j == i { 0.0 } else { 1.0 / (apart * strips[i].length) }
+        };
+        let (before, after) = (i.saturating_sub(1), (i + 1).min(strips.len() - 1));
+        let (inner, outer) = (factor(before), factor(after));
+        [(before, inner), (i, -inner - outer), (after, outer)]
     }
 
     /// The incidence at which a strip's section works, square to its line, radians.
@@ -191,7 +294,8 @@ impl LiftingLine {
         (set - turned) / strip.cos_sweep
     }
 
-    fn result(&self, sections: &dyn SectionLift, state: &State, over_speed: Vec<f64>) -> Loading {
+    fn result(&self, sections: &dyn SectionLift, state: &State, settled: Settled) -> Loading {
+        let Settled { circulation: over_speed, easing } = settled;
         let pressure = 0.5 * state.density * state.speed * state.speed;
         let loads = self.strips.strips.iter().enumerate().map(|(i, strip)| {
             let g = over_speed[i];
@@ -215,6 +319,7 @@ impl LiftingLine {
                 moment_per_mm: pressure * strip.chord.powi(2) * point.cm * strip.cos_sweep.powi(2) * 1e-9,
                 quarter_chord: strip.middle,
                 stall_margin: greatest.map(|top| top.incidence - incidence),
+                eased: easing[i] > 0.0,
                 beyond: point.beyond,
             }
         });
@@ -245,6 +350,12 @@ impl LiftingLine {
         let core = 0.01 * self.area / self.span;
         Ok(-velocity(place, &self.strips, self.depth, &loading.over_speed, core)[2])
     }
+}
+
+/// A load, and by how much it was eased: ℓ² of each strip, mm².
+struct Settled {
+    circulation: Vec<f64>,
+    easing: Vec<f64>,
 }
 
 /// The section of a strip; one partly flapped is the mean of both by their shares.

@@ -35,6 +35,9 @@ pub struct StripLoad {
     /// Incidence left until the section's greatest lift, radians; negative when stalled, `None` when the
     /// lift curve shows no greatest.
     pub stall_margin: Option<f64>,
+    /// Whether the section is past its greatest lift, where lift falls with incidence and the load is eased
+    /// between neighbouring strips: lift and section then agree only in the mean.
+    pub eased: bool,
     /// Whether the section was asked outside of what is known of it.
     pub beyond: bool,
 }

@@ -484,7 +484,9 @@ fn a_stalling_foil_settles_without_zigzag() {
                 let off = (strip.section_lift - strip.lift_coefficient).abs();
                 assert!(off < if strip.eased { 0.1 } else { 1e-8 }, "{degrees}°, {}: {off}", strip.at);
             }
-            assert_eq!(loading.strips.iter().any(|strip| strip.eased), degrees > 13, "{degrees}°");
+            // Nothing is eased while every section is before its top.
+            let stalled = worst.stall_margin.expect("known") < 1e-3;
+            assert!(stalled || !loading.strips.iter().any(|strip| strip.eased), "{degrees}°");
             assert!(turns <= 1, "{degrees}°: the load turns {turns} times");
         }
         println!("{settled} of 18 settled");
@@ -571,15 +573,18 @@ fn take_off_and_drag_over_speed() {
     assert!(carried.windows(2).all(|pair| pair[0].state.incidence > pair[1].state.incidence));
 }
 
-/// Far behind an elliptic load the wake turns the flow by 2 C_L/(π A) all along (Prandtl), and half of it
-/// abreast of the foil; half as much again by the image is σ of each.
+/// Far behind an elliptic load the wake turns the flow by 2 C_L/(π A) all along, twice what it does at the
+/// foil. Source: Prandtl, NACA Report 116 (1921); above the sheet, the potential of a plate in cross flow.
 #[test]
 fn downwash_behind() {
     let line = line(&elliptic(8.0), &Setting { strips: 80, ..Setting::default() });
     let loading = line.load(&ThinSection::default(), &state(0.05)).expect("a load");
     let angle = loading.lift_coefficient / (PI * 8.0);
     let at = |place| line.downwash_at(&loading, place).expect("an angle");
-    near("far behind, middle", at([1e6, 0.0, 0.0]), 2.0 * angle, 5e-3);
+    let between = 500.0 * (FRAC_PI_2 * 10.5 / 80.0).sin();
+    near("far behind, in the sheet between two legs", at([1e6, between, 0.0]), 2.0 * angle, 1e-3);
+    // On a leg, as the middle is, the sum over the others lacks a share of one in twice the strips.
+    near("far behind, in the sheet on a leg", at([1e6, 0.0, 0.0]), 2.0 * angle, 1.0 / 80.0);
     // At height z over the middle of the sheet: 2 C_L/(π A) (1 - ζ/√(1 + ζ²)), ζ = z over half the span.
     for up in [100.0, 250.0, 500.0] {
         let zeta: f64 = up / 500.0;

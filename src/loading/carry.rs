@@ -169,11 +169,11 @@ impl LiftingLine {
         }
         // Coefficients stay as they are, so lift goes with the square of the speed.
         let speed = state.speed * (load / (share * most.lift)).sqrt();
-        let at_speed = State { speed, ..*state };
         // With the whole of the greatest lift there is nothing left to look for.
         let loading = if share == 1.0 {
-            self.load_from(sections, &State { incidence: most.state.incidence, ..at_speed }, Some(&most))?
+            most.at_speed(speed)
         } else {
+            let at_speed = State { speed, ..*state };
             self.incidence_for(sections, &at_speed, load, (range.0, most.state.incidence))?
         };
         Ok(TakeOff { speed, loading })

@@ -330,8 +330,10 @@ impl LiftingLine {
     /// radians for small ones; negative where it is turned up. For the other foil of a boat, which stands
     /// in it.
     ///
-    /// The legs run straight aft at the height at which they leave the foil. Within a hundredth of the mean
-    /// chord of a vortex the angle is eased to nothing.
+    /// The legs run straight aft at the height at which they leave the foil. Within their sheet a place on
+    /// a leg, as the middle of a mirrored foil is, reads low by a share of one in twice the strips; a strip's
+    /// width above or below it that is gone. Within a thousandth of the mean chord of a vortex the angle is
+    /// eased to nothing.
     ///
     /// # Errors
     /// When a coordinate is no number, or the load is not of this line.
@@ -347,7 +349,7 @@ impl LiftingLine {
                 most: strips,
             });
         }
-        let core = 0.01 * self.area / self.span;
+        let core = 0.001 * self.area / self.span;
         Ok(-velocity(place, &self.strips, self.depth, &loading.over_speed, core)[2])
     }
 }

@@ -35,8 +35,8 @@ pub struct StripLoad {
     /// Incidence left until the section's greatest lift, radians; negative when stalled, `None` when the
     /// lift curve shows no greatest.
     pub stall_margin: Option<f64>,
-    /// Whether the section is past its greatest lift, where lift falls with incidence and the load is eased
-    /// between neighbouring strips: lift and section then agree only in the mean.
+    /// Whether the load is eased between neighbouring strips, since the section is past its greatest lift,
+    /// or was while the load was sought: lift and section then agree only in the mean.
     pub eased: bool,
     /// Whether the section was asked outside of what is known of it.
     pub beyond: bool,
@@ -99,6 +99,27 @@ impl Loading {
             over_speed,
             aspect_ratio: span * span / area,
         }
+    }
+
+    /// The same coefficients at another speed, m/s.
+    pub(super) fn at_speed(&self, speed: f64) -> Self {
+        let ratio = speed / self.state.speed;
+        let forces = ratio * ratio;
+        let mut other = self.clone();
+        other.state.speed = speed;
+        for sum in
+            [&mut other.lift, &mut other.induced_drag, &mut other.profile_drag, &mut other.pitching_moment]
+        {
+            *sum *= forces;
+        }
+        for strip in &mut other.strips {
+            strip.circulation *= ratio;
+            strip.lift_per_mm *= forces;
+            strip.induced_drag_per_mm *= forces;
+            strip.profile_drag_per_mm *= forces;
+            strip.moment_per_mm *= forces;
+        }
+        other
     }
 
     /// Induced and profile drag together, N.

@@ -612,14 +612,14 @@ fn two_foils_share_a_boat() {
         own_moment: 0.0,
     };
     let shares = boat.shares().expect("shares");
-    near("after", shares.after, 309.090_909_09, 1e-9);
-    near("forward", shares.forward, 1590.909_090_91, 1e-9);
+    near("after", shares.after, 309.090_909, 1e-9);
+    near("forward", shares.forward, 1_590.909_091, 1e-9);
     // A nose-down moment of 22 N m of the foils takes 10 N from the after one.
     let nosed = TwoFoils { own_moment: -22.0, ..boat.clone() }.shares().expect("shares");
-    near("after, with the foils' moment", nosed.after, 299.090_909_09, 1e-9);
+    near("after, with the foils' moment", nosed.after, 299.090_909, 1e-9);
     // Without drive: 1 280 000 / 2200.
     let still = TwoFoils { drive: Drive::default(), ..boat.clone() }.shares().expect("shares");
-    near("after, without drive", still.after, 581.818_181_82, 1e-9);
+    near("after, without drive", still.after, 581.818_182, 1e-9);
     // A drive of 600 N presses the bow down by 1 800 000 N mm: -520 000 / 2200 = -236.36 N.
     let drive = Drive { force: 600.0, ..boat.drive };
     let told = TwoFoils { drive, ..boat.clone() }.shares().expect_err("pulls down").to_string();
@@ -657,6 +657,18 @@ fn what_makes_no_sense_is_refused() {
     assert!(line.load(&thin, &state(f64::NAN)).is_err());
     assert!(line.incidence_for(&thin, &state(0.0), 100.0, (0.2, 0.1)).is_err());
     assert!(line.incidence_for(&thin, &state(0.0), f64::NAN, RANGE).is_err());
+    for section in [
+        ThinSection { slope: f64::NAN, ..thin },
+        ThinSection { cd: f64::NAN, ..thin },
+        ThinSection { zero_lift: f64::INFINITY, ..thin },
+    ] {
+        let told = line.load(&section, &state(0.05));
+        assert!(
+            matches!(told, Err(LoadingError::Table { .. } | LoadingError::NotSettled { .. })),
+            "{told:?}"
+        );
+        assert!(line.incidence_for(&section, &state(0.0), 100.0, RANGE).is_err());
+    }
     let point = |incidence, cl| CurvePoint { incidence, cl, cd: 0.01, cm: 0.0 };
     for points in [
         vec![],

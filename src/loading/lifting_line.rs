@@ -77,7 +77,8 @@ impl LiftingLine {
     /// The load in one state.
     ///
     /// # Errors
-    /// When a quantity of the state makes no sense, or the load does not settle.
+    /// When a quantity of the state makes no sense, a section gives no finite number, or the load does not
+    /// settle.
     pub fn load(&self, sections: &dyn SectionLift, state: &State) -> Result<Loading, LoadingError> {
         self.load_from(sections, state, None)
     }
@@ -110,7 +111,13 @@ impl LiftingLine {
             }
             self.settle(sections, state, circulation).map_err(|(_, error)| error)
         });
-        Ok(self.result(sections, state, settled?))
+        let loading = self.result(sections, state, settled?);
+        let sums = [loading.lift, loading.drag(), loading.pitching_moment];
+        if sums.iter().all(|sum| sum.is_finite()) {
+            Ok(loading)
+        } else {
+            Err(LoadingError::Table { why: "its lift, drag or moment is no finite number".into() })
+        }
     }
 
     /// The load that agrees with the lift curves, eased where they fall; on failure the best that was found.
@@ -238,7 +245,8 @@ impl LiftingLine {
     /// Largest miss, in chords.
     fn worst(&self, misses: &[f64]) -> f64 {
         let in_chords = misses.iter().zip(&self.strips.strips).map(|(miss, strip)| miss.abs() / strip.chord);
-        in_chords.fold(0.0, f64::max)
+        // The greater of a number and no number is the number: look at that first.
+        if misses.iter().all(|miss| miss.is_finite()) { in_chords.fold(0.0, f64::max) } else { f64::INFINITY }
     }
 
     /// Change of each miss with each circulation.

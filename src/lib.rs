@@ -23,6 +23,7 @@ pub mod design;
 pub mod export;
 pub mod flow;
 pub mod geometry;
+pub mod loading;
 pub mod pack;
 pub mod parts;
 pub mod problems;

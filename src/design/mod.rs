@@ -18,7 +18,7 @@ mod wing;
 
 pub use crate::problems::{FileErrors as DesignErrors, Problem};
 pub use model::{
-    Cut, CutKind, Design, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
+    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
     Printer, Router, Station, Stock,
 };
 pub use page::key_tables;

@@ -80,6 +80,8 @@ pub struct Design {
     pub flap: Option<Flap>,
     /// What the lift curves cover.
     pub lift: Lift,
+    /// What it carries, if that is said.
+    pub duty: Option<Duty>,
     /// The masks that guide the sanding.
     pub masks: Masks,
     /// The printer that makes the masks.
@@ -359,6 +361,19 @@ impl Lift {
         let steps = (self.to.degrees() - self.from.degrees()) / self.step.degrees();
         if steps >= 0.0 { (steps + 1e-6).floor() as usize + 1 } else { 0 }
     }
+}
+
+/// What a level foil carries under its boat.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Duty {
+    /// Mass, kg, 1 to 5000.
+    pub carries: f64,
+    /// Speed at which it has to carry it, m/s, 0.5 to 20.
+    pub take_off: f64,
+    /// Speed at which it usually runs, m/s, above take-off.
+    pub cruise: Option<f64>,
+    /// How much of its greatest lift it may use at take-off, 0.3 to 1.
+    pub share: f64,
 }
 
 /// The printed masks that guide the sanding.

@@ -4,7 +4,7 @@ use std::ops::Range;
 
 use super::keys;
 use super::model::{
-    Cut, CutKind, Design, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
+    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
     Printer, Router, Station, Stock, Wood,
 };
 use super::reader::{Row, Sheet};
@@ -36,6 +36,8 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let plies: Vec<_> = sheet.all(&keys::PLY).iter().map(|row| ply(row, reach.as_ref(), problems)).collect();
     let cuts: Vec<_> = sheet.all(&keys::CUT).iter().map(|row| cut(row, reach.as_ref(), problems)).collect();
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
+    let top_speed = lift.as_ref().and_then(|lift| lift.top_speed);
+    let duty = sheet.one(&keys::DUTY).map(|row| duty(row, kind, top_speed, problems));
     let masks = masks(sheet.one(&keys::MASKS)?);
     let printer = printer(sheet.one(&keys::PRINTER)?, problems);
     let paper = paper(sheet.one(&keys::PAPER)?, problems);
@@ -71,6 +73,10 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
             None => None,
         },
         lift: lift?,
+        duty: match duty {
+            Some(duty) => Some(duty?),
+            None => None,
+        },
         masks: masks?,
         printer: printer?,
         paper: paper?,
@@ -364,6 +370,25 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
         );
     }
     Some(lift)
+}
+
+fn duty(row: &Row, kind: Option<Kind>, top: Option<f64>, problems: &mut Problems) -> Option<Duty> {
+    if kind.is_some_and(|kind| !kind.mirrored()) {
+        let wrong = Wrong::new("a duty is for a foil that lies level: a main foil or an elevator")
+            .help("leave [duty] out");
+        problems.add(row.place("carries"), wrong);
+    }
+    let (take_off, cruise) = (row.number("take-off")?, row.number("cruise"));
+    for (key, faster) in [("cruise", cruise), ("take-off", top)] {
+        if faster.is_some_and(|faster| faster <= take_off) {
+            let what = if key == "cruise" { "cruise" } else { "top-speed of [lift]" };
+            let wrong =
+                Wrong::new(format!("{what} does not lie above take-off: the speeds are out of order"))
+                    .help("take-off is the slowest of them");
+            problems.add(row.place(key), wrong);
+        }
+    }
+    Some(Duty { carries: row.number("carries")?, take_off, cruise, share: row.number("share")? })
 }
 
 fn masks(row: &Row) -> Option<Masks> {

@@ -1,6 +1,7 @@
 //! Everything that a design's pack and its checks are made from, worked out once.
 
 use super::PackError;
+use super::duty::FoilDuty;
 use super::friction::StationCurves;
 use crate::design::{Cut, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
@@ -23,6 +24,7 @@ pub(super) struct Aids<'a> {
     pub(super) stations: Vec<StationAids<'a>>,
     pub(super) flows: Vec<SectionFlow<'a>>,
     pub(super) curves: Vec<StationCurves<'a>>,
+    pub(super) duty: Option<FoilDuty>,
     pub(super) pieces: Vec<WoodPiece>,
     /// From one template to the next of a curved foil, and how far a batten between them is from it.
     pub(super) battens: Vec<(f64, f64, f64)>,
@@ -32,12 +34,14 @@ impl<'a> Aids<'a> {
     /// Works out a design, whose own foil `wing` is.
     pub(super) fn of(design: &'a Design, wing: &'a Wing) -> Result<Self, PackError> {
         let planform = wing.planform();
+        let curves = StationCurves::of(design)?;
         Ok(Self {
+            duty: FoilDuty::of(design, wing, &curves)?,
             pattern: pattern(design, &planform),
             planform,
             stations: station_aids(design, wing)?,
             flows: section_flows(design)?,
-            curves: StationCurves::of(design)?,
+            curves,
             pieces: design.pieces(wing)?,
             battens: battens(design, wing)?,
         })

@@ -6,6 +6,7 @@ use std::path::PathBuf;
 use crate::export::ExportError;
 use crate::flow::{FlowError, ViscousError};
 use crate::geometry::GeometryError;
+use crate::loading::LoadingError;
 use crate::parts::PartError;
 use crate::wing::WingError;
 
@@ -33,6 +34,9 @@ pub enum PackError {
     /// The flow with friction is asked for out of its range.
     #[error("flow with friction: {0}")]
     Viscous(#[from] ViscousError),
+    /// The foil under its boat cannot be worked out.
+    #[error("the foil under its boat: {0}")]
+    Loading(#[from] LoadingError),
     /// A curve is missing.
     #[error("flow with friction: a curve is missing")]
     Curves,

@@ -3,6 +3,7 @@
 mod aids;
 mod checks;
 mod contents;
+mod duty;
 mod error;
 mod friction;
 mod manifest;

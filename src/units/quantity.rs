@@ -66,6 +66,15 @@ pub static SPEED: Quantity = Quantity {
     ],
 };
 
+/// Masses; the base unit is the kilogram. A pound is 0.45359237 kg.
+pub static MASS: Quantity = Quantity {
+    name: "a mass",
+    units: &[
+        Unit { symbol: "kg", also: &[], factor: Factor::Tenths(10) },
+        Unit { symbol: "lb", also: &["lbs"], factor: Factor::Ratio(45_359_237, 100_000_000) },
+    ],
+};
+
 /// Temperatures in degrees Celsius.
 pub static TEMPERATURE: Quantity = Quantity {
     name: "a temperature",

@@ -337,6 +337,22 @@ fn a_trailing_edge_is_as_thick_as_asked_at_its_chord() {
 }
 
 #[test]
+fn a_duty_is_for_a_level_foil_and_its_speeds_go_upwards() {
+    let duty = "\n[duty]\ncarries = \"160 kg\"\ntake-off = \"9 kn\"\n";
+    let says = |text: &str| bad(text).to_string();
+    assert!(says(&format!("{FIN}{duty}")).contains("a foil that lies level"));
+    let foil = MAIN_FOIL.replace("cruise = \"14 kn\"", "cruise = \"8 kn\"");
+    assert!(says(&foil).contains("cruise does not lie above take-off"), "{}", says(&foil));
+    let foil = MAIN_FOIL.replace("top-speed = \"20 kn\"", "top-speed = \"5 m/s\"");
+    assert!(says(&foil).contains("top-speed of [lift] does not lie above take-off"));
+    let design = good(MAIN_FOIL);
+    let duty = design.duty.expect("a duty");
+    // A knot is 1852 m an hour.
+    assert!((duty.take_off - 10.5 * 1852.0 / 3600.0).abs() < 1e-12 && duty.share == 0.85);
+    assert!((design.lift.top_speed.expect("a speed") - 20.0 * 1852.0 / 3600.0).abs() < 1e-12);
+}
+
+#[test]
 fn stations_run_from_the_root_to_the_end() {
     spoilt("at = \"0 mm\"", "at = \"10 mm\"", (6, 6), &["first station lies at 10 mm", "at = \"0 mm\""]);
     spoilt(

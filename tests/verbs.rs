@@ -185,6 +185,7 @@ fn checks_outside_their_limit_are_told_and_change_the_exit_status() {
         ("[printer]\nbed-x = \"80 mm\"\nbed-y = \"80 mm\"\n", &["mask fits the printer bed"]),
         ("[printer]\nbed-z = \"50 mm\"\n[masks]\nthickness = \"55 mm\"\n", &["mask fits the printer bed"]),
         ("[stock]\nlength = \"300 mm\"\nwidth = \"300 mm\"\n", &["template fits the stock sheet"]),
+        ("[duty]\ncarries = \"40 kg\"\ntake-off = \"4 kn\"\n", &["the foil carries its load at take-off"]),
         (
             "[[cut]]\nfor = \"rod\"\nkind = \"slot\"\nat = 0.3\nwidth = \"6 mm\"\ndepth = \"7 mm\"\n",
             &["wood is left beside the cut"],

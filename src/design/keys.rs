@@ -95,6 +95,23 @@ const fn key(
 /// Longest span, and the furthest that a place along it can lie, millimetres.
 const LONGEST: f64 = 10_000.0;
 
+/// From where along the span something goes.
+const FROM: Key = key(
+    "from",
+    Length(0.0, LONGEST),
+    Default("0 mm"),
+    "Where it begins, from the root along the span.",
+    "50 mm",
+);
+/// To where.
+const TO: Key = key(
+    "to",
+    Length(0.0, LONGEST),
+    Left("the far end"),
+    "Where it ends, from the root along the span.",
+    "400 mm",
+);
+
 /// The keys above all tables.
 pub(super) static ROOT: Table = Table {
     name: "",
@@ -310,20 +327,8 @@ pub(super) static PLY: Table = Table {
             "0.25 mm",
         ),
         key("on", Word(PlySide::WORDS), Default("both"), "The surfaces that it covers.", "both"),
-        key(
-            "from",
-            Length(0.0, LONGEST),
-            Default("0 mm"),
-            "Where it begins, from the root along the span.",
-            "0 mm",
-        ),
-        key(
-            "to",
-            Length(0.0, LONGEST),
-            Left("the far end"),
-            "Where it ends, from the root along the span.",
-            "300 mm",
-        ),
+        FROM,
+        TO,
         key(
             "chord-from",
             Number(0.0, 0.95),
@@ -355,20 +360,8 @@ pub(super) static FLAP: Table = Table {
             "The same at the flap's outer end; between the two it changes evenly.",
             "0.72",
         ),
-        key(
-            "from",
-            Length(0.0, LONGEST),
-            Default("0 mm"),
-            "Where the flap begins, from the root along the span.",
-            "50 mm",
-        ),
-        key(
-            "to",
-            Length(0.0, LONGEST),
-            Left("the far end"),
-            "Where the flap ends, from the root along the span.",
-            "400 mm",
-        ),
+        FROM,
+        TO,
         key(
             "kind",
             Word(FlapKind::WORDS),
@@ -470,20 +463,8 @@ pub(super) static CUT: Table = Table {
             "Centre of a bore between the lower (0) and the upper (1) face of the wood.",
             "0.5",
         ),
-        key(
-            "from",
-            Length(0.0, LONGEST),
-            Default("0 mm"),
-            "Where it begins, from the root along the span.",
-            "0 mm",
-        ),
-        key(
-            "to",
-            Length(0.0, LONGEST),
-            Left("the far end"),
-            "Where it ends, from the root along the span.",
-            "800 mm",
-        ),
+        FROM,
+        TO,
         key(
             "least-left",
             Length(0.0, 100.0),

@@ -1,6 +1,6 @@
 //! The values of a section file, each with what is wrong with it.
 
-use std::ops::Range;
+use std::ops::{Range, RangeInclusive};
 
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
@@ -95,28 +95,19 @@ impl<'a> Reader<'a> {
         &mut self,
         table: &DeTable<'_>,
         key: &str,
-        bounds: std::ops::RangeInclusive<f64>,
+        bounds: RangeInclusive<f64>,
     ) -> Result<Option<f64>, Wronged> {
-        let Some(raw) = table.get(key) else { return Ok(None) };
-        let value = match raw.get_ref() {
-            DeValue::String(text) => text
-                .trim()
-                .strip_suffix('%')
-                .and_then(|percent| percent.trim().parse().ok())
-                .map(|percent: f64| percent / 100.0),
+        let value = |raw: &DeValue<'_>| match raw {
+            DeValue::String(text) => {
+                let percent = text.trim().strip_suffix('%')?.trim().parse::<f64>().ok()?;
+                Some(percent / 100.0)
+            }
             other => number(other),
         };
-        let (least, most) = (bounds.start(), bounds.end());
-        match value.filter(|value| bounds.contains(value)) {
-            Some(value) => Ok(Some(value)),
-            None => {
-                let message = format!("{key} takes a share of the chord from {least} to {most}");
-                let middle = clear(0.5 * (least + most));
-                let help = format!("write {key} = {middle}, or {key} = \"{} %\"", clear(100.0 * middle));
-                self.wrong(raw.span(), message, help);
-                Err(Wronged)
-            }
-        }
+        self.bounded(table, key, &bounds, value, |least, most, middle| {
+            let message = format!("{key} takes a share of the chord from {least} to {most}");
+            (message, format!("write {key} = {middle}, or {key} = \"{} %\"", clear(100.0 * middle)))
+        })
     }
 
     /// A plain number. `Ok(None)` where the key is left out.
@@ -124,18 +115,31 @@ impl<'a> Reader<'a> {
         &mut self,
         table: &DeTable<'_>,
         key: &str,
-        bounds: std::ops::RangeInclusive<f64>,
+        bounds: RangeInclusive<f64>,
+    ) -> Result<Option<f64>, Wronged> {
+        self.bounded(table, key, &bounds, number, |least, most, middle| {
+            let message = format!("{key} takes a number from {least} to {most}, without quotes");
+            (message, format!("write {key} = {middle}"))
+        })
+    }
+
+    /// A value within bounds; `words` give message and help from least, most and a value between.
+    fn bounded(
+        &mut self,
+        table: &DeTable<'_>,
+        key: &str,
+        bounds: &RangeInclusive<f64>,
+        value: impl Fn(&DeValue<'_>) -> Option<f64>,
+        words: impl Fn(f64, f64, f64) -> (String, String),
     ) -> Result<Option<f64>, Wronged> {
         let Some(raw) = table.get(key) else { return Ok(None) };
-        match number(raw.get_ref()).filter(|value| bounds.contains(value)) {
-            Some(value) => Ok(Some(value)),
-            None => {
-                let (least, most) = (bounds.start(), bounds.end());
-                let message = format!("{key} takes a number from {least} to {most}, without quotes");
-                self.wrong(raw.span(), message, format!("write {key} = {}", clear(0.5 * (least + most))));
-                Err(Wronged)
-            }
+        if let Some(value) = value(raw.get_ref()).filter(|value| bounds.contains(value)) {
+            return Ok(Some(value));
         }
+        let (least, most) = (*bounds.start(), *bounds.end());
+        let (message, help) = words(least, most, clear(0.5 * (least + most)));
+        self.wrong(raw.span(), message, help);
+        Err(Wronged)
     }
 
     /// An angle with its unit. `Ok(None)` where the key is left out.

@@ -162,7 +162,7 @@ impl Member {
         let beam = self.beam.under(case)?;
         let push = beam.root().compression;
         let buckling = if push > 0.0 { (self.beam.buckling_load() / push).min(UNLOADED) } else { UNLOADED };
-        let magnified = if buckling > 1.0 { 1.0 / (1.0 - 1.0 / buckling) } else { 1.0 };
+        let magnified = if push > 0.0 && buckling > 1.0 { 1.0 / (1.0 - 1.0 / buckling) } else { 1.0 };
         let at = |(station, section): (&MemberStation, &SectionStiffness)| {
             let mut node = beam.near(station.at);
             node.moment = node.moment.map(|moment| moment * magnified);

@@ -130,6 +130,8 @@ pub struct Walls {
 
 /// Longest wall, as a share of the chord.
 const LONGEST: f64 = 0.02;
+/// Over what share of the chord the skin's thickness steps at the edge of a ply, each way.
+const STEP: f64 = 1e-4;
 /// A corner that turns by more than this keeps no skin behind it: a sharp trailing edge.
 const SHARP: f64 = 2.1;
 
@@ -248,6 +250,8 @@ fn corners(build: &SectionBuild) -> Option<Vec<Point>> {
         .iter()
         .flat_map(|ply| [*ply.chord.start(), *ply.chord.end()])
         .filter(|share| *share > 0.0 && *share < 1.0)
+        // A thickness steps between two corners close by, not over a whole wall.
+        .flat_map(|share| [share - STEP, share, share + STEP])
         .map(|share| build.nose + share * chord)
         .collect();
     let mut fine = Vec::new();

@@ -2,7 +2,7 @@
 //!
 //! Data goes one way through the modules, and a module uses only those before it:
 //!
-//! `units` → `problems` → `geometry` → `section` → `flow` → `wing` → `workshop` → `export`
+//! `units` → `problems` → `geometry` → `section` → `flow` → `wing` → `strength` → `workshop` → `export`
 //!
 //! [`design`] reads the user's file and builds a [`wing::Wing`] from it; [`pack`] walks the line
 //! from there to the files on disk. Inside, geometry is in millimetres, sections are in unit
@@ -28,6 +28,7 @@ pub mod pack;
 pub mod parts;
 pub mod problems;
 pub mod section;
+pub mod strength;
 pub mod units;
 pub mod wing;
 pub mod workshop;

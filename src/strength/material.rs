@@ -92,7 +92,8 @@ impl PlyElastic {
             ("density", self.density),
         ];
         refuse_unless_positive(&self.name, &positive)?;
-        if !(self.nu12.powi(2) < self.e1 / self.e2) {
+        let limit = self.e1 / self.e2;
+        if limit.is_nan() || self.nu12.powi(2) >= limit {
             return Err(StrengthError::Material {
                 material: self.name.clone(),
                 what: "ν12",

@@ -92,7 +92,7 @@ impl PlyElastic {
             ("density", self.density),
         ];
         refuse_unless_positive(&self.name, &positive)?;
-        if !(self.nu12.powi(2) < self.e1 / self.e2) {
+        if self.nu12.is_nan() || self.nu12.powi(2) >= self.e1 / self.e2 {
             return Err(StrengthError::Material {
                 material: self.name.clone(),
                 what: "ν12",

@@ -88,7 +88,7 @@ pub(super) fn unit_flows(ring: &ThinRing) -> Option<(Vec<[f64; 2]>, Point)> {
     let yy = weigh(&|wall| mean(wall, |v| v.y, |v| v.y));
     let xy = weigh(&|wall| mean(wall, |v| v.x, |v| v.y));
     let det = xx * yy - xy * xy;
-    if !(det > 1e-12 * xx * yy) {
+    if det.is_nan() || det <= 1e-12 * xx * yy {
         return None;
     }
     let mut flows = vec![[0.0; 2]; ring.count];

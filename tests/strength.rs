@@ -13,7 +13,7 @@ use plankform::strength::{
     BeamStation, Cantilever, Cell, CoreElastic, Criteria, Criterion, FlapCut, Layer, Layup, LineLoad,
     LoadCase, Member, MemberStation, Mode, PlyElastic, PlyMode, PointLoad, Provenance, SectionBuild,
     SectionStiffness, SkinPly, SkinSides, StrengthError, WRINKLING_BY_THEORY, WRINKLING_FOR_DESIGN,
-    wrinkling_stress,
+    crushing_reserve, wrinkling_stress,
 };
 use proptest::prelude::*;
 use std::f64::consts::{FRAC_PI_2, FRAC_PI_4, PI, TAU};
@@ -560,7 +560,7 @@ fn a_tapered_beam_agrees_with_finite_differences() {
 }
 
 /// Euler's column held at one end, π² EI / 4 L² (1744), and one whose stiffness falls linearly to a fifth, against
-/// a matrix-free search: the push at which the tip's slope-marched moment vanishes.
+/// shooting by Runge and Kutta's rule.
 #[test]
 fn a_column_buckles_at_eulers_load() {
     let (reach, stiffness) = (900.0, 5e8);
@@ -658,6 +658,43 @@ fn wrinkling_is_the_published_formula() {
     // ∛(50000 · 70 · 25) = ∛87 500 000 = 443.952…
     close("wrinkling", wrinkling_stress(WRINKLING_FOR_DESIGN, 5e4, 70.0, 25.0), 221.976, 1e-5);
     close("by theory", wrinkling_stress(WRINKLING_BY_THEORY, 5e4, 70.0, 25.0), 0.91 * 443.952, 1e-5);
+}
+
+/// A foot of 80 kg on 100 cm² of foam that stands 1.2 MPa, by hand: 1.2 · 10 000 / (80 · 9.80665).
+#[test]
+fn a_foot_crushes_a_core_at_its_strength() {
+    close("crushing", crushing_reserve(&demo::foam(), -80.0 * 9.80665, 10_000.0), 15.2957, 1e-5);
+    assert!(crushing_reserve(&demo::foam(), 0.0, 100.0) > 1e5, "nothing stands on it");
+    assert!(crushing_reserve(&demo::foam(), 10.0, f64::NAN) < 1.0, "no patch, no reserve");
+}
+
+/// A closed thin skin on NACA 0012 twists by Bredt's formula with area and girth of its middle line, here
+/// from the printed thickness equation (Report 460) by a fine polygon; bends by t ∮ y² ds of the same.
+#[test]
+fn a_foils_skin_twists_and_bends_as_its_middle_line_says() {
+    let (chord, wall, modulus) = (120.0, 0.02, 26_000.0);
+    let section = tube(foil("NACA 0012", chord, 800), wall, modulus);
+    let half = |x: f64| {
+        0.6 * (0.2969 * x.sqrt() - 0.1260 * x - 0.3516 * x.powi(2) + 0.2843 * x.powi(3) - 0.1015 * x.powi(4))
+    };
+    let (mut area, mut girth, mut second) = (0.0, 0.0, 0.0);
+    let count = 20_000;
+    for i in 0..count {
+        let [x0, x1] = [i, i + 1].map(|i| (f64::from(i) / f64::from(count)).powi(2));
+        let [y0, y1] = [half(x0), half(x1)].map(|y| y * chord);
+        let length = ((x1 - x0) * chord).hypot(y1 - y0);
+        area += (y0 + y1) * (x1 - x0) * chord;
+        girth += 2.0 * length;
+        // The wall's middle lies half its thickness inside, square to the surface.
+        let inside = 0.5 * wall * (x1 - x0) * chord / length;
+        let [y0, y1] = [y0 - inside, y1 - inside];
+        second += 2.0 * wall * length * (y0 * y0 + y0 * y1 + y1 * y1) / 3.0;
+    }
+    let blunt = 2.0 * half(1.0) * chord;
+    second += wall * blunt.powi(3) / 12.0;
+    area -= 0.5 * wall * girth;
+    close("GJ of a foil's skin", section.torsion / 1e4, 4.0 * area * area * wall / (girth + blunt), 5e-4);
+    close("EI of a foil's skin", section.bending_across / modulus, second, 5e-4);
 }
 
 /// A box strut under a tip load: the skin's reserve is strength over M y / I, by hand.

@@ -2,7 +2,7 @@
 //!
 //! A reserve is strength over stress, load factor included: below one it fails.
 
-use super::{BeamNode, Criterion, PlyMode, SectionStiffness, StrengthError, UNLOADED};
+use super::{BeamNode, CoreElastic, Criterion, PlyMode, SectionStiffness, StrengthError, UNLOADED};
 use crate::section::Side;
 
 /// Coefficient of the wrinkling stress that is meant for design.
@@ -19,6 +19,19 @@ pub const WRINKLING_BY_THEORY: f64 = 0.91;
 #[must_use]
 pub fn wrinkling_stress(coefficient: f64, face: f64, core: f64, core_shear: f64) -> f64 {
     coefficient * (face * core * core_shear).max(0.0).cbrt()
+}
+
+/// Reserve of a core against being crushed by a force in N on a patch in mm², such as a foot or a trestle:
+/// strength over pressure, the skin spreading nothing, which is on the safe side. At most [`UNLOADED`];
+/// nought for a patch that is no number above zero.
+///
+/// Not a certification: use tested material values; local codes and licensed practice come first.
+#[must_use]
+pub fn crushing_reserve(core: &CoreElastic, force: f64, patch: f64) -> f64 {
+    if !(patch > 0.0 && core.compression > 0.0) || force.is_nan() {
+        return 0.0;
+    }
+    (core.compression * patch / force.abs()).min(UNLOADED)
 }
 
 /// What strength is judged by.

@@ -22,10 +22,10 @@ pub use error::StrengthError;
 pub use laminate_theory::{Criterion, FirstPly, Layer, Layup, PlyMode, SkinConstants, UNLOADED};
 pub use loads::{GRAVITY, LineLoad, LoadCase, PointLoad};
 pub use margins::{
-    Criteria, Mode, Reserve, WRINKLING_BY_THEORY, WRINKLING_FOR_DESIGN, reserves, wrinkling_stress,
+    Criteria, Mode, Reserve, WRINKLING_BY_THEORY, WRINKLING_FOR_DESIGN, crushing_reserve, reserves,
+    wrinkling_stress,
 };
 pub use material::{CoreElastic, PlyElastic, Provenance};
 pub use member::{CaseResult, Cure, Least, Member, MemberStation, StationReserves};
 pub use section_stiffness::{Cell, SectionStiffness};
-pub use walls::SectionBuild;
-pub use walls::{FlapCut, SkinPly, SkinSides, Wall, Walls, outline_points};
+pub use walls::{FlapCut, SectionBuild, SkinPly, SkinSides, Wall, Walls, outline_points};

@@ -5,7 +5,7 @@
 
 use super::shear_flow::{self, ThinRing};
 use super::walls::{SectionBuild, Wall, Walls};
-use super::{CoreElastic, Layup, StrengthError};
+use super::{CoreElastic, StrengthError};
 use crate::geometry::{Point, polygon};
 
 /// How the walls of a section close.
@@ -200,12 +200,6 @@ impl SectionStiffness {
                 (low.min(wall.inner[0].y), high.max(wall.inner[0].y))
             });
         (high - low).max(0.0)
-    }
-
-    /// Thickness of the thickest skin, mm.
-    #[must_use]
-    pub fn skin_thickness(&self) -> f64 {
-        self.walls.skins.iter().map(Layup::thickness).fold(0.0, f64::max)
     }
 }
 

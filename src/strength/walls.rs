@@ -56,7 +56,7 @@ pub struct FlapCut {
 #[derive(Debug, Clone, PartialEq)]
 pub struct SectionBuild {
     /// Corners of the outline of the laminate, mm: x aft, y towards the upper side; filler and paint
-    /// not counted. Of an [`ArcPath`] take [`outline_points`].
+    /// not counted. It must not cross itself, which is not looked at here. Of an [`ArcPath`] take [`outline_points`].
     pub outline: Vec<Point>,
     /// x of the nose, mm.
     pub nose: f64,

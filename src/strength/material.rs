@@ -92,12 +92,7 @@ impl PlyElastic {
             ("density", self.density),
         ];
         refuse_unless_positive(&self.name, &positive)?;
-<<<<<<< HEAD
-        let limit = self.e1 / self.e2;
-        if limit.is_nan() || self.nu12.powi(2) >= limit {
-=======
         if self.nu12.is_nan() || self.nu12.powi(2) >= self.e1 / self.e2 {
->>>>>>> strength
             return Err(StrengthError::Material {
                 material: self.name.clone(),
                 what: "ν12",

@@ -495,3 +495,25 @@ proptest! {
         }
     }
 }
+
+/// A line that only names the columns is no title; one that says more is.
+#[test]
+fn names_of_columns_are_no_title() {
+    let rows: String = (0..=40)
+        .map(|i| {
+            let root = 1.0 - f64::from(i) / 20.0;
+            let x = root * root;
+            format!("{x:.6} {:.6}\n", 0.15 * root * (1.0 - x))
+        })
+        .collect();
+    for (head, title) in [
+        ("x y\n", None),
+        ("X/c; Y/c\n", None),
+        ("x_mm\ty_mm\n", None),
+        ("xenon yacht section of the scow\n", Some("xenon yacht section of the scow")),
+        ("", None),
+    ] {
+        let traced = from_table(&format!("{head}{rows}"), "t.txt", None).unwrap_or_else(|e| panic!("{e}"));
+        assert_eq!(traced.report.title.as_deref(), title, "{head}");
+    }
+}

@@ -83,7 +83,14 @@ pub fn section_numbers(n: &Numbers, chord: Option<Length>) -> Vec<(&'static str,
     let hollow = n.hollowest.map_or("none, the outline bulges everywhere".to_owned(), turn);
     vec![
         ("thickness", format!("{} at {}", length(n.thickness), length(n.thickness_at))),
-        ("camber", format!("{} at {}", length(n.camber), length(n.camber_at))),
+        (
+            "camber",
+            if n.camber == 0.0 {
+                "none".to_owned()
+            } else {
+                format!("{} at {}", length(n.camber), length(n.camber_at))
+            },
+        ),
         (
             "nose radius",
             format!("{} ({} on the outline itself)", length(n.nose_radius), length(n.nose_radius_on_outline)),

@@ -84,7 +84,9 @@ fn read_table(text: &str, problems: &mut Problems) -> Option<Table> {
                         .add(span, Wrong::new(message).help("a table has two numbers on each line, x and y"));
                     return None;
                 }
-                title.get_or_insert_with(|| clipped(words));
+                if !heads_columns(words) {
+                    title.get_or_insert_with(|| clipped(words));
+                }
             }
             Line::Text(words) => {
                 let message = format!("there is text among the points: '{}'", clipped(words));
@@ -140,6 +142,16 @@ fn read_table(text: &str, problems: &mut Problems) -> Option<Table> {
     }
     let places = rows.into_iter().map(|row| (row.span, row.line)).collect();
     Some(Table { title, blocks, places, unit, decimal_comma })
+}
+
+/// Whether a line without numbers only says what the columns are, as "x y" or "x/c;y/c" do.
+fn heads_columns(words: &str) -> bool {
+    let parts = words.split([' ', '\t', ',', ';']).filter(|part| !part.is_empty());
+    let names: Vec<&str> = parts.collect();
+    let named = |name: Option<&&str>, letter: char| {
+        name.is_some_and(|name| name.len() <= 6 && name.to_ascii_lowercase().starts_with(letter))
+    };
+    names.len() == 2 && named(names.first(), 'x') && named(names.get(1), 'y')
 }
 
 /// Each line with the bytes of what stands on it.

@@ -234,6 +234,7 @@ fn a_split_foil_turns_freely() {
     let foil = foil(["NACA 2412"; 2], [120.0; 2], 0.0, 0.0, TrailingEdge::Published);
     let shape = foil.shape_at(100.0).expect("a shape");
     let laminate = laminate(vec![plain(0.5)]);
+    let core = Core::of(&shape, &laminate).expect("a core");
     let whole = follow_with_arcs(&shape, 0.005).expect("an outline");
     for kind in [
         HingeKind::Laminate { side: Side::Upper },
@@ -242,7 +243,7 @@ fn a_split_foil_turns_freely() {
         HingeKind::Pin { height: 0.3 },
         HingeKind::Pin { height: 0.8 },
     ] {
-        let parts = split(&shape, &laminate, &hinge(kind), 0.005).expect("a split");
+        let parts = split(&core, &hinge(kind), 0.005).expect("a split");
         println!(
             "{kind:?}: gap {:.3} mm at rest, {:.3} mm at {:.1}°, spacer {:?}",
             parts.gap_at_rest,
@@ -279,10 +280,11 @@ fn hinges_that_cannot_be_are_refused() {
     let foil = foil(["NACA 2412"; 2], [120.0; 2], 0.0, 0.0, TrailingEdge::Published);
     let shape = foil.shape_at(100.0).expect("a shape");
     let laminate = laminate(vec![plain(0.5)]);
+    let core = Core::of(&shape, &laminate).expect("a core");
     let behind = Hinge { at: 119.0, ..hinge(HingeKind::Laminate { side: Side::Upper }) };
-    assert!(matches!(split(&shape, &laminate, &behind, 0.01), Err(PartError::OffTheWood { .. })));
+    assert!(matches!(split(&core, &behind, 0.01), Err(PartError::OffTheWood { .. })));
     let thick = Hinge { face: 9.0, ..hinge(HingeKind::Pin { height: 0.5 }) };
-    assert!(matches!(split(&shape, &laminate, &thick, 0.01), Err(PartError::OffTheWood { .. })));
+    assert!(matches!(split(&core, &thick, 0.01), Err(PartError::OffTheWood { .. })));
 }
 
 /// Prismatoids in closed form: a straight loft of one section with chords a and b over a length l holds

@@ -89,7 +89,7 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         && let Ok(places) = design.wing().and_then(|wing| wing.fewest_templates(fairing.mm()))
     {
         design.templates.extend(places.into_iter().map(Length::from_mm));
-        design.templates = with_stations(std::mem::take(&mut design.templates), &[]);
+        design.templates.sort_by(|a, b| a.mm().total_cmp(&b.mm()));
         design.templates.dedup_by(|a, b| (a.mm() - b.mm()).abs() <= SAME);
     }
     Some(design)

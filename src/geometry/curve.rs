@@ -68,10 +68,17 @@ pub fn height_at<C: Curve + ?Sized>(curve: &C, nose: f64, end: f64, x: f64) -> f
     if x <= curve.jet(nose).point.x {
         return curve.jet(nose).point.y;
     }
+    curve.jet(parameter_at(curve, nose, end, x)).point.y
+}
+
+/// Parameter at which the branch of `curve` from `nose` to `end` passes `x`; an end of the branch
+/// where it does not. The branch as for [`height_at`].
+#[must_use]
+pub fn parameter_at<C: Curve + ?Sized>(curve: &C, nose: f64, end: f64, x: f64) -> f64 {
     let (mut low, mut high) = (nose, end);
     for _ in 0..60 {
         let middle = 0.5 * (low + high);
         if curve.jet(middle).point.x < x { low = middle } else { high = middle }
     }
-    curve.jet(0.5 * (low + high)).point.y
+    0.5 * (low + high)
 }

@@ -11,7 +11,7 @@ mod solid;
 
 pub use arc_path::{ArcPath, ArcVertex, Segment};
 pub use biarcs::follow_with_arcs;
-pub use curve::{Curve, Jet, height_at};
+pub use curve::{Curve, Jet, height_at, parameter_at};
 pub use error::GeometryError;
 pub use kurbo::{Affine, BezPath, Point, Rect, Vec2};
 pub use outline::fitted_outline;

@@ -2,9 +2,9 @@
 
 use super::PackError;
 use super::duty::FoilDuty;
-use super::friction::StationCurves;
+use super::friction::{StationCurves, water};
 use crate::design::{Cut, Design};
-use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution};
+use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution, Water};
 use crate::geometry::{ArcPath, follow_with_arcs};
 use crate::parts::{Core, CutShape, Laminate, Split, WoodPiece, split};
 use crate::section::Section;
@@ -23,6 +23,7 @@ pub(super) struct Aids<'a> {
     pub(super) pattern: Drawing,
     pub(super) stations: Vec<StationAids<'a>>,
     pub(super) flows: Vec<SectionFlow<'a>>,
+    pub(super) water: Water,
     pub(super) curves: Vec<StationCurves<'a>>,
     pub(super) duty: Option<FoilDuty>,
     pub(super) pieces: Vec<WoodPiece>,
@@ -34,13 +35,15 @@ impl<'a> Aids<'a> {
     /// Works out a design, whose own foil `wing` is.
     pub(super) fn of(design: &'a Design, wing: &'a Wing) -> Result<Self, PackError> {
         let planform = wing.planform();
-        let curves = StationCurves::of(design)?;
+        let water = water(design)?;
+        let curves = StationCurves::of(design, &water)?;
         Ok(Self {
-            duty: FoilDuty::of(design, wing, &curves)?,
+            duty: FoilDuty::of(design, wing, &water, &curves)?,
             pattern: pattern(design, &planform),
             planform,
             stations: station_aids(design, wing)?,
             flows: section_flows(design)?,
+            water,
             curves,
             pieces: design.pieces(wing)?,
             battens: battens(design, wing)?,
@@ -176,7 +179,7 @@ fn wood<'a>(
             add("core template", "core", "core", &path, &[]);
         }
         Some(hinge) => {
-            let split = split(shape, skin, &hinge, tolerance)?;
+            let split = split(&core, &hinge, tolerance)?;
             let Split { axis, .. } = split;
             let words =
                 [format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y)];

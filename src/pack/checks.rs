@@ -5,9 +5,9 @@ use serde::Serialize;
 use super::PackError;
 use super::aids::{Aids, SectionFlow, StationAids};
 use super::duty::FoilDuty;
-use super::friction::{self, StationCurves};
+use super::friction::StationCurves;
 use crate::design::Design;
-use crate::flow::LiftCurve;
+use crate::flow::{LiftCurve, Water};
 use crate::geometry::{Rect, Solid};
 use crate::workshop::{Drawing, Half, Role};
 
@@ -45,11 +45,11 @@ pub fn run_checks(design: &Design) -> Result<Vec<Check>, PackError> {
 const FAIRING: f64 = 0.5;
 
 pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
-    let Aids { stations, pattern, flows, curves, duty, .. } = aids;
+    let Aids { stations, pattern, flows, water, curves, duty, .. } = aids;
     let mut checks = Vec::new();
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
     checks.extend(curves.iter().flat_map(|curves| stall(design, curves)));
-    checks.extend(curves.iter().flat_map(|curves| cavitation(design, curves)));
+    checks.extend(curves.iter().flat_map(|curves| cavitation(design, water, curves)));
     checks.extend(duty.as_ref().map(carries));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
     checks.extend(aids.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
@@ -151,8 +151,11 @@ fn stall<'a>(design: &'a Design, curves: &'a StationCurves<'_>) -> impl Iterator
 }
 
 /// At the design lift the water must not boil below the top speed.
-fn cavitation<'a>(design: &'a Design, curves: &'a StationCurves<'_>) -> impl Iterator<Item = Check> + 'a {
-    let water = friction::water(design);
+fn cavitation<'a>(
+    design: &'a Design,
+    water: &Water,
+    curves: &'a StationCurves<'_>,
+) -> impl Iterator<Item = Check> + 'a {
     let depth = design.lift.depth.mm() * 1e-3;
     let limit = design.lift.top_speed.unwrap_or(design.lift.speed);
     let at = StationCurves::at_lift(&curves.smooth, design.lift.design);

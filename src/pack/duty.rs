@@ -1,9 +1,9 @@
 //! The whole foil under its boat: what it carries at which speed, and what that costs.
 
 use super::PackError;
-use super::friction::{StationCurves, water};
+use super::friction::StationCurves;
 use crate::design::{Design, Duty};
-use crate::flow::{GRAVITY, LiftCurve};
+use crate::flow::{GRAVITY, LiftCurve, Water};
 use crate::loading::{
     CurvePoint, LiftingLine, LoadingError, SectionTable, Setting, SpanTables, SpeedPoint, State, TakeOff,
 };
@@ -34,6 +34,7 @@ impl FoilDuty {
     pub(super) fn of(
         design: &Design,
         wing: &Wing,
+        water: &Water,
         curves: &[StationCurves<'_>],
     ) -> Result<Option<Self>, PackError> {
         let Some(duty) = design.duty else { return Ok(None) };
@@ -42,7 +43,7 @@ impl FoilDuty {
         let line = LiftingLine::new(wing, &setting)?;
         let load = duty.carries * GRAVITY;
         let range = (RANGE.0.to_radians(), RANGE.1.to_radians());
-        let state = State { speed: duty.take_off, density: water(design).density, incidence: 0.0, flap: 0.0 };
+        let state = State { speed: duty.take_off, density: water.density, incidence: 0.0, flap: 0.0 };
         let speeds =
             [("take-off", Some(duty.take_off)), ("cruise", duty.cruise), ("top", design.lift.top_speed)];
         let speeds: Vec<(&str, f64)> =

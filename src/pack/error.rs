@@ -37,6 +37,12 @@ pub enum PackError {
     /// The foil under its boat cannot be worked out.
     #[error("the foil under its boat: {0}")]
     Loading(#[from] LoadingError),
+    /// A temperature at which the properties of water are not tabulated.
+    #[error("water of {celsius} °C is not known: 0 to 30 °C")]
+    Water {
+        /// Degrees Celsius.
+        celsius: f64,
+    },
     /// A curve is missing.
     #[error("flow with friction: a curve is missing")]
     Curves,

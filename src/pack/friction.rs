@@ -41,8 +41,7 @@ const MOST_POINTS: usize = 25;
 
 impl<'a> StationCurves<'a> {
     /// The curves of every station, those alike once.
-    pub(super) fn of(design: &'a Design) -> Result<Vec<Self>, PackError> {
-        let water = water(design);
+    pub(super) fn of(design: &'a Design, water: &Water) -> Result<Vec<Self>, PackError> {
         let mut all: Vec<Self> = Vec::new();
         for station in &design.stations {
             let (at, chord) = (station.at.mm(), station.chord.mm());
@@ -95,11 +94,10 @@ impl<'a> StationCurves<'a> {
 }
 
 /// The water of a design.
-pub(super) fn water(design: &Design) -> Water {
+pub(super) fn water(design: &Design) -> Result<Water, PackError> {
     let salinity = if design.lift.sea { Salinity::Sea } else { Salinity::Fresh };
-    // The bounds of the key are those of the tables.
-    let known = Water::at(salinity, design.lift.temperature.clamp(0.0, 30.0));
-    known.unwrap_or(Water { density: 1000.0, viscosity: 1.2e-6, vapour_pressure: 2000.0 })
+    let celsius = design.lift.temperature;
+    Water::at(salinity, celsius).ok_or(PackError::Water { celsius })
 }
 
 /// The incidences of the curves, radians: the design's range in steps of a degree or more, and on to

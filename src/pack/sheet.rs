@@ -10,7 +10,7 @@ use crate::design::Design;
 use crate::export::chart::{Chart, Mark, Series};
 use crate::export::html::{document, escaped, table};
 use crate::export::picture;
-use crate::flow::{CurvePoint, LiftCurve, PressurePoint, ViscousSolution};
+use crate::flow::{CurvePoint, LiftCurve, PressurePoint, ViscousSolution, Water};
 use crate::geometry::Point;
 use crate::loading::Loading;
 use crate::parts::WoodPiece;
@@ -24,7 +24,7 @@ const MARGIN: f64 = 4.0;
 const OUTSIDE: &str = "OUTSIDE";
 
 pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[PackFile]) -> String {
-    let Aids { planform, pattern, stations, flows, curves, duty, pieces, .. } = aids;
+    let Aids { planform, pattern, stations, flows, water, curves, duty, pieces, .. } = aids;
     let mut body = String::new();
     heading(&mut body, design, checks);
     cautions(&mut body);
@@ -33,7 +33,7 @@ pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[
     if let Some(foil) = duty {
         under_the_boat(&mut body, design, foil);
     }
-    friction(&mut body, design, curves);
+    friction(&mut body, design, water, curves);
     lift(&mut body, design, flows);
     steps(&mut body, design, files);
     check_table(&mut body, checks);
@@ -250,9 +250,13 @@ fn pieces_table(body: &mut String, design: &Design, pieces: &[WoodPiece]) {
     body.push_str(&table(heading, &rows, |_| false));
 }
 
+/// A speed in m/s in knots.
+fn knots(speed: f64) -> f64 {
+    speed * 3600.0 / 1852.0
+}
+
 /// What the whole foil carries at which speed, and what that costs.
 fn under_the_boat(body: &mut String, design: &Design, foil: &FoilDuty) {
-    let knots = |speed: f64| speed * 3600.0 / 1852.0;
     let _ = writeln!(
         body,
         "<h2>The foil under its boat</h2>\n<p>{:.0} kg carried at {} mm depth, flap straight. By a lifting line with the image of \
@@ -335,9 +339,8 @@ fn under_the_boat(body: &mut String, design: &Design, foil: &FoilDuty) {
 }
 
 /// Lift and drag with friction, what to expect at the design lift, and cavitation.
-fn friction(body: &mut String, design: &Design, curves: &[StationCurves<'_>]) {
-    let (range, knots) = (&design.lift, |speed: f64| speed * 3600.0 / 1852.0);
-    let water = super::friction::water(design);
+fn friction(body: &mut String, design: &Design, water: &Water, curves: &[StationCurves<'_>]) {
+    let range = &design.lift;
     let depth = range.depth.mm() * 1e-3;
     let _ = writeln!(
         body,

@@ -58,6 +58,12 @@ impl<'a> Core<'a> {
         self.shape
     }
 
+    /// What lies over it.
+    #[must_use]
+    pub fn laminate(&self) -> &Laminate {
+        self.laminate
+    }
+
     /// Where the wood ends behind: a point where both skins meet, or the middle of its blunt end.
     #[must_use]
     pub fn tail(&self) -> Point {

@@ -1,7 +1,7 @@
 //! Slots and bores along the span: for a control rod, a tube, a spar, the bolts of a joint.
 
 use super::Core;
-use crate::geometry::{ArcPath, ArcVertex, Curve, Point, Vec2};
+use crate::geometry::{ArcPath, ArcVertex, Curve, Point, Vec2, parameter_at};
 use crate::section::Side;
 
 /// What is taken out of the wood along a stretch of the span.
@@ -90,18 +90,16 @@ fn bore(core: &Core<'_>, at: f64, height: f64, diameter: f64) -> CutShape {
 
 /// Parameter of the core's face at `x` mm from the finished nose.
 fn root_at(core: &Core<'_>, side: Side, x: f64) -> f64 {
-    let end = if side == Side::Upper { -1.0 } else { 1.0 };
-    let (mut low, mut high) = (0.0, end);
-    for _ in 0..50 {
-        let middle = 0.5 * (low + high);
-        if core.jet(middle).point.x < x { low = middle } else { high = middle }
-    }
-    0.5 * (low + high)
+    parameter_at(core, 0.0, end_of(side), x)
+}
+
+/// Parameter at which a face ends behind.
+fn end_of(side: Side) -> f64 {
+    if side == Side::Upper { -1.0 } else { 1.0 }
 }
 
 fn face(core: &Core<'_>, side: Side) -> Vec<Point> {
-    let end = if side == Side::Upper { -1.0 } else { 1.0 };
-    (0..=LOOKS).map(|i| core.jet(end * i as f64 / LOOKS as f64).point).collect()
+    (0..=LOOKS).map(|i| core.jet(end_of(side) * i as f64 / LOOKS as f64).point).collect()
 }
 
 /// The nearest place on a line of short chords.

@@ -72,20 +72,15 @@ const STEPS: usize = 24;
 /// Distances are taken between chords that lie this near to the pieces, mm.
 const CHORDS: f64 = 0.004;
 
-/// Parts a station's shape at a hinge.
+/// Parts a station's wood, and the finished shape round it, at a hinge.
 ///
 /// `tolerance`: greatest distance of the outlines from the exact ones, mm.
 ///
 /// # Errors
 /// When there is no wood, or the hinge lies off it.
-pub fn split(
-    shape: &StationShape<'_>,
-    laminate: &Laminate,
-    hinge: &Hinge,
-    tolerance: f64,
-) -> Result<Split, PartError> {
-    let core = Core::of(shape, laminate)?;
-    let wood = follow_with_arcs(&core, tolerance)?;
+pub fn split(core: &Core<'_>, hinge: &Hinge, tolerance: f64) -> Result<Split, PartError> {
+    let (shape, laminate) = (core.shape(), core.laminate());
+    let wood = follow_with_arcs(core, tolerance)?;
     let parting = match hinge.kind {
         HingeKind::Laminate { side } => wedge(shape, laminate, hinge, side, &wood, tolerance)?,
         HingeKind::Pin { height } => cove(shape, hinge, height, &wood, tolerance)?,

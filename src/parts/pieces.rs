@@ -84,12 +84,13 @@ fn cross_sections(
 ) -> Result<Vec<ArcPath>, PartError> {
     let shape = wing.shape_at(at).map_err(|_| PartError::NoCore { at })?;
     let hinge = hinge_at(at, shape.chord).filter(|_| is_flapped);
+    let core = Core::of(&shape, laminate)?;
     let paths = match hinge {
         Some(hinge) => {
-            let parts = split(&shape, laminate, &hinge, tolerance)?;
+            let parts = split(&core, &hinge, tolerance)?;
             vec![parts.main.core, parts.flap.core]
         }
-        None => vec![follow_with_arcs(&Core::of(&shape, laminate)?, tolerance)?],
+        None => vec![follow_with_arcs(&core, tolerance)?],
     };
     let placed = shape.to_foil();
     Ok(paths.into_iter().map(|path| path.transformed(placed)).collect())

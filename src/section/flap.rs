@@ -1,12 +1,10 @@
 //! A section with a flap deflected about a hinge.
 
-use std::f64::consts::PI;
-
 use kurbo::common::GAUSS_LEGENDRE_COEFFS_16;
 
+use super::SectionError;
 use super::form::Form;
-use super::{SectionError, Side};
-use crate::geometry::{Affine, Curve, Jet, Point, Vec2};
+use crate::geometry::{Affine, Curve, Jet, Point, Vec2, parameter_at};
 
 /// A deflection of the part of a section behind a hinge.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -95,7 +93,7 @@ impl Flapped {
         if degrees.is_nan() || degrees.abs() > GREATEST_DEFLECTION {
             return Err(wrong(format!("it cannot turn by {degrees:.2}°: {GREATEST_DEFLECTION}° at most")));
         }
-        let roots = [Side::Upper, Side::Lower].map(|side| root_at(&whole, side, flap.hinge));
+        let roots = [-1.0, 1.0].map(|end| parameter_at(&whole, 0.0, end, flap.hinge).abs());
         let [upper, lower] = [0, 1].map(|i| whole.jet([-1.0, 1.0][i] * roots[i]).point);
         let axis = match flap.height {
             HingeHeight::Upper => upper,
@@ -177,10 +175,9 @@ impl Flapped {
         let whole = self.whole.breaks();
         let mut breaks: Vec<f64> = match &self.bend {
             Bend::Smooth { from, to, .. } => {
-                let ends = [Side::Upper, Side::Lower].into_iter().flat_map(|side| {
-                    let sign = if side == Side::Upper { -1.0 } else { 1.0 };
-                    [*from, *to].map(|x| sign * root_at(&self.whole, side, x))
-                });
+                let ends = [-1.0, 1.0]
+                    .into_iter()
+                    .flat_map(|end| [*from, *to].map(|x| parameter_at(&self.whole, 0.0, end, x)));
                 whole.into_iter().chain(ends).collect()
             }
             Bend::Broken { sides, .. } => whole
@@ -209,17 +206,6 @@ impl Flapped {
         breaks.dedup_by(|a, b| (*a - *b).abs() < 1e-12);
         breaks
     }
-}
-
-/// Amount of the parameter at which a side passes station `x`.
-fn root_at(whole: &Form, side: Side, x: f64) -> f64 {
-    let sign = if side == Side::Upper { -1.0 } else { 1.0 };
-    let (mut low, mut high) = (0.0, 1.0);
-    for _ in 0..60 {
-        let middle = 0.5 * (low + high);
-        if whole.jet(sign * middle).point.x < x { low = middle } else { high = middle }
-    }
-    0.5 * (low + high)
 }
 
 /// How a side runs past a hinge at `root`; `None` when flap and fixed part do not meet.
@@ -301,7 +287,7 @@ fn bent(jet: &Jet, height: f64, from: f64, to: f64, angle: f64) -> Jet {
     }
 }
 
-/// Keeps an angle given in degrees within half a turn, for names.
+/// An angle in degrees without the dust of its way through radians, for names.
 pub(super) fn degrees_of(angle: f64) -> f64 {
-    (angle * 180.0 / PI * 1e6).round() / 1e6
+    (angle.to_degrees() * 1e6).round() / 1e6
 }

@@ -1,7 +1,7 @@
 //! The surface between the stations: straight lines from one station's outline to the next.
 
 use super::{Station, Wing, WingError};
-use crate::geometry::{Affine, Curve, Jet, Point, Vec2};
+use crate::geometry::{Affine, Curve, Jet, Point, Vec2, parameter_at};
 
 /// The outline of the foil cut square to the span at one place, in the frame of its own chord:
 /// nose at the origin, trailing edge on the x axis, millimetres.
@@ -102,14 +102,7 @@ impl StationShape<'_> {
     /// Parameters of the upper and the lower side at `x` mm from the nose along the chord.
     #[must_use]
     pub fn roots_at(&self, x: f64) -> [f64; 2] {
-        [-1.0, 1.0].map(|end| {
-            let (mut low, mut high) = (0.0, end);
-            for _ in 0..50 {
-                let middle = 0.5 * (low + high);
-                if self.jet(middle).point.x < x { low = middle } else { high = middle }
-            }
-            0.5 * (low + high)
-        })
+        [-1.0, 1.0].map(|end| parameter_at(self, 0.0, end, x))
     }
 
     /// In the foil's axes.

@@ -88,17 +88,29 @@ fn lift<'a>(design: &'a Design, flow: &'a SectionFlow<'_>) -> impl Iterator<Item
     };
     // The nearer end of the range is what the limit is held against.
     let value = if wanted < least { least } else { greatest };
-    flow.stations.iter().map(move |at| Check {
-        name: if wanted < least {
-            "least lift in the range of incidence"
-        } else {
-            "greatest lift in the range of incidence"
-        }
-        .to_owned(),
+    let name = if wanted < least {
+        "least lift in the range of incidence"
+    } else {
+        "greatest lift in the range of incidence"
+    };
+    at_each(&flow.stations, name, [value, wanted], "", passed, why)
+}
+
+/// The same check at each of some stations, with its value and its limit.
+fn at_each(
+    stations: &[f64],
+    name: &'static str,
+    [value, limit]: [f64; 2],
+    unit: &'static str,
+    passed: bool,
+    why: String,
+) -> impl Iterator<Item = Check> {
+    stations.iter().map(move |at| Check {
+        name: name.to_owned(),
         place: place(*at),
         value,
-        limit: wanted,
-        unit: String::new(),
+        limit,
+        unit: unit.to_owned(),
         passed,
         why: why.clone(),
     })
@@ -139,15 +151,8 @@ fn stall<'a>(design: &'a Design, curves: &'a StationCurves<'_>) -> impl Iterator
             curves.section.name()
         )
     };
-    curves.stations.iter().map(move |at| Check {
-        name: "design lift lies below the greatest lift, with friction".to_owned(),
-        place: place(*at),
-        value,
-        limit: wanted,
-        unit: String::new(),
-        passed,
-        why: why.clone(),
-    })
+    let name = "design lift lies below the greatest lift, with friction";
+    at_each(&curves.stations, name, [value, wanted], "", passed, why)
 }
 
 /// At the design lift the water must not boil below the top speed.

@@ -4,7 +4,7 @@
 //! down. The reader, its messages, the schema for editors and the page of the hand-book all follow
 //! from them.
 
-use super::model::{CutKind, FlapKind, Kind, PaperSize, PlySide};
+use super::model::{CutKind, FlapKind, Kind, MaskShapes, PaperSize, PlySide};
 use crate::units::{AREAL_WEIGHT, DENSITY, MASS, Quantity, SPEED, TEMPERATURE};
 use crate::wing::Law;
 
@@ -534,13 +534,20 @@ pub(super) static LIFT: Table = Table {
 pub(super) static MASKS: Table = Table {
     name: "masks",
     times: Times::AtMostOnce,
-    doc: "The printed masks that guide the sanding.",
+    doc: "The printed masks that guide the shaping.",
     keys: &[
+        key(
+            "for",
+            Word(MaskShapes::WORDS),
+            Default("both"),
+            "The wood before the laminate, the finished surface, or both; without a laminate they are one.",
+            "core",
+        ),
         key(
             "clearance",
             Length(0.05, 5.0),
             Default("0.3 mm"),
-            "Gap between the finished skin and the mask.",
+            "Gap between the mask and what it closes on.",
             "0.3 mm",
         ),
         key("wall", Length(2.0, 60.0), Default("10 mm"), "Material around the section.", "10 mm"),

@@ -376,9 +376,34 @@ pub struct Duty {
     pub share: f64,
 }
 
+/// What masks are made for, where wood and finished surface differ.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum MaskShapes {
+    /// Wood and finished surface.
+    Both,
+    /// The wood before the laminate.
+    Core,
+    /// The finished surface.
+    Finished,
+}
+
+impl MaskShapes {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["both", "core", "finished"];
+
+    /// The choice of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        let all = [Self::Both, Self::Core, Self::Finished];
+        all.into_iter().zip(Self::WORDS).find(|(_, known)| **known == word).map(|(shapes, _)| shapes)
+    }
+}
+
 /// The printed masks that guide the sanding.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Masks {
+    /// What they are made for.
+    pub shapes: MaskShapes,
     /// Gap between the finished skin and the mask, 0.05 to 5 mm.
     pub clearance: Length,
     /// Material around the section, 2 to 60 mm.
@@ -398,6 +423,14 @@ pub struct Printer {
     pub bed_z: Length,
     /// Kept free along every edge of the bed, 0 to 50 mm.
     pub margin: Length,
+}
+
+impl Printer {
+    /// The bed less its margins: width, depth.
+    #[must_use]
+    pub fn bed(&self) -> [Length; 2] {
+        [self.bed_x, self.bed_y].map(|side| Length::from_mm(side.mm() - 2.0 * self.margin.mm()))
+    }
 }
 
 /// A sheet of paper.

@@ -4,8 +4,8 @@ use std::ops::Range;
 
 use super::keys;
 use super::model::{
-    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
-    Printer, Router, Station, Stock, Wood,
+    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, MaskShapes, Masks, Paper, PaperSize,
+    Ply, PlySide, Printer, Router, Station, Stock, Wood,
 };
 use super::reader::{Row, Sheet};
 use crate::problems::{Problems, Wrong};
@@ -393,6 +393,7 @@ fn duty(row: &Row, kind: Option<Kind>, top: Option<f64>, problems: &mut Problems
 
 fn masks(row: &Row) -> Option<Masks> {
     Some(Masks {
+        shapes: row.text("for").and_then(MaskShapes::from_word)?,
         clearance: row.length("clearance")?,
         wall: row.length("wall")?,
         thickness: row.length("thickness")?,

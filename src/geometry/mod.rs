@@ -7,7 +7,9 @@ pub mod curve;
 mod error;
 mod outline;
 pub mod polygon;
+mod room;
 mod solid;
+mod solid_measures;
 
 pub use arc_path::{ArcPath, ArcVertex, Segment};
 pub use biarcs::follow_with_arcs;
@@ -15,4 +17,5 @@ pub use curve::{Curve, Jet, height_at, parameter_at};
 pub use error::GeometryError;
 pub use kurbo::{Affine, BezPath, Point, Rect, Vec2};
 pub use outline::fitted_outline;
+pub use room::rectangle_fits;
 pub use solid::Solid;

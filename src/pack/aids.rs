@@ -3,15 +3,15 @@
 use super::PackError;
 use super::duty::FoilDuty;
 use super::friction::{StationCurves, water};
-use crate::design::{Cut, Design};
+use crate::design::{Cut, Design, MaskShapes};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution, Water};
-use crate::geometry::{ArcPath, follow_with_arcs};
-use crate::parts::{Core, CutShape, Laminate, Split, WoodPiece, split};
+use crate::geometry::{ArcPath, Curve, GeometryError, follow_with_arcs};
+use crate::parts::{Core, CutShape, Split, WoodPiece, split};
 use crate::section::Section;
 use crate::wing::{Law, Planform, StationShape, Wing};
 use crate::workshop::{
-    Drawing, HingeLine, Mask, MaskMarks, MaskSettings, Role, Stamp, part_template, planform_pattern,
-    station_template,
+    Drawing, Fit, HingeLine, Mask, MaskMarks, MaskSettings, Role, Stamp, close_mask, part_template,
+    planform_pattern, station_template,
 };
 
 /// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
@@ -64,8 +64,36 @@ fn battens(design: &Design, wing: &Wing) -> Result<Vec<(f64, f64, f64)>, PackErr
 pub(super) struct StationAids<'a> {
     pub(super) shape: StationShape<'a>,
     pub(super) template: Drawing,
-    pub(super) mask: Mask,
+    pub(super) masks: Vec<StationMask>,
     pub(super) wood: Wood<'a>,
+}
+
+/// A mask of a station.
+pub(super) struct StationMask {
+    /// What it closes on.
+    pub(super) part: Masked,
+    pub(super) mask: Mask,
+    /// How it closes.
+    pub(super) fit: Fit,
+}
+
+/// What a mask closes on.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) enum Masked {
+    /// The wood before the laminate.
+    Core,
+    /// The finished surface.
+    Finished,
+}
+
+impl Masked {
+    /// As it stands in a sentence.
+    pub(super) fn words(self) -> &'static str {
+        match self {
+            Self::Core => "the core",
+            Self::Finished => "the finished foil",
+        }
+    }
 }
 
 /// The wood of a station: what is cut before anything is laid over it.
@@ -80,6 +108,13 @@ pub(super) struct Wood<'a> {
     pub(super) split: Option<Split>,
     /// Slots and bores: what the design says of each, and its shape.
     pub(super) cuts: Vec<(&'a Cut, CutShape)>,
+}
+
+impl Wood<'_> {
+    /// Where the finished surface itself is cut.
+    fn none() -> Self {
+        Self { templates: Vec::new(), ends_at: None, thin_behind: None, split: None, cuts: Vec::new() }
+    }
 }
 
 /// The flow about one of the design's sections, and the stations that use it.
@@ -115,54 +150,89 @@ fn hinge(design: &Design) -> Option<HingeLine> {
 /// Shapes, templates and masks of every template station.
 fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
     let (stamp, hinge) = (stamp(design), hinge(design));
-    let settings = MaskSettings {
-        clearance: design.masks.clearance.mm(),
-        wall: design.masks.wall.mm(),
-        thickness: design.masks.thickness.mm(),
-        tolerance: PRINT_TOLERANCE,
-    };
     let skin = design.skin();
     let at_station = |at: f64| {
         let failed = |source| PackError::Shape { at, source };
         let shape = wing.shape_at(at)?;
         let tolerance = design.router.tolerance.mm();
-        let template = station_template(&stamp, &shape, hinge.as_ref(), wing.is_mirrored(), tolerance)
-            .map_err(failed)?;
-        let label = format!("{} {}", crate::units::number(at, 1), stamp.fingerprint);
-        let mut sights = vec![0.0, shape.chord];
-        sights.extend(design.hinge_at(at, shape.chord).map(|hinge| hinge.at));
-        let marks = MaskMarks { label: &label, sights: &sights };
-        let mask = Mask::of(&shape, settings, marks).map_err(failed)?;
-        let wood = wood(design, &skin, &stamp, &shape)?;
-        Ok(StationAids { shape, template, mask, wood })
+        let finished = follow_with_arcs(&shape, tolerance).map_err(failed)?;
+        finished.refuse_crossings(tolerance).map_err(failed)?;
+        let template = station_template(&stamp, &shape, &finished, hinge.as_ref(), wing.is_mirrored());
+        let is_cut_in_wood = design.has_skin()
+            || design.cuts_at(at).next().is_some()
+            || design.hinge_at(at, shape.chord).is_some();
+        let core = if is_cut_in_wood { Some(Core::of(&shape, &skin)?) } else { None };
+        let wood = core.as_ref().map_or(Ok(Wood::none()), |core| wood(design, core, &stamp, &finished))?;
+        let masks = station_masks(design, &stamp, &shape, &finished, core.as_ref()).map_err(failed)?;
+        Ok(StationAids { template, masks, wood, shape })
     };
     design.templates.iter().map(|at| at_station(at.mm())).collect()
 }
 
-/// The wood at a station and its templates; none where the finished surface itself is cut.
-fn wood<'a>(
-    design: &'a Design,
-    skin: &Laminate,
+/// The masks that a design asks for at a station, each closed on its part.
+fn station_masks(
+    design: &Design,
     stamp: &Stamp,
     shape: &StationShape<'_>,
-) -> Result<Wood<'a>, PackError> {
-    let mut wood =
-        Wood { templates: Vec::new(), ends_at: None, thin_behind: None, split: None, cuts: Vec::new() };
-    let hinge = design.hinge_at(shape.at, shape.chord);
-    if hinge.is_none() && !design.has_skin() && design.cuts_at(shape.at).next().is_none() {
-        return Ok(wood);
+    finished: &ArcPath,
+    core: Option<&Core<'_>>,
+) -> Result<Vec<StationMask>, GeometryError> {
+    let bed = design.printer.bed();
+    let settings = MaskSettings {
+        clearance: design.masks.clearance.mm(),
+        wall: design.masks.wall.mm(),
+        thickness: design.masks.thickness.mm(),
+        tolerance: 0.5 * PRINT_TOLERANCE,
+        bed: [bed[0].mm(), bed[1].mm()],
+    };
+    let label = format!("{} {}", crate::units::number(shape.at, 1), stamp.fingerprint);
+    let hinge = design.hinge_at(shape.at, shape.chord).map(|hinge| hinge.at);
+    // Half of the tolerance is for the arcs, half for the chords of the solid.
+    let fine = |curve: &dyn Curve| follow_with_arcs(curve, 0.5 * PRINT_TOLERANCE);
+    let is_fine = design.router.tolerance.mm() <= 0.5 * PRINT_TOLERANCE;
+    let mut masks = Vec::new();
+    let mut add = |part, curve: &dyn Curve, outline: &ArcPath, ends: [f64; 2]| {
+        let sights: Vec<f64> = ends.into_iter().chain(hinge).collect();
+        let mask = Mask::of(outline, settings, MaskMarks { label: &label, sights: &sights })?;
+        let fit = close_mask(curve, mask.solids(), settings.clearance + 0.2 * settings.wall);
+        masks.push(StationMask { part, mask, fit });
+        Ok::<_, GeometryError>(())
+    };
+    let wanted = design.masks.shapes;
+    let core = core.filter(|_| design.has_skin());
+    if let Some(core) = core.filter(|_| wanted != MaskShapes::Finished) {
+        add(Masked::Core, core, &fine(core)?, [core.nose().x, core.tail().x])?;
     }
+    if core.is_none() || wanted != MaskShapes::Core {
+        let ends = [0.0, shape.chord];
+        if is_fine {
+            add(Masked::Finished, shape, finished, ends)?;
+        } else {
+            add(Masked::Finished, shape, &fine(shape)?, ends)?;
+        }
+    }
+    Ok(masks)
+}
+
+/// The wood at a station and its templates.
+fn wood<'a>(
+    design: &'a Design,
+    core: &Core<'_>,
+    stamp: &Stamp,
+    finished: &ArcPath,
+) -> Result<Wood<'a>, PackError> {
+    let shape = core.shape();
+    let mut wood = Wood::none();
+    let hinge = design.hinge_at(shape.at, shape.chord);
     let tolerance = design.router.tolerance.mm();
     let failed = |source| PackError::Shape { at: shape.at, source };
-    let finished = follow_with_arcs(shape, tolerance).map_err(failed)?;
-    let core = Core::of(shape, skin)?;
     wood.ends_at = core.ends_in_laminate().then(|| core.tail().x);
     wood.thin_behind = core.thin_behind(design.laminate.least_wood.mm());
-    wood.cuts = design.cuts_at(shape.at).map(|(cut, shape)| (cut, shape.of(&core))).collect();
+    wood.cuts = design.cuts_at(shape.at).map(|(cut, shape)| (cut, shape.of(core))).collect();
     let cuts = &wood.cuts;
     let templates = &mut wood.templates;
     let mut add = |role, ending, name, path: &ArcPath, words: &[String]| {
-        let mut drawing = part_template(stamp, shape, &finished, name, path, words);
+        let mut drawing = part_template(stamp, shape, finished, name, path, words);
         // Each cut is drawn where its middle lies in this piece.
         let within = |cut: &CutShape| {
             let (middle, bounds) = (cut.outline.bounds().center(), path.bounds());
@@ -175,11 +245,11 @@ fn wood<'a>(
     };
     match hinge {
         None => {
-            let path = follow_with_arcs(&core, tolerance).map_err(failed)?;
+            let path = follow_with_arcs(core, tolerance).map_err(failed)?;
             add("core template", "core", "core", &path, &[]);
         }
         Some(hinge) => {
-            let split = split(&core, &hinge, tolerance)?;
+            let split = split(core, &hinge, tolerance)?;
             let Split { axis, .. } = split;
             let words =
                 [format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y)];

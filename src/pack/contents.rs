@@ -1,11 +1,11 @@
 //! From a design to the files of its pack, in memory.
 
-use super::aids::{self, Aids, StationAids};
+use super::aids::{self, Aids, Masked, StationAids, StationMask};
 use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet, tables};
 use crate::design::Design;
 use crate::export::{dxf, pdf, stl, svg_page};
 use crate::units::number;
-use crate::workshop::{Drawing, Half, Page, PaperSettings, single_page, tiled};
+use crate::workshop::{Drawing, Page, PaperSettings, single_page, tiled};
 
 /// Which kinds of files to make.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -149,10 +149,17 @@ impl Files {
         let stamp = aids::stamp(design);
         for station in stations {
             let at = station.shape.at;
-            for (half, solid) in [(Half::Upper, &station.mask.upper), (Half::Lower, &station.mask.lower)] {
-                let title = format!("{stamp} station {} mm {}", number(at, 3), half.word());
-                let path = format!("masks/{}-{}.stl", self.stem(at), half.word());
-                self.add(path, "stl", "mask half", Some(at), stl(solid, &title)?);
+            for StationMask { part, mask, .. } in &station.masks {
+                let (role, ending) = match part {
+                    Masked::Core => ("core mask half", "core-"),
+                    Masked::Finished => ("mask half", ""),
+                };
+                for piece in &mask.pieces {
+                    let name = piece.name();
+                    let title = format!("{stamp} station {} mm {ending}{name}", number(at, 3));
+                    let path = format!("masks/{}-{ending}{name}.stl", self.stem(at));
+                    self.add(path, "stl", role, Some(at), stl(&piece.solid, &title)?);
+                }
             }
         }
         Ok(())

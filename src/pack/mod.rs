@@ -9,6 +9,7 @@ mod friction;
 mod manifest;
 mod sheet;
 mod tables;
+mod workshop_checks;
 mod write;
 
 pub use checks::{Check, run_checks};

@@ -4,15 +4,18 @@ mod drawing;
 mod mask;
 mod paper;
 mod pattern;
+mod plate;
 mod section_picture;
 mod strokes;
+mod trial;
 
 pub use drawing::{Drawing, Label, Line, Role};
-pub use mask::{Half, Mask, MaskMarks, MaskSettings};
+pub use mask::{Half, Mask, MaskMarks, MaskPiece, MaskSettings};
 pub use paper::{Page, PaperSettings, single_page, tiled};
 pub(crate) use pattern::turn;
 pub use pattern::{HingeLine, part_template, planform_pattern, station_template};
 pub use section_picture::{section_numbers, section_picture};
+pub use trial::{Fit, close_mask};
 
 /// The title every aid of one design carries, so that two revisions are never mixed on the bench.
 #[derive(Debug, Clone, PartialEq, Eq)]

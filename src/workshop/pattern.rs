@@ -1,7 +1,7 @@
 //! Templates of the stations and the pattern of the planform.
 
 use super::{Drawing, Label, Role, Stamp};
-use crate::geometry::{ArcPath, GeometryError, Point, follow_with_arcs, polygon};
+use crate::geometry::{ArcPath, Point, polygon};
 use crate::units::number;
 use crate::wing::{Planform, StationShape};
 
@@ -49,23 +49,19 @@ impl HingeLine {
 /// The template of one station: its outline, chord line, hinge line and what it is.
 /// Nose at the origin, trailing edge along x.
 ///
+/// `outline`: the finished surface, followed with arcs.
 /// `mirrored`: whether the foil lies level, in two halves; an upright one is seen from above.
-/// `tolerance`: greatest distance of the contour from the exact outline, mm.
-///
-/// # Errors
-/// When the outline cannot be followed within the tolerance, or crosses itself.
+#[must_use]
 pub fn station_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
+    outline: &ArcPath,
     hinge: Option<&HingeLine>,
     mirrored: bool,
-    tolerance: f64,
-) -> Result<Drawing, GeometryError> {
-    let outline = follow_with_arcs(shape, tolerance)?;
-    outline.refuse_crossings(tolerance)?;
+) -> Drawing {
     let bounds = outline.bounds();
     let mut drawing = Drawing::new(format!("{stamp}, station {} mm", number(shape.at, 2)));
-    drawing.add(Role::CutOutside, outline);
+    drawing.add(Role::CutOutside, outline.clone());
     let chord_line = ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0));
     drawing.add(Role::Reference, chord_line);
 
@@ -90,7 +86,7 @@ pub fn station_template(
             .to_owned(),
     ];
     write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
-    Ok(drawing)
+    drawing
 }
 
 /// The template of a part at one station: its own contour to cut, the finished outline for reference,

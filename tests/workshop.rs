@@ -41,7 +41,7 @@ proptest! {
         let settings = MaskSettings { clearance, wall: 8.0, thickness: 5.0, tolerance: 0.01, bed: [1000.0, 1000.0] };
         let outline = follow_with_arcs(&shape, 0.001).unwrap();
         let mask = Mask::of(&outline, settings, MaskMarks { label: "", sights: &[] }).unwrap();
-        let [upper, lower] = [&mask.pieces[0].solid, &mask.pieces[1].solid];
+        let [upper, lower] = [&mask.pieces[0].plate.solid, &mask.pieces[1].plate.solid];
 
         let length: f64 = outline.segments().map(|s| s.length()).sum();
         let opening = outline.area() + length * clearance + std::f64::consts::PI * clearance * clearance;

@@ -18,8 +18,8 @@ mod wing;
 
 pub use crate::problems::{FileErrors as DesignErrors, Problem};
 pub use model::{
-    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, MaskShapes, Masks, Paper, PaperSize,
-    Ply, PlySide, Printer, Router, Station, Stock,
+    Cut, CutKind, Design, Duty, DxfRelease, Faces, Flap, FlapKind, Kind, Laminate, Lift, MaskShapes, Masks,
+    Paper, PaperSize, Ply, PlySide, Printer, Router, Station, Stock,
 };
 pub use page::key_tables;
 pub use schema::schema;

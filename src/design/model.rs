@@ -3,6 +3,7 @@
 use crate::section::{Finish, Section};
 use crate::units::{Angle, Length};
 use crate::wing::Law;
+use crate::workshop::Corners;
 
 /// What is built.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
@@ -399,7 +400,38 @@ impl MaskShapes {
     }
 }
 
-/// The printed masks that guide the sanding.
+/// The faces that an aid is made for.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum Faces {
+    /// Neither.
+    None,
+    /// The lower one.
+    Lower,
+    /// The upper one.
+    Upper,
+    /// Each.
+    Both,
+}
+
+impl Faces {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["none", "lower", "upper", "both"];
+
+    /// The choice of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        let all = [Self::None, Self::Lower, Self::Upper, Self::Both];
+        all.into_iter().zip(Self::WORDS).find(|(_, known)| **known == word).map(|(faces, _)| faces)
+    }
+
+    /// Whether the lower and the upper one are among them.
+    #[must_use]
+    pub fn lower_and_upper(self) -> [bool; 2] {
+        [matches!(self, Self::Lower | Self::Both), matches!(self, Self::Upper | Self::Both)]
+    }
+}
+
+/// The printed masks, cradles and rails that guide the shaping.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Masks {
     /// What they are made for.
@@ -410,6 +442,14 @@ pub struct Masks {
     pub wall: Length,
     /// Thickness along the span, 1 to 60 mm.
     pub thickness: Length,
+    /// Faces that cradles hold.
+    pub cradles: Faces,
+    /// Length of a cradle along the span, 10 to 500 mm.
+    pub cradle_length: Length,
+    /// Faces that rails guide a tool over.
+    pub rails: Faces,
+    /// How far rails stand proud of the wood, 0 to 100 mm.
+    pub rail_offset: Length,
 }
 
 /// The printer that makes the masks.
@@ -500,6 +540,33 @@ pub struct Stock {
     pub thickness: Length,
     /// Kept free along every edge, 0 to 100 mm.
     pub margin: Length,
+    /// Kept free between two pieces, at least the cutter, 0 to 100 mm.
+    pub spacing: Length,
+    /// Whether pieces may be turned by a quarter, across the grain.
+    pub may_turn: bool,
+}
+
+/// Which releases of DXF are written.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum DxfRelease {
+    /// Release 2000.
+    R2000,
+    /// R12, for the oldest readers.
+    R12,
+    /// Both.
+    Both,
+}
+
+impl DxfRelease {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["2000", "R12", "both"];
+
+    /// The choice of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        let all = [Self::R2000, Self::R12, Self::Both];
+        all.into_iter().zip(Self::WORDS).find(|(_, known)| **known == word).map(|(release, _)| release)
+    }
 }
 
 /// The router.
@@ -507,4 +574,18 @@ pub struct Stock {
 pub struct Router {
     /// How far the cut line may stray from the section, 0.001 to 0.5 mm.
     pub tolerance: Length,
+    /// Diameter of the cutter, 0.5 to 50 mm.
+    pub cutter: Length,
+    /// Whether contours are the path of the cutter's middle instead of the line of the piece.
+    pub is_path: bool,
+    /// What is done about inner corners.
+    pub corners: Corners,
+    /// Holding tabs on each piece, 0 to 20.
+    pub tabs: usize,
+    /// Length of a tab, 1 to 50 mm.
+    pub tab_width: Length,
+    /// Whether curved contours are written as splines instead of arcs.
+    pub splines: bool,
+    /// Which releases of DXF are written.
+    pub release: DxfRelease,
 }

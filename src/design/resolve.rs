@@ -4,14 +4,15 @@ use std::ops::Range;
 
 use super::keys;
 use super::model::{
-    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, MaskShapes, Masks, Paper, PaperSize,
-    Ply, PlySide, Printer, Router, Station, Stock, Wood,
+    Cut, CutKind, Design, Duty, DxfRelease, Faces, Flap, FlapKind, Kind, Laminate, Lift, MaskShapes, Masks,
+    Paper, PaperSize, Ply, PlySide, Printer, Router, Station, Stock, Wood,
 };
 use super::reader::{Row, Sheet};
 use crate::problems::{Problems, Wrong};
 use crate::section::{Beside, Finish, SectionFileError};
 use crate::units::{Angle, Length, clipped};
 use crate::wing::Law;
+use crate::workshop::Corners;
 
 /// Two places along the span nearer than this are one, millimetres.
 const SAME: f64 = 0.001;
@@ -42,7 +43,10 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let printer = printer(sheet.one(&keys::PRINTER)?, problems);
     let paper = paper(sheet.one(&keys::PAPER)?, problems);
     let stock = stock(sheet.one(&keys::STOCK)?, problems);
-    let router = router(sheet.one(&keys::ROUTER)?);
+    let router = router(sheet.one(&keys::ROUTER)?, problems);
+    if let (Some(stock), Some(router)) = (&stock, &router) {
+        cutter_between_pieces(sheet.one(&keys::STOCK)?, stock, router, problems);
+    }
 
     let fairing = sheet.one(&keys::TEMPLATES).and_then(|row| row.length("fairing"));
     let stations = stations?;
@@ -397,6 +401,10 @@ fn masks(row: &Row) -> Option<Masks> {
         clearance: row.length("clearance")?,
         wall: row.length("wall")?,
         thickness: row.length("thickness")?,
+        cradles: row.text("cradles").and_then(Faces::from_word)?,
+        cradle_length: row.length("cradle-length")?,
+        rails: row.text("rails").and_then(Faces::from_word)?,
+        rail_offset: row.length("rail-offset")?,
     })
 }
 
@@ -442,12 +450,53 @@ fn stock(row: &Row, problems: &mut Problems) -> Option<Stock> {
         width: row.length("width")?,
         thickness: row.length("thickness")?,
         margin: row.length("margin")?,
+        spacing: row.length("spacing")?,
+        may_turn: row.text("grain")? == "any",
     };
     let lost = Length::from_mm(2.0 * stock.margin.mm());
     leaves_room(row, lost, &[("length", stock.length), ("width", stock.width)], problems);
     Some(stock)
 }
 
-fn router(row: &Row) -> Option<Router> {
-    Some(Router { tolerance: row.length("tolerance")? })
+/// Notes when the cutter does not go between two pieces.
+fn cutter_between_pieces(row: &Row, stock: &Stock, router: &Router, problems: &mut Problems) {
+    if stock.spacing.mm() < router.cutter.mm() {
+        let (spacing, cutter) = (stock.spacing, router.cutter);
+        let wrong = Wrong::new(format!(
+            "pieces lie {spacing} apart, and the cutter of {cutter} does not go between them"
+        ))
+        .help(format!("write spacing = \"{cutter}\" or more, or take a smaller cutter under [router]"));
+        problems.add(row.place("spacing"), wrong);
+    }
+}
+
+fn router(row: &Row, problems: &mut Problems) -> Option<Router> {
+    let tabs = row.number("tabs")?;
+    if tabs.fract() != 0.0 {
+        let wrong = Wrong::new(format!("tabs is {tabs}: there is no part of a tab"))
+            .help(format!("write tabs = {}", tabs.round()));
+        problems.add(row.place("tabs"), wrong);
+    }
+    let router = Router {
+        tolerance: row.length("tolerance")?,
+        cutter: row.length("cutter")?,
+        is_path: row.text("contour")? == "path",
+        corners: row.text("corners").and_then(Corners::from_word)?,
+        tabs: tabs as usize,
+        tab_width: row.length("tab-width")?,
+        splines: row.text("curves")? == "splines",
+        release: row.text("dxf").and_then(DxfRelease::from_word)?,
+    };
+    if router.is_path && router.corners != Corners::Sharp {
+        let wrong = Wrong::new(
+            "a relieved corner is as wide as the cutter, and leaves no path of its middle",
+        )
+        .help("write corners = \"sharp\", or contour = \"piece\" and let the machine set off the radius");
+        problems.add(row.place("corners"), wrong);
+    }
+    if router.splines && router.release != DxfRelease::R2000 {
+        let wrong = Wrong::new("R12 has no splines").help("write dxf = \"2000\", or curves = \"arcs\"");
+        problems.add(row.place("curves"), wrong);
+    }
+    Some(router)
 }

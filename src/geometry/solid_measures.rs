@@ -9,19 +9,30 @@ impl Solid {
     /// Facets that lie in the plane itself are left out.
     #[must_use]
     pub fn level_cut(&self, z: f64) -> Vec<[Point; 2]> {
+        self.cut([0, 1, 2], z)
+    }
+
+    /// The cut square to y at `y`, in x and z.
+    #[must_use]
+    pub fn upright_cut(&self, y: f64) -> Vec<[Point; 2]> {
+        self.cut([2, 0, 1], y).into_iter().map(|ends| ends.map(|p| Point::new(p.y, p.x))).collect()
+    }
+
+    /// The cut square to the last of three axes, seen along it with the first across and the second up.
+    fn cut(&self, [across, up, axis]: [usize; 3], at: f64) -> Vec<[Point; 2]> {
         let meets = |corners: [[f32; 3]; 3]| {
             let corners = corners.map(|corner| corner.map(f64::from));
             let mut ends = [Point::ZERO; 2];
             let mut found = 0;
             for i in 0..3 {
                 let (a, b) = (corners[i], corners[(i + 1) % 3]);
-                if (a[2] < z) == (b[2] < z) {
+                if (a[axis] < at) == (b[axis] < at) {
                     continue;
                 }
-                let share = (z - a[2]) / (b[2] - a[2]);
-                let at = Point::new(a[0] + share * (b[0] - a[0]), a[1] + share * (b[1] - a[1]));
+                let share = (at - a[axis]) / (b[axis] - a[axis]);
+                let place = |k: usize| a[k] + share * (b[k] - a[k]);
                 // Seen from above, a facet is entered where it goes down through the plane.
-                ends[usize::from(a[2] < z)] = at;
+                ends[usize::from(a[axis] < at)] = Point::new(place(across), place(up));
                 found += 1;
             }
             (found == 2 && ends[0] != ends[1]).then_some(ends)

@@ -1,27 +1,31 @@
 //! Everything that a design's pack and its checks are made from, worked out once.
 
 use super::PackError;
+use super::cut_pieces::{self, CutPiece};
 use super::duty::FoilDuty;
 use super::friction::{StationCurves, water};
-use crate::design::{Cut, Design, MaskShapes};
+use super::printed::{self, Bench, StationMask};
+use crate::design::{Cut, CutKind, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution, Water};
-use crate::geometry::{ArcPath, Curve, GeometryError, follow_with_arcs};
+use crate::geometry::{ArcPath, Point, follow_with_arcs};
 use crate::parts::{Core, CutShape, Split, WoodPiece, split};
 use crate::section::Section;
 use crate::wing::{Law, Planform, StationShape, Wing};
 use crate::workshop::{
-    Drawing, Fit, HingeLine, Mask, MaskMarks, MaskSettings, Role, Stamp, close_mask, part_template,
-    planform_pattern, station_template,
+    CutTrace, Drawing, HingeLine, Layout, Page, PaperSettings, Role, Stamp, part_template, planform_pattern,
+    station_template, tiled,
 };
-
-/// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
-const PRINT_TOLERANCE: f64 = 0.02;
 
 /// All of it.
 pub(super) struct Aids<'a> {
     pub(super) planform: Planform,
     pub(super) pattern: Drawing,
     pub(super) stations: Vec<StationAids<'a>>,
+    /// What the router is handed, piece by piece, and on sheets.
+    pub(super) cut: Vec<CutPiece>,
+    pub(super) layout: Layout,
+    pub(super) prints: Prints,
+    pub(super) bench: Bench,
     pub(super) flows: Vec<SectionFlow<'a>>,
     pub(super) water: Water,
     pub(super) curves: Vec<StationCurves<'a>>,
@@ -37,17 +41,51 @@ impl<'a> Aids<'a> {
         let planform = wing.planform();
         let water = water(design)?;
         let curves = StationCurves::of(design, &water)?;
+        let pattern = pattern(design, wing, &planform)?;
+        let stations = station_aids(design, wing)?;
+        let cut = cut_pieces::cut_pieces(design, &stations, &pattern)?;
         Ok(Self {
             duty: FoilDuty::of(design, wing, &water, &curves)?,
-            pattern: pattern(design, &planform),
+            layout: cut_pieces::layout(design, &cut),
+            bench: printed::bench(design, wing, &stamp(design))?,
+            prints: Prints::of(design, &stations, &pattern),
+            cut,
+            pattern,
             planform,
-            stations: station_aids(design, wing)?,
+            stations,
             flows: section_flows(design)?,
             water,
             curves,
             pieces: design.pieces(wing)?,
             battens: battens(design, wing)?,
         })
+    }
+}
+
+/// The pages of the paper templates.
+pub(super) struct Prints {
+    /// Planform and finished surface.
+    pub(super) finished: Vec<Page>,
+    /// The wood.
+    pub(super) wood: Vec<Page>,
+}
+
+impl Prints {
+    fn of(design: &Design, stations: &[StationAids<'_>], pattern: &Drawing) -> Self {
+        let (width, height) = design.paper.size.dimensions();
+        let paper = PaperSettings {
+            width: width.mm(),
+            height: height.mm(),
+            margin: design.paper.margin.mm(),
+            overlap: design.paper.overlap.mm(),
+        };
+        let finished = std::iter::once(pattern).chain(stations.iter().map(|station| &station.template));
+        let wood =
+            stations.iter().flat_map(|station| station.wood.templates.iter().map(|(_, _, drawing)| drawing));
+        Self {
+            finished: finished.flat_map(|drawing| tiled(drawing, paper)).collect(),
+            wood: wood.flat_map(|drawing| tiled(drawing, paper)).collect(),
+        }
     }
 }
 
@@ -66,34 +104,6 @@ pub(super) struct StationAids<'a> {
     pub(super) template: Drawing,
     pub(super) masks: Vec<StationMask>,
     pub(super) wood: Wood<'a>,
-}
-
-/// A mask of a station.
-pub(super) struct StationMask {
-    /// What it closes on.
-    pub(super) part: Masked,
-    pub(super) mask: Mask,
-    /// How it closes.
-    pub(super) fit: Fit,
-}
-
-/// What a mask closes on.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub(super) enum Masked {
-    /// The wood before the laminate.
-    Core,
-    /// The finished surface.
-    Finished,
-}
-
-impl Masked {
-    /// As it stands in a sentence.
-    pub(super) fn words(self) -> &'static str {
-        match self {
-            Self::Core => "the core",
-            Self::Finished => "the finished foil",
-        }
-    }
 }
 
 /// The wood of a station: what is cut before anything is laid over it.
@@ -163,55 +173,11 @@ fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAid
             || design.hinge_at(at, shape.chord).is_some();
         let core = if is_cut_in_wood { Some(Core::of(&shape, &skin)?) } else { None };
         let wood = core.as_ref().map_or(Ok(Wood::none()), |core| wood(design, core, &stamp, &finished))?;
-        let masks = station_masks(design, &stamp, &shape, &finished, core.as_ref()).map_err(failed)?;
+        let masks =
+            printed::station_masks(design, &stamp, &shape, &finished, core.as_ref()).map_err(failed)?;
         Ok(StationAids { template, masks, wood, shape })
     };
     design.templates.iter().map(|at| at_station(at.mm())).collect()
-}
-
-/// The masks that a design asks for at a station, each closed on its part.
-fn station_masks(
-    design: &Design,
-    stamp: &Stamp,
-    shape: &StationShape<'_>,
-    finished: &ArcPath,
-    core: Option<&Core<'_>>,
-) -> Result<Vec<StationMask>, GeometryError> {
-    let bed = design.printer.bed();
-    let settings = MaskSettings {
-        clearance: design.masks.clearance.mm(),
-        wall: design.masks.wall.mm(),
-        thickness: design.masks.thickness.mm(),
-        tolerance: 0.5 * PRINT_TOLERANCE,
-        bed: [bed[0].mm(), bed[1].mm()],
-    };
-    let label = format!("{} {}", crate::units::number(shape.at, 1), stamp.fingerprint);
-    let hinge = design.hinge_at(shape.at, shape.chord).map(|hinge| hinge.at);
-    // Half of the tolerance is for the arcs, half for the chords of the solid.
-    let fine = |curve: &dyn Curve| follow_with_arcs(curve, 0.5 * PRINT_TOLERANCE);
-    let is_fine = design.router.tolerance.mm() <= 0.5 * PRINT_TOLERANCE;
-    let mut masks = Vec::new();
-    let mut add = |part, curve: &dyn Curve, outline: &ArcPath, ends: [f64; 2]| {
-        let sights: Vec<f64> = ends.into_iter().chain(hinge).collect();
-        let mask = Mask::of(outline, settings, MaskMarks { label: &label, sights: &sights })?;
-        let fit = close_mask(curve, mask.solids(), settings.clearance + 0.2 * settings.wall);
-        masks.push(StationMask { part, mask, fit });
-        Ok::<_, GeometryError>(())
-    };
-    let wanted = design.masks.shapes;
-    let core = core.filter(|_| design.has_skin());
-    if let Some(core) = core.filter(|_| wanted != MaskShapes::Finished) {
-        add(Masked::Core, core, &fine(core)?, [core.nose().x, core.tail().x])?;
-    }
-    if core.is_none() || wanted != MaskShapes::Core {
-        let ends = [0.0, shape.chord];
-        if is_fine {
-            add(Masked::Finished, shape, finished, ends)?;
-        } else {
-            add(Masked::Finished, shape, &fine(shape)?, ends)?;
-        }
-    }
-    Ok(masks)
 }
 
 /// The wood at a station and its templates.
@@ -232,7 +198,7 @@ fn wood<'a>(
     let cuts = &wood.cuts;
     let templates = &mut wood.templates;
     let mut add = |role, ending, name, path: &ArcPath, words: &[String]| {
-        let mut drawing = part_template(stamp, shape, finished, name, path, words);
+        let mut drawing = part_template(stamp, shape, finished, design.kind.mirrored(), (name, path), words);
         // Each cut is drawn where its middle lies in this piece.
         let within = |cut: &CutShape| {
             let (middle, bounds) = (cut.outline.bounds().center(), path.bounds());
@@ -261,10 +227,27 @@ fn wood<'a>(
     Ok(wood)
 }
 
-/// The pattern of the planform.
-fn pattern(design: &Design, planform: &Planform) -> Drawing {
+/// The pattern of the planform, with slots and bores as they are seen from above.
+fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> Result<Drawing, PackError> {
     let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
-    planform_pattern(&stamp(design), planform, &stations, hinge(design).as_ref())
+    let skin = design.skin();
+    let mut traces = Vec::new();
+    for cut in &design.cuts {
+        let (from, to) = (cut.from.mm(), cut.to.mm());
+        let bends = design.stations.iter().map(|station| station.at.mm()).filter(|&at| from < at && at < to);
+        let mut edges = Vec::new();
+        for at in std::iter::once(from).chain(bends).chain([to]) {
+            let shape = wing.shape_at(at)?;
+            let core = Core::of(&shape, &skin)?;
+            let known = design.cuts_at(at).find(|(other, _)| std::ptr::eq(*other, cut));
+            let Some([front, back]) = known.map(|(_, cut)| cut.of(&core).mouth()) else { continue };
+            let place = |p: Point| (shape.to_foil() * p).x;
+            edges.push((at, [place(front), place(back)]));
+        }
+        let depth = (cut.kind == CutKind::Slot && cut.from_upper).then(|| cut.depth.mm());
+        traces.push(CutTrace { purpose: cut.purpose.clone(), edges, depth });
+    }
+    Ok(planform_pattern(&stamp(design), planform, &stations, hinge(design).as_ref(), &traces))
 }
 
 /// The flow about each section that the design names, each once.

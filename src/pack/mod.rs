@@ -3,10 +3,12 @@
 mod aids;
 mod checks;
 mod contents;
+mod cut_pieces;
 mod duty;
 mod error;
 mod friction;
 mod manifest;
+mod printed;
 mod sheet;
 mod tables;
 mod workshop_checks;

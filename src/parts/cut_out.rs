@@ -39,6 +39,26 @@ pub struct CutShape {
     pub wood_left: f64,
 }
 
+impl CutShape {
+    /// Its edges ahead and behind as they are seen from above the chord: of a slot in the face of the
+    /// wood, of a bore at its widest.
+    #[must_use]
+    pub fn mouth(&self) -> [Point; 2] {
+        let vertices = self.outline.vertices();
+        if let [a, b, c, d] = vertices {
+            // From the proud end of a side to its bottom, back to the face.
+            let deep = a.point.distance(d.point);
+            let face = |proud: Point, bottom: Point| proud.lerp(bottom, (PROUD / deep).min(1.0));
+            let [one, other] = [face(a.point, d.point), face(b.point, c.point)];
+            return if one.x < other.x { [one, other] } else { [other, one] };
+        }
+        let bounds = self.outline.bounds();
+        [Point::new(bounds.x0, bounds.center().y), Point::new(bounds.x1, bounds.center().y)]
+    }
+}
+
+/// How far a slot stands proud of the face, so that the cutter runs free, mm.
+const PROUD: f64 = 1.0;
 /// Points along each face from which the wood left is taken.
 const LOOKS: usize = 800;
 
@@ -60,9 +80,7 @@ fn slot(core: &Core<'_>, from: Side, at: f64, width: f64, depth: f64) -> CutShap
     let along = jet.tangent().unwrap_or(Vec2::new(1.0, 0.0));
     let inwards = along.turn_90();
     let corner = |side: f64, deep: f64| jet.point + 0.5 * side * width * along + deep * inwards;
-    // A little proud of the face, so that the cutter runs free.
-    let proud = -1.0;
-    let corners = [corner(-1.0, proud), corner(1.0, proud), corner(1.0, depth), corner(-1.0, depth)];
+    let corners = [corner(-1.0, -PROUD), corner(1.0, -PROUD), corner(1.0, depth), corner(-1.0, depth)];
     let other = if from == Side::Upper { Side::Lower } else { Side::Upper };
     let bottom = |share: f64| corners[3].lerp(corners[2], share);
     let face = face(core, other);

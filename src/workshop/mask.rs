@@ -1,7 +1,7 @@
 //! Printed masks: two plates that close round a station's outline and show where it is proud.
 
-use super::plate::{End, Strip};
-use crate::geometry::{ArcPath, GeometryError, Point, Solid, rectangle_fits};
+use super::plate::{End, PlatePiece, Strip, numbered, parted_on_bed};
+use crate::geometry::{ArcPath, GeometryError, Point, Solid};
 
 /// How masks are made, millimetres.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -43,19 +43,15 @@ impl Half {
 pub struct MaskPiece {
     /// The half that it belongs to.
     pub half: Half,
-    /// Which piece of its half, counted from the nose from 1, and how many there are.
-    pub number: [usize; 2],
-    /// Whether there was room to engrave its label.
-    pub is_labelled: bool,
-    /// The piece itself, flat on the bed.
-    pub solid: Solid,
+    /// The piece itself.
+    pub plate: PlatePiece,
 }
 
 impl MaskPiece {
     /// Its half, and which piece of it where that is parted: "upper" or "upper-2".
     #[must_use]
     pub fn name(&self) -> String {
-        let [number, count] = self.number;
+        let [number, count] = self.plate.number;
         if count == 1 { self.half.word().to_owned() } else { format!("{}-{number}", self.half.word()) }
     }
 }
@@ -76,9 +72,6 @@ pub struct MaskMarks<'a> {
     /// hinge.
     pub sights: &'a [f64],
 }
-
-/// A half is parted into so many pieces at most.
-const MOST_PIECES: usize = 12;
 
 impl Mask {
     /// The mask that closes round a closed outline, its plates lying flat on the bed with x along the
@@ -118,7 +111,7 @@ impl Mask {
 
     /// The solids of all pieces.
     pub fn solids(&self) -> impl Iterator<Item = &Solid> {
-        self.pieces.iter().map(|piece| &piece.solid)
+        self.pieces.iter().map(|piece| &piece.plate.solid)
     }
 }
 
@@ -135,53 +128,15 @@ fn half_of(
     let (bounds, wall) = (opening.bounds(), settings.wall);
     let (left, right) = (bounds.x0 - wall, bounds.x1 + wall);
     let far = if half == Half::Upper { bounds.y1 + wall } else { bounds.y0 - wall };
-    let parted = |count: usize| -> Result<Vec<MaskPiece>, GeometryError> {
-        let cut = |i: usize| left + (right - left) * i as f64 / count as f64;
-        (0..count)
-            .map(|i| {
-                let strip = Strip {
-                    half,
-                    edge,
-                    far,
-                    wall,
-                    ends: [
-                        if i == 0 { End::Side(left) } else { End::Cut(cut(i)) },
-                        if i + 1 == count { End::Side(right) } else { End::Cut(cut(i + 1)) },
-                    ],
-                };
-                let number = [i + 1, count];
-                let place = if count == 1 { String::new() } else { format!(" {}-{count}", i + 1) };
-                let label = format!("{} {}{place}", marks.label, half.word());
-                let letters = strip.letters(&label);
-                let is_labelled = !letters.is_empty();
-                let depth = Strip::engraved(settings.thickness);
-                let solid = Solid::engraved(&strip.face(marks.sights), settings.thickness, &letters, depth)?;
-                Ok(MaskPiece { half, number, is_labelled, solid })
-            })
-            .collect()
-    };
-    let lies_on_the_bed = |pieces: &[MaskPiece]| {
-        pieces.iter().all(|piece| {
-            let [x, y, _] = piece.solid.size();
-            rectangle_fits([x, y], settings.bed)
-        })
-    };
-    let whole = parted(1)?;
-    if lies_on_the_bed(&whole) {
-        return Ok(whole);
-    }
-    for count in 2..=MOST_PIECES {
-        // Too narrow a piece has no room for its dovetails.
-        if right - left < 3.0 * wall * count as f64 {
-            break;
-        }
-        let pieces = parted(count)?;
-        if lies_on_the_bed(&pieces) {
-            return Ok(pieces);
-        }
-    }
-    // Parting does not help: the check says what is too large.
-    Ok(whole)
+    let plates = parted_on_bed([End::Side(left), End::Side(right)], wall, settings.bed, |number, ends| {
+        let strip = Strip { half, edge, far, wall, ends };
+        let letters = strip.letters(&numbered(&format!("{} {}", marks.label, half.word()), number));
+        let is_labelled = !letters.is_empty();
+        let depth = Strip::engraved(settings.thickness);
+        let solid = Solid::engraved(&strip.face(marks.sights), settings.thickness, &letters, depth)?;
+        Ok(PlatePiece { number, is_labelled, solid })
+    })?;
+    Ok(plates.into_iter().map(|plate| MaskPiece { half, plate }).collect())
 }
 
 fn foremost_and_hindmost(points: &[Point]) -> Option<(usize, usize)> {

@@ -46,6 +46,29 @@ impl HingeLine {
     }
 }
 
+/// A slot or a bore as it is seen from above the planform.
+#[derive(Debug, Clone, PartialEq)]
+pub struct CutTrace {
+    /// What it is for.
+    pub purpose: String,
+    /// Places along the span, mm from the root, with how far aft its front and back edge lie there.
+    pub edges: Vec<(f64, [f64; 2])>,
+    /// Depth below the face of the wood of one that is cut from above, mm.
+    pub depth: Option<f64>,
+}
+
+impl CutTrace {
+    /// Its contour on one side of a mirrored foil, anticlockwise.
+    fn contour(&self, side: f64) -> ArcPath {
+        let edge = |i: usize| self.edges.iter().map(move |(at, aft)| Point::new(side * at, -aft[i]));
+        let mut points: Vec<Point> = edge(0).chain(edge(1).rev()).collect();
+        if polygon::area(&points) < 0.0 {
+            points.reverse();
+        }
+        ArcPath::polyline(points, true)
+    }
+}
+
 /// The template of one station: its outline, chord line, hinge line and what it is.
 /// Nose at the origin, trailing edge along x.
 ///
@@ -80,13 +103,16 @@ pub fn station_template(
         stamp.to_string(),
         format!("station {} mm from the root", number(shape.at, 2)),
         format!("{}, chord {:.2} mm, twist {}", shape.section_name(), shape.chord, turn(shape.twist)),
-        // With x aft and the span's axis away from the eye, what stands upright in the drawing is
-        // the boat's up for a level foil and its starboard side for an upright one.
-        if mirrored { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
-            .to_owned(),
+        seen(mirrored).to_owned(),
     ];
     write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
     drawing
+}
+
+/// Which side is up. With x aft and the span's axis away from the eye, what stands upright in the
+/// drawing is the boat's up for a level foil and its starboard side for an upright one.
+fn seen(mirrored: bool) -> &'static str {
+    if mirrored { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
 }
 
 /// The template of a part at one station: its own contour to cut, the finished outline for reference,
@@ -96,8 +122,8 @@ pub fn part_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
     finished: &ArcPath,
-    name: &str,
-    part: &ArcPath,
+    mirrored: bool,
+    (name, part): (&str, &ArcPath),
     words: &[String],
 ) -> Drawing {
     let mut drawing = Drawing::new(format!("{stamp}, station {} mm, {name}", number(shape.at, 2)));
@@ -108,8 +134,9 @@ pub fn part_template(
         ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0)),
     );
     let mut lines = vec![stamp.to_string(), format!("station {} mm from the root", number(shape.at, 2))];
-    lines.push(format!("{name}: the wood under the laminate"));
+    lines.push(format!("{name}: the wood under the laminate, its grain along the span, out of this sheet"));
     lines.extend(words.iter().cloned());
+    lines.push(seen(mirrored).to_owned());
     lines.push("cut the full line; the broken one is the finished surface".to_owned());
     write_block(&mut drawing, Point::new(0.0, finished.bounds().y0 - OVERRUN - GAP), &lines);
     drawing
@@ -124,6 +151,7 @@ pub fn planform_pattern(
     planform: &Planform,
     stations: &[f64],
     hinge: Option<&HingeLine>,
+    cuts: &[CutTrace],
 ) -> Drawing {
     let flip = |p: Point| Point::new(p.x, -p.y);
     let mut outline: Vec<Point> = planform.outline().into_iter().map(flip).collect();
@@ -151,6 +179,10 @@ pub fn planform_pattern(
                 text: number(at, 2),
             });
         }
+        for cut in cuts {
+            let role = cut.depth.map_or(Role::Reference, Role::pocket);
+            drawing.add(role, cut.contour(side));
+        }
         if let Some(hinge) = hinge {
             let corners = planform.leading.iter().map(|corner| corner.x);
             let bends = corners.filter(|&at| hinge.from < at && at < hinge.to);
@@ -161,9 +193,10 @@ pub fn planform_pattern(
             drawing.add(Role::Reference, ArcPath::polyline(line, false));
         }
     }
-    let words = [
+    grain_arrow(&mut drawing, planform);
+    let mut words = vec![
         stamp.to_string(),
-        format!("planform, span {} mm, leading edge up", number(planform.span(), 2)),
+        format!("planform, span {} mm, leading edge up, seen from above", number(planform.span(), 2)),
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
             let (from, to) = (number(hinge.from, 2), number(hinge.to, 2));
@@ -172,8 +205,26 @@ pub fn planform_pattern(
             format!("hinge line at {along} % of chord, {from} to {to} mm")
         }),
     ];
+    words.extend(cuts.iter().map(|cut| match cut.depth {
+        Some(depth) => format!("{}: {} mm below the face of the wood", cut.purpose, number(depth, 2)),
+        None => format!("{}: not cut from above", cut.purpose),
+    }));
     write_block(&mut drawing, Point::new(bounds.x0, bounds.y0 - OVERRUN - GAP), &words);
     drawing
+}
+
+/// An arrow along the span, which is where the grain runs.
+fn grain_arrow(drawing: &mut Drawing, planform: &Planform) {
+    let reach = planform.leading.last().map_or(0.0, |corner| corner.x);
+    let (from, to) = (0.12 * reach, 0.12 * reach + (0.2 * reach).min(80.0));
+    let (front, back) = planform.edges(to);
+    let y = -(front + 0.88 * (back - front));
+    let (start, tip) = (Point::new(from, y), Point::new(to, y));
+    let barb = 0.08 * (to - from);
+    drawing.add(Role::Reference, ArcPath::line(start, tip));
+    let barbs = [Point::new(to - 2.0 * barb, y + barb), tip, Point::new(to - 2.0 * barb, y - barb)];
+    drawing.add(Role::Reference, ArcPath::polyline(barbs, false));
+    drawing.write(Role::Label, Point::new(from, y + 1.5), SMALL, "grain");
 }
 
 fn write_block(drawing: &mut Drawing, top: Point, words: &[String]) {

@@ -1,7 +1,7 @@
 //! The outline of one printed plate of a mask: opening, pegs or dovetails, notches, letters.
 
 use super::{Half, strokes};
-use crate::geometry::Point;
+use crate::geometry::{GeometryError, Point, Solid, rectangle_fits};
 
 /// A stretch of a mask's half along the chord.
 pub(super) struct Strip<'a> {
@@ -22,14 +22,75 @@ pub(super) struct Strip<'a> {
 pub(super) enum End {
     /// At the side of the mask, where the other half is met with a peg or a socket.
     Side(f64),
+    /// At the side of a plate that meets nothing.
+    Plain(f64),
     /// At a neighbour, which is met with a dovetail.
     Cut(f64),
 }
 
+/// A printed plate, or a piece of one that is longer than the bed.
+#[derive(Debug, Clone, PartialEq)]
+pub struct PlatePiece {
+    /// Which piece, counted from the nose from 1, and how many there are.
+    pub number: [usize; 2],
+    /// Whether there was room to engrave its label.
+    pub is_labelled: bool,
+    /// The piece itself, flat on the bed.
+    pub solid: Solid,
+}
+
+/// A plate is parted into so many pieces at most.
+const MOST_PIECES: usize = 12;
+
+/// A plate between two `sides` in as few pieces as lie on the bed; whole where parting does not help.
+///
+/// `piece`: makes the piece of a number between two ends.
+pub(super) fn parted_on_bed(
+    sides: [End; 2],
+    wall: f64,
+    bed: [f64; 2],
+    piece: impl Fn([usize; 2], [End; 2]) -> Result<PlatePiece, GeometryError>,
+) -> Result<Vec<PlatePiece>, GeometryError> {
+    let [left, right] = sides.map(End::x);
+    let parted = |count: usize| -> Result<Vec<PlatePiece>, GeometryError> {
+        let end = |i: usize| match i {
+            0 => sides[0],
+            i if i == count => sides[1],
+            i => End::Cut(left + (right - left) * i as f64 / count as f64),
+        };
+        (0..count).map(|i| piece([i + 1, count], [end(i), end(i + 1)])).collect()
+    };
+    let lies = |plate: &PlatePiece| {
+        let [x, y, _] = plate.solid.size();
+        rectangle_fits([x, y], bed)
+    };
+    let whole = parted(1)?;
+    if whole.iter().all(lies) {
+        return Ok(whole);
+    }
+    for count in 2..=MOST_PIECES {
+        // Too narrow a piece has no room for its dovetails.
+        if right - left < 3.0 * wall * count as f64 {
+            break;
+        }
+        let pieces = parted(count)?;
+        if pieces.iter().all(lies) {
+            return Ok(pieces);
+        }
+    }
+    // The check says what is too large.
+    Ok(whole)
+}
+
+/// A label with the number of its piece, where there are several.
+pub(super) fn numbered(label: &str, [number, count]: [usize; 2]) -> String {
+    if count == 1 { label.to_owned() } else { format!("{label} {number}-{count}") }
+}
+
 impl End {
-    fn x(self) -> f64 {
+    pub(super) fn x(self) -> f64 {
         match self {
-            Self::Side(x) | Self::Cut(x) => x,
+            Self::Side(x) | Self::Plain(x) | Self::Cut(x) => x,
         }
     }
 }
@@ -78,6 +139,7 @@ impl Strip<'_> {
     fn front(&self, end: End) -> Vec<Point> {
         match (end, self.edge.first()) {
             (End::Side(x), Some(&first)) => self.side(first, x),
+            (End::Plain(x), Some(&first)) => vec![Point::new(x, first.y), Point::new(x, self.far)],
             (End::Cut(x), _) => self.dovetail(x, PEG_PLAY),
             _ => Vec::new(),
         }
@@ -87,6 +149,7 @@ impl Strip<'_> {
     fn back(&self, end: End) -> Vec<Point> {
         match (end, self.edge.last()) {
             (End::Side(x), Some(&last)) => self.side(last, x),
+            (End::Plain(x), Some(&last)) => vec![Point::new(x, last.y), Point::new(x, self.far)],
             (End::Cut(x), _) => self.dovetail(x, 0.0),
             _ => Vec::new(),
         }
@@ -157,8 +220,8 @@ impl Strip<'_> {
 
 /// The points of an edge that runs aft, between two ends; those at cuts are left to the cuts.
 fn between(edge: &[Point], front: End, back: End) -> impl Iterator<Item = Point> + '_ {
-    let after = move |p: &Point| matches!(front, End::Side(_)) || p.x > front.x();
-    let before = move |p: &Point| matches!(back, End::Side(_)) || p.x < back.x();
+    let after = move |p: &Point| !matches!(front, End::Cut(_)) || p.x > front.x();
+    let before = move |p: &Point| !matches!(back, End::Cut(_)) || p.x < back.x();
     edge.iter().copied().filter(move |p| after(p) && before(p))
 }
 

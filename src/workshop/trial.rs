@@ -3,6 +3,8 @@
 //! The pieces are taken as they will be printed, cut level, and the part from its equations, so that
 //! whatever was lost on the way between the two shows.
 
+use super::cradle::on_board;
+use super::{Cradle, Half};
 use crate::geometry::{Curve, Point, Solid};
 
 /// How a mask or a cradle closes on its part.
@@ -64,8 +66,48 @@ pub fn close_mask<'a, C: Curve + ?Sized>(
     fit
 }
 
+/// Lays a part into its cradle at one place of the span.
+///
+/// `outline`: the part's outline there, in the foil's axes; `face`: the face that the cradle holds;
+/// `board`: as of the cradle. The greatest gap is that of the face itself, without what stands upright at
+/// nose and tail, where the rims begin.
+#[must_use]
+pub fn lay_in_cradle(outline: &[Point], at: f64, face: Half, board: f64, cradle: &Cradle) -> Fit {
+    let flat = |p: Point| on_board(p, at, face, board);
+    let place = flat(Point::ORIGIN)[1];
+    let sides: Vec<[Point; 2]> = cradle.pieces.iter().flat_map(|piece| piece.upright_cut(place)).collect();
+    let blocks = Near::to(&sides);
+    let points: Vec<Point> = outline
+        .iter()
+        .map(|&p| {
+            let [x, _, z] = flat(p);
+            Point::new(x, z)
+        })
+        .collect();
+    let nose = points.iter().map(|p| p.x).fold(f64::INFINITY, f64::min);
+    let tail = points.iter().map(|p| p.x).fold(f64::NEG_INFINITY, f64::max);
+    let count = points.len();
+    let mut fit = Fit { least: f64::INFINITY, greatest: 0.0 };
+    for (i, &point) in points.iter().enumerate() {
+        let gap = blocks.signed(point);
+        fit.least = fit.least.min(gap);
+        // Turned over or not, the face that lies in the cradle looks down: there x grows along an
+        // outline that runs anticlockwise, and falls along one that was turned.
+        let onwards = points[(i + 1) % count].x - points[(i + count - 1) % count].x;
+        let looks_down = if face == Half::Lower { onwards > 0.0 } else { onwards < 0.0 };
+        let is_face = point.x > nose + UPRIGHT && point.x < tail - UPRIGHT;
+        if looks_down && is_face {
+            fit.greatest = fit.greatest.max(gap);
+        }
+    }
+    fit
+}
+
+/// How far from nose and tail a face begins, mm.
+const UPRIGHT: f64 = 1.5;
+
 /// Points along a closed curve, and along the line that closes it.
-pub(super) fn along<C: Curve + ?Sized>(curve: &C) -> Vec<Point> {
+pub fn along<C: Curve + ?Sized>(curve: &C) -> Vec<Point> {
     let breaks = curve.breaks();
     let mut points = Vec::new();
     for ends in breaks.windows(2) {

@@ -27,6 +27,17 @@ def quantity(text: str) -> float:
     return float(number) * UNITS[unit]
 
 
+STOCK = {"length": "1200 mm", "width": "600 mm", "margin": "10 mm", "spacing": "12 mm"}
+
+
+@dataclass(frozen=True)
+class Stock:
+    length: float
+    width: float
+    margin: float
+    spacing: float
+
+
 @dataclass(frozen=True)
 class Station:
     at: float
@@ -88,6 +99,9 @@ class Design:
         self.paper_margin = quantity(paper.get("margin", "10 mm"))
         self.overlap = quantity(paper.get("overlap", "10 mm"))
         self.tolerance = quantity(data.get("router", {}).get("tolerance", "0.01 mm"))
+        stock = data.get("stock", {})
+        sizes = (quantity(stock.get(key, size)) for key, size in STOCK.items())
+        self.stock = Stock(*sizes)
         self.design_lift = float(data.get("lift", {}).get("design", 0.4))
 
     def shape(self, at: float) -> Shape:

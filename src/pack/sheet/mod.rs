@@ -6,6 +6,7 @@ mod boat;
 mod flow;
 mod shape;
 mod work;
+mod workshop;
 
 use std::fmt::Write as _;
 
@@ -30,6 +31,7 @@ pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[
     flow::friction(&mut body, design, water, curves);
     flow::lift(&mut body, design, flows);
     work::steps(&mut body, design, files);
+    workshop::pieces_and_pages(&mut body, design, aids, files);
     work::check_table(&mut body, checks);
     work::file_table(&mut body, files);
     document(&format!("{} {}", design.name, design.fingerprint()), &body)

@@ -7,7 +7,6 @@ use std::time::{Duration, Instant};
 /// A line that tells how many parts of some work are done, and is gone when the work is.
 pub(super) struct Progress {
     what: &'static str,
-    total: usize,
     /// Of the line that stands there; `None` where nobody looks.
     line: Option<Mutex<Line>>,
 }
@@ -23,21 +22,21 @@ const SHORT: Duration = Duration::from_millis(250);
 const BAR: usize = 24;
 
 impl Progress {
-    pub(super) fn of(what: &'static str, total: usize) -> Self {
-        let seen = io::stderr().is_terminal() && total > 1;
+    pub(super) fn of(what: &'static str) -> Self {
+        let seen = io::stderr().is_terminal();
         let line = Line { started: Instant::now(), length: 0 };
-        Self { what, total, line: seen.then(|| Mutex::new(line)) }
+        Self { what, line: seen.then(|| Mutex::new(line)) }
     }
 
     /// Tells that so many are done. Plain letters without colour; the line writes over itself.
-    pub(super) fn show(&self, done: usize) {
+    pub(super) fn show(&self, done: usize, total: usize) {
         let Some(mut line) = self.line.as_ref().and_then(|line| line.lock().ok()) else { return };
         if line.started.elapsed() < SHORT {
             return;
         }
-        let full = BAR * done.min(self.total) / self.total;
+        let full = BAR * done.min(total) / total.max(1);
         let bar = format!("{}{}", "#".repeat(full), "-".repeat(BAR - full));
-        let text = format!("{bar}  {done} of {} {}", self.total, self.what);
+        let text = format!("{bar}  {done} of {total} {}", self.what);
         let blank = " ".repeat(line.length.saturating_sub(text.len()));
         line.length = text.len();
         // Nothing sensible can be done when standard error is closed.

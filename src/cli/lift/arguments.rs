@@ -104,6 +104,18 @@ enum Finish {
 }
 
 impl Arguments {
+    /// What each is right alone and wrong together.
+    pub(super) fn refuse_what_conflicts(&self) -> Result<(), Failure> {
+        let refuse = |why: &str| Err(Failure::Input(why.to_owned()));
+        if self.pressure && self.layers && self.format == Format::Csv {
+            return refuse("one table at a time as CSV: give --pressure or --layers, or --format json");
+        }
+        if self.trip.is_some() && self.finish != Finish::Smooth {
+            return refuse("a rough nose is a trip at 2 % of the chord: give --trip or --finish, not both");
+        }
+        Ok(())
+    }
+
     /// The water and what runs in it.
     pub(super) fn surroundings(&self) -> Result<Surroundings, Failure> {
         let salinity = match self.water {

@@ -2,18 +2,13 @@
 
 use plankform::export::chart::{Band as Shade, Chart, Rule, SecondScale, Series, stacked};
 use plankform::flow::ViscousSolution;
+use plankform::pack::bucket_chart;
 use plankform::units::number;
 
 use super::Answer;
 use super::band::Band;
 use super::curve::{At, Curve};
-use super::running::{Scale, in_knots, knots};
-
-/// Cavitation number beyond which the bucket is not shown, where nothing else says: that of 7 kn or
-/// so, below which foils do not cavitate.
-const WIDEST: f64 = 12.0;
-/// How far beyond the bottom of the bucket its plot goes, in suction there.
-const BUCKET_DEPTHS: f64 = 8.0;
+use super::running::{Scale, Surroundings, in_knots};
 
 /// Lift against incidence and against drag, moment, where the layers turn turbulent, and the
 /// cavitation bucket.
@@ -123,37 +118,10 @@ fn turbulent(answer: &Answer) -> Chart {
 }
 
 fn bucket(answer: &Answer) -> Chart {
-    let around = &answer.surroundings;
-    let buckets: Vec<_> = answer.curves.iter().map(|curve| (curve, curve.bucket())).collect();
-    let least = buckets.iter().filter_map(|(_, bucket)| Some(bucket.bottom()?.suction)).fold(0.0, f64::max);
-    let widest = (BUCKET_DEPTHS * least).clamp(1.0, WIDEST);
-    let spare = 1.0 + around.margin;
-    let line = |(curve, bucket): &(&Curve, plankform::flow::Bucket)| {
-        let outline = bucket.outline(widest / spare).into_iter();
-        // With the margin asked, the number has to stay above the suction by it.
-        Series { name: name(answer, curve), points: outline.map(|(s, cl)| (spare * s, cl)).collect() }
-    };
-    let mut chart = chart(
-        answer,
-        "lift without cavitation",
-        ["cavitation number", LIFT],
-        buckets.iter().map(line).collect(),
-    );
-    if around.margin > 0.0 {
-        chart.title.push_str(&format!(", {} % to spare", number(100.0 * around.margin, 1)));
-    }
-    if let Some(depth) = around.depth {
-        // V = √(2 (p − p_v)/ρ σ): at a number of one the speed that this rule starts from.
-        let at_one = around.water.cavitation_number(depth, 1.0).sqrt();
-        chart.across_too = Some(SecondScale {
-            name: format!("speed at {} mm depth, kn", number(1e3 * depth, 1)),
-            rule: Rule::OverRoot(knots(at_one)),
-        });
-    }
-    if let Some(bottom) = buckets.first().and_then(|(_, bucket)| bucket.bottom()) {
-        chart.words.push((0.72 * widest, bottom.cl, "no cavitation".to_owned()));
-    }
-    chart
+    let Surroundings { water, depth, margin, .. } = &answer.surroundings;
+    let buckets: Vec<_> = answer.curves.iter().map(|curve| (name(answer, curve), curve.bucket())).collect();
+    let title = format!("{}: lift without cavitation", answer.section);
+    Chart { subtitle: common(answer), ..bucket_chart(title, &buckets, water, *depth, *margin) }
 }
 
 /// The points of a curve, with gaps where no flow was found.

@@ -57,11 +57,7 @@ pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     let surroundings = arguments.surroundings()?;
     let running = arguments.running(&surroundings)?;
     let with = With { pressure: arguments.pressure, layers: arguments.layers };
-    if with.pressure && with.layers && arguments.format == Format::Csv {
-        return Err(Failure::Input(
-            "one table at a time as CSV: give --pressure or --layers, or --format json".to_owned(),
-        ));
-    }
+    arguments.refuse_what_conflicts()?;
     let section = arguments.source.section(arguments.chord)?;
     let (name, edge) = (section.name().to_owned(), section.edge_word());
     let sections = deflected(arguments, section)?;
@@ -157,9 +153,9 @@ fn with_friction(
             }
         }
     }
-    let progress = Progress::of("lift curves", cases.len());
+    let progress = Progress::of("lift curves");
     let sweep = |case: &Case| LiftCurve::sweep(&flows[case.section], &case.conditions, &incidences);
-    let swept = side_by_side(&cases, sweep, |done| progress.show(done));
+    let swept = side_by_side(&cases, sweep, |done| progress.show(done, cases.len()));
     drop(progress);
     let curve = |(case, swept): (Case, Result<LiftCurve, _>)| {
         let Deflected { flap, axis, .. } = sections[case.section];

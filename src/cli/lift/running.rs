@@ -1,6 +1,7 @@
 //! How a section runs: speed, chord and water, and what coefficients become in them.
 
 use plankform::flow::{GRAVITY, Salinity, Water};
+use plankform::units::{knots, number};
 
 use super::Failure;
 
@@ -35,9 +36,6 @@ pub(super) struct Scale {
     /// Nm/m for a moment coefficient of one.
     pub(super) moment: f64,
 }
-
-/// Metres a second in a knot.
-const KNOT: f64 = 1852.0 / 3600.0;
 
 impl Surroundings {
     pub(super) fn of(
@@ -75,7 +73,7 @@ impl Surroundings {
             Salinity::Sea => "sea",
             Salinity::Fresh => "fresh",
         };
-        format!("{kind} water of {} °C", plankform::units::number(self.temperature, 1))
+        format!("{kind} water of {} °C", number(self.temperature, 1))
     }
 }
 
@@ -84,12 +82,7 @@ pub(super) fn carries(force: f64) -> f64 {
     force / GRAVITY
 }
 
-/// m/s in knots.
-pub(super) fn knots(speed: f64) -> f64 {
-    speed / KNOT
-}
-
 /// A speed in words, short.
 pub(super) fn in_knots(speed: f64) -> String {
-    format!("{} kn", plankform::units::number(knots(speed), 1))
+    format!("{} kn", number(knots(speed), 1))
 }

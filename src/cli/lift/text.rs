@@ -1,12 +1,12 @@
 //! The answer as text, for people.
 
 use plankform::flow::{FreeLift, LayerPoint, SideFlow};
-use plankform::units::{fixed, number};
+use plankform::units::{fixed, knots, number};
 
 use super::Answer;
 use super::band::Band;
 use super::curve::{At, Curve, Row};
-use super::running::{Surroundings, carries, in_knots, knots};
+use super::running::{Surroundings, carries, in_knots};
 
 pub(super) fn text(answer: &Answer) -> String {
     let name = &answer.section;

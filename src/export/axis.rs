@@ -72,7 +72,7 @@ impl Axis {
                 let slowest = factor / self.high.sqrt();
                 let step = round_step(slowest / 5.0);
                 let first = (slowest / step).ceil() as usize;
-                for i in first..first + 100 {
+                for i in first..5 * first {
                     let value = i as f64 * step;
                     let at = (factor / value).powi(2);
                     let far = |last: f64| (last - at) / (self.high - self.low) > APART;

@@ -502,6 +502,13 @@ pub(super) static LIFT: Table = Table {
             "Speed up to which the sections may not cavitate at the design lift.",
             "18 kn",
         ),
+        key(
+            "cavitation-margin",
+            Number(0.0, 2.0),
+            Default("0"),
+            "By what share the cavitation number is to stay above the greatest suction: 0.2 keeps a fifth to spare for gusts and waves.",
+            "0.2",
+        ),
         key("water", Word(&["sea", "fresh"]), Default("sea"), "Sea water, or fresh.", "sea"),
         key("temperature", Amount(&TEMPERATURE, 0.0, 30.0), Default("15 °C"), "Of the water.", "15 °C"),
         key(

@@ -335,6 +335,8 @@ pub struct Lift {
     pub depth: Length,
     /// Speed up to which the sections may not cavitate, m/s.
     pub top_speed: Option<f64>,
+    /// By what share the cavitation number has to stay above the greatest suction, 0 to 2.
+    pub cavitation_margin: f64,
     /// Whether the water is salt.
     pub sea: bool,
     /// Temperature of the water, °C, 0 to 30.

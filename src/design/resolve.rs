@@ -346,6 +346,7 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
         speed: row.number("speed")?,
         depth: row.length("depth")?,
         top_speed: row.number("top-speed"),
+        cavitation_margin: row.number("cavitation-margin")?,
         sea: row.text("water")? == "sea",
         temperature: row.number("temperature")?,
         quietness: row.number("quietness")?,

@@ -32,11 +32,15 @@ pub(super) struct Aids<'a> {
 }
 
 impl<'a> Aids<'a> {
-    /// Works out a design, whose own foil `wing` is.
-    pub(super) fn of(design: &'a Design, wing: &'a Wing) -> Result<Self, PackError> {
+    /// Works out a design, whose own foil `wing` is, telling how many of how many lift curves are done.
+    pub(super) fn of(
+        design: &'a Design,
+        wing: &'a Wing,
+        told: &(dyn Fn(usize, usize) + Sync),
+    ) -> Result<Self, PackError> {
         let planform = wing.planform();
         let water = water(design)?;
-        let curves = StationCurves::of(design, &water)?;
+        let curves = StationCurves::of(design, &water, told)?;
         Ok(Self {
             duty: FoilDuty::of(design, wing, &water, &curves)?,
             pattern: pattern(design, &planform),

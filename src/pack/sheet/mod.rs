@@ -13,6 +13,7 @@ use super::aids::Aids;
 use super::{Check, PackFile};
 use crate::design::Design;
 use crate::export::html::{document, escaped};
+use crate::units::knots;
 
 /// White round a picture, mm.
 const MARGIN: f64 = 4.0;
@@ -28,6 +29,7 @@ pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[
         boat::under_the_boat(&mut body, design, foil);
     }
     flow::friction(&mut body, design, water, curves);
+    flow::cavitation(&mut body, design, water, curves);
     flow::lift(&mut body, design, flows);
     work::steps(&mut body, design, files);
     work::check_table(&mut body, checks);
@@ -66,9 +68,4 @@ fn cautions(body: &mut String) {
          checks shapes and flow without friction. It says nothing yet of drag, stall, cavitation, ventilation, waves or \
          strength, and is no certificate: local rules and qualified advice come first.</div>\n",
     );
-}
-
-/// A speed in m/s in knots.
-fn knots(speed: f64) -> f64 {
-    speed * 3600.0 / 1852.0
 }

@@ -24,6 +24,15 @@ pub struct Mark {
     pub name: String,
 }
 
+/// A place that is marked by a spot.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Dot {
+    /// Where, in the units of the axes.
+    pub at: (f64, f64),
+    /// What it is.
+    pub name: String,
+}
+
 /// A line chart.
 #[derive(Debug, Clone, PartialEq, Default)]
 pub struct Chart {
@@ -39,6 +48,8 @@ pub struct Chart {
     pub series: Vec<Series>,
     /// Level marks.
     pub marks: Vec<Mark>,
+    /// Spots.
+    pub dots: Vec<Dot>,
 }
 
 const WIDTH: f64 = 720.0;
@@ -139,6 +150,20 @@ impl Chart {
             );
         }
         self.draw_series(&mut svg, &x, &y);
+        for dot in &self.dots {
+            let (at, level) = (x(dot.at.0), y(dot.at.1));
+            // The name stands where there is room.
+            let (anchor, beside) =
+                if at > 0.5 * (LEFT + WIDTH - RIGHT) { ("end", -12.0) } else { ("start", 12.0) };
+            let _ = writeln!(
+                svg,
+                "<circle cx=\"{at:.1}\" cy=\"{level:.1}\" r=\"7\" fill=\"white\" stroke=\"black\" stroke-width=\"3\"/>\
+                 <text x=\"{:.1}\" y=\"{:.1}\" text-anchor=\"{anchor}\" font-weight=\"bold\" paint-order=\"stroke\" stroke=\"white\" stroke-width=\"4\">{}</text>",
+                at + beside,
+                level - 8.0,
+                escaped(&dot.name)
+            );
+        }
         svg.push_str("</svg>");
         svg
     }

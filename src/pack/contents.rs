@@ -161,7 +161,7 @@ impl Files {
     fn add_tables(
         &mut self,
         design: &Design,
-        Aids { stations, flows, curves, .. }: &Aids<'_>,
+        Aids { stations, flows, curves, strength, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let fingerprint = design.fingerprint();
         let text = tables::stations(stations, &fingerprint)?;
@@ -178,6 +178,10 @@ impl Files {
             None,
             text,
         );
+        if let Ok(part) = strength {
+            let text = super::strength::table(part, &fingerprint)?;
+            self.add("tables/strength.csv".to_owned(), "csv", "strength along the span", None, text);
+        }
         let text = tables::pressure(design, flows, &fingerprint)?;
         let role = "pressure at the design lift, without friction";
         self.add("tables/pressure.csv".to_owned(), "csv", role, None, text);

@@ -8,6 +8,7 @@ mod error;
 mod friction;
 mod manifest;
 mod sheet;
+mod strength;
 mod tables;
 mod write;
 

@@ -35,6 +35,15 @@ pub struct Band {
     pub to: Vec<(f64, f64)>,
 }
 
+/// A place that is marked by a spot.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Dot {
+    /// Where, in the units of the axes.
+    pub at: (f64, f64),
+    /// What it is.
+    pub name: String,
+}
+
 /// A line chart.
 #[derive(Debug, Clone, PartialEq, Default)]
 pub struct Chart {
@@ -62,6 +71,8 @@ pub struct Chart {
     pub marks: Vec<Mark>,
     /// Words within the chart, each at its place in the units of the axes.
     pub words: Vec<(f64, f64, String)>,
+    /// Spots.
+    pub dots: Vec<Dot>,
 }
 
 /// Size of the field within the axes.
@@ -218,6 +229,20 @@ impl Chart {
             );
         }
         self.draw_series(&mut svg, &frame);
+        for dot in &self.dots {
+            let (at, level) = (frame.x(dot.at.0), frame.y(dot.at.1));
+            // The name stands where there is room.
+            let (anchor, beside) =
+                if at > 0.5 * (LEFT + frame.right()) { ("end", -12.0) } else { ("start", 12.0) };
+            let _ = writeln!(
+                svg,
+                "<circle cx=\"{at:.1}\" cy=\"{level:.1}\" r=\"7\" fill=\"white\" stroke=\"black\" stroke-width=\"3\"/>\
+                 <text x=\"{:.1}\" y=\"{:.1}\" text-anchor=\"{anchor}\" font-weight=\"bold\" paint-order=\"stroke\" stroke=\"white\" stroke-width=\"4\">{}</text>",
+                at + beside,
+                level - 8.0,
+                escaped(&dot.name)
+            );
+        }
         svg.push_str("</svg>");
         svg
     }

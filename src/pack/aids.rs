@@ -3,6 +3,7 @@
 use super::PackError;
 use super::duty::FoilDuty;
 use super::friction::{StationCurves, water};
+use super::strength::{self, PartStrength};
 use crate::design::{Cut, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution, Water};
 use crate::geometry::{ArcPath, follow_with_arcs};
@@ -26,6 +27,8 @@ pub(super) struct Aids<'a> {
     pub(super) water: Water,
     pub(super) curves: Vec<StationCurves<'a>>,
     pub(super) duty: Option<FoilDuty>,
+    /// Whether it breaks, or why nothing is said of it.
+    pub(super) strength: Result<PartStrength<'a>, String>,
     pub(super) pieces: Vec<WoodPiece>,
     /// From one template to the next of a curved foil, and how far a batten between them is from it.
     pub(super) battens: Vec<(f64, f64, f64)>,
@@ -41,8 +44,11 @@ impl<'a> Aids<'a> {
         let planform = wing.planform();
         let water = water(design)?;
         let curves = StationCurves::of(design, &water, told)?;
+        let duty = FoilDuty::of(design, wing, &water, &curves)?;
+        let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
         Ok(Self {
-            duty: FoilDuty::of(design, wing, &water, &curves)?,
+            strength: strength::of(design, wing, &flight, Vec::new())?,
+            duty,
             pattern: pattern(design, &planform),
             planform,
             stations: station_aids(design, wing)?,

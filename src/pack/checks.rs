@@ -62,6 +62,7 @@ pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     checks.extend(curves.iter().flat_map(|curves| stall(design, curves)));
     checks.extend(curves.iter().flat_map(|curves| cavitation(design, water, curves)));
     checks.extend(duty.as_ref().map(carries));
+    checks.extend(aids.strength.iter().flat_map(|part| super::strength::checks(design, part)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
     checks.extend(aids.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
     checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));

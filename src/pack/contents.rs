@@ -173,7 +173,7 @@ impl Files {
     fn add_tables(
         &mut self,
         design: &Design,
-        Aids { stations, flows, curves, water, .. }: &Aids<'_>,
+        Aids { stations, flows, curves, water, strength, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let fingerprint = design.fingerprint();
         let text = tables::stations(stations, &fingerprint)?;
@@ -192,6 +192,10 @@ impl Files {
         );
         let text = bucket::table(design, water, curves)?;
         self.add("tables/cavitation.csv".to_owned(), "csv", "speeds of cavitation", None, text);
+        if let Ok(part) = strength {
+            let text = super::strength::table(part, &fingerprint)?;
+            self.add("tables/strength.csv".to_owned(), "csv", "strength along the span", None, text);
+        }
         let text = tables::pressure(design, flows, &fingerprint)?;
         let role = "pressure at the design lift, without friction";
         self.add("tables/pressure.csv".to_owned(), "csv", role, None, text);

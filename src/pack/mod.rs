@@ -9,6 +9,7 @@ mod error;
 mod friction;
 mod manifest;
 mod sheet;
+mod strength;
 mod tables;
 mod write;
 

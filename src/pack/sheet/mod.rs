@@ -5,6 +5,7 @@
 mod boat;
 mod flow;
 mod shape;
+mod strength;
 mod work;
 
 use std::fmt::Write as _;
@@ -25,6 +26,7 @@ pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[
     cautions(&mut body);
     shape::shape(&mut body, design, planform, stations, pattern);
     shape::wood(&mut body, design, stations, pieces);
+    strength::strength(&mut body, design, &aids.strength);
     if let Some(foil) = duty {
         boat::under_the_boat(&mut body, design, foil);
     }
@@ -64,8 +66,8 @@ fn cautions(body: &mut String) {
         "<div class=\"caution\"><strong>Before you start.</strong> Sanding dust of wood, filler and fibre harms the lungs: \
          mask and extraction. Uncured resin and hardener harm skin and eyes: gloves, goggles, air, and their data sheets; a \
          pot of mixed resin can catch fire. Guard and clamp for every cutter, and a dry run above the wood for a new file. \
-         A foil at speed cuts: keep swimmers away, wear helmet and vest, start in sheltered water with a chase boat. This sheet \
-         checks shapes and flow without friction. It says nothing yet of drag, stall, cavitation, ventilation, waves or \
-         strength, and is no certificate: local rules and qualified advice come first.</div>\n",
+         A foil at speed cuts: keep swimmers away, wear helmet and vest, start in sheltered water with a chase boat. What \
+         is said here of lift, drag, cavitation and strength is computed: nothing of ventilation, waves, debris, impact or fatigue \
+         is in it, and it is no certificate: local rules and qualified advice come first.</div>\n",
     );
 }

@@ -13,6 +13,7 @@ mod reader;
 mod resolve;
 mod schema;
 mod starter;
+mod strength;
 mod value;
 mod wing;
 
@@ -24,6 +25,7 @@ pub use model::{
 pub use page::key_tables;
 pub use schema::schema;
 pub use starter::{SCHEMA_FILE, starter};
+pub use strength::{Case, CaseLoad, Form, Joint, Material, Strength};
 
 use crate::problems::{Problems, Wrong};
 use crate::section::Beside;

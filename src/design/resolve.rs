@@ -8,6 +8,7 @@ use super::model::{
     Paper, PaperSize, Ply, PlySide, Printer, Router, Station, Stock, Wood,
 };
 use super::reader::{Row, Sheet};
+use super::strength;
 use crate::problems::{Problems, Wrong};
 use crate::section::{Beside, Finish, SectionFileError};
 use crate::units::{Angle, Length, clipped};
@@ -15,7 +16,7 @@ use crate::wing::Law;
 use crate::workshop::Corners;
 
 /// Two places along the span nearer than this are one, millimetres.
-const SAME: f64 = 0.001;
+pub(super) const SAME: f64 = 0.001;
 
 /// Builds the design, or notes why it cannot be.
 ///
@@ -31,11 +32,15 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
 
     let stations = stations(sheet.all(&keys::STATION), reach.as_ref(), beside, problems);
     let templates = templates(sheet.one(&keys::TEMPLATES), reach.as_ref(), problems);
-    let flap = sheet.one(&keys::FLAP).map(|row| flap(row, reach.as_ref(), problems));
+    let flap = sheet.one(&keys::FLAP).map(|row| flap(sheet, row, reach.as_ref(), problems));
     let wood = wood(sheet.one(&keys::WOOD)?);
     let laminate = laminate(sheet.one(&keys::LAMINATE)?);
-    let plies: Vec<_> = sheet.all(&keys::PLY).iter().map(|row| ply(row, reach.as_ref(), problems)).collect();
+    let plies: Vec<_> =
+        sheet.all(&keys::PLY).iter().map(|row| ply(sheet, row, reach.as_ref(), problems)).collect();
     let cuts: Vec<_> = sheet.all(&keys::CUT).iter().map(|row| cut(row, reach.as_ref(), problems)).collect();
+    let density = wood.as_ref().map(|wood| wood.density);
+    let strength = strength::strength(sheet, reach.as_ref(), density, problems);
+    strength::refuse_halves(sheet, strength.as_ref(), problems);
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
     let top_speed = lift.as_ref().and_then(|lift| lift.top_speed);
     let duty = sheet.one(&keys::DUTY).map(|row| duty(row, kind, top_speed, problems));
@@ -76,6 +81,7 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
             Some(flap) => Some(flap?),
             None => None,
         },
+        strength: strength?,
         lift: lift?,
         duty: match duty {
             Some(duty) => Some(duty?),
@@ -112,9 +118,9 @@ fn with_stations(mut places: Vec<Length>, stations: &[Station]) -> Vec<Length> {
 }
 
 /// How far the built piece reaches, and how to say why.
-struct Reach {
-    to: Length,
-    because: String,
+pub(super) struct Reach {
+    pub(super) to: Length,
+    pub(super) because: String,
 }
 
 impl Reach {
@@ -128,7 +134,7 @@ impl Reach {
     }
 
     /// Notes when a place lies beyond the end.
-    fn holds(&self, what: &str, place: Length, span: Range<usize>, problems: &mut Problems) {
+    pub(super) fn holds(&self, what: &str, place: Length, span: Range<usize>, problems: &mut Problems) {
         if place.mm() > self.to.mm() + SAME {
             let wrong = Wrong::new(format!("{what} lies at {place}, but {}", self.because))
                 .help(format!("it lies at \"{}\" at most", self.to));
@@ -241,7 +247,7 @@ fn templates(row: Option<&Row>, reach: Option<&Reach>, problems: &mut Problems) 
     Some(places.iter().map(|(at, _)| *at).collect())
 }
 
-fn flap(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Flap> {
+fn flap(sheet: &Sheet, row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Flap> {
     let (from, to) = stretch(row, "the flap", reach, problems)?;
     let hinge = row.number("hinge")?;
     Some(Flap {
@@ -253,6 +259,7 @@ fn flap(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Fla
         down: row.angle("down")?,
         clearance: row.length("clearance")?,
         face: row.length("face")?,
+        face_material: strength::named(sheet, row, "face-material", problems),
         from,
         to,
     })
@@ -315,7 +322,7 @@ fn laminate(row: &Row) -> Option<Laminate> {
     })
 }
 
-fn ply(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply> {
+fn ply(sheet: &Sheet, row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply> {
     let (from, to) = stretch(row, "the ply", reach, problems)?;
     let (chord_from, chord_to) = (row.number("chord-from")?, row.number("chord-to")?);
     if chord_to <= chord_from {
@@ -338,6 +345,8 @@ fn ply(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply>
         to,
         chord_from,
         chord_to,
+        material: strength::named(sheet, row, "material", problems),
+        angle: row.angle("angle")?,
     })
 }
 
@@ -350,6 +359,7 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
         speed: row.number("speed")?,
         depth: row.length("depth")?,
         top_speed: row.number("top-speed"),
+        cavitation_margin: row.number("cavitation-margin")?,
         sea: row.text("water")? == "sea",
         temperature: row.number("temperature")?,
         quietness: row.number("quietness")?,

@@ -22,7 +22,8 @@ pub fn contains(points: &[Point], point: Point) -> bool {
         == 1
 }
 
-fn sides(points: &[Point]) -> impl Iterator<Item = (Point, Point)> + '_ {
+/// The sides in order, the last one back to the first corner.
+pub(crate) fn sides(points: &[Point]) -> impl Iterator<Item = (Point, Point)> + '_ {
     points.iter().zip(points.iter().cycle().skip(1)).map(|(&a, &b)| (a, b))
 }
 

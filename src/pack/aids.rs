@@ -5,6 +5,7 @@ use super::cut_pieces::{self, CutPiece};
 use super::duty::FoilDuty;
 use super::friction::{StationCurves, water};
 use super::printed::{self, Bench, StationMask};
+use super::strength::{self, PartStrength};
 use crate::design::{Cut, CutKind, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution, Water};
 use crate::geometry::{ArcPath, Point, follow_with_arcs};
@@ -30,22 +31,31 @@ pub(super) struct Aids<'a> {
     pub(super) water: Water,
     pub(super) curves: Vec<StationCurves<'a>>,
     pub(super) duty: Option<FoilDuty>,
+    /// Whether it breaks, or why nothing is said of it.
+    pub(super) strength: Result<PartStrength<'a>, String>,
     pub(super) pieces: Vec<WoodPiece>,
     /// From one template to the next of a curved foil, and how far a batten between them is from it.
     pub(super) battens: Vec<(f64, f64, f64)>,
 }
 
 impl<'a> Aids<'a> {
-    /// Works out a design, whose own foil `wing` is.
-    pub(super) fn of(design: &'a Design, wing: &'a Wing) -> Result<Self, PackError> {
+    /// Works out a design, whose own foil `wing` is, telling how many of how many lift curves are done.
+    pub(super) fn of(
+        design: &'a Design,
+        wing: &'a Wing,
+        told: &(dyn Fn(usize, usize) + Sync),
+    ) -> Result<Self, PackError> {
         let planform = wing.planform();
         let water = water(design)?;
-        let curves = StationCurves::of(design, &water)?;
+        let curves = StationCurves::of(design, &water, told)?;
+        let duty = FoilDuty::of(design, wing, &water, &curves)?;
+        let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
         let pattern = pattern(design, wing, &planform)?;
         let stations = station_aids(design, wing)?;
         let cut = cut_pieces::cut_pieces(design, &stations, &pattern)?;
         Ok(Self {
-            duty: FoilDuty::of(design, wing, &water, &curves)?,
+            strength: strength::of(design, wing, &flight, Vec::new())?,
+            duty,
             layout: cut_pieces::layout(design, &cut),
             bench: printed::bench(design, wing, &stamp(design))?,
             prints: Prints::of(design, &stations, &pattern),

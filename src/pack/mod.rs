@@ -1,6 +1,7 @@
 //! The pack: every workshop file of a design, checked, fingerprinted and written as one.
 
 mod aids;
+mod bucket;
 mod checks;
 mod contents;
 mod cut_pieces;
@@ -10,12 +11,14 @@ mod friction;
 mod manifest;
 mod printed;
 mod sheet;
+mod strength;
 mod tables;
 mod workshop_checks;
 mod write;
 
-pub use checks::{Check, run_checks};
-pub use contents::{Kinds, build};
+pub use bucket::bucket_chart;
+pub use checks::{Check, run_checks, run_checks_telling};
+pub use contents::{Kinds, build, build_telling};
 pub use error::PackError;
 pub use manifest::{Entry, Manifest};
 pub use write::write;

@@ -199,10 +199,10 @@ impl Chart {
         let frame = Frame::of(self);
         let (width, height) = frame.size();
         let mut svg = format!(
-            "<svg xmlns=\"http://www.w3.org/2000/svg\" width=\"{width}\" height=\"{height}\" viewBox=\"0 0 {width} {height}\" \
-             font-family=\"DejaVu Sans, Verdana, sans-serif\" font-size=\"15\">\n\
+            "<svg xmlns=\"http://www.w3.org/2000/svg\" role=\"img\" aria-label=\"{0}\" width=\"{width}\" height=\"{height}\" \
+             viewBox=\"0 0 {width} {height}\" font-family=\"DejaVu Sans, Verdana, sans-serif\" font-size=\"15\">\n\
              <rect width=\"{width}\" height=\"{height}\" fill=\"white\"/>\n\
-             <text x=\"{LEFT}\" y=\"24\" font-size=\"17\" font-weight=\"bold\">{}</text>\n",
+             <text x=\"{LEFT}\" y=\"24\" font-size=\"17\" font-weight=\"bold\">{0}</text>\n",
             escaped(&self.title)
         );
         if !self.subtitle.is_empty() {

@@ -16,7 +16,7 @@ pub struct Planform {
 
 impl Wing {
     /// The planform. Leading and trailing edges are the lofted noses and trailing edges, straight
-    /// from station to station.
+    /// from station to station; those of a rounded tip in short straight pieces.
     #[must_use]
     pub fn planform(&self) -> Planform {
         let edges = |at: f64| {
@@ -25,7 +25,7 @@ impl Wing {
                 (Point::new(at, shape.nose.x), Point::new(at, aft))
             })
         };
-        let (leading, trailing) = self.stations().iter().filter_map(|s| edges(s.at)).unzip();
+        let (leading, trailing) = self.even_places().into_iter().filter_map(edges).unzip();
         Planform { leading, trailing, mirrored: self.is_mirrored() }
     }
 }

@@ -10,8 +10,7 @@ use crate::parts::{Core, CutShape, Laminate, Split, WoodPiece, split};
 use crate::section::Section;
 use crate::wing::{Law, Planform, StationShape, Wing};
 use crate::workshop::{
-    Drawing, HingeLine, Mask, MaskMarks, MaskSettings, Role, Stamp, part_template, planform_pattern,
-    station_template,
+    Drawing, Mask, MaskMarks, MaskSettings, Role, Stamp, part_template, planform_pattern, station_template,
 };
 
 /// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
@@ -106,15 +105,9 @@ pub(super) fn stamp(design: &Design) -> Stamp {
     Stamp { design: design.name.clone(), fingerprint: design.fingerprint() }
 }
 
-fn hinge(design: &Design) -> Option<HingeLine> {
-    let flap = design.flap?;
-    let chord_fractions = [flap.hinge, flap.hinge_end];
-    Some(HingeLine { chord_fractions, from: flap.from.mm(), to: flap.to.mm() })
-}
-
 /// Shapes, templates and masks of every template station.
 fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
-    let (stamp, hinge) = (stamp(design), hinge(design));
+    let (stamp, hinge) = (stamp(design), design.hinge_line());
     let settings = MaskSettings {
         clearance: design.masks.clearance.mm(),
         wall: design.masks.wall.mm(),
@@ -194,7 +187,7 @@ fn wood<'a>(
 /// The pattern of the planform.
 fn pattern(design: &Design, planform: &Planform) -> Drawing {
     let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
-    planform_pattern(&stamp(design), planform, &stations, hinge(design).as_ref())
+    planform_pattern(&stamp(design), planform, &stations, design.hinge_line().as_ref())
 }
 
 /// The flow about each section that the design names, each once.

@@ -35,7 +35,6 @@ impl<'a> Core<'a> {
     pub fn of(shape: &'a StationShape<'a>, laminate: &'a Laminate) -> Result<Self, PartError> {
         let mut core = Self { shape, laminate, tail: [-1.0, 1.0], nose: [0.0, 0.0] };
         let crossings = core.crossings();
-        let none = PartError::NoCore { at: shape.at };
         // Between the sides at a place both reach: wood where the upper one is above.
         let is_wood = |[upper, lower]: [f64; 2]| {
             let (a, b) = (core.inside(upper).point, core.inside(lower).point);
@@ -46,7 +45,7 @@ impl<'a> Core<'a> {
             [end] if is_wood([0.5 * end[0], 0.5 * end[1]]) => core.tail = end,
             [front] if is_wood([0.5 * (front[0] - 1.0), 0.5 * (front[1] + 1.0)]) => core.nose = front,
             [front, end] => (core.nose, core.tail) = (front, end),
-            _ => return Err(none),
+            _ => return Err(core.none()),
         }
         core.refuse_folds()?;
         Ok(core)
@@ -102,6 +101,28 @@ impl<'a> Core<'a> {
             if thickness(middle).0 >= least { thick = middle } else { thin = middle }
         }
         Some(thickness(thin).1)
+    }
+
+    /// That there is no wood, with what the skins take up where the section is thickest.
+    fn none(&self) -> PartError {
+        let height = |share: f64| {
+            let [upper, lower] = [-share, share].map(|t| self.shape.jet(t).point);
+            upper.distance(lower)
+        };
+        let shares = (1..LOOKS).map(|i| i as f64 / LOOKS as f64);
+        let thickest = shares.max_by(|a, b| height(*a).total_cmp(&height(*b))).unwrap_or(0.5);
+        let skins = [-thickest, thickest].map(|t| self.skin(t)[0] * self.lean(t));
+        PartError::NoCore { at: self.shape.at, thickest: height(thickest), skins: skins[0] + skins[1] }
+    }
+
+    /// Greatest thickness of the wood, mm, between places of equal parameter.
+    #[must_use]
+    pub fn thickest(&self) -> f64 {
+        let thickness = |i: usize| {
+            let share = i as f64 / LOOKS as f64;
+            self.inside(self.outer(-share)).point.distance(self.inside(self.outer(share)).point)
+        };
+        (1..LOOKS).map(thickness).fold(0.0, f64::max)
     }
 
     /// Thickness of the skin in mm, square to the surface, at a parameter of the finished outline,
@@ -196,7 +217,9 @@ impl<'a> Core<'a> {
             for i in 1..LOOKS {
                 let t = from + (to - from) * i as f64 / LOOKS as f64;
                 if self.stretch(t) <= 0.0 {
-                    return Err(PartError::Folds { at: self.shape.at, x: self.shape.jet(t).point.x });
+                    let jet = self.shape.jet(t);
+                    let (skin, radius) = (self.skin(t)[0] * self.lean(t), 1.0 / jet.curvature());
+                    return Err(PartError::Folds { at: self.shape.at, x: jet.point.x, skin, radius });
                 }
             }
         }

@@ -11,7 +11,7 @@ pub use drawing::{Drawing, Label, Line, Role};
 pub use mask::{Half, Mask, MaskMarks, MaskSettings};
 pub use paper::{Page, PaperSettings, single_page, tiled};
 pub(crate) use pattern::turn;
-pub use pattern::{HingeLine, part_template, planform_pattern, station_template};
+pub use pattern::{part_template, planform_pattern, station_template};
 pub use section_picture::{section_numbers, section_picture};
 
 /// The title every aid of one design carries, so that two revisions are never mixed on the bench.

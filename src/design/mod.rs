@@ -25,11 +25,10 @@ pub use model::{
 };
 pub use page::key_tables;
 pub use schema::schema;
-pub use starter::starter;
+pub use starter::{SCHEMA_FILE, starter};
 
 use crate::problems::{Problems, Wrong};
 use crate::section::Beside;
-use toml::de::DeTable;
 
 /// The largest design file that is read, in bytes.
 pub const LARGEST_FILE: usize = 1_000_000;
@@ -66,15 +65,7 @@ fn read(text: &str, beside: &Beside<'_>, problems: &mut Problems) -> Option<Desi
         problems.add(0..0, Wrong::new(message));
         return None;
     }
-    let root = match DeTable::parse(text) {
-        Ok(root) => root,
-        Err(error) => {
-            let place = error.span().unwrap_or(0..0);
-            let message = format!("this is not TOML, the form of a design file: {}", error.message());
-            problems.add(place, Wrong::new(message));
-            return None;
-        }
-    };
+    let root = problems.toml(text, "a design file")?;
     if root.get_ref().is_empty() {
         let wrong = Wrong::new("the file holds no design: there is not one key in it")
             .help("`plankform new FILE` writes a design to start from");

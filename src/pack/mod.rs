@@ -2,13 +2,16 @@
 
 mod aids;
 mod checks;
+mod checks_wood;
 mod contents;
 mod duty;
 mod error;
 mod friction;
 mod manifest;
 mod sheet;
+mod surface;
 mod tables;
+mod wood;
 mod write;
 
 pub use checks::{Check, run_checks};

@@ -5,7 +5,7 @@
 pub enum PartError {
     /// The skins of both sides meet everywhere.
     #[error(
-        "at {at:.1} mm from the root the skins leave no wood: they take up {skins:.2} mm where the section is {thickest:.2} mm thick; take fewer plies, or a thicker section there"
+        "at {at:.1} mm from the root the skins leave no wood: they take up {skins:.2} mm where the section is {thickest:.2} mm thick; less than {:.2} mm a side would leave some, or a thicker section", 0.5 * thickest
     )]
     NoCore {
         /// Distance from the root, mm.

@@ -208,7 +208,7 @@ fn wedge(
     // Both surfaces are met with the trailing edge aft.
     let aft = if side == Side::Upper { -along } else { along };
     let skin = laminate.thickness(side, shape.at, hinge.at, shape.chord)[0];
-    let axis = surface.point + 0.5 * skin * inwards;
+    let axis = hinge.axis(shape, laminate);
     let apex = surface.point + skin * inwards;
     let closing = if side == Side::Upper { hinge.down } else { hinge.up };
     let (sin, cos) = (0.5 * closing).sin_cos();

@@ -1,5 +1,7 @@
 //! Where the hinge of a flap runs along the span.
 
+use crate::units::number;
+
 /// What the places of a hinge line are measured as.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum HingeBy {
@@ -36,6 +38,18 @@ impl HingeLine {
             HingeBy::FromNose => place,
             HingeBy::FromTrailingEdge => chord - place,
         }
+    }
+
+    /// Its places in words: "70 % of chord", "36 to 24 mm from the trailing edge".
+    #[must_use]
+    pub fn words(&self) -> String {
+        let (factor, unit) = match self.by {
+            HingeBy::Fraction => (100.0, "% of chord"),
+            HingeBy::FromNose => (1.0, "mm from the nose"),
+            HingeBy::FromTrailingEdge => (1.0, "mm from the trailing edge"),
+        };
+        let [inner, outer] = self.places.map(|place| number(factor * place, 1));
+        if inner == outer { format!("{inner} {unit}") } else { format!("{inner} to {outer} {unit}") }
     }
 
     /// Whether the flap reaches the station at `at` mm from the root.

@@ -16,6 +16,8 @@ pub struct WoodPiece {
     pub blank: [f64; 3],
     /// Volume of one, mm³.
     pub volume: f64,
+    /// How the grain runs in it. Every piece of a foil bends along the span and is longest there.
+    pub grain: &'static str,
 }
 
 /// Longest stretch of the span over which a volume is taken from three cross-sections, mm. The
@@ -135,6 +137,6 @@ impl Sum {
     fn piece(self, name: &'static str, count: usize) -> Option<WoodPiece> {
         let (bounds, [from, to]) = (self.bounds?, self.span?);
         let blank = [to - from, bounds.width(), bounds.height()];
-        Some(WoodPiece { name, count, blank, volume: self.volume })
+        Some(WoodPiece { name, count, blank, volume: self.volume, grain: "along the span" })
     }
 }

@@ -70,6 +70,21 @@ impl Planform {
         polygon::area(&self.outline()).abs()
     }
 
+    /// Area in mm² of one half, or of a foil that is all of a piece, from `from` to `to` mm along the
+    /// span.
+    #[must_use]
+    pub fn area_between(&self, from: f64, to: f64) -> f64 {
+        let mut places: Vec<f64> =
+            self.leading.iter().map(|p| p.x).filter(|at| from < *at && *at < to).collect();
+        places.insert(0, from);
+        places.push(to);
+        let chord = |at: f64| {
+            let (front, back) = self.edges(at);
+            back - front
+        };
+        places.windows(2).map(|pair| 0.5 * (pair[1] - pair[0]) * (chord(pair[0]) + chord(pair[1]))).sum()
+    }
+
     /// Tip to tip, mm.
     #[must_use]
     pub fn span(&self) -> f64 {

@@ -28,8 +28,8 @@ pub struct Tip {
 }
 
 /// Straight pieces that stand for the tip's edges where these are wanted as polygons: their area is
-/// then short by less than 1e-4 of the tip's.
-const PIECES: usize = 48;
+/// then short by less than 1e-5 of the tip's.
+const PIECES: usize = 96;
 
 impl Wing {
     /// The same foil with its end shaped.

@@ -6,9 +6,9 @@ use crate::geometry::{Curve, Vec2};
 /// Points of the two-point Gauss rule on a stretch from -1 to 1.
 const GAUSS: f64 = 0.577_350_269_189_625_8;
 /// Stretches along the outline from one end to the nose and from the nose to the other end, and along
-/// the span between two places where the loft bends.
+/// the whole span; no fewer than one between two places where the loft bends.
 const AROUND: usize = 60;
-const ALONG: usize = 8;
+const ALONG: f64 = 24.0;
 
 impl Wing {
     /// Area in mm² of the skin of one half, or of a foil that is all of a piece, from `from` to `to` mm
@@ -27,8 +27,9 @@ impl Wing {
         ends.push(to);
         let mut area = 0.0;
         for pair in ends.windows(2) {
-            let step = (pair[1] - pair[0]) / ALONG as f64;
-            for i in 0..ALONG {
+            let count = (ALONG * (pair[1] - pair[0]) / self.reach()).ceil().max(1.0);
+            let step = (pair[1] - pair[0]) / count;
+            for i in 0..count as usize {
                 for side in [-GAUSS, GAUSS] {
                     let at = pair[0] + (i as f64 + 0.5 * (1.0 + side)) * step;
                     area += 0.5 * step * self.skin_rate(at)?;

@@ -2,7 +2,7 @@
 
 use super::{Drawing, Label, Role, Stamp};
 use crate::geometry::{ArcPath, GeometryError, Point, follow_with_arcs, polygon};
-use crate::parts::{HingeBy, HingeLine};
+use crate::parts::HingeLine;
 use crate::units::number;
 use crate::wing::{Planform, StationShape};
 
@@ -22,7 +22,7 @@ const OVERRUN: f64 = 5.0;
 /// The template of one station: its outline, chord line, hinge line and what it is.
 /// Nose at the origin, trailing edge along x.
 ///
-/// `mirrored`: whether the foil lies level, in two halves; an upright one is seen from above.
+/// `level`: whether the foil lies level; an upright one is seen from above.
 /// `tolerance`: greatest distance of the contour from the exact outline, mm.
 ///
 /// # Errors
@@ -31,7 +31,7 @@ pub fn station_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
     hinge: Option<&HingeLine>,
-    mirrored: bool,
+    level: bool,
     tolerance: f64,
 ) -> Result<Drawing, GeometryError> {
     let outline = follow_with_arcs(shape, tolerance)?;
@@ -59,7 +59,7 @@ pub fn station_template(
         format!("{}, chord {:.2} mm, twist {}", shape.section_name(), shape.chord, turn(shape.twist)),
         // With x aft and the span's axis away from the eye, what stands upright in the drawing is
         // the boat's up for a level foil and its starboard side for an upright one.
-        if mirrored { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
+        if level { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
             .to_owned(),
     ];
     write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
@@ -144,14 +144,7 @@ pub fn planform_pattern(
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
             let (from, to) = (number(hinge.from, 2), number(hinge.to, 2));
-            let (factor, unit) = match hinge.by {
-                HingeBy::Fraction => (100.0, "% of chord"),
-                HingeBy::FromNose => (1.0, "mm from the nose"),
-                HingeBy::FromTrailingEdge => (1.0, "mm from the trailing edge"),
-            };
-            let [inner, outer] = hinge.places.map(|place| number(factor * place, 1));
-            let along = if inner == outer { inner } else { format!("{inner} to {outer}") };
-            format!("hinge line at {along} {unit}, {from} to {to} mm")
+            format!("hinge line at {}, {from} to {to} mm", hinge.words())
         }),
     ];
     write_block(&mut drawing, Point::new(bounds.x0, bounds.y0 - OVERRUN - GAP), &words);

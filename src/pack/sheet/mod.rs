@@ -3,6 +3,7 @@
 //! A section of it stands in a file of its own.
 
 mod boat;
+mod ends;
 mod flow;
 mod shape;
 mod work;
@@ -23,6 +24,7 @@ pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[
     heading(&mut body, design, checks);
     cautions(&mut body);
     shape::shape(&mut body, design, planform, stations, pattern);
+    ends::ends(&mut body, design, &aids.surface);
     shape::wood(&mut body, design, stations, pieces);
     if let Some(foil) = duty {
         boat::under_the_boat(&mut body, design, foil);

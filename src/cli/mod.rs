@@ -9,10 +9,10 @@ mod lift;
 mod manual;
 mod new;
 mod number_list;
+mod progress;
 mod schema;
 mod section;
 mod section_source;
-mod viscous_lift;
 
 use std::io::{self, Write};
 use std::process::ExitCode;

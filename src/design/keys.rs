@@ -4,8 +4,13 @@
 //! down. The reader, its messages, the schema for editors and the page of the hand-book all follow
 //! from them.
 
+mod strength;
+
+pub(super) use strength::{CASE, JOINT, MATERIAL, STRENGTH};
+
 use super::model::{CutKind, FlapKind, Hands, HingeFrom, Kind, PaperSize, PlySide, TipShape};
-use crate::units::{AREAL_WEIGHT, DENSITY, MASS, Quantity, SPEED, TEMPERATURE};
+use super::strength::SOURCES;
+use crate::units::{AREAL_WEIGHT, DENSITY, MASS, Quantity, SPEED, STRESS, TEMPERATURE};
 use crate::wing::Law;
 
 /// One table of the file.
@@ -338,8 +343,35 @@ pub(super) static WOOD: Table = Table {
             "Added to a blank on every side for holding and trimming.",
             "10 mm",
         ),
+        key("values", Word(SOURCES), Left(NO_STRENGTH), "Where the values below come from.", "tested"),
+        key(
+            "modulus",
+            Amount(&STRESS, 1.0, 1e5),
+            Left(NO_STRENGTH),
+            "Young's modulus along the span.",
+            "6 GPa",
+        ),
+        key(
+            "modulus-across",
+            Amount(&STRESS, 1.0, 1e5),
+            Left(NO_STRENGTH),
+            "The same square to the skin.",
+            "250 MPa",
+        ),
+        key("shear-modulus", Amount(&STRESS, 1.0, 1e5), Left(NO_STRENGTH), "Shear modulus.", "350 MPa"),
+        key("shear", Amount(&STRESS, 0.05, 1000.0), Left(NO_STRENGTH), "Shear strength.", "4 MPa"),
+        key(
+            "compression",
+            Amount(&STRESS, 0.05, 1000.0),
+            Left(NO_STRENGTH),
+            "Compressive strength square to the skin.",
+            "3 MPa",
+        ),
     ],
 };
+
+/// Words for a key without which strength is not looked at.
+const NO_STRENGTH: &str = "strength is not worked out";
 
 /// One ply.
 pub(super) static PLY: Table = Table {
@@ -388,6 +420,20 @@ pub(super) static PLY: Table = Table {
             "0.15",
         ),
         key("chord-to", Number(0.05, 1.0), Default("1"), "Where it ends along the chord.", "0.6"),
+        key(
+            "material",
+            Text(60),
+            Left(NO_STRENGTH),
+            "Name of the [[material]] that holds its values.",
+            "carbon, along the span",
+        ),
+        key(
+            "angle",
+            Angle(-90.0, 90.0),
+            Default("0 deg"),
+            "From the span to its fibre: 0 along the span or 0/90, 45 for woven cloth laid ±45.",
+            "45 deg",
+        ),
     ],
 };
 
@@ -444,6 +490,13 @@ pub(super) static FLAP: Table = Table {
             "0.5 mm",
         ),
         key("face", Length(0.0, 5.0), Default("0 mm"), "Laminate on the cut faces.", "0.3 mm"),
+        key(
+            "face-material",
+            Text(60),
+            Left("the wood alone closes the section"),
+            "Name of the [[material]] of that laminate, laid on the bias (±45).",
+            "glass twill",
+        ),
     ],
 };
 
@@ -582,6 +635,13 @@ pub(super) static LIFT: Table = Table {
             "Speed up to which the sections may not cavitate at the design lift.",
             "18 kn",
         ),
+        key(
+            "cavitation-margin",
+            Number(0.0, 2.0),
+            Default("0"),
+            "By what share the cavitation number is to stay above the greatest suction: 0.2 keeps a fifth to spare for gusts and waves.",
+            "0.2",
+        ),
         key("water", Word(&["sea", "fresh"]), Default("sea"), "Sea water, or fresh.", "sea"),
         key("temperature", Amount(&TEMPERATURE, 0.0, 30.0), Default("15 °C"), "Of the water.", "15 °C"),
         key(
@@ -693,9 +753,9 @@ pub(super) static ROUTER: Table = Table {
 };
 
 /// Every table, in the order of the hand-book.
-pub(super) static TABLES: [&Table; 16] = [
-    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &DUTY, &MASKS,
-    &PRINTER, &PAPER, &STOCK, &ROUTER,
+pub(super) static TABLES: [&Table; 20] = [
+    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &DUTY, &MATERIAL,
+    &STRENGTH, &CASE, &JOINT, &MASKS, &PRINTER, &PAPER, &STOCK, &ROUTER,
 ];
 
 impl Table {

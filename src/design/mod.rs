@@ -15,6 +15,7 @@ mod resolve_ends;
 mod resolve_wood;
 mod schema;
 mod starter;
+mod strength;
 mod value;
 mod wing;
 
@@ -26,6 +27,7 @@ pub use model::{
 pub use page::key_tables;
 pub use schema::schema;
 pub use starter::{SCHEMA_FILE, starter};
+pub use strength::{Case, CaseLoad, Form, Joint, Material, Strength};
 
 use crate::problems::{Problems, Wrong};
 use crate::section::Beside;

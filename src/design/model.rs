@@ -1,5 +1,6 @@
 //! A design as resolved from its file: every default filled in, every bound checked.
 
+use super::strength::Strength;
 use crate::section::{Finish, Section};
 use crate::units::{Angle, Length};
 use crate::wing::{Law, TipForm};
@@ -135,6 +136,8 @@ pub struct Design {
     pub cuts: Vec<Cut>,
     /// The flap, if any.
     pub flap: Option<Flap>,
+    /// What strength is held to and by which values.
+    pub strength: Strength,
     /// What the lift curves cover.
     pub lift: Lift,
     /// What it carries, if that is said.
@@ -285,6 +288,10 @@ pub struct Ply {
     pub chord_from: f64,
     /// Where it ends, 0.05 to 1.
     pub chord_to: f64,
+    /// Place of its material in [`Strength::materials`], where it names one.
+    pub material: Option<usize>,
+    /// From the span to its fibre.
+    pub angle: Angle,
 }
 
 /// How a flap is hinged.
@@ -368,6 +375,8 @@ pub struct Flap {
     pub clearance: Length,
     /// Laminate on the cut faces, 0 to 5 mm.
     pub face: Length,
+    /// Place of its material in [`Strength::materials`], where it names one.
+    pub face_material: Option<usize>,
     /// Where it begins, from the root along the span.
     pub from: Length,
     /// Where it ends, at most at [`Design::reach`].
@@ -445,6 +454,8 @@ pub struct Lift {
     pub depth: Length,
     /// Speed up to which the sections may not cavitate, m/s.
     pub top_speed: Option<f64>,
+    /// By what share the cavitation number has to stay above the greatest suction, 0 to 2.
+    pub cavitation_margin: f64,
     /// Whether the water is salt.
     pub sea: bool,
     /// Temperature of the water, °C, 0 to 30.

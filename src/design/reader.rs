@@ -175,6 +175,11 @@ impl Row {
         Self { header, values }
     }
 
+    /// Where the table is opened.
+    pub(super) fn opening(&self) -> Range<usize> {
+        self.header.clone()
+    }
+
     /// Where a value stands; for a default, where its table is opened.
     pub(super) fn place(&self, key: &str) -> Range<usize> {
         self.values.get(key).map_or_else(|| self.header.clone(), |(span, _)| span.clone())

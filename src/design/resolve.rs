@@ -9,6 +9,7 @@ use super::model::{
 use super::reader::{Row, Sheet};
 use super::resolve_ends::{case_and_waterline, hands, tip};
 use super::resolve_wood::{cut, flap, laminate, place_hinge, ply, wood};
+use super::strength;
 use crate::problems::{Problems, Wrong};
 use crate::section::{Beside, Finish, SectionFileError};
 use crate::units::{Angle, Length, clipped};
@@ -32,11 +33,15 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
 
     let stations = stations(sheet.all(&keys::STATION), reach.as_ref(), beside, problems);
     let templates = templates(sheet.one(&keys::TEMPLATES), reach.as_ref(), problems);
-    let flap = sheet.one(&keys::FLAP).map(|row| flap(row, reach.as_ref(), problems));
+    let flap = sheet.one(&keys::FLAP).map(|row| flap(sheet, row, reach.as_ref(), problems));
     let wood = wood(sheet.one(&keys::WOOD)?);
     let laminate = laminate(sheet.one(&keys::LAMINATE)?);
-    let plies: Vec<_> = sheet.all(&keys::PLY).iter().map(|row| ply(row, reach.as_ref(), problems)).collect();
+    let plies: Vec<_> =
+        sheet.all(&keys::PLY).iter().map(|row| ply(sheet, row, reach.as_ref(), problems)).collect();
     let cuts: Vec<_> = sheet.all(&keys::CUT).iter().map(|row| cut(row, reach.as_ref(), problems)).collect();
+    let density = wood.as_ref().map(|wood| wood.density);
+    let strength = strength::strength(sheet, reach.as_ref(), density, problems);
+    strength::refuse_halves(sheet, strength.as_ref(), problems);
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
     let top_speed = lift.as_ref().and_then(|lift| lift.top_speed);
     let duty = sheet.one(&keys::DUTY).map(|row| duty(row, kind, top_speed, problems));
@@ -79,6 +84,7 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
             Some(flap) => Some(flap?),
             None => None,
         },
+        strength: strength?,
         lift: lift?,
         duty: match duty {
             Some(duty) => Some(duty?),
@@ -259,6 +265,7 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
         speed: row.number("speed")?,
         depth: row.length("depth")?,
         top_speed: row.number("top-speed"),
+        cavitation_margin: row.number("cavitation-margin")?,
         sea: row.text("water")? == "sea",
         temperature: row.number("temperature")?,
         quietness: row.number("quietness")?,

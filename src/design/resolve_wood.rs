@@ -1,8 +1,9 @@
 //! From the values of a file to the wood: laminate, flap and cut-outs.
 
 use super::model::{Cut, CutKind, Design, Flap, FlapKind, HingeFrom, Laminate, Ply, PlySide, Wood};
-use super::reader::Row;
+use super::reader::{Row, Sheet};
 use super::resolve::{Reach, SAME};
+use super::strength;
 use crate::problems::{Problems, Wrong};
 use crate::units::Length;
 
@@ -22,7 +23,7 @@ pub(super) fn laminate(row: &Row) -> Option<Laminate> {
     })
 }
 
-pub(super) fn ply(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply> {
+pub(super) fn ply(sheet: &Sheet, row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply> {
     let (from, to) = stretch(row, "the ply", reach, problems)?;
     let (chord_from, chord_to) = (row.number("chord-from")?, row.number("chord-to")?);
     if chord_to <= chord_from {
@@ -45,12 +46,14 @@ pub(super) fn ply(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> 
         to,
         chord_from,
         chord_to,
+        material: strength::named(sheet, row, "material", problems),
+        angle: row.angle("angle")?,
     })
 }
 
 /// A flap as the file gives it; where its hinge is given as lengths, the fractions are filled in by
 /// [`place_hinge`] once the foil is known.
-pub(super) fn flap(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Flap> {
+pub(super) fn flap(sheet: &Sheet, row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Flap> {
     let (from, to) = stretch(row, "the flap", reach, problems)?;
     let fractions = [row.number("hinge"), row.number("hinge-end")];
     let lengths = [row.length("hinge"), row.length("hinge-end")];
@@ -87,6 +90,7 @@ pub(super) fn flap(row: &Row, reach: Option<&Reach>, problems: &mut Problems) ->
         down: row.angle("down")?,
         clearance: row.length("clearance")?,
         face: row.length("face")?,
+        face_material: strength::named(sheet, row, "face-material", problems),
         from,
         to,
     })

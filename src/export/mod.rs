@@ -1,6 +1,7 @@
 //! Writers that know a file format and nothing of foils. Each gives the bytes of one file, the
 //! same for the same input.
 
+mod axis;
 pub mod chart;
 pub mod csv;
 mod dxf;

@@ -45,7 +45,10 @@ pub fn picture(drawing: &Drawing, margin: f64) -> String {
     }
     let bounds = grown.bounds().inflate(margin * growth, margin * growth);
     let moved = grown.moved(kurbo::Affine::translate((-bounds.x0, -bounds.y0)));
-    document(bounds.width(), bounds.height()).add(group(&moved, bounds.height(), growth)).to_string()
+    // Read out by what reads pages to people.
+    let named =
+        document(bounds.width(), bounds.height()).set("role", "img").set("aria-label", &*drawing.title);
+    named.add(group(&moved, bounds.height(), growth)).to_string()
 }
 
 fn document(width: f64, height: f64) -> Document {

@@ -78,7 +78,8 @@ pub fn shared_area(points: &[Point], convex: &[Point]) -> f64 {
     area(&kept)
 }
 
-fn sides(points: &[Point]) -> impl Iterator<Item = (Point, Point)> + '_ {
+/// The sides in order, the last one back to the first corner.
+pub(crate) fn sides(points: &[Point]) -> impl Iterator<Item = (Point, Point)> + '_ {
     points.iter().zip(points.iter().cycle().skip(1)).map(|(&a, &b)| (a, b))
 }
 

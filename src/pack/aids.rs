@@ -3,6 +3,7 @@
 use super::PackError;
 use super::duty::FoilDuty;
 use super::friction::{StationCurves, water};
+use super::strength::{self, PartStrength};
 use super::surface::Surface;
 use super::wood::{self, WoodFigures};
 use crate::design::{Cut, Design};
@@ -28,24 +29,33 @@ pub(super) struct Aids<'a> {
     pub(super) water: Water,
     pub(super) curves: Vec<StationCurves<'a>>,
     pub(super) duty: Option<FoilDuty>,
+    /// Whether it breaks, or why nothing is said of it.
+    pub(super) strength: Result<PartStrength<'a>, String>,
     pub(super) pieces: Vec<WoodPiece>,
     pub(super) wood: WoodFigures<'a>,
     pub(super) surface: Surface,
 }
 
 impl<'a> Aids<'a> {
-    /// Works out a design, whose own foil `wing` is.
-    pub(super) fn of(design: &'a Design, wing: &'a Wing) -> Result<Self, PackError> {
+    /// Works out a design, whose own foil `wing` is, telling how many of how many lift curves are done.
+    pub(super) fn of(
+        design: &'a Design,
+        wing: &'a Wing,
+        told: &(dyn Fn(usize, usize) + Sync),
+    ) -> Result<Self, PackError> {
         let planform = wing.planform();
         let water = water(design)?;
-        let curves = StationCurves::of(design, &water)?;
+        let curves = StationCurves::of(design, &water, told)?;
         let wood = WoodFigures::of(design, wing)?;
         let mut stations = station_aids(design, wing)?;
         if let Some(hinge) = &wood.hinge {
             wood::turn_about_the_line(design, &hinge.axis, &mut stations);
         }
+        let duty = FoilDuty::of(design, wing, &water, &curves)?;
+        let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
         Ok(Self {
-            duty: FoilDuty::of(design, wing, &water, &curves)?,
+            strength: strength::of(design, wing, &flight, Vec::new())?,
+            duty,
             pattern: pattern(design, wing, &planform),
             planform,
             stations,

@@ -39,8 +39,19 @@ pub struct Check {
 /// # Errors
 /// When a shape cannot be made at all.
 pub fn run_checks(design: &Design) -> Result<Vec<Check>, PackError> {
+    run_checks_telling(design, &|_, _| ())
+}
+
+/// The same, telling how many of how many lift curves are done: they take the longest.
+///
+/// # Errors
+/// As [`run_checks`].
+pub fn run_checks_telling(
+    design: &Design,
+    told: &(dyn Fn(usize, usize) + Sync),
+) -> Result<Vec<Check>, PackError> {
     let wing = design.wing()?;
-    Ok(all(design, &Aids::of(design, &wing)?))
+    Ok(all(design, &Aids::of(design, &wing, told)?))
 }
 
 pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
@@ -50,6 +61,7 @@ pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     checks.extend(curves.iter().flat_map(|curves| stall(design, curves)));
     checks.extend(curves.iter().flat_map(|curves| cavitation(design, water, curves)));
     checks.extend(duty.as_ref().map(carries));
+    checks.extend(aids.strength.iter().flat_map(|part| super::strength::checks(design, part)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
     checks.extend(aids.surface.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
     checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));
@@ -163,18 +175,25 @@ fn cavitation<'a>(
     let depth = design.lift.depth.mm() * 1e-3;
     let limit = design.lift.top_speed.unwrap_or(design.lift.speed);
     let at = StationCurves::at_lift(&curves.smooth, design.lift.design);
-    let inception = at.and_then(|at| water.inception_speed(depth, at.cp_min));
+    let inception =
+        at.and_then(|at| water.inception_speed(depth, at.cp_min * (1.0 + design.lift.cavitation_margin)));
     // Where the section does not reach that lift, the check of stall says so.
     let found = at.zip(inception);
     let why = found.map_or(String::new(), |(at, speed)| {
         let depth = crate::units::number(design.lift.depth.mm(), 0);
+        let margin = design.lift.cavitation_margin;
+        let spare = if margin > 0.0 {
+            format!(", with {} % to spare", crate::units::number(100.0 * margin, 1))
+        } else {
+            String::new()
+        };
         let advice = if speed >= limit {
             ""
         } else {
             ": less lift on more area, a thinner nose or a flatter pressure raises it"
         };
         format!(
-            "speed at which the water boils at {depth} mm depth, at the design lift, where the least pressure coefficient is {:.2}{advice}",
+            "speed at which the water boils at {depth} mm depth, at the design lift, where the least pressure coefficient is {:.2}{spare}{advice}",
             at.cp_min
         )
     });

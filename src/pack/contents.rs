@@ -1,7 +1,7 @@
 //! From a design to the files of its pack, in memory.
 
 use super::aids::{self, Aids, StationAids};
-use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet, tables};
+use super::{Check, Entry, Manifest, Pack, PackError, PackFile, bucket, checks, sheet, tables};
 use crate::design::Design;
 use crate::export::{dxf, pdf, stl, svg_page};
 use crate::units::number;
@@ -33,8 +33,20 @@ impl Kinds {
 /// When a shape cannot be made or a format refuses it. A check outside its limit is no error: the
 /// pack says so.
 pub fn build(design: &Design, kinds: Kinds) -> Result<Pack, PackError> {
+    build_telling(design, kinds, &|_, _| ())
+}
+
+/// The same, telling how many of how many lift curves are done: they take the longest.
+///
+/// # Errors
+/// As [`build`].
+pub fn build_telling(
+    design: &Design,
+    kinds: Kinds,
+    told: &(dyn Fn(usize, usize) + Sync),
+) -> Result<Pack, PackError> {
     let wing = design.wing()?;
-    let aids = Aids::of(design, &wing)?;
+    let aids = Aids::of(design, &wing, told)?;
     let checks = checks::all(design, &aids);
 
     let mut files = Files { slug: design.slug(), files: Vec::new() };
@@ -161,7 +173,7 @@ impl Files {
     fn add_tables(
         &mut self,
         design: &Design,
-        Aids { stations, flows, curves, pieces, .. }: &Aids<'_>,
+        Aids { stations, flows, curves, pieces, water, strength, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let fingerprint = design.fingerprint();
         let text = tables::stations(stations, &fingerprint)?;
@@ -180,6 +192,12 @@ impl Files {
             None,
             text,
         );
+        let text = bucket::table(design, water, curves)?;
+        self.add("tables/cavitation.csv".to_owned(), "csv", "speeds of cavitation", None, text);
+        if let Ok(part) = strength {
+            let text = super::strength::table(part, &fingerprint)?;
+            self.add("tables/strength.csv".to_owned(), "csv", "strength along the span", None, text);
+        }
         let text = tables::pressure(design, flows, &fingerprint)?;
         let role = "pressure at the design lift, without friction";
         self.add("tables/pressure.csv".to_owned(), "csv", role, None, text);

@@ -5,7 +5,8 @@ use super::friction::StationCurves;
 use crate::design::{Design, Duty};
 use crate::flow::{GRAVITY, LiftCurve, Water};
 use crate::loading::{
-    CurvePoint, LiftingLine, LoadingError, SectionTable, Setting, SpanTables, SpeedPoint, State, TakeOff,
+    CurvePoint, LiftingLine, Loading, LoadingError, SectionTable, Setting, SpanTables, SpeedPoint, State,
+    TakeOff,
 };
 use crate::wing::Wing;
 
@@ -60,6 +61,17 @@ impl FoilDuty {
             named: speeds.into_iter().map(|(name, _)| name).zip(named).collect(),
             over_speeds: line.over_speeds(&tables, &state, load, range, &along),
         }))
+    }
+}
+
+impl FoilDuty {
+    /// The loads at the speeds that are named, as far as they are carried.
+    pub(super) fn flight(&self) -> Vec<(String, &Loading)> {
+        let mut flight = Vec::with_capacity(self.named.len());
+        for (name, point) in &self.named {
+            flight.extend(point.carried.as_ref().ok().map(|loading| (format!("flight, {name}"), loading)));
+        }
+        flight
     }
 }
 

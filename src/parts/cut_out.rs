@@ -53,6 +53,8 @@ pub struct CutShape {
     /// Least wood left between it and any face of the core but those that it opens, mm; negative
     /// where it goes through.
     pub wood_left: f64,
+    /// The corners of what it takes from the wood, without what its outline stands proud of a face.
+    pub taken: Vec<Point>,
     /// Convex polygons that make it up, anticlockwise.
     cells: Vec<Vec<Point>>,
 }
@@ -136,7 +138,8 @@ fn slot(core: &Core<'_>, from: Side, at: f64, width: f64, depth: f64) -> CutShap
     let floor = (0..=ALONG_SLOT).map(|i| corners[3].lerp(corners[2], i as f64 / ALONG_SLOT as f64));
     let face = face(core, other(from));
     let wood_left = floor.map(|point| left_below(&face, point, inwards)).fold(f64::INFINITY, f64::min);
-    CutShape { outline: ArcPath::polyline(corners, true), wood_left, cells: vec![corners.to_vec()] }
+    let taken = vec![corner(-1.0, 0.0), corner(1.0, 0.0), corners[2], corners[3]];
+    CutShape { outline: ArcPath::polyline(corners, true), wood_left, taken, cells: vec![corners.to_vec()] }
 }
 
 fn pocket(core: &Core<'_>, from: Side, chord: [f64; 2], depth: f64) -> CutShape {
@@ -145,18 +148,20 @@ fn pocket(core: &Core<'_>, from: Side, chord: [f64; 2], depth: f64) -> CutShape 
     // The outline runs towards the nose above and away from it below: so does the floor.
     let (begin, end) = if from == Side::Upper { (back, front) } else { (front, back) };
     let mut wood_left = f64::INFINITY;
-    let (mut rim, mut floor) = (Vec::new(), Vec::new());
+    let (mut rim, mut on_face, mut floor) = (Vec::new(), Vec::new(), Vec::new());
     for i in 0..=ALONG_POCKET {
         let jet = core.jet(begin + (end - begin) * i as f64 / ALONG_POCKET as f64);
         let inwards = jet.tangent().unwrap_or(Vec2::new(1.0, 0.0)).turn_90();
         let deep = jet.point + depth * inwards;
         wood_left = wood_left.min(left_below(&face, deep, inwards));
         rim.push(jet.point - PROUD * inwards);
+        on_face.push(jet.point);
         floor.push(deep);
     }
     let cells = (0..ALONG_POCKET).map(|i| vec![rim[i], rim[i + 1], floor[i + 1], floor[i]]).collect();
-    let outline = ArcPath::polyline(rim.into_iter().chain(floor.into_iter().rev()), true);
-    CutShape { outline, wood_left, cells }
+    let closed = |edge: Vec<Point>| edge.into_iter().chain(floor.iter().rev().copied());
+    let taken = closed(on_face).collect();
+    CutShape { outline: ArcPath::polyline(closed(rim), true), wood_left, taken, cells }
 }
 
 fn hole(core: &Core<'_>, at: f64, width: f64) -> CutShape {
@@ -173,7 +178,9 @@ fn hole(core: &Core<'_>, at: f64, width: f64) -> CutShape {
     ];
     // It opens both faces: what is left stands ahead of it and behind.
     let wood_left = (ends[0] - core.nose().x).min(core.tail().x - ends[1]);
-    CutShape { outline: ArcPath::polyline(corners, true), wood_left, cells: vec![corners.to_vec()] }
+    let faces = [Side::Lower, Side::Upper].map(|side| ends.map(|x| core.jet(root_at(core, side, x)).point));
+    let taken = vec![faces[0][0], faces[0][1], faces[1][1], faces[1][0]];
+    CutShape { outline: ArcPath::polyline(corners, true), wood_left, taken, cells: vec![corners.to_vec()] }
 }
 
 fn bore(core: &Core<'_>, at: f64, height: f64, diameter: f64) -> CutShape {
@@ -184,8 +191,8 @@ fn bore(core: &Core<'_>, at: f64, height: f64, diameter: f64) -> CutShape {
     let outline = ArcPath::new(ends.map(|point| ArcVertex { point, bulge: 1.0 }).to_vec(), true);
     let near = |side: Side| nearest(&face(core, side), centre).distance(centre);
     let wood_left = near(Side::Upper).min(near(Side::Lower)) - radius;
-    let cells = vec![outline.flattened(CHORDS)];
-    CutShape { outline, wood_left, cells }
+    let taken = outline.flattened(CHORDS);
+    CutShape { outline, wood_left, cells: vec![taken.clone()], taken }
 }
 
 /// Wood left between a point of a floor and the face below it, negative beyond that face.

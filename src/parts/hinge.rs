@@ -182,6 +182,32 @@ impl Split {
     }
 }
 
+impl Hinge {
+    /// About how far from the nose along the chord the wood of the main body ends at half its height, mm:
+    /// for its stiffness, where [`split`] gives the exact outline.
+    #[must_use]
+    pub fn main_body_ends_at(&self, shape: &StationShape<'_>, laminate: &Laminate) -> f64 {
+        let [upper, lower] = shape.roots_at(self.at).map(|root| shape.jet(root).point);
+        let height = upper.distance(lower);
+        let ahead = match self.kind {
+            HingeKind::Laminate { side } => {
+                let skin = laminate.thickness(side, shape.at, self.at, shape.chord)[0];
+                let closing = if side == Side::Upper { self.down } else { self.up };
+                0.5 * self.gap(skin, closing) + 0.5 * height * (0.5 * closing).tan()
+            }
+            HingeKind::Pin { height: share } => share.max(1.0 - share) * height + self.clearance,
+        };
+        self.at - ahead
+    }
+
+    /// Width of a laminate hinge's gap at the skin, which is `skin` mm thick, for a travel towards the open
+    /// side.
+    fn gap(&self, skin: f64, closing: f64) -> f64 {
+        let (sin, cos) = (0.5 * closing).sin_cos();
+        (self.clearance + skin * sin) / cos
+    }
+}
+
 struct Parting {
     main: Piece,
     flap: Piece,
@@ -212,7 +238,7 @@ fn wedge(
     let apex = surface.point + skin * inwards;
     let closing = if side == Side::Upper { hinge.down } else { hinge.up };
     let (sin, cos) = (0.5 * closing).sin_cos();
-    let gap = (hinge.clearance + skin * sin) / cos;
+    let gap = hinge.gap(skin, closing);
 
     // Square to the faces, away from the gap.
     let ahead = -cos * aft - sin * inwards;

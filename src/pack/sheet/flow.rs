@@ -8,6 +8,7 @@ use crate::export::chart::{Chart, Mark, Series};
 use crate::export::html::{escaped, table};
 use crate::flow::{CurvePoint, LiftCurve, PressurePoint, ViscousSolution, Water};
 use crate::pack::aids::SectionFlow;
+use crate::pack::bucket;
 use crate::pack::friction::StationCurves;
 use crate::units::number;
 
@@ -37,7 +38,8 @@ pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves
                 if is_peak { format!("{cl:.2}") } else { format!("over {cl:.2}") }
             };
             let or_dash = |value: Option<String>| value.unwrap_or("–".to_owned());
-            let inception = wanted.and_then(|w| water.inception_speed(depth, w.cp_min));
+            let inception =
+                wanted.and_then(|w| water.inception_speed(depth, w.cp_min * (1.0 + range.cavitation_margin)));
             [
                 at(&station.stations),
                 escaped(station.section.name()),
@@ -91,6 +93,20 @@ pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves
         },
     ];
     for chart in charts {
+        let _ = writeln!(body, "<figure>{}</figure>", chart.to_svg());
+    }
+}
+
+/// Up to which speed which lift is free of cavitation.
+pub(super) fn cavitation(body: &mut String, design: &Design, water: &Water, curves: &[StationCurves<'_>]) {
+    let depth = number(design.lift.depth.mm(), 0);
+    let _ = writeln!(
+        body,
+        "<h2>Cavitation</h2>\n<p>Where the suction on the foil reaches the pressure of the water above it, the water boils: lift \
+         falls, drag grows, and the surface wears. Right of a line nothing boils at {depth} mm depth; faster boats move to the left along \
+         the scale above. Air that is drawn down from the surface (ventilation) comes earlier and is not in it.</p>"
+    );
+    for chart in bucket::charts(design, water, curves) {
         let _ = writeln!(body, "<figure>{}</figure>", chart.to_svg());
     }
 }

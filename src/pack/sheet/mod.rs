@@ -6,6 +6,7 @@ mod boat;
 mod ends;
 mod flow;
 mod shape;
+mod strength;
 mod work;
 
 use std::fmt::Write as _;
@@ -14,6 +15,7 @@ use super::aids::Aids;
 use super::{Check, PackFile};
 use crate::design::Design;
 use crate::export::html::{document, escaped};
+use crate::units::knots;
 
 /// White round a picture, mm.
 const MARGIN: f64 = 4.0;
@@ -26,10 +28,12 @@ pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[
     shape::shape(&mut body, design, planform, stations, pattern);
     ends::ends(&mut body, design, &aids.surface);
     shape::wood(&mut body, design, stations, pieces);
+    strength::strength(&mut body, design, &aids.strength);
     if let Some(foil) = duty {
         boat::under_the_boat(&mut body, design, foil);
     }
     flow::friction(&mut body, design, water, curves);
+    flow::cavitation(&mut body, design, water, curves);
     flow::lift(&mut body, design, flows);
     work::steps(&mut body, design, files);
     work::check_table(&mut body, checks);
@@ -64,13 +68,8 @@ fn cautions(body: &mut String) {
         "<div class=\"caution\"><strong>Before you start.</strong> Sanding dust of wood, filler and fibre harms the lungs: \
          mask and extraction. Uncured resin and hardener harm skin and eyes: gloves, goggles, air, and their data sheets; a \
          pot of mixed resin can catch fire. Guard and clamp for every cutter, and a dry run above the wood for a new file. \
-         A foil at speed cuts: keep swimmers away, wear helmet and vest, start in sheltered water with a chase boat. This sheet \
-         checks shapes and flow without friction. It says nothing yet of drag, stall, cavitation, ventilation, waves or \
-         strength, and is no certificate: local rules and qualified advice come first.</div>\n",
+         A foil at speed cuts: keep swimmers away, wear helmet and vest, start in sheltered water with a chase boat. What \
+         is said here of lift, drag, cavitation and strength is computed: nothing of ventilation, waves, debris, impact or fatigue \
+         is in it, and it is no certificate: local rules and qualified advice come first.</div>\n",
     );
-}
-
-/// A speed in m/s in knots.
-fn knots(speed: f64) -> f64 {
-    speed * 3600.0 / 1852.0
 }

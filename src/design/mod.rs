@@ -11,6 +11,8 @@ mod page;
 mod parts;
 mod reader;
 mod resolve;
+mod resolve_ends;
+mod resolve_wood;
 mod schema;
 mod starter;
 mod strength;
@@ -19,8 +21,8 @@ mod wing;
 
 pub use crate::problems::{FileErrors as DesignErrors, Problem};
 pub use model::{
-    Cut, CutKind, Design, Duty, DxfRelease, Faces, Flap, FlapKind, Kind, Laminate, Lift, MaskShapes, Masks,
-    Paper, PaperSize, Ply, PlySide, Printer, Router, Station, Stock,
+    Cut, CutKind, Design, Duty, DxfRelease, Faces, Flap, FlapKind, Hands, HingeFrom, Kind, Laminate, Lift,
+    MaskShapes, Masks, Paper, PaperSize, Ply, PlySide, Printer, Router, Station, Stock, Tip, TipShape,
 };
 pub use page::key_tables;
 pub use schema::schema;

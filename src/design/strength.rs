@@ -180,7 +180,9 @@ pub(super) fn strength(
     problems: &mut Problems,
 ) -> Option<Strength> {
     let row = sheet.one(&keys::STRENGTH)?;
-    let held_to = row.length("held-to");
+    // What stands in a case leaves the hull where that ends.
+    let in_case = || sheet.one(&keys::PLANFORM).and_then(|planform| planform.length("in-case"));
+    let held_to = row.length("held-to").or_else(in_case);
     if let (Some(reach), Some(held)) = (reach, held_to)
         && held.mm() > reach.to.mm() - 1.0
     {

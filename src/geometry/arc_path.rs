@@ -92,6 +92,20 @@ impl ArcPath {
         Self { vertices, closed: self.closed }
     }
 
+    /// The path walked anticlockwise, if it is closed.
+    #[must_use]
+    pub fn anticlockwise(self) -> Self {
+        if !self.closed || self.area() >= 0.0 {
+            return self;
+        }
+        // A segment's bulge goes with the vertex that it now leaves.
+        let backwards = self.vertices.iter().rev();
+        let leaving = backwards.clone().skip(1).chain(backwards.clone().take(1));
+        let vertices =
+            backwards.zip(leaving).map(|(v, next)| ArcVertex { point: v.point, bulge: -next.bulge });
+        Self { vertices: vertices.collect(), closed: true }
+    }
+
     /// Signed area of a closed path in mm², positive when it runs anticlockwise.
     #[must_use]
     pub fn area(&self) -> f64 {
@@ -307,8 +321,6 @@ impl Segment {
             }
             return point.distance(self.from).min(point.distance(self.to));
         }
-        let chord = self.to - self.from;
-        let along = ((point - self.from).dot(chord) / chord.hypot2()).clamp(0.0, 1.0);
-        point.distance(self.from + along * chord)
+        point.distance(super::polygon::nearest_between(self.from, self.to, point))
     }
 }

@@ -6,14 +6,16 @@ use super::duty::FoilDuty;
 use super::friction::{StationCurves, water};
 use super::printed::{self, Bench, StationMask};
 use super::strength::{self, PartStrength};
-use crate::design::{Cut, CutKind, Design};
+use super::surface::Surface;
+use super::wood::{self, WoodFigures};
+use crate::design::{Cut, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution, Water};
-use crate::geometry::{ArcPath, Point, follow_with_arcs};
+use crate::geometry::{ArcPath, follow_with_arcs};
 use crate::parts::{Core, CutShape, Split, WoodPiece, split};
 use crate::section::Section;
-use crate::wing::{Law, Planform, StationShape, Wing};
+use crate::wing::{Planform, StationShape, Wing};
 use crate::workshop::{
-    CutTrace, Drawing, HingeLine, Layout, Page, PaperSettings, Role, Stamp, part_template, planform_pattern,
+    Drawing, Layout, Page, PaperSettings, Role, Stamp, mark_on_plan, part_template, planform_pattern,
     station_template, tiled,
 };
 
@@ -34,8 +36,8 @@ pub(super) struct Aids<'a> {
     /// Whether it breaks, or why nothing is said of it.
     pub(super) strength: Result<PartStrength<'a>, String>,
     pub(super) pieces: Vec<WoodPiece>,
-    /// From one template to the next of a curved foil, and how far a batten between them is from it.
-    pub(super) battens: Vec<(f64, f64, f64)>,
+    pub(super) wood: WoodFigures<'a>,
+    pub(super) surface: Surface,
 }
 
 impl<'a> Aids<'a> {
@@ -48,10 +50,14 @@ impl<'a> Aids<'a> {
         let planform = wing.planform();
         let water = water(design)?;
         let curves = StationCurves::of(design, &water, told)?;
+        let wood = WoodFigures::of(design, wing)?;
+        let mut stations = station_aids(design, wing)?;
+        if let Some(hinge) = &wood.hinge {
+            wood::turn_about_the_line(design, &hinge.axis, &mut stations);
+        }
         let duty = FoilDuty::of(design, wing, &water, &curves)?;
         let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
-        let pattern = pattern(design, wing, &planform)?;
-        let stations = station_aids(design, wing)?;
+        let pattern = pattern(design, wing, &planform);
         let cut = cut_pieces::cut_pieces(design, &stations, &pattern)?;
         Ok(Self {
             strength: strength::of(design, wing, &flight, Vec::new())?,
@@ -63,11 +69,12 @@ impl<'a> Aids<'a> {
             pattern,
             planform,
             stations,
+            wood,
             flows: section_flows(design)?,
             water,
             curves,
             pieces: design.pieces(wing)?,
-            battens: battens(design, wing)?,
+            surface: Surface::of(design, wing)?,
         })
     }
 }
@@ -97,15 +104,6 @@ impl Prints {
             wood: wood.flat_map(|drawing| tiled(drawing, paper)).collect(),
         }
     }
-}
-
-fn battens(design: &Design, wing: &Wing) -> Result<Vec<(f64, f64, f64)>, PackError> {
-    if design.law == Law::Straight {
-        return Ok(Vec::new());
-    }
-    let places: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
-    let gap = |pair: &[f64]| Ok((pair[0], pair[1], wing.batten_gap(pair[0], pair[1])?));
-    places.windows(2).map(gap).collect()
 }
 
 /// The aids of one template station.
@@ -161,15 +159,9 @@ pub(super) fn stamp(design: &Design) -> Stamp {
     Stamp { design: design.name.clone(), fingerprint: design.fingerprint() }
 }
 
-fn hinge(design: &Design) -> Option<HingeLine> {
-    let flap = design.flap?;
-    let chord_fractions = [flap.hinge, flap.hinge_end];
-    Some(HingeLine { chord_fractions, from: flap.from.mm(), to: flap.to.mm() })
-}
-
 /// Shapes, templates and masks of every template station.
 fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
-    let (stamp, hinge) = (stamp(design), hinge(design));
+    let (stamp, hinge) = (stamp(design), design.hinge_line());
     let skin = design.skin();
     let at_station = |at: f64| {
         let failed = |source| PackError::Shape { at, source };
@@ -177,7 +169,7 @@ fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAid
         let tolerance = design.router.tolerance.mm();
         let finished = follow_with_arcs(&shape, tolerance).map_err(failed)?;
         finished.refuse_crossings(tolerance).map_err(failed)?;
-        let template = station_template(&stamp, &shape, &finished, hinge.as_ref(), wing.is_mirrored());
+        let template = station_template(&stamp, &shape, &finished, hinge.as_ref(), design.kind.mirrored());
         let is_cut_in_wood = design.has_skin()
             || design.cuts_at(at).next().is_some()
             || design.hinge_at(at, shape.chord).is_some();
@@ -205,6 +197,11 @@ fn wood<'a>(
     wood.ends_at = core.ends_in_laminate().then(|| core.tail().x);
     wood.thin_behind = core.thin_behind(design.laminate.least_wood.mm());
     wood.cuts = design.cuts_at(shape.at).map(|(cut, shape)| (cut, shape.of(core))).collect();
+    let ends: Vec<String> = wood
+        .ends_at
+        .iter()
+        .map(|x| format!("behind {x:.1} mm from the nose there is laminate alone"))
+        .collect();
     let cuts = &wood.cuts;
     let templates = &mut wood.templates;
     let mut add = |role, ending, name, path: &ArcPath, words: &[String]| {
@@ -222,13 +219,13 @@ fn wood<'a>(
     match hinge {
         None => {
             let path = follow_with_arcs(core, tolerance).map_err(failed)?;
-            add("core template", "core", "core", &path, &[]);
+            add("core template", "core", "core", &path, &ends);
         }
         Some(hinge) => {
             let split = split(core, &hinge, tolerance)?;
             let Split { axis, .. } = split;
-            let words =
-                [format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y)];
+            let axis = format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y);
+            let words: Vec<String> = std::iter::once(axis).chain(ends).collect();
             add("main body template", "main", "main body", &split.main.core, &words);
             add("flap template", "flap", "flap", &split.flap.core, &words);
             wood.split = Some(split);
@@ -237,27 +234,12 @@ fn wood<'a>(
     Ok(wood)
 }
 
-/// The pattern of the planform, with slots and bores as they are seen from above.
-fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> Result<Drawing, PackError> {
+/// The pattern of the planform.
+fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> Drawing {
     let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
-    let skin = design.skin();
-    let mut traces = Vec::new();
-    for cut in &design.cuts {
-        let (from, to) = (cut.from.mm(), cut.to.mm());
-        let bends = design.stations.iter().map(|station| station.at.mm()).filter(|&at| from < at && at < to);
-        let mut edges = Vec::new();
-        for at in std::iter::once(from).chain(bends).chain([to]) {
-            let shape = wing.shape_at(at)?;
-            let core = Core::of(&shape, &skin)?;
-            let known = design.cuts_at(at).find(|(other, _)| std::ptr::eq(*other, cut));
-            let Some([front, back]) = known.map(|(_, cut)| cut.of(&core).mouth()) else { continue };
-            let place = |p: Point| (shape.to_foil() * p).x;
-            edges.push((at, [place(front), place(back)]));
-        }
-        let depth = (cut.kind == CutKind::Slot && cut.from_upper).then(|| cut.depth.mm());
-        traces.push(CutTrace { purpose: cut.purpose.clone(), edges, depth });
-    }
-    Ok(planform_pattern(&stamp(design), planform, &stations, hinge(design).as_ref(), &traces))
+    let mut drawing = planform_pattern(&stamp(design), planform, &stations, design.hinge_line().as_ref());
+    mark_on_plan(&mut drawing, planform, &wood::plan_marks(design, wing, planform));
+    drawing
 }
 
 /// The flow about each section that the design names, each once.

@@ -3,6 +3,7 @@
 mod aids;
 mod bucket;
 mod checks;
+mod checks_wood;
 mod contents;
 mod cut_pieces;
 mod duty;
@@ -12,7 +13,9 @@ mod manifest;
 mod printed;
 mod sheet;
 mod strength;
+mod surface;
 mod tables;
+mod wood;
 mod workshop_checks;
 mod write;
 

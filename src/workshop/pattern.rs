@@ -2,6 +2,7 @@
 
 use super::{Drawing, Label, Role, Stamp};
 use crate::geometry::{ArcPath, Point, polygon};
+use crate::parts::HingeLine;
 use crate::units::number;
 use crate::wing::{Planform, StationShape};
 
@@ -18,69 +19,18 @@ const GAP: f64 = 6.0;
 /// How far a reference line runs past the shape, mm.
 const OVERRUN: f64 = 5.0;
 
-/// Where a flap is parted from the main body.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct HingeLine {
-    /// Fractions of the chord from the nose at the flap's inner and outer end; between them it
-    /// changes evenly.
-    pub chord_fractions: [f64; 2],
-    /// Where the flap begins, mm from the root.
-    pub from: f64,
-    /// Where it ends, mm from the root.
-    pub to: f64,
-}
-
-impl HingeLine {
-    /// Fraction of the chord at `at` mm from the root.
-    #[must_use]
-    pub fn fraction_at(&self, at: f64) -> f64 {
-        let share = ((at - self.from) / (self.to - self.from)).clamp(0.0, 1.0);
-        let [inner, outer] = self.chord_fractions;
-        inner + share * (outer - inner)
-    }
-
-    /// Whether the flap reaches the station at `at` mm from the root.
-    #[must_use]
-    pub fn reaches(&self, at: f64) -> bool {
-        (self.from..=self.to).contains(&at)
-    }
-}
-
-/// A slot or a bore as it is seen from above the planform.
-#[derive(Debug, Clone, PartialEq)]
-pub struct CutTrace {
-    /// What it is for.
-    pub purpose: String,
-    /// Places along the span, mm from the root, with how far aft its front and back edge lie there.
-    pub edges: Vec<(f64, [f64; 2])>,
-    /// Depth below the face of the wood of one that is cut from above, mm.
-    pub depth: Option<f64>,
-}
-
-impl CutTrace {
-    /// Its contour on one side of a mirrored foil, anticlockwise.
-    fn contour(&self, side: f64) -> ArcPath {
-        let edge = |i: usize| self.edges.iter().map(move |(at, aft)| Point::new(side * at, -aft[i]));
-        let mut points: Vec<Point> = edge(0).chain(edge(1).rev()).collect();
-        if polygon::area(&points) < 0.0 {
-            points.reverse();
-        }
-        ArcPath::polyline(points, true)
-    }
-}
-
 /// The template of one station: its outline, chord line, hinge line and what it is.
 /// Nose at the origin, trailing edge along x.
 ///
 /// `outline`: the finished surface, followed with arcs.
-/// `mirrored`: whether the foil lies level, in two halves; an upright one is seen from above.
+/// `level`: whether the foil lies level; an upright one is seen from above.
 #[must_use]
 pub fn station_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
     outline: &ArcPath,
     hinge: Option<&HingeLine>,
-    mirrored: bool,
+    level: bool,
 ) -> Drawing {
     let bounds = outline.bounds();
     let mut drawing = Drawing::new(format!("{stamp}, station {} mm", number(shape.at, 2)));
@@ -95,7 +45,7 @@ pub fn station_template(
         drawing.write(Role::Label, Point::new(back.x + 1.0, back.y - 0.5 * SMALL), SMALL, "level");
     }
     if let Some(hinge) = hinge.filter(|hinge| hinge.reaches(shape.at)) {
-        let x = hinge.fraction_at(shape.at) * shape.chord;
+        let x = hinge.x_at(shape.at, shape.chord);
         drawing.add(Role::Reference, ArcPath::line(Point::new(x, low), Point::new(x, high)));
         drawing.write(Role::Label, Point::new(x + 1.0, high + 1.0), SMALL, "hinge line");
     }
@@ -103,7 +53,7 @@ pub fn station_template(
         stamp.to_string(),
         format!("station {} mm from the root", number(shape.at, 2)),
         format!("{}, chord {:.2} mm, twist {}", shape.section_name(), shape.chord, turn(shape.twist)),
-        seen(mirrored).to_owned(),
+        seen(level).to_owned(),
     ];
     write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
     drawing
@@ -111,8 +61,8 @@ pub fn station_template(
 
 /// Which side is up. With x aft and the span's axis away from the eye, what stands upright in the
 /// drawing is the boat's up for a level foil and its starboard side for an upright one.
-fn seen(mirrored: bool) -> &'static str {
-    if mirrored { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
+fn seen(level: bool) -> &'static str {
+    if level { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
 }
 
 /// The template of a part at one station: its own contour to cut, the finished outline for reference,
@@ -122,7 +72,7 @@ pub fn part_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
     finished: &ArcPath,
-    mirrored: bool,
+    level: bool,
     (name, part): (&str, &ArcPath),
     words: &[String],
 ) -> Drawing {
@@ -136,7 +86,7 @@ pub fn part_template(
     let mut lines = vec![stamp.to_string(), format!("station {} mm from the root", number(shape.at, 2))];
     lines.push(format!("{name}: the wood under the laminate, its grain along the span, out of this sheet"));
     lines.extend(words.iter().cloned());
-    lines.push(seen(mirrored).to_owned());
+    lines.push(seen(level).to_owned());
     lines.push("cut the full line; the broken one is the finished surface".to_owned());
     write_block(&mut drawing, Point::new(0.0, finished.bounds().y0 - OVERRUN - GAP), &lines);
     drawing
@@ -151,7 +101,6 @@ pub fn planform_pattern(
     planform: &Planform,
     stations: &[f64],
     hinge: Option<&HingeLine>,
-    cuts: &[CutTrace],
 ) -> Drawing {
     let flip = |p: Point| Point::new(p.x, -p.y);
     let mut outline: Vec<Point> = planform.outline().into_iter().map(flip).collect();
@@ -179,36 +128,26 @@ pub fn planform_pattern(
                 text: number(at, 2),
             });
         }
-        for cut in cuts {
-            let role = cut.depth.map_or(Role::Reference, Role::pocket);
-            drawing.add(role, cut.contour(side));
-        }
         if let Some(hinge) = hinge {
             let corners = planform.leading.iter().map(|corner| corner.x);
             let bends = corners.filter(|&at| hinge.from < at && at < hinge.to);
             let line = std::iter::once(hinge.from).chain(bends).chain([hinge.to]).map(|at| {
                 let (front, back) = planform.edges(at);
-                Point::new(side * at, -(front + hinge.fraction_at(at) * (back - front)))
+                Point::new(side * at, -(front + hinge.x_at(at, back - front)))
             });
             drawing.add(Role::Reference, ArcPath::polyline(line, false));
         }
     }
     grain_arrow(&mut drawing, planform);
-    let mut words = vec![
+    let words = [
         stamp.to_string(),
         format!("planform, span {} mm, leading edge up, seen from above", number(planform.span(), 2)),
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
             let (from, to) = (number(hinge.from, 2), number(hinge.to, 2));
-            let [inner, outer] = hinge.chord_fractions.map(|share| number(100.0 * share, 1));
-            let along = if inner == outer { inner } else { format!("{inner} to {outer}") };
-            format!("hinge line at {along} % of chord, {from} to {to} mm")
+            format!("hinge line at {}, {from} to {to} mm", hinge.words())
         }),
     ];
-    words.extend(cuts.iter().map(|cut| match cut.depth {
-        Some(depth) => format!("{}: {} mm below the face of the wood", cut.purpose, number(depth, 2)),
-        None => format!("{}: not cut from above", cut.purpose),
-    }));
     write_block(&mut drawing, Point::new(bounds.x0, bounds.y0 - OVERRUN - GAP), &words);
     drawing
 }

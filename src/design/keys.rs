@@ -751,7 +751,13 @@ pub(super) static PAPER: Table = Table {
     times: Times::AtMostOnce,
     doc: "The paper that templates are printed on.",
     keys: &[
-        key("size", Word(PaperSize::WORDS), Default("A4"), "The sheet.", "A4"),
+        key(
+            "size",
+            WordOrLength(PaperSize::WORDS, 200.0, 2000.0),
+            Default("A4"),
+            "The sheet, or the width of a roll.",
+            "A4",
+        ),
         key(
             "margin",
             Length(5.0, 40.0),

@@ -642,12 +642,25 @@ impl PaperSize {
 /// The paper that templates are printed on.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Paper {
-    /// The sheet.
+    /// The sheet, where it is no roll.
     pub size: PaperSize,
+    /// The width of a roll, 200 mm to 2 m.
+    pub roll: Option<Length>,
     /// What the printer leaves white along every edge, 5 to 40 mm.
     pub margin: Length,
     /// How much neighbouring sheets share, 0 to 40 mm.
     pub overlap: Length,
+}
+
+impl Paper {
+    /// Width and height, mm, upright; a roll has no end.
+    #[must_use]
+    pub fn dimensions(&self) -> [f64; 2] {
+        match (self.roll, self.size.dimensions()) {
+            (Some(width), _) => [width.mm(), f64::INFINITY],
+            (None, (width, height)) => [width.mm(), height.mm()],
+        }
+    }
 }
 
 /// The sheet that templates are routed from.

@@ -355,11 +355,18 @@ fn printer(row: &Row, problems: &mut Problems) -> Option<Printer> {
 
 fn paper(row: &Row, problems: &mut Problems) -> Option<Paper> {
     let paper = Paper {
-        size: row.text("size").and_then(PaperSize::from_word)?,
+        size: match row.length("size") {
+            Some(_) => PaperSize::A4,
+            None => row.text("size").and_then(PaperSize::from_word)?,
+        },
+        roll: row.length("size"),
         margin: row.length("margin")?,
         overlap: row.length("overlap")?,
     };
-    let (width, height) = paper.size.dimensions();
+    let (width, height) = match paper.roll {
+        Some(width) => (width, width),
+        None => paper.size.dimensions(),
+    };
     let lost = Length::from_mm(2.0 * paper.margin.mm() + paper.overlap.mm());
     leaves_room(row, lost, &[("the paper's width", width), ("the paper's height", height)], problems);
     Some(paper)

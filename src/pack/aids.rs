@@ -89,10 +89,10 @@ pub(super) struct Prints {
 
 impl Prints {
     fn of(design: &Design, stations: &[StationAids<'_>], pattern: &Drawing) -> Self {
-        let (width, height) = design.paper.size.dimensions();
+        let [width, height] = design.paper.dimensions();
         let paper = PaperSettings {
-            width: width.mm(),
-            height: height.mm(),
+            width,
+            height,
             margin: design.paper.margin.mm(),
             overlap: design.paper.overlap.mm(),
         };

@@ -58,6 +58,10 @@ class Pack:
         assert found, f"the pack has no {kind}"
         return found
 
+    def plates(self) -> list[Path]:
+        """Printed pieces that are flat plates."""
+        return [path for path in self.paths("stl") if "-cradle-" not in path.name]
+
     def sheets(self) -> list[Path]:
         found = [self.folder / f["path"] for f in self.manifest["files"] if f["role"] == SHEET]
         assert found, "the pack has no sheet of stock"

@@ -11,7 +11,6 @@ import shapely.affinity
 from shapely import Point, Polygon
 
 import curves
-import test_masks
 from conftest import FILES, WOOD
 from design_file import quantity
 
@@ -112,6 +111,8 @@ def test_two_pieces_keep_apart(wood):
 @LAMINATED
 def test_masks_close_on_the_wood(wood, pack, measured):
     """The opening of a mask for the wood lies inside of the finished surface by the skin less the clearance."""
+    import test_masks
+
     skin, _ = wood
     halves = {}
     for at, path in pack.with_role("core mask half"):

@@ -33,7 +33,7 @@ pub(super) fn pieces_and_pages(body: &mut String, design: &Design, aids: &Aids<'
 /// What is made of which files, in the order in which the bench wants it.
 fn order(body: &mut String, design: &Design, aids: &Aids<'_>, files: &[PackFile]) {
     let count = |role: &str| files.iter().filter(|file| file.role == role).count();
-    let both_halves = if design.kind.mirrored() { "; each serves both halves of the foil" } else { "" };
+    let both_halves = if design.in_halves() { "; each serves both halves of the foil" } else { "" };
     let mut rows: Vec<[String; 4]> = Vec::new();
     let mut row = |what: &str, which: &str, many: String, when: &str| {
         rows.push([(rows.len() + 1).to_string(), format!("{what}: {which}"), many, when.to_owned()]);
@@ -67,7 +67,7 @@ fn order(body: &mut String, design: &Design, aids: &Aids<'_>, files: &[PackFile]
     ] {
         if count(role) > 0 {
             // Taper and twist of a cradle run along the span.
-            let is_handed = role == "cradle" && design.kind.mirrored();
+            let is_handed = role == "cradle" && design.in_halves();
             let halves = if is_handed { "; once more, mirrored, for the other half" } else { both_halves };
             let many = format!("{}{halves}", count(role));
             row(what, which, many, when);

@@ -149,7 +149,10 @@ fn tiles_cover_the_drawing_and_join_at_their_marks() {
     // A roll takes the planform in one piece, along the roll, and no more of it than that needs.
     let roll = PaperSettings { width: 610.0, height: f64::INFINITY, ..A4 };
     let [page] = tiled(&drawing(900.0, 140.0), roll).try_into().expect("one page");
-    assert!((page.width, page.height) == (934.0, 610.0) || page.width == 610.0 && page.height > 900.0, "{page:?}");
+    assert!(
+        (page.width, page.height) == (934.0, 610.0) || page.width == 610.0 && page.height > 900.0,
+        "{page:?}"
+    );
     assert!(page.window.width() >= 900.0);
     // Two widths of it for what is wider, and each as long as it needs.
     let pages = tiled(&drawing(900.0, 700.0), roll);

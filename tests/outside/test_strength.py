@@ -77,7 +77,15 @@ def test_deflection_and_twist_follow_from_moments(part, measured):
             off = np.abs(found - given).max() / max(np.abs(given).max(), 1e-2)
             measured("deflection, off by", off)
             assert off < 5e-3, (name, way)
-        twist = np.degrees(integrated(at, t["torque_Nmm"] / t["GJ_Nmm2"]))
+        rate = t["torque_Nmm"] / t["GJ_Nmm2"]
+        if in_one_place(t["shear_across_N"]):
+            # Straight between stations, and beyond the load what the outer one says.
+            inner = rate[:-1].copy()
+            drop = np.abs(np.diff(rate)).argmax()
+            inner[drop] = rate[drop + 1]
+            twist = np.degrees(np.concatenate([[0.0], np.cumsum(0.5 * (inner + rate[1:]) * np.diff(at))]))
+        else:
+            twist = np.degrees(integrated(at, rate))
         off = np.abs(twist - t["twist_deg"]).max() / max(np.abs(t["twist_deg"]).max(), 1e-2)
         measured("twist, off by", off)
         assert off < 1e-2, name

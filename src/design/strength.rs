@@ -262,8 +262,7 @@ const CORE: [&str; 6] = ["values", "modulus", "modulus-across", "shear-modulus",
 
 /// The values of the wood: all of them, or none.
 fn core(row: &Row, density: Option<f64>, problems: &mut Problems) -> Option<CoreElastic> {
-    let given = |key: &&str| row.text(key).is_some() || row.number(key).is_some();
-    let (there, missing): (Vec<&str>, Vec<&str>) = CORE.iter().partition(|key| given(key));
+    let (there, missing): (Vec<&str>, Vec<&str>) = CORE.iter().partition(|key| row.given(key));
     if !there.is_empty() && !missing.is_empty() {
         let wrong = Wrong::new(format!("[wood] lacks {} for its strength", missing.join(", ")))
             .help("give all of them or none");

@@ -10,9 +10,8 @@ use super::friction::StationCurves;
 use super::surface::FAIRING;
 use crate::design::Design;
 use crate::flow::{LiftCurve, Water};
-use crate::geometry::{Rect, Solid};
 use crate::parts::GAP_SLACK;
-use crate::workshop::{Drawing, Half, Role};
+use crate::workshop::Role;
 
 /// One check: what was measured, where, and the limit it is held to.
 #[derive(Debug, Clone, PartialEq, Serialize)]
@@ -55,7 +54,7 @@ pub fn run_checks_telling(
 }
 
 pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
-    let Aids { stations, pattern, flows, water, curves, duty, .. } = aids;
+    let Aids { stations, flows, water, curves, duty, .. } = aids;
     let mut checks = Vec::new();
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
     checks.extend(curves.iter().flat_map(|curves| stall(design, curves)));
@@ -66,13 +65,11 @@ pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     checks.extend(aids.surface.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
     checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));
     checks.extend(checks_wood::all(design, &aids.wood));
-    checks.extend(stations.iter().flat_map(|station| printer(design, station)));
-    checks.push(stock(design, "planform pattern", pattern));
-    checks.extend(stations.iter().map(|s| stock(design, &place(s.shape.at), &s.template)));
+    checks.extend(super::workshop_checks::all(design, aids));
     checks
 }
 
-fn place(at: f64) -> String {
+pub(super) fn place(at: f64) -> String {
     format!("station {} mm", crate::units::number(at, 3))
 }
 
@@ -338,95 +335,8 @@ fn flap_gap(design: &Design, station: &StationAids<'_>) -> Option<Check> {
     })
 }
 
-/// Each plate of a mask must lie on the bed, turned as it may be, and not stand too high.
-fn printer(design: &Design, station: &StationAids<'_>) -> [Check; 2] {
-    let margin = 2.0 * design.printer.margin.mm();
-    let bed = [design.printer.bed_x, design.printer.bed_y].map(|side| side.mm() - margin);
-    let height = design.printer.bed_z.mm();
-    let plate = |half: Half, solid: &Solid| {
-        let [x, y, z] = solid.size();
-        let size = format!("{x:.2} by {y:.2} by {z:.2} mm");
-        let room = format!("{:.2} by {:.2} by {height:.2} mm, the bed less its margin", bed[0], bed[1]);
-        let flat = fits([x, y], bed);
-        let low = z <= height;
-        // What is told is what fails, and the length of the plate when nothing does.
-        let (value, limit) = if low { (x.max(y), bed[0].max(bed[1])) } else { (z, height) };
-        Check {
-            name: "mask fits the printer bed".to_owned(),
-            place: format!("{}, {} half", place(station.shape.at), half.word()),
-            value,
-            limit,
-            unit: "mm".to_owned(),
-            passed: flat && low,
-            why: match (low, flat) {
-                (true, true) => format!("{size} lies on {room}"),
-                (false, _) => format!("{size} is higher than {room}: make the masks thinner"),
-                (true, false) => format!(
-                    "{size} is larger than {room}, turned any way: take a larger bed, thinner walls or a shorter chord"
-                ),
-            },
-        }
-    };
-    [plate(Half::Upper, &station.mask.upper), plate(Half::Lower, &station.mask.lower)]
-}
-
-/// What is cut must lie on the stock sheet, either way round.
-fn stock(design: &Design, place: &str, drawing: &Drawing) -> Check {
-    let margin = 2.0 * design.stock.margin.mm();
-    let sheet = [design.stock.length, design.stock.width].map(|side| side.mm() - margin);
-    let cut = drawing.lines.iter().filter(|line| line.role == Role::CutOutside);
-    let size = cut.map(|line| line.path.bounds()).reduce(|a, b| a.union(b)).unwrap_or(Rect::ZERO).size();
-    let passed = fits([size.width, size.height], sheet);
-    Check {
-        name: "template fits the stock sheet".to_owned(),
-        place: place.to_owned(),
-        value: size.width.max(size.height),
-        limit: sheet[0].max(sheet[1]),
-        unit: "mm".to_owned(),
-        passed,
-        why: if passed {
-            format!("{:.1} by {:.1} mm lies within the sheet less its margin", size.width, size.height)
-        } else {
-            format!(
-                "{:.1} by {:.1} mm does not go on {:.0} by {:.0} mm: take a larger sheet or join two",
-                size.width, size.height, sheet[0], sheet[1]
-            )
-        },
-    }
-}
-
-/// Whether a rectangle lies within another, at any angle.
-///
-/// Source: W. B. Carver, solution to problem E 1225, American Mathematical Monthly 64 (1957); from
-/// memory.
-fn fits(piece: [f64; 2], room: [f64; 2]) -> bool {
-    let ([p, q], [a, b]) = (longer_first(piece), longer_first(room));
-    let diagonal = p * p + q * q;
-    (p <= a && q <= b)
-        || (p > a && b * diagonal >= 2.0 * p * q * a + (p * p - q * q) * (diagonal - a * a).sqrt())
-}
-
-fn longer_first([a, b]: [f64; 2]) -> [f64; 2] {
-    if a >= b { [a, b] } else { [b, a] }
-}
-
 /// The checks with those outside their limit first.
 pub(super) fn worst_first(checks: &[Check]) -> impl Iterator<Item = &Check> {
     let outside = checks.iter().filter(|check| !check.passed);
     outside.chain(checks.iter().filter(|check| check.passed))
-}
-
-#[cfg(test)]
-mod tests {
-    use super::fits;
-
-    #[test]
-    fn a_long_piece_may_lie_across_the_corners() {
-        // A thin rod goes as far as the diagonal, 311.1 for 220 square.
-        assert!(fits([311.0, 0.01], [220.0, 220.0]) && !fits([311.2, 0.01], [220.0, 220.0]));
-        // At 45 degrees a square of side s holds a piece whose sides add up to s times root two.
-        assert!(fits([250.0, 61.0], [220.0, 220.0]) && !fits([250.0, 62.0], [220.0, 220.0]));
-        assert!(fits([100.0, 220.0], [220.0, 100.0]) && !fits([100.0, 221.0], [220.0, 100.0]));
-        assert!(!fits([150.0, 150.0], [1000.0, 149.0]));
-    }
 }

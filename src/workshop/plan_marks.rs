@@ -10,6 +10,7 @@ const LETTERS: f64 = 2.8;
 /// A line on the planform; x along the span, y aft of the root's quarter chord, mm.
 #[derive(Debug, Clone, PartialEq)]
 pub struct PlanMark {
+    role: Role,
     path: ArcPath,
     words: String,
     /// Left end of the words.
@@ -20,21 +21,27 @@ impl PlanMark {
     /// Without words.
     #[must_use]
     pub fn plain(path: ArcPath) -> Self {
-        Self { path, words: String::new(), at: Point::ORIGIN }
+        Self { role: Role::Reference, path, words: String::new(), at: Point::ORIGIN }
     }
 
     /// With words just ahead of where it begins along the span.
     #[must_use]
     pub fn beside(path: ArcPath, words: String) -> Self {
         let bounds = path.bounds();
-        Self { path, words, at: Point::new(bounds.x0 + 1.0, bounds.y0 - 1.0) }
+        Self { role: Role::Reference, path, words, at: Point::new(bounds.x0 + 1.0, bounds.y0 - 1.0) }
     }
 
     /// With words behind the trailing edge.
     #[must_use]
     pub fn behind(path: ArcPath, words: String) -> Self {
         let bounds = path.bounds();
-        Self { path, words, at: Point::new(bounds.x1 + 1.0, bounds.y1) }
+        Self { role: Role::Reference, path, words, at: Point::new(bounds.x1 + 1.0, bounds.y1) }
+    }
+
+    /// The same as a contour to be cut instead of a line to mark.
+    #[must_use]
+    pub fn cut(self, role: Role) -> Self {
+        Self { role, ..self }
     }
 }
 
@@ -42,9 +49,9 @@ impl PlanMark {
 pub fn mark_on_plan(drawing: &mut Drawing, planform: &Planform, marks: &[PlanMark]) {
     for mark in marks {
         let flip = Affine::FLIP_Y;
-        drawing.add(Role::Reference, mark.path.transformed(flip));
+        drawing.add(mark.role, mark.path.transformed(flip).anticlockwise());
         if planform.is_mirrored() {
-            drawing.add(Role::Reference, mark.path.transformed(flip * Affine::FLIP_X));
+            drawing.add(mark.role, mark.path.transformed(flip * Affine::FLIP_X).anticlockwise());
         }
         if !mark.words.is_empty() {
             drawing.write(Role::Label, flip * mark.at, LETTERS, mark.words.as_str());

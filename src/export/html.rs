@@ -43,7 +43,7 @@ th { background: #eee } .good::before { content: '\\2714  ' } .bad { font-weight
 code { font-size: 15px } svg { max-width: 100%; height: auto } tr.marked { background: #ddd; font-weight: bold }
 @media print {
   body { margin: 0; padding: 0; font-size: 11pt } h2 { break-after: avoid } figure, tr { break-inside: avoid }
-  table { display: table; width: 100%; font-size: 8.5pt; overflow-wrap: anywhere } th, td { padding: .15rem .3rem }
+  table { display: table; width: 100%; font-size: 8.5pt; overflow-wrap: break-word } th, td { padding: .15rem .3rem }
   svg { max-height: 22cm }
 }
 ";

@@ -182,8 +182,9 @@ pub(super) fn strength(
     let row = sheet.one(&keys::STRENGTH)?;
     // What stands in a case leaves the hull where that ends.
     let in_case = || sheet.one(&keys::PLANFORM).and_then(|planform| planform.length("in-case"));
-    let held_to = row.length("held-to").or_else(in_case);
-    if let (Some(reach), Some(held)) = (reach, held_to)
+    let named = row.length("held-to");
+    let held_to = named.or_else(in_case);
+    if let (Some(reach), Some(held)) = (reach, named)
         && held.mm() > reach.to.mm() - 1.0
     {
         let wrong = Wrong::new(format!("held-to is {held}, and {}: nothing is left free", reach.because))

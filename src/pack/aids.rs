@@ -23,6 +23,8 @@ use crate::workshop::{
 pub(super) struct Aids<'a> {
     pub(super) planform: Planform,
     pub(super) pattern: Drawing,
+    /// What the letters on the pattern stand for.
+    pub(super) legend: Vec<String>,
     pub(super) stations: Vec<StationAids<'a>>,
     /// What the router is handed, piece by piece, and on sheets.
     pub(super) cut: Vec<CutPiece>,
@@ -55,9 +57,9 @@ impl<'a> Aids<'a> {
         if let Some(hinge) = &wood.hinge {
             wood::turn_about_the_line(design, &hinge.axis, &mut stations);
         }
+        let (pattern, legend) = pattern(design, wing, &planform);
         let duty = FoilDuty::of(design, wing, &water, &curves)?;
         let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
-        let pattern = pattern(design, wing, &planform);
         let cut = cut_pieces::cut_pieces(design, &stations, &pattern)?;
         Ok(Self {
             strength: strength::of(design, wing, &flight, Vec::new())?,
@@ -67,6 +69,7 @@ impl<'a> Aids<'a> {
             prints: Prints::of(design, &stations, &pattern),
             cut,
             pattern,
+            legend,
             planform,
             stations,
             wood,
@@ -234,12 +237,12 @@ fn wood<'a>(
     Ok(wood)
 }
 
-/// The pattern of the planform.
-fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> Drawing {
+/// The pattern of the planform, and what the letters on it stand for.
+fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> (Drawing, Vec<String>) {
     let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
     let mut drawing = planform_pattern(&stamp(design), planform, &stations, design.hinge_line().as_ref());
-    mark_on_plan(&mut drawing, planform, &wood::plan_marks(design, wing, planform));
-    drawing
+    let legend = mark_on_plan(&mut drawing, planform, &wood::plan_marks(design, wing, planform));
+    (drawing, legend)
 }
 
 /// The flow about each section that the design names, each once.

@@ -4,13 +4,15 @@
 //! down. The reader, its messages, the schema for editors and the page of the hand-book all follow
 //! from them.
 
+mod boat;
 mod strength;
 
+pub(super) use boat::{BOAT, DUTY, WEIGHT};
 pub(super) use strength::{CASE, JOINT, MATERIAL, STRENGTH};
 
-use super::model::{CutKind, FlapKind, Kind, PaperSize, PlySide};
+use super::model::{CutKind, FlapKind, Hands, HingeFrom, Kind, PaperSize, PlySide, TipShape};
 use super::strength::SOURCES;
-use crate::units::{AREAL_WEIGHT, DENSITY, MASS, Quantity, SPEED, STRESS, TEMPERATURE};
+use crate::units::{AREAL_WEIGHT, DENSITY, Quantity, SPEED, STRESS, TEMPERATURE};
 use crate::wing::Law;
 
 /// One table of the file.
@@ -62,6 +64,8 @@ pub(super) enum Takes {
     Word(&'static [&'static str]),
     /// One of these words, or a length within these, millimetres.
     WordOrLength(&'static [&'static str], f64, f64),
+    /// A number within the first two, or a length within the last two, millimetres.
+    NumberOrLength([f64; 2], [f64; 2]),
     /// A length within these, millimetres.
     Length(f64, f64),
     /// Up to so many lengths, each within these, millimetres.
@@ -85,7 +89,7 @@ pub(super) enum Otherwise {
 }
 
 use Otherwise::{Default, Left, Required};
-use Takes::{Amount, Angle, Length, Lengths, Name, Number, Text, Word, WordOrLength};
+use Takes::{Amount, Angle, Length, Lengths, Name, Number, NumberOrLength, Text, Word, WordOrLength};
 
 const fn key(
     name: &'static str,
@@ -161,6 +165,55 @@ pub(super) static PLANFORM: Table = Table {
             Default("0.25"),
             "Place on the chord about which twist turns, a fraction from the nose.",
             "0.25",
+        ),
+        key(
+            "tip",
+            Word(TipShape::WORDS),
+            Default("square"),
+            "How the far end is shaped: as the last station has it, both edges rounded as an ellipse, or cut across in straight lines.",
+            "rounded",
+        ),
+        key(
+            "tip-length",
+            Length(1.0, 2000.0),
+            Left("half the last station's chord"),
+            "Over how much of the span a rounded or cut tip is shaped.",
+            "40 mm",
+        ),
+        key(
+            "tip-chord",
+            Length(5.0, 2000.0),
+            Left("a third of the last station's chord"),
+            "Chord left at the very end of a rounded or cut tip.",
+            "25 mm",
+        ),
+        key(
+            "tip-about",
+            Number(0.0, 1.0),
+            Left("0.5 for a rounded tip, 1 for a cut one"),
+            "The place on the chord towards which the tip draws together, a fraction from the nose: 1 keeps the trailing edge straight.",
+            "0.6",
+        ),
+        key(
+            "hands",
+            Word(Hands::WORDS),
+            Left("mirrored for a main foil and an elevator, one-handed for a strut and a fin"),
+            "Two parts that mirror each other, or one. The span of a one-handed foil is measured from end to end; a strut or a fin that is mirrored is made twice, as a left and a right one.",
+            "one-handed",
+        ),
+        key(
+            "in-case",
+            Length(0.0, LONGEST),
+            Default("0 mm"),
+            "How much of a strut or a fin stays in its case in the hull, from the upper end.",
+            "300 mm",
+        ),
+        key(
+            "waterline",
+            Length(0.0, LONGEST),
+            Left("where the case ends"),
+            "Where the water's surface lies on a strut or a fin under way, from the upper end.",
+            "450 mm",
         ),
     ],
 };
@@ -394,17 +447,24 @@ pub(super) static FLAP: Table = Table {
     keys: &[
         key(
             "hinge",
-            Number(0.3, 0.95),
+            NumberOrLength([0.3, 0.95], [2.0, 2000.0]),
             Required,
-            "Where the hinge lies, as a fraction of the chord from the nose.",
+            "Where the hinge lies: a fraction of the chord from the nose, or a length along the chord.",
             "0.7",
         ),
         key(
             "hinge-end",
-            Number(0.3, 0.95),
+            NumberOrLength([0.3, 0.95], [2.0, 2000.0]),
             Left("as hinge"),
             "The same at the flap's outer end; between the two it changes evenly.",
             "0.72",
+        ),
+        key(
+            "hinge-from",
+            Word(HingeFrom::WORDS),
+            Default("nose"),
+            "Where a hinge that is given as a length is measured from.",
+            "trailing-edge",
         ),
         FROM,
         TO,
@@ -439,37 +499,7 @@ pub(super) static FLAP: Table = Table {
             "Name of the [[material]] of that laminate, laid on the bias (±45).",
             "glass twill",
         ),
-    ],
-};
-
-/// What the foil is asked to carry.
-pub(super) static DUTY: Table = Table {
-    name: "duty",
-    times: Times::Absent,
-    doc: "What a level foil carries under its boat, for a main foil or an elevator.",
-    keys: &[
-        key(
-            "carries",
-            Amount(&MASS, 1.0, 5000.0),
-            Required,
-            "Mass that this foil carries in flight: its share of boat, crew and rig.",
-            "150 kg",
-        ),
-        key("take-off", Amount(&SPEED, 0.5, 20.0), Required, "Speed at which it has to carry it.", "8 kn"),
-        key(
-            "cruise",
-            Amount(&SPEED, 0.5, 25.0),
-            Left("not shown"),
-            "Speed at which it usually runs.",
-            "12 kn",
-        ),
-        key(
-            "share",
-            Number(0.3, 1.0),
-            Default("0.85"),
-            "How much of its greatest lift it may use at take-off; the rest is the margin to stall.",
-            "0.85",
-        ),
+        boat::HORN,
     ],
 };
 
@@ -477,44 +507,66 @@ pub(super) static DUTY: Table = Table {
 pub(super) static CUT: Table = Table {
     name: "cut",
     times: Times::Many(0, 40),
-    doc: "A slot or a bore along the span, in the wood: for a control rod, a tube, a spar, the bolts of a joint.",
+    doc: "What is taken out of the wood: a slot for a control rod or a tube, a bore, a pocket for a spar, a reinforcement or a joint, a hole for a bolt.",
     keys: &[
         key("for", Text(60), Required, "What it is for.", "control rod"),
-        key("kind", Word(CutKind::WORDS), Required, "A slot sunk from a face, or a round bore.", "slot"),
+        key(
+            "kind",
+            Word(CutKind::WORDS),
+            Required,
+            "A slot sunk from a face, with a flat floor; a round bore along the span; a pocket whose floor follows the face; a round hole through the foil.",
+            "slot",
+        ),
+        key("along", Word(&["span", "chord"]), Default("span"), "Which way a slot runs.", "span"),
         key(
             "at",
             Number(0.02, 0.98),
-            Required,
+            Left("wanted of a bore, a hole, and a slot along the span"),
             "Its middle, as a fraction of the chord from the nose.",
             "0.3",
         ),
         key(
+            "span-at",
+            Length(0.0, LONGEST),
+            Left("wanted of a hole, and a slot along the chord"),
+            "Its middle along the span, from the root.",
+            "30 mm",
+        ),
+        key(
             "width",
             Length(0.5, 500.0),
-            Required,
-            "Width of a slot along the chord, diameter of a bore.",
+            Left("wanted of all but a pocket"),
+            "Width across a slot, diameter of a bore or a hole.",
             "8 mm",
         ),
         key(
             "depth",
             Length(0.0, 200.0),
             Default("0 mm"),
-            "Depth of a slot below the face of the wood.",
+            "Depth of a slot, a pocket or a hole below the face of the wood; a hole of no depth goes right through.",
             "6 mm",
         ),
-        key(
-            "face",
-            Word(&["upper", "lower"]),
-            Default("upper"),
-            "The face that a slot is sunk from.",
-            "upper",
-        ),
+        key("face", Word(&["upper", "lower"]), Default("upper"), "The face that it is sunk from.", "upper"),
         key(
             "height",
             Number(0.0, 1.0),
             Default("0.5"),
             "Centre of a bore between the lower (0) and the upper (1) face of the wood.",
             "0.5",
+        ),
+        key(
+            "chord-from",
+            Number(0.02, 0.98),
+            Left("wanted of a pocket, and a slot along the chord"),
+            "Where it begins along the chord, a fraction from the nose.",
+            "0.15",
+        ),
+        key(
+            "chord-to",
+            Number(0.02, 0.98),
+            Left("wanted of a pocket, and a slot along the chord"),
+            "Where it ends along the chord.",
+            "0.45",
         ),
         FROM,
         TO,
@@ -673,9 +725,9 @@ pub(super) static ROUTER: Table = Table {
 };
 
 /// Every table, in the order of the hand-book.
-pub(super) static TABLES: [&Table; 20] = [
-    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &DUTY, &MATERIAL,
-    &STRENGTH, &CASE, &JOINT, &MASKS, &PRINTER, &PAPER, &STOCK, &ROUTER,
+pub(super) static TABLES: [&Table; 22] = [
+    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &DUTY, &BOAT,
+    &WEIGHT, &MATERIAL, &STRENGTH, &CASE, &JOINT, &MASKS, &PRINTER, &PAPER, &STOCK, &ROUTER,
 ];
 
 impl Table {
@@ -704,6 +756,7 @@ impl Key {
     pub(super) fn quoted(&self, value: &str) -> String {
         match self.takes {
             Number(..) => value.to_owned(),
+            NumberOrLength(..) if value.parse::<f64>().is_ok() => value.to_owned(),
             Lengths(..) => {
                 let each: Vec<String> = value.split(", ").map(|item| format!("\"{item}\"")).collect();
                 format!("[{}]", each.join(", "))
@@ -736,6 +789,13 @@ impl Takes {
                     round_length(most)
                 )
             }
+            NumberOrLength([least, most], [shortest, longest]) => format!(
+                "a number from {} to {}, or a length from {} to {}",
+                number(least),
+                number(most),
+                round_length(shortest),
+                round_length(longest)
+            ),
             Length(least, most) => format!("a length from {} to {}", round_length(least), round_length(most)),
             Lengths(count, least, most) => format!(
                 "a list of up to {count} lengths from {} to {}",

@@ -1,9 +1,10 @@
 //! A design as resolved from its file: every default filled in, every bound checked.
 
+use super::boat::Boat;
 use super::strength::Strength;
 use crate::section::{Finish, Section};
 use crate::units::{Angle, Length};
-use crate::wing::Law;
+use crate::wing::{Law, TipForm};
 
 /// What is built.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
@@ -41,10 +42,58 @@ impl Kind {
         Self::ALL.into_iter().find(|kind| kind.word() == word)
     }
 
-    /// Whether it is made of two mirrored halves, so that the span is measured tip to tip.
+    /// Whether it lies level, and is made of two mirrored halves unless the design says otherwise.
     #[must_use]
     pub fn mirrored(self) -> bool {
         matches!(self, Self::MainFoil | Self::Elevator)
+    }
+}
+
+/// How the far end is shaped, as the file says it.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum TipShape {
+    /// As the last station has it.
+    Square,
+    /// By one of the forms of a tip.
+    Shaped(TipForm),
+}
+
+impl TipShape {
+    /// The words of the design file.
+    pub const WORDS: &'static [&'static str] = &["square", "rounded", "cut"];
+
+    /// The shape of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        [Self::Square, Self::Shaped(TipForm::Rounded), Self::Shaped(TipForm::Cut)]
+            .into_iter()
+            .zip(Self::WORDS)
+            .find(|(_, known)| **known == word)
+            .map(|(shape, _)| shape)
+    }
+}
+
+/// Whether two parts are made that mirror each other, or one.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum Hands {
+    /// Two.
+    Mirrored,
+    /// One.
+    OneHanded,
+}
+
+impl Hands {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["mirrored", "one-handed"];
+
+    /// The hands of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        [Self::Mirrored, Self::OneHanded]
+            .into_iter()
+            .zip(Self::WORDS)
+            .find(|(_, known)| **known == word)
+            .map(|(hands, _)| hands)
     }
 }
 
@@ -57,8 +106,17 @@ pub struct Design {
     pub kind: Kind,
     /// The maker's own words; they shape nothing.
     pub notes: Option<String>,
-    /// Tip to tip for mirrored kinds, from one end to the other for the rest.
+    /// Tip to tip for two halves about a root, from one end to the other for the rest.
     pub span: Length,
+    /// Whether two parts are made or one.
+    pub hands: Hands,
+    /// How the far end is shaped; `None` as the last station has it.
+    pub tip: Option<Tip>,
+    /// How much of a strut or a fin stays in its case, from the upper end; nought for what lies level.
+    pub in_case: Length,
+    /// Where the water's surface lies on a strut or a fin, from the upper end; at or below the case.
+    /// Nought for what lies level.
+    pub waterline: Length,
     /// How chord, twist, sweep and rise run between the stations.
     pub law: Law,
     /// Place on the chord about which twist turns, 0 to 1.
@@ -85,6 +143,8 @@ pub struct Design {
     pub lift: Lift,
     /// What it carries, if that is said.
     pub duty: Option<Duty>,
+    /// The boat that it is part of, if that is said.
+    pub boat: Option<Boat>,
     /// The masks that guide the sanding.
     pub masks: Masks,
     /// The printer that makes the masks.
@@ -104,11 +164,17 @@ impl Design {
         Length::from_mm(self.span.mm() / 2.0)
     }
 
-    /// From the root to the far end of what is built in one piece: half the span for mirrored
-    /// kinds, all of it for the rest. The last station lies here.
+    /// Whether it is two halves about a root, so that the span is measured tip to tip.
+    #[must_use]
+    pub fn in_halves(&self) -> bool {
+        self.kind.mirrored() && self.hands == Hands::Mirrored
+    }
+
+    /// From the root to the far end of what is built in one piece: half the span for two halves about
+    /// a root, all of it for the rest. The last station lies here.
     #[must_use]
     pub fn reach(&self) -> Length {
-        if self.kind.mirrored() { self.half_span() } else { self.span }
+        if self.in_halves() { self.half_span() } else { self.span }
     }
 
     /// The name as files carry it: "Main foil" becomes "main-foil".
@@ -139,6 +205,19 @@ pub struct Station {
     pub sweep: Length,
     /// How far it lies above the first station's.
     pub rise: Length,
+}
+
+/// A shaped far end.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Tip {
+    /// Rounded or cut.
+    pub form: TipForm,
+    /// Over how much of the span, 1 mm to 2 m.
+    pub length: Length,
+    /// Chord left at the very end, 5 mm at least.
+    pub chord: Length,
+    /// The place on the chord towards which it draws together, 0 to 1.
+    pub about: f64,
 }
 
 /// What the core is made of.
@@ -252,6 +331,30 @@ impl FlapKind {
     }
 }
 
+/// Where a hinge that is given as a length is measured from.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum HingeFrom {
+    /// The nose.
+    Nose,
+    /// The trailing edge.
+    TrailingEdge,
+}
+
+impl HingeFrom {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["nose", "trailing-edge"];
+
+    /// The place of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        [Self::Nose, Self::TrailingEdge]
+            .into_iter()
+            .zip(Self::WORDS)
+            .find(|(_, known)| **known == word)
+            .map(|(from, _)| from)
+    }
+}
+
 /// A flap.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Flap {
@@ -260,6 +363,9 @@ pub struct Flap {
     pub hinge: f64,
     /// The same at its outer end.
     pub hinge_end: f64,
+    /// Where the hinge is given as lengths: what they are measured from, and those at the inner and the
+    /// outer end. The fractions above are then those of these two places.
+    pub hinge_lengths: Option<(HingeFrom, [Length; 2])>,
     /// How it is hinged.
     pub kind: FlapKind,
     /// Height of a pin between the lower (0) and the upper (1) surface, 0.1 to 0.9.
@@ -272,6 +378,8 @@ pub struct Flap {
     pub clearance: Length,
     /// Laminate on the cut faces, 0 to 5 mm.
     pub face: Length,
+    /// From the hinge's axis to where the control rod takes hold.
+    pub horn: Option<Length>,
     /// Place of its material in [`Strength::materials`], where it names one.
     pub face_material: Option<usize>,
     /// Where it begins, from the root along the span.
@@ -283,20 +391,24 @@ pub struct Flap {
 /// What kind of cut-out.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
 pub enum CutKind {
-    /// A slot sunk from a face.
+    /// A slot sunk from a face, with a flat floor; along the chord its floor follows the face.
     Slot,
-    /// A round bore.
+    /// A round bore along the span.
     Bore,
+    /// A pocket sunk from a face, whose floor follows it.
+    Pocket,
+    /// A round hole square to the chord.
+    Hole,
 }
 
 impl CutKind {
     /// The words of the design file for them.
-    pub const WORDS: &'static [&'static str] = &["slot", "bore"];
+    pub const WORDS: &'static [&'static str] = &["slot", "bore", "pocket", "hole"];
 
     /// The kind of a word of the design file.
     #[must_use]
     pub fn from_word(word: &str) -> Option<Self> {
-        [Self::Slot, Self::Bore]
+        [Self::Slot, Self::Bore, Self::Pocket, Self::Hole]
             .into_iter()
             .zip(Self::WORDS)
             .find(|(_, known)| **known == word)
@@ -304,20 +416,23 @@ impl CutKind {
     }
 }
 
-/// A slot or a bore along the span.
+/// What is taken out of the wood.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Cut {
     /// What it is for.
     pub purpose: String,
-    /// Which of the two.
+    /// Which of them.
     pub kind: CutKind,
+    /// Where it begins and ends along the chord when it is a pocket or a slot along the chord, fractions
+    /// from the nose, 0.02 to 0.98.
+    pub chord: Option<[f64; 2]>,
     /// Its middle, a fraction of the chord from the nose, 0.02 to 0.98.
     pub at: f64,
-    /// Width of a slot, diameter of a bore, 0.5 to 500 mm.
+    /// Width of a slot, diameter of a bore or a hole, 0.5 to 500 mm; of a pocket nought.
     pub width: Length,
-    /// Depth of a slot below the face of the wood, 0 to 200 mm.
+    /// Depth below the face of the wood, 0 to 200 mm; nought for a hole that goes right through.
     pub depth: Length,
-    /// Whether a slot is sunk from the upper face.
+    /// Whether it is sunk from the upper face.
     pub from_upper: bool,
     /// Centre of a bore between the lower (0) and the upper (1) face.
     pub height: f64,
@@ -385,6 +500,12 @@ pub struct Duty {
     pub cruise: Option<f64>,
     /// How much of its greatest lift it may use at take-off, 0.3 to 1.
     pub share: f64,
+    /// Depth of its root at take-off, cruise and top speed, mm.
+    pub depths: [f64; 3],
+    /// Incidence at which it is set, where that is said.
+    pub set_at: Option<Angle>,
+    /// Least incidence left until any part of it stalls.
+    pub stall_margin: Angle,
 }
 
 /// The printed masks that guide the sanding.

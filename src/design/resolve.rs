@@ -2,12 +2,12 @@
 
 use std::ops::Range;
 
+use super::boat;
 use super::keys;
-use super::model::{
-    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
-    Printer, Router, Station, Stock, Wood,
-};
+use super::model::{Design, Hands, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
 use super::reader::{Row, Sheet};
+use super::resolve_ends::{case_and_waterline, hands, tip};
+use super::resolve_wood::{cut, flap, laminate, place_hinge, ply, wood};
 use super::strength;
 use crate::problems::{Problems, Wrong};
 use crate::section::{Beside, Finish, SectionFileError};
@@ -20,12 +20,18 @@ pub(super) const SAME: f64 = 0.001;
 /// Builds the design, or notes why it cannot be.
 ///
 /// Every part is looked at before any is given up, so that one run reports them all.
-pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems) -> Option<Design> {
+pub(super) fn design(
+    sheet: &Sheet,
+    beside: &Beside<'_>,
+    follow: bool,
+    problems: &mut Problems,
+) -> Option<Design> {
     let root = sheet.one(&keys::ROOT)?;
     let kind = root.text("kind").and_then(Kind::from_word);
-    let span = sheet.one(&keys::PLANFORM).and_then(|row| row.length("span"));
-    let reach = match (kind, span) {
-        (Some(kind), Some(span)) => Some(Reach::new(kind, span)),
+    let planform = sheet.one(&keys::PLANFORM);
+    let span = planform.and_then(|row| row.length("span"));
+    let reach = match (kind, planform, span) {
+        (Some(kind), Some(row), Some(span)) => Some(Reach::new(kind, hands(row, kind), span)),
         _ => None,
     };
 
@@ -41,8 +47,9 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let strength = strength::strength(sheet, reach.as_ref(), density, problems);
     strength::refuse_halves(sheet, strength.as_ref(), problems);
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
-    let top_speed = lift.as_ref().and_then(|lift| lift.top_speed);
-    let duty = sheet.one(&keys::DUTY).map(|row| duty(row, kind, top_speed, problems));
+    let boat = boat::boat(sheet, kind, beside, follow, problems);
+    let facts = (lift.as_ref(), reach.as_ref().map(|reach| reach.to));
+    let duty = boat::duty(sheet.one(&keys::DUTY), kind, boat.as_ref(), facts, problems);
     let masks = masks(sheet.one(&keys::MASKS)?);
     let printer = printer(sheet.one(&keys::PRINTER)?, problems);
     let paper = paper(sheet.one(&keys::PAPER)?, problems);
@@ -50,8 +57,9 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let router = router(sheet.one(&keys::ROUTER)?);
 
     let fairing = sheet.one(&keys::TEMPLATES).and_then(|row| row.length("fairing"));
-    let stations = stations?;
-    let planform = sheet.one(&keys::PLANFORM)?;
+    let (stations, planform) = (stations?, planform?);
+    let shaped = stations.last().and_then(|last| tip(planform, last, reach.as_ref(), problems));
+    let depths = case_and_waterline(planform, kind?, reach.as_ref(), problems);
     let law = planform.text("law").and_then(Law::from_word)?;
     if law == Law::Elliptic && stations.len() != 2 {
         let message =
@@ -67,7 +75,11 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         kind: kind?,
         notes: root.text("notes").map(str::to_owned),
         span: span?,
-        templates: with_stations(templates.unwrap_or_default(), &stations),
+        hands: hands(planform, kind?),
+        templates: with_stations(templates.unwrap_or_default(), &stations, shaped.map(|tip| tip.length)),
+        tip: shaped,
+        in_case: depths?[0],
+        waterline: depths?[1],
         stations,
         wood: wood?,
         laminate: laminate?,
@@ -79,16 +91,17 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         },
         strength: strength?,
         lift: lift?,
-        duty: match duty {
-            Some(duty) => Some(duty?),
-            None => None,
-        },
+        duty: duty?,
+        boat,
         masks: masks?,
         printer: printer?,
         paper: paper?,
         stock: stock?,
         router: router?,
     };
+    if let Some(row) = sheet.one(&keys::FLAP).filter(|_| problems.is_empty()) {
+        place_hinge(&mut design, row, problems);
+    }
     // What is wrong with the foil as a whole is found when it is made; here it only adds no places.
     if let Some(fairing) = fairing.filter(|_| design.law != Law::Straight)
         && problems.is_empty()
@@ -101,12 +114,14 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     Some(design)
 }
 
-/// The places named and the stations, ascending: the foil bends at a station, and a batten laid past
-/// one without a template would cut the bend off.
-fn with_stations(mut places: Vec<Length>, stations: &[Station]) -> Vec<Length> {
-    for station in stations {
-        if places.iter().all(|place| (place.mm() - station.at.mm()).abs() > SAME) {
-            places.push(station.at);
+/// The places named, the stations, and where a tip of that length begins, ascending: the foil bends at
+/// these, and a batten laid past one without a template would cut the bend off.
+fn with_stations(mut places: Vec<Length>, stations: &[Station], tip: Option<Length>) -> Vec<Length> {
+    let end = stations.last().map_or(0.0, |last| last.at.mm());
+    let begins = tip.map(|length| Length::from_mm(end - length.mm())).filter(|at| at.mm() > SAME);
+    for at in stations.iter().map(|station| station.at).chain(begins) {
+        if places.iter().all(|place| (place.mm() - at.mm()).abs() > SAME) {
+            places.push(at);
         }
     }
     places.sort_by(|a, b| a.mm().total_cmp(&b.mm()));
@@ -120,8 +135,8 @@ pub(super) struct Reach {
 }
 
 impl Reach {
-    fn new(kind: Kind, span: Length) -> Self {
-        if kind.mirrored() {
+    fn new(kind: Kind, hands: Hands, span: Length) -> Self {
+        if kind.mirrored() && hands == Hands::Mirrored {
             let to = Length::from_mm(span.mm() / 2.0);
             Self { to, because: format!("half the span of {span} is {to}") }
         } else {
@@ -171,7 +186,8 @@ fn ascending(what: &str, places: &[(Length, Range<usize>)], problems: &mut Probl
         } else {
             format!("this {what} lies at {here}, the same place as the one before it")
         };
-        let help = format!("give each {what} a place of its own, from the root outwards");
+        let help =
+            format!("give each {what} a place of its own, from the root outwards: this one beyond {before}");
         problems.add(span.clone(), Wrong::new(message).help(help));
     }
     ordered
@@ -243,109 +259,6 @@ fn templates(row: Option<&Row>, reach: Option<&Reach>, problems: &mut Problems) 
     Some(places.iter().map(|(at, _)| *at).collect())
 }
 
-fn flap(sheet: &Sheet, row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Flap> {
-    let (from, to) = stretch(row, "the flap", reach, problems)?;
-    let hinge = row.number("hinge")?;
-    Some(Flap {
-        hinge,
-        hinge_end: row.number("hinge-end").unwrap_or(hinge),
-        kind: row.text("kind").and_then(FlapKind::from_word)?,
-        axis: row.number("axis")?,
-        up: row.angle("up")?,
-        down: row.angle("down")?,
-        clearance: row.length("clearance")?,
-        face: row.length("face")?,
-        face_material: strength::named(sheet, row, "face-material", problems),
-        from,
-        to,
-    })
-}
-
-/// From where to where along the span something goes; to the far end where that is left out.
-fn stretch(
-    row: &Row,
-    what: &str,
-    reach: Option<&Reach>,
-    problems: &mut Problems,
-) -> Option<(Length, Length)> {
-    let from = row.length("from")?;
-    let to = row.length("to").or(reach.map(|reach| reach.to))?;
-    if let Some(reach) = reach {
-        reach.holds(&format!("{what}'s end"), to, row.place("to"), problems);
-    }
-    if to.mm() <= from.mm() + SAME {
-        let wrong = Wrong::new(format!("{what} runs from {from} to {to}, and leaves nothing between"))
-            .help("from lies nearer to the root than to");
-        problems.add(row.place("from"), wrong);
-    }
-    Some((from, to))
-}
-
-fn cut(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Cut> {
-    let (from, to) = stretch(row, "the cut", reach, problems)?;
-    let (kind, depth) = (row.text("kind").and_then(CutKind::from_word)?, row.length("depth")?);
-    if kind == CutKind::Slot && depth.mm() <= 0.0 {
-        let wrong = Wrong::new("a slot has a depth").help("write depth = \"6 mm\"");
-        problems.add(row.place("depth"), wrong);
-    }
-    Some(Cut {
-        purpose: row.text("for")?.to_owned(),
-        kind,
-        at: row.number("at")?,
-        width: row.length("width")?,
-        depth,
-        from_upper: row.text("face")? == "upper",
-        height: row.number("height")?,
-        from,
-        to,
-        least_left: row.length("least-left")?,
-    })
-}
-
-fn wood(row: &Row) -> Option<Wood> {
-    Some(Wood {
-        species: row.text("species")?.to_owned(),
-        density: row.number("density")?,
-        allowance: row.length("allowance")?,
-    })
-}
-
-fn laminate(row: &Row) -> Option<Laminate> {
-    Some(Laminate {
-        finish: row.length("finish")?,
-        rise: row.length("rise")?,
-        least_wood: row.length("least-wood")?,
-    })
-}
-
-fn ply(sheet: &Sheet, row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply> {
-    let (from, to) = stretch(row, "the ply", reach, problems)?;
-    let (chord_from, chord_to) = (row.number("chord-from")?, row.number("chord-to")?);
-    if chord_to <= chord_from {
-        let message =
-            format!("the ply runs from {chord_from} to {chord_to} of the chord, and leaves nothing between");
-        problems.add(
-            row.place("chord-from"),
-            Wrong::new(message).help("chord-from lies nearer to the nose than chord-to"),
-        );
-    }
-    Some(Ply {
-        cloth: row.text("cloth")?.to_owned(),
-        weight: row.number("weight")?,
-        fibre_density: row.number("fibre-density")?,
-        resin_density: row.number("resin-density")?,
-        fibre_share: row.number("fibre-share")?,
-        thickness: row.length("thickness"),
-        on: row.text("on").and_then(PlySide::from_word)?,
-        from,
-        to,
-        chord_from,
-        chord_to,
-        material: strength::named(sheet, row, "material", problems),
-        angle: row.angle("angle")?,
-    })
-}
-
 fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
     let (from, to, step): (Angle, Angle, Angle) = (row.angle("from")?, row.angle("to")?, row.angle("step")?);
     let lift = Lift {
@@ -380,25 +293,6 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
         );
     }
     Some(lift)
-}
-
-fn duty(row: &Row, kind: Option<Kind>, top: Option<f64>, problems: &mut Problems) -> Option<Duty> {
-    if kind.is_some_and(|kind| !kind.mirrored()) {
-        let wrong = Wrong::new("a duty is for a foil that lies level: a main foil or an elevator")
-            .help("leave [duty] out");
-        problems.add(row.place("carries"), wrong);
-    }
-    let (take_off, cruise) = (row.number("take-off")?, row.number("cruise"));
-    for (key, faster) in [("cruise", cruise), ("take-off", top)] {
-        if faster.is_some_and(|faster| faster <= take_off) {
-            let what = if key == "cruise" { "cruise" } else { "top-speed of [lift]" };
-            let wrong =
-                Wrong::new(format!("{what} does not lie above take-off: the speeds are out of order"))
-                    .help("take-off is the slowest of them");
-            problems.add(row.place(key), wrong);
-        }
-    }
-    Some(Duty { carries: row.number("carries")?, take_off, cruise, share: row.number("share")? })
 }
 
 fn masks(row: &Row) -> Option<Masks> {

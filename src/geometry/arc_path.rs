@@ -297,8 +297,6 @@ impl Segment {
             }
             return point.distance(self.from).min(point.distance(self.to));
         }
-        let chord = self.to - self.from;
-        let along = ((point - self.from).dot(chord) / chord.hypot2()).clamp(0.0, 1.0);
-        point.distance(self.from + along * chord)
+        point.distance(super::polygon::nearest_between(self.from, self.to, point))
     }
 }

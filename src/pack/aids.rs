@@ -4,14 +4,16 @@ use super::PackError;
 use super::duty::FoilDuty;
 use super::friction::{StationCurves, water};
 use super::strength::{self, PartStrength};
+use super::surface::Surface;
+use super::wood::{self, WoodFigures};
 use crate::design::{Cut, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution, Water};
 use crate::geometry::{ArcPath, follow_with_arcs};
 use crate::parts::{Core, CutShape, Laminate, Split, WoodPiece, split};
 use crate::section::Section;
-use crate::wing::{Law, Planform, StationShape, Wing};
+use crate::wing::{Planform, StationShape, Wing};
 use crate::workshop::{
-    Drawing, HingeLine, Mask, MaskMarks, MaskSettings, Role, Stamp, part_template, planform_pattern,
+    Drawing, Mask, MaskMarks, MaskSettings, Role, Stamp, mark_on_plan, part_template, planform_pattern,
     station_template,
 };
 
@@ -30,8 +32,8 @@ pub(super) struct Aids<'a> {
     /// Whether it breaks, or why nothing is said of it.
     pub(super) strength: Result<PartStrength<'a>, String>,
     pub(super) pieces: Vec<WoodPiece>,
-    /// From one template to the next of a curved foil, and how far a batten between them is from it.
-    pub(super) battens: Vec<(f64, f64, f64)>,
+    pub(super) wood: WoodFigures<'a>,
+    pub(super) surface: Surface,
 }
 
 impl<'a> Aids<'a> {
@@ -44,30 +46,27 @@ impl<'a> Aids<'a> {
         let planform = wing.planform();
         let water = water(design)?;
         let curves = StationCurves::of(design, &water, told)?;
+        let wood = WoodFigures::of(design, wing)?;
+        let mut stations = station_aids(design, wing)?;
+        if let Some(hinge) = &wood.hinge {
+            wood::turn_about_the_line(design, &hinge.axis, &mut stations);
+        }
         let duty = FoilDuty::of(design, wing, &water, &curves)?;
         let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
         Ok(Self {
             strength: strength::of(design, wing, &flight, Vec::new())?,
             duty,
-            pattern: pattern(design, &planform),
+            pattern: pattern(design, wing, &planform),
             planform,
-            stations: station_aids(design, wing)?,
+            stations,
+            wood,
             flows: section_flows(design)?,
             water,
             curves,
             pieces: design.pieces(wing)?,
-            battens: battens(design, wing)?,
+            surface: Surface::of(design, wing)?,
         })
     }
-}
-
-fn battens(design: &Design, wing: &Wing) -> Result<Vec<(f64, f64, f64)>, PackError> {
-    if design.law == Law::Straight {
-        return Ok(Vec::new());
-    }
-    let places: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
-    let gap = |pair: &[f64]| Ok((pair[0], pair[1], wing.batten_gap(pair[0], pair[1])?));
-    places.windows(2).map(gap).collect()
 }
 
 /// The aids of one template station.
@@ -116,15 +115,9 @@ pub(super) fn stamp(design: &Design) -> Stamp {
     Stamp { design: design.name.clone(), fingerprint: design.fingerprint() }
 }
 
-fn hinge(design: &Design) -> Option<HingeLine> {
-    let flap = design.flap?;
-    let chord_fractions = [flap.hinge, flap.hinge_end];
-    Some(HingeLine { chord_fractions, from: flap.from.mm(), to: flap.to.mm() })
-}
-
 /// Shapes, templates and masks of every template station.
 fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
-    let (stamp, hinge) = (stamp(design), hinge(design));
+    let (stamp, hinge) = (stamp(design), design.hinge_line());
     let settings = MaskSettings {
         clearance: design.masks.clearance.mm(),
         wall: design.masks.wall.mm(),
@@ -136,7 +129,7 @@ fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAid
         let failed = |source| PackError::Shape { at, source };
         let shape = wing.shape_at(at)?;
         let tolerance = design.router.tolerance.mm();
-        let template = station_template(&stamp, &shape, hinge.as_ref(), wing.is_mirrored(), tolerance)
+        let template = station_template(&stamp, &shape, hinge.as_ref(), design.kind.mirrored(), tolerance)
             .map_err(failed)?;
         let label = format!("{} {}", crate::units::number(at, 1), stamp.fingerprint);
         let mut sights = vec![0.0, shape.chord];
@@ -169,6 +162,11 @@ fn wood<'a>(
     wood.ends_at = core.ends_in_laminate().then(|| core.tail().x);
     wood.thin_behind = core.thin_behind(design.laminate.least_wood.mm());
     wood.cuts = design.cuts_at(shape.at).map(|(cut, shape)| (cut, shape.of(&core))).collect();
+    let ends: Vec<String> = wood
+        .ends_at
+        .iter()
+        .map(|x| format!("behind {x:.1} mm from the nose there is laminate alone"))
+        .collect();
     let cuts = &wood.cuts;
     let templates = &mut wood.templates;
     let mut add = |role, ending, name, path: &ArcPath, words: &[String]| {
@@ -186,13 +184,13 @@ fn wood<'a>(
     match hinge {
         None => {
             let path = follow_with_arcs(&core, tolerance).map_err(failed)?;
-            add("core template", "core", "core", &path, &[]);
+            add("core template", "core", "core", &path, &ends);
         }
         Some(hinge) => {
             let split = split(&core, &hinge, tolerance)?;
             let Split { axis, .. } = split;
-            let words =
-                [format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y)];
+            let axis = format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y);
+            let words: Vec<String> = std::iter::once(axis).chain(ends).collect();
             add("main body template", "main", "main body", &split.main.core, &words);
             add("flap template", "flap", "flap", &split.flap.core, &words);
             wood.split = Some(split);
@@ -202,9 +200,11 @@ fn wood<'a>(
 }
 
 /// The pattern of the planform.
-fn pattern(design: &Design, planform: &Planform) -> Drawing {
+fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> Drawing {
     let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
-    planform_pattern(&stamp(design), planform, &stations, hinge(design).as_ref())
+    let mut drawing = planform_pattern(&stamp(design), planform, &stations, design.hinge_line().as_ref());
+    mark_on_plan(&mut drawing, planform, &wood::plan_marks(design, wing, planform));
+    drawing
 }
 
 /// The flow about each section that the design names, each once.

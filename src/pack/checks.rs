@@ -4,11 +4,14 @@ use serde::Serialize;
 
 use super::PackError;
 use super::aids::{Aids, SectionFlow, StationAids};
+use super::checks_wood;
 use super::duty::FoilDuty;
 use super::friction::{Inception, StationCurves};
+use super::surface::FAIRING;
 use crate::design::Design;
 use crate::flow::{LiftCurve, Water};
 use crate::geometry::{Rect, Solid};
+use crate::parts::GAP_SLACK;
 use crate::workshop::{Drawing, Half, Role};
 
 /// One check: what was measured, where, and the limit it is held to.
@@ -51,10 +54,6 @@ pub fn run_checks_telling(
     Ok(all(design, &Aids::of(design, &wing, told)?))
 }
 
-/// How near to a curved design a batten is to lie where the design does not say, mm: what filler
-/// makes up without being noticed. Common practice, no source.
-const FAIRING: f64 = 0.5;
-
 pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     let Aids { stations, pattern, flows, water, curves, duty, .. } = aids;
     let mut checks = Vec::new();
@@ -64,9 +63,9 @@ pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     checks.extend(duty.as_ref().map(carries));
     checks.extend(aids.strength.iter().flat_map(|part| super::strength::checks(design, part)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
-    checks.extend(aids.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
+    checks.extend(aids.surface.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
     checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));
-    checks.extend(stations.iter().flat_map(cuts));
+    checks.extend(checks_wood::all(design, &aids.wood));
     checks.extend(stations.iter().flat_map(|station| printer(design, station)));
     checks.push(stock(design, "planform pattern", pattern));
     checks.extend(stations.iter().map(|s| stock(design, &place(s.shape.at), &s.template)));
@@ -285,29 +284,6 @@ fn least_thickness(shape: &crate::wing::StationShape<'_>) -> f64 {
         .fold(f64::INFINITY, f64::min)
 }
 
-/// Wood must be left beside every slot and bore.
-fn cuts<'a>(station: &'a StationAids<'_>) -> impl Iterator<Item = Check> + 'a {
-    station.wood.cuts.iter().map(|(cut, shape)| {
-        let limit = cut.least_left.mm();
-        let passed = shape.wood_left >= limit;
-        Check {
-            name: "wood is left beside the cut".to_owned(),
-            place: format!("{}, {}", place(station.shape.at), cut.purpose),
-            value: shape.wood_left,
-            limit,
-            unit: "mm".to_owned(),
-            passed,
-            why: match (passed, shape.wood_left > 0.0) {
-                (true, _) => "least distance from it to another face of the wood".to_owned(),
-                (_, true) => {
-                    "make it shallower or narrower, or move it to where the section is thicker".to_owned()
-                }
-                (_, false) => "it goes through the other face: it is too deep or too wide there".to_owned(),
-            },
-        }
-    })
-}
-
 /// A batten from one template to the next must lie near a curved design.
 fn batten(design: &Design, from: f64, to: f64, gap: f64) -> Check {
     let limit = design.fairing.map_or(FAIRING, |fairing| fairing.mm());
@@ -329,9 +305,6 @@ fn batten(design: &Design, from: f64, to: f64, gap: f64) -> Check {
     }
 }
 
-/// What the outlines of flap and main body may take of the clearance, mm: each is followed with arcs.
-const GAP_SLACK: f64 = 0.03;
-
 /// The flap must keep clear of the main body throughout its travel.
 fn flap_gap(design: &Design, station: &StationAids<'_>) -> Option<Check> {
     let (split, flap) = (station.wood.split.as_ref()?, design.flap?);
@@ -349,7 +322,14 @@ fn flap_gap(design: &Design, station: &StationAids<'_>) -> Option<Check> {
             "turned from {} up to {} down, the pieces come nearest at {angle:+.1}°{}",
             flap.up,
             flap.down,
-            if passed { "" } else { ": ask for less travel, or move the axis towards the middle" }
+            if passed {
+                format!("; {:.2} mm at rest", split.gap_at_rest)
+            } else {
+                let [up, down] = split.free_travel.map(f64::to_degrees);
+                format!(
+                    ": {up:.1}° up and {down:.1}° down would keep clear, or move the axis towards the middle"
+                )
+            }
         ),
     })
 }

@@ -173,13 +173,15 @@ impl Files {
     fn add_tables(
         &mut self,
         design: &Design,
-        Aids { stations, flows, curves, water, strength, .. }: &Aids<'_>,
+        Aids { stations, flows, curves, pieces, water, strength, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let fingerprint = design.fingerprint();
         let text = tables::stations(stations, &fingerprint)?;
         self.add("tables/stations.csv".to_owned(), "csv", "where each station lies", None, text);
         let text = tables::offsets(stations, &fingerprint)?;
         self.add("tables/offsets.csv".to_owned(), "csv", "table of offsets", None, text);
+        let text = tables::pieces(design, pieces, &fingerprint)?;
+        self.add("tables/pieces.csv".to_owned(), "csv", "pieces of wood", None, text);
         let text = tables::lift(design, flows, &fingerprint)?;
         self.add("tables/lift.csv".to_owned(), "csv", "lift curves without friction", None, text);
         let text = tables::friction(curves, &fingerprint)?;

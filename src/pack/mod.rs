@@ -3,6 +3,7 @@
 mod aids;
 mod bucket;
 mod checks;
+mod checks_wood;
 mod contents;
 mod duty;
 mod error;
@@ -10,7 +11,9 @@ mod friction;
 mod manifest;
 mod sheet;
 mod strength;
+mod surface;
 mod tables;
+mod wood;
 mod write;
 
 pub use bucket::bucket_chart;

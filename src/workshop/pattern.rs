@@ -2,6 +2,7 @@
 
 use super::{Drawing, Label, Role, Stamp};
 use crate::geometry::{ArcPath, GeometryError, Point, follow_with_arcs, polygon};
+use crate::parts::HingeLine;
 use crate::units::number;
 use crate::wing::{Planform, StationShape};
 
@@ -18,38 +19,10 @@ const GAP: f64 = 6.0;
 /// How far a reference line runs past the shape, mm.
 const OVERRUN: f64 = 5.0;
 
-/// Where a flap is parted from the main body.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct HingeLine {
-    /// Fractions of the chord from the nose at the flap's inner and outer end; between them it
-    /// changes evenly.
-    pub chord_fractions: [f64; 2],
-    /// Where the flap begins, mm from the root.
-    pub from: f64,
-    /// Where it ends, mm from the root.
-    pub to: f64,
-}
-
-impl HingeLine {
-    /// Fraction of the chord at `at` mm from the root.
-    #[must_use]
-    pub fn fraction_at(&self, at: f64) -> f64 {
-        let share = ((at - self.from) / (self.to - self.from)).clamp(0.0, 1.0);
-        let [inner, outer] = self.chord_fractions;
-        inner + share * (outer - inner)
-    }
-
-    /// Whether the flap reaches the station at `at` mm from the root.
-    #[must_use]
-    pub fn reaches(&self, at: f64) -> bool {
-        (self.from..=self.to).contains(&at)
-    }
-}
-
 /// The template of one station: its outline, chord line, hinge line and what it is.
 /// Nose at the origin, trailing edge along x.
 ///
-/// `mirrored`: whether the foil lies level, in two halves; an upright one is seen from above.
+/// `level`: whether the foil lies level; an upright one is seen from above.
 /// `tolerance`: greatest distance of the contour from the exact outline, mm.
 ///
 /// # Errors
@@ -58,7 +31,7 @@ pub fn station_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
     hinge: Option<&HingeLine>,
-    mirrored: bool,
+    level: bool,
     tolerance: f64,
 ) -> Result<Drawing, GeometryError> {
     let outline = follow_with_arcs(shape, tolerance)?;
@@ -76,7 +49,7 @@ pub fn station_template(
         drawing.write(Role::Label, Point::new(back.x + 1.0, back.y - 0.5 * SMALL), SMALL, "level");
     }
     if let Some(hinge) = hinge.filter(|hinge| hinge.reaches(shape.at)) {
-        let x = hinge.fraction_at(shape.at) * shape.chord;
+        let x = hinge.x_at(shape.at, shape.chord);
         drawing.add(Role::Reference, ArcPath::line(Point::new(x, low), Point::new(x, high)));
         drawing.write(Role::Label, Point::new(x + 1.0, high + 1.0), SMALL, "hinge line");
     }
@@ -86,7 +59,7 @@ pub fn station_template(
         format!("{}, chord {:.2} mm, twist {}", shape.section_name(), shape.chord, turn(shape.twist)),
         // With x aft and the span's axis away from the eye, what stands upright in the drawing is
         // the boat's up for a level foil and its starboard side for an upright one.
-        if mirrored { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
+        if level { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
             .to_owned(),
     ];
     write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
@@ -160,7 +133,7 @@ pub fn planform_pattern(
             let bends = corners.filter(|&at| hinge.from < at && at < hinge.to);
             let line = std::iter::once(hinge.from).chain(bends).chain([hinge.to]).map(|at| {
                 let (front, back) = planform.edges(at);
-                Point::new(side * at, -(front + hinge.fraction_at(at) * (back - front)))
+                Point::new(side * at, -(front + hinge.x_at(at, back - front)))
             });
             drawing.add(Role::Reference, ArcPath::polyline(line, false));
         }
@@ -171,9 +144,7 @@ pub fn planform_pattern(
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
             let (from, to) = (number(hinge.from, 2), number(hinge.to, 2));
-            let [inner, outer] = hinge.chord_fractions.map(|share| number(100.0 * share, 1));
-            let along = if inner == outer { inner } else { format!("{inner} to {outer}") };
-            format!("hinge line at {along} % of chord, {from} to {to} mm")
+            format!("hinge line at {}, {from} to {to} mm", hinge.words())
         }),
     ];
     write_block(&mut drawing, Point::new(bounds.x0, bounds.y0 - OVERRUN - GAP), &words);

@@ -140,12 +140,15 @@ def test_reference_lines_lie_where_the_label_says(pack):
 
 
 def test_planform_corners_are_the_lofted_edges(pack):
+    """Every corner is the nose or the trailing edge at its place, and no station or beginning of a tip is without one."""
     design = pack.design
     [contour] = modelspace(pack.planform("dxf")).query("*[layer=='CUT_OUTSIDE']")
     corners = np.array(contour.get_points("xy"))
-    expected = []
-    for shape in (design.shape(s.at) for s in design.stations):
+    for x, y in corners:
+        shape = design.shape(min(abs(x), design.stations[-1].at))
+        assert min(abs(-y - shape.nose[0]), abs(-y - shape.tail[0])) < 1e-4, f"corner at {x}, {y}"
+    places = [s.at for s in design.stations] + ([design.tip.begins] if design.tip else [])
+    for shape in map(design.shape, places):
         for x in (shape.nose[0], shape.tail[0]):
-            expected += [(side * shape.at, -x) for side in ((1, -1) if design.mirrored else (1,))]
-    far = np.hypot(*(np.array(expected)[:, None] - corners).T).min(axis=0)
-    assert far.max() < 1e-4, f"{far.max()} mm from a corner"
+            for side in (1, -1) if design.mirrored else (1,):
+                assert np.hypot(*(corners - [side * shape.at, -x]).T).min() < 1e-4, f"no corner at {side * shape.at}"

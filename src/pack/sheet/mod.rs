@@ -3,6 +3,7 @@
 //! A section of it stands in a file of its own.
 
 mod boat;
+mod ends;
 mod flow;
 mod shape;
 mod strength;
@@ -25,6 +26,7 @@ pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[
     heading(&mut body, design, checks);
     cautions(&mut body);
     shape::shape(&mut body, design, planform, stations, pattern);
+    ends::ends(&mut body, design, &aids.surface);
     shape::wood(&mut body, design, stations, pieces);
     strength::strength(&mut body, design, &aids.strength);
     if let Some(foil) = duty {

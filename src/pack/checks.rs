@@ -6,7 +6,7 @@ use super::PackError;
 use super::aids::{Aids, SectionFlow, StationAids};
 use super::checks_wood;
 use super::duty::FoilDuty;
-use super::friction::StationCurves;
+use super::friction::{Inception, StationCurves};
 use super::surface::FAIRING;
 use crate::design::Design;
 use crate::flow::{LiftCurve, Water};
@@ -169,14 +169,10 @@ fn cavitation<'a>(
     water: &Water,
     curves: &'a StationCurves<'_>,
 ) -> impl Iterator<Item = Check> + 'a {
-    let depth = design.lift.depth.mm() * 1e-3;
     let limit = design.lift.top_speed.unwrap_or(design.lift.speed);
-    let at = StationCurves::at_lift(&curves.smooth, design.lift.design);
-    let inception =
-        at.and_then(|at| water.inception_speed(depth, at.cp_min * (1.0 + design.lift.cavitation_margin)));
     // Where the section does not reach that lift, the check of stall says so.
-    let found = at.zip(inception);
-    let why = found.map_or(String::new(), |(at, speed)| {
+    let found = curves.cavitates(design, water);
+    let why = found.map_or(String::new(), |Inception { finish, suction, speed }| {
         let depth = crate::units::number(design.lift.depth.mm(), 0);
         let margin = design.lift.cavitation_margin;
         let spare = if margin > 0.0 {
@@ -190,11 +186,11 @@ fn cavitation<'a>(
             ": less lift on more area, a thinner nose or a flatter pressure raises it"
         };
         format!(
-            "speed at which the water boils at {depth} mm depth, at the design lift, where the least pressure coefficient is {:.2}{spare}{advice}",
-            at.cp_min
+            "speed at which the water boils at {depth} mm depth, at the design lift, where the greatest suction of the {} nose is {suction:.2}{spare}{advice}",
+            finish.word()
         )
     });
-    let stations = curves.stations.iter().filter_map(move |at| Some((at, found?.1)));
+    let stations = curves.stations.iter().filter_map(move |at| Some((at, found?.speed)));
     stations.map(move |(at, value)| Check {
         name: "the section does not cavitate".to_owned(),
         place: place(*at),

@@ -1,7 +1,7 @@
 //! Everything that a design's pack and its checks are made from, worked out once.
 
 use super::PackError;
-use super::duty::FoilDuty;
+use super::duty::{FoilDuty, strut_case};
 use super::friction::{StationCurves, water};
 use super::strength::{self, PartStrength};
 use crate::design::{Cut, Design};
@@ -40,10 +40,10 @@ impl<'a> Aids<'a> {
         let planform = wing.planform();
         let water = water(design)?;
         let curves = StationCurves::of(design, &water)?;
-        let duty = FoilDuty::of(design, wing, &water, &curves)?;
+        let duty = FoilDuty::of(design, wing, &water)?;
         let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
         Ok(Self {
-            strength: strength::of(design, wing, &flight, Vec::new())?,
+            strength: strength::of(design, wing, &flight, strut_case(design))?,
             duty,
             pattern: pattern(design, &planform),
             planform,

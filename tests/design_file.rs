@@ -82,7 +82,7 @@ fn demonstration_files_are_designs() {
     assert_eq!(foil.stations[2].twist.degrees(), -1.5);
     assert_eq!(foil.stations[2].section.name(), "NACA 2412");
     let flap = foil.flap.unwrap();
-    assert_eq!((flap.hinge, flap.from.mm(), flap.to.mm()), (0.7, 40.0, 420.0));
+    assert_eq!((flap.hinge, flap.from.mm(), flap.to.mm()), (0.7, 40.0, 400.0));
     assert_eq!(foil.lift.angles().len(), 33);
     assert_eq!(foil.lift.angles().last().unwrap().degrees(), 11.0);
 }
@@ -612,6 +612,7 @@ fn ends_agree_with_the_foil() {
     says("tip = \"cut\"\ntip-length = \"300 mm\"", 6, "\"150 mm\" is half of it");
     says("tip = \"cut\"\ntip-chord = \"150 mm\"", 6, "the last station has");
     says("in-case = \"301 mm\"", 5, "the span is 300 mm");
+    says("in-case = \"300 mm\"", 5, "nothing is left below it");
     says("in-case = \"100 mm\"\nwaterline = \"50 mm\"", 6, "\"100 mm\" or more");
     let foil =
         fin_with("\"fin\"", "\"main-foil\"").replace("\"300 mm\"\n", "\"600 mm\"\nin-case = \"10 mm\"\n");
@@ -668,7 +669,8 @@ fn examples_and_defaults_of_the_schema_are_read() {
                 let errors = bad(&text);
                 // A station by itself is rightly told that it does not lie at the root, and a name that
                 // nothing bears it.
-                let alone = ["the first station", "there is no [[material]]"];
+                let alone =
+                    ["the first station", "there is no [[material]]", "a material of unidirectional fibre"];
                 let about_it = errors.problems().iter().find(|problem| {
                     problem.line == 2 && !alone.iter().any(|start| problem.message.starts_with(start))
                 });

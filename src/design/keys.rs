@@ -4,15 +4,17 @@
 //! down. The reader, its messages, the schema for editors and the page of the hand-book all follow
 //! from them.
 
+mod boat;
 mod strength;
 
+pub(super) use boat::{BOAT, DUTY, WEIGHT};
 pub(super) use strength::{CASE, JOINT, MATERIAL, STRENGTH};
 
 use super::model::{
     CutKind, DxfRelease, Faces, FlapKind, Hands, HingeFrom, Kind, MaskShapes, PaperSize, PlySide, TipShape,
 };
 use super::strength::SOURCES;
-use crate::units::{AREAL_WEIGHT, DENSITY, MASS, Quantity, SPEED, STRESS, TEMPERATURE};
+use crate::units::{AREAL_WEIGHT, DENSITY, Quantity, SPEED, STRESS, TEMPERATURE};
 use crate::wing::Law;
 use crate::workshop::Corners;
 
@@ -500,37 +502,7 @@ pub(super) static FLAP: Table = Table {
             "Name of the [[material]] of that laminate, laid on the bias (±45).",
             "glass twill",
         ),
-    ],
-};
-
-/// What the foil is asked to carry.
-pub(super) static DUTY: Table = Table {
-    name: "duty",
-    times: Times::Absent,
-    doc: "What a level foil carries under its boat, for a main foil or an elevator.",
-    keys: &[
-        key(
-            "carries",
-            Amount(&MASS, 1.0, 5000.0),
-            Required,
-            "Mass that this foil carries in flight: its share of boat, crew and rig.",
-            "150 kg",
-        ),
-        key("take-off", Amount(&SPEED, 0.5, 20.0), Required, "Speed at which it has to carry it.", "8 kn"),
-        key(
-            "cruise",
-            Amount(&SPEED, 0.5, 25.0),
-            Left("not shown"),
-            "Speed at which it usually runs.",
-            "12 kn",
-        ),
-        key(
-            "share",
-            Number(0.3, 1.0),
-            Default("0.85"),
-            "How much of its greatest lift it may use at take-off; the rest is the margin to stall.",
-            "0.85",
-        ),
+        boat::HORN,
     ],
 };
 
@@ -856,9 +828,9 @@ pub(super) static ROUTER: Table = Table {
 };
 
 /// Every table, in the order of the hand-book.
-pub(super) static TABLES: [&Table; 20] = [
-    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &DUTY, &MATERIAL,
-    &STRENGTH, &CASE, &JOINT, &MASKS, &PRINTER, &PAPER, &STOCK, &ROUTER,
+pub(super) static TABLES: [&Table; 22] = [
+    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &DUTY, &BOAT,
+    &WEIGHT, &MATERIAL, &STRENGTH, &CASE, &JOINT, &MASKS, &PRINTER, &PAPER, &STOCK, &ROUTER,
 ];
 
 impl Table {

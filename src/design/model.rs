@@ -1,5 +1,6 @@
 //! A design as resolved from its file: every default filled in, every bound checked.
 
+use super::boat::Boat;
 use super::strength::Strength;
 use crate::section::{Finish, Section};
 use crate::units::{Angle, Length};
@@ -143,6 +144,8 @@ pub struct Design {
     pub lift: Lift,
     /// What it carries, if that is said.
     pub duty: Option<Duty>,
+    /// The boat that it is part of, if that is said.
+    pub boat: Option<Boat>,
     /// The masks that guide the sanding.
     pub masks: Masks,
     /// The printer that makes the masks.
@@ -376,6 +379,8 @@ pub struct Flap {
     pub clearance: Length,
     /// Laminate on the cut faces, 0 to 5 mm.
     pub face: Length,
+    /// From the hinge's axis to where the control rod takes hold.
+    pub horn: Option<Length>,
     /// Place of its material in [`Strength::materials`], where it names one.
     pub face_material: Option<usize>,
     /// Where it begins, from the root along the span.
@@ -496,6 +501,12 @@ pub struct Duty {
     pub cruise: Option<f64>,
     /// How much of its greatest lift it may use at take-off, 0.3 to 1.
     pub share: f64,
+    /// Depth of its root at take-off, cruise and top speed, mm.
+    pub depths: [f64; 3],
+    /// Incidence at which it is set, where that is said.
+    pub set_at: Option<Angle>,
+    /// Least incidence left until any part of it stalls.
+    pub stall_margin: Angle,
 }
 
 /// What masks are made for, where wood and finished surface differ.

@@ -175,6 +175,11 @@ impl Row {
         Self { header, values }
     }
 
+    /// Whether a key is there and right.
+    pub(super) fn given(&self, key: &str) -> bool {
+        self.value(key).is_some()
+    }
+
     /// Where the table is opened.
     pub(super) fn opening(&self) -> Range<usize> {
         self.header.clone()

@@ -2,9 +2,10 @@
 
 use std::ops::Range;
 
+use super::boat;
 use super::keys;
 use super::model::{
-    Design, Duty, DxfRelease, Faces, Hands, Kind, Lift, MaskShapes, Masks, Paper, PaperSize, Printer, Router,
+    Design, DxfRelease, Faces, Hands, Kind, Lift, MaskShapes, Masks, Paper, PaperSize, Printer, Router,
     Station, Stock,
 };
 use super::reader::{Row, Sheet};
@@ -23,7 +24,12 @@ pub(super) const SAME: f64 = 0.001;
 /// Builds the design, or notes why it cannot be.
 ///
 /// Every part is looked at before any is given up, so that one run reports them all.
-pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems) -> Option<Design> {
+pub(super) fn design(
+    sheet: &Sheet,
+    beside: &Beside<'_>,
+    follow: bool,
+    problems: &mut Problems,
+) -> Option<Design> {
     let root = sheet.one(&keys::ROOT)?;
     let kind = root.text("kind").and_then(Kind::from_word);
     let planform = sheet.one(&keys::PLANFORM);
@@ -45,8 +51,9 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     let strength = strength::strength(sheet, reach.as_ref(), density, problems);
     strength::refuse_halves(sheet, strength.as_ref(), problems);
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
-    let top_speed = lift.as_ref().and_then(|lift| lift.top_speed);
-    let duty = sheet.one(&keys::DUTY).map(|row| duty(row, kind, top_speed, problems));
+    let boat = boat::boat(sheet, kind, beside, follow, problems);
+    let facts = (lift.as_ref(), reach.as_ref().map(|reach| reach.to));
+    let duty = boat::duty(sheet.one(&keys::DUTY), kind, boat.as_ref(), facts, problems);
     let masks = masks(sheet.one(&keys::MASKS)?);
     let printer = printer(sheet.one(&keys::PRINTER)?, problems);
     let paper = paper(sheet.one(&keys::PAPER)?, problems);
@@ -91,10 +98,8 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         },
         strength: strength?,
         lift: lift?,
-        duty: match duty {
-            Some(duty) => Some(duty?),
-            None => None,
-        },
+        duty: duty?,
+        boat,
         masks: masks?,
         printer: printer?,
         paper: paper?,
@@ -295,25 +300,6 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
         );
     }
     Some(lift)
-}
-
-fn duty(row: &Row, kind: Option<Kind>, top: Option<f64>, problems: &mut Problems) -> Option<Duty> {
-    if kind.is_some_and(|kind| !kind.mirrored()) {
-        let wrong = Wrong::new("a duty is for a foil that lies level: a main foil or an elevator")
-            .help("leave [duty] out");
-        problems.add(row.place("carries"), wrong);
-    }
-    let (take_off, cruise) = (row.number("take-off")?, row.number("cruise"));
-    for (key, faster) in [("cruise", cruise), ("take-off", top)] {
-        if faster.is_some_and(|faster| faster <= take_off) {
-            let what = if key == "cruise" { "cruise" } else { "top-speed of [lift]" };
-            let wrong =
-                Wrong::new(format!("{what} does not lie above take-off: the speeds are out of order"))
-                    .help("take-off is the slowest of them");
-            problems.add(row.place(key), wrong);
-        }
-    }
-    Some(Duty { carries: row.number("carries")?, take_off, cruise, share: row.number("share")? })
 }
 
 fn masks(row: &Row) -> Option<Masks> {

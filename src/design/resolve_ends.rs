@@ -65,6 +65,14 @@ pub(super) fn case_and_waterline(
             problems.add(row.place(key), wrong);
         } else if let Some(reach) = reach {
             reach.holds(what, place, row.place(key), problems);
+            if (reach.to.mm() - 1.0..=reach.to.mm()).contains(&place.mm()) {
+                let wrong = Wrong::new(format!(
+                    "{what} lies at {place}, and {}: nothing is left below it",
+                    reach.because
+                ))
+                .help("it lies nearer to the upper end");
+                problems.add(row.place(key), wrong);
+            }
         }
     }
     if waterline.mm() < in_case.mm() {

@@ -90,6 +90,7 @@ pub(super) fn flap(sheet: &Sheet, row: &Row, reach: Option<&Reach>, problems: &m
         down: row.angle("down")?,
         clearance: row.length("clearance")?,
         face: row.length("face")?,
+        horn: row.length("horn"),
         face_material: strength::named(sheet, row, "face-material", problems),
         from,
         to,

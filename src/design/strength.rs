@@ -182,8 +182,9 @@ pub(super) fn strength(
     let row = sheet.one(&keys::STRENGTH)?;
     // What stands in a case leaves the hull where that ends.
     let in_case = || sheet.one(&keys::PLANFORM).and_then(|planform| planform.length("in-case"));
-    let held_to = row.length("held-to").or_else(in_case);
-    if let (Some(reach), Some(held)) = (reach, held_to)
+    let named = row.length("held-to");
+    let held_to = named.or_else(in_case);
+    if let (Some(reach), Some(held)) = (reach, named)
         && held.mm() > reach.to.mm() - 1.0
     {
         let wrong = Wrong::new(format!("held-to is {held}, and {}: nothing is left free", reach.because))
@@ -264,8 +265,7 @@ const CORE: [&str; 6] = ["values", "modulus", "modulus-across", "shear-modulus",
 
 /// The values of the wood: all of them, or none.
 fn core(row: &Row, density: Option<f64>, problems: &mut Problems) -> Option<CoreElastic> {
-    let given = |key: &&str| row.text(key).is_some() || row.number(key).is_some();
-    let (there, missing): (Vec<&str>, Vec<&str>) = CORE.iter().partition(|key| given(key));
+    let (there, missing): (Vec<&str>, Vec<&str>) = CORE.iter().partition(|key| row.given(key));
     if !there.is_empty() && !missing.is_empty() {
         let wrong = Wrong::new(format!("[wood] lacks {} for its strength", missing.join(", ")))
             .help("give all of them or none");
@@ -297,7 +297,7 @@ fn material(row: &Row, problems: &mut Problems) -> Option<Material> {
     if !missing.is_empty() {
         let word = row.text("form").unwrap_or("");
         let wrong = Wrong::new(format!("a material of {word} fibre needs {}", missing.join(", ")));
-        problems.add(row.place("form"), wrong.help("its other values do not tell them"));
+        problems.add(row.opening(), wrong.help("its other values do not tell them"));
         return None;
     }
     let across = |key: &str, along: f64| row.number(key).or(alike.then_some(along));
@@ -352,7 +352,7 @@ fn case(row: &Row, reach: Option<&Reach>, held: f64, problems: &mut Problems) ->
         |key: &str| row.number(key).is_some() || row.length(key).is_some() || row.angle(key).is_some();
     let mut sound = true;
     for key in needs.iter().filter(|key| !given(key)) {
-        problems.add(row.place("load"), Wrong::new(format!("a case of {word} needs {key}")));
+        problems.add(row.opening(), Wrong::new(format!("a case of {word} needs {key}")));
         sound = false;
     }
     for key in LoadKind::KEYS.iter().filter(|key| given(key)) {

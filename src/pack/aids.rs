@@ -2,7 +2,7 @@
 
 use super::PackError;
 use super::cut_pieces::{self, CutPiece};
-use super::duty::FoilDuty;
+use super::duty::{FoilDuty, strut_case};
 use super::friction::{StationCurves, water};
 use super::printed::{self, Bench, StationMask};
 use super::strength::{self, PartStrength};
@@ -23,6 +23,8 @@ use crate::workshop::{
 pub(super) struct Aids<'a> {
     pub(super) planform: Planform,
     pub(super) pattern: Drawing,
+    /// What the letters on the pattern stand for.
+    pub(super) legend: Vec<String>,
     pub(super) stations: Vec<StationAids<'a>>,
     /// What the router is handed, piece by piece, and on sheets.
     pub(super) cut: Vec<CutPiece>,
@@ -55,18 +57,19 @@ impl<'a> Aids<'a> {
         if let Some(hinge) = &wood.hinge {
             wood::turn_about_the_line(design, &hinge.axis, &mut stations);
         }
-        let duty = FoilDuty::of(design, wing, &water, &curves)?;
+        let (pattern, legend) = pattern(design, wing, &planform);
+        let duty = FoilDuty::of(design, wing, &water)?;
         let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
-        let pattern = pattern(design, wing, &planform);
         let cut = cut_pieces::cut_pieces(design, &stations, &pattern)?;
         Ok(Self {
-            strength: strength::of(design, wing, &flight, Vec::new())?,
+            strength: strength::of(design, wing, &flight, strut_case(design))?,
             duty,
             layout: cut_pieces::layout(design, &cut),
             bench: printed::bench(design, wing, &stamp(design))?,
             prints: Prints::of(design, &stations, &pattern),
             cut,
             pattern,
+            legend,
             planform,
             stations,
             wood,
@@ -234,12 +237,12 @@ fn wood<'a>(
     Ok(wood)
 }
 
-/// The pattern of the planform.
-fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> Drawing {
+/// The pattern of the planform, and what the letters on it stand for.
+fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> (Drawing, Vec<String>) {
     let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
     let mut drawing = planform_pattern(&stamp(design), planform, &stations, design.hinge_line().as_ref());
-    mark_on_plan(&mut drawing, planform, &wood::plan_marks(design, wing, planform));
-    drawing
+    let legend = mark_on_plan(&mut drawing, planform, &wood::plan_marks(design, wing, planform));
+    (drawing, legend)
 }
 
 /// The flow about each section that the design names, each once.

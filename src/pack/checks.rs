@@ -5,8 +5,7 @@ use serde::Serialize;
 use super::PackError;
 use super::aids::{Aids, SectionFlow, StationAids};
 use super::checks_wood;
-use super::duty::FoilDuty;
-use super::friction::StationCurves;
+use super::friction::{Inception, StationCurves};
 use super::surface::FAIRING;
 use crate::design::Design;
 use crate::flow::{LiftCurve, Water};
@@ -59,7 +58,7 @@ pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
     checks.extend(curves.iter().flat_map(|curves| stall(design, curves)));
     checks.extend(curves.iter().flat_map(|curves| cavitation(design, water, curves)));
-    checks.extend(duty.as_ref().map(carries));
+    checks.extend(duty.iter().flat_map(|foil| super::duty::checks(design, foil)));
     checks.extend(aids.strength.iter().flat_map(|part| super::strength::checks(design, part)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
     checks.extend(aids.surface.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
@@ -169,14 +168,10 @@ fn cavitation<'a>(
     water: &Water,
     curves: &'a StationCurves<'_>,
 ) -> impl Iterator<Item = Check> + 'a {
-    let depth = design.lift.depth.mm() * 1e-3;
     let limit = design.lift.top_speed.unwrap_or(design.lift.speed);
-    let at = StationCurves::at_lift(&curves.smooth, design.lift.design);
-    let inception =
-        at.and_then(|at| water.inception_speed(depth, at.cp_min * (1.0 + design.lift.cavitation_margin)));
     // Where the section does not reach that lift, the check of stall says so.
-    let found = at.zip(inception);
-    let why = found.map_or(String::new(), |(at, speed)| {
+    let found = curves.cavitates(design, water);
+    let why = found.map_or(String::new(), |Inception { finish, suction, speed }| {
         let depth = crate::units::number(design.lift.depth.mm(), 0);
         let margin = design.lift.cavitation_margin;
         let spare = if margin > 0.0 {
@@ -190,11 +185,11 @@ fn cavitation<'a>(
             ": less lift on more area, a thinner nose or a flatter pressure raises it"
         };
         format!(
-            "speed at which the water boils at {depth} mm depth, at the design lift, where the least pressure coefficient is {:.2}{spare}{advice}",
-            at.cp_min
+            "speed at which the water boils at {depth} mm depth, at the design lift, where the greatest suction of the {} nose is {suction:.2}{spare}{advice}",
+            finish.word()
         )
     });
-    let stations = curves.stations.iter().filter_map(move |at| Some((at, found?.1)));
+    let stations = curves.stations.iter().filter_map(move |at| Some((at, found?.speed)));
     stations.map(move |(at, value)| Check {
         name: "the section does not cavitate".to_owned(),
         place: place(*at),
@@ -204,36 +199,6 @@ fn cavitation<'a>(
         passed: value >= limit,
         why: why.clone(),
     })
-}
-
-/// The foil must carry its load at the take-off speed.
-fn carries(foil: &FoilDuty) -> Check {
-    // Lift goes with the square of the speed.
-    let (value, why) = match &foil.take_off {
-        Ok(take_off) => {
-            let value = foil.load * (foil.duty.take_off / take_off.speed).powi(2);
-            let advice = if value >= foil.load { "" } else { ": take more area, more camber or less load" };
-            let why = format!(
-                "lift at take-off speed with {:.0} % of the greatest; the load is carried from {:.2} m/s on, at {:.1}° of incidence with {:.0} N of drag and {:.0} W{advice}",
-                100.0 * foil.duty.share,
-                take_off.speed,
-                take_off.loading.state.incidence.to_degrees(),
-                take_off.loading.drag(),
-                take_off.loading.power(),
-            );
-            (value, why)
-        }
-        Err(error) => (0.0, error.to_string()),
-    };
-    Check {
-        name: "the foil carries its load at take-off".to_owned(),
-        place: "the whole foil".to_owned(),
-        value,
-        limit: foil.load,
-        unit: "N".to_owned(),
-        passed: value >= foil.load,
-        why,
-    }
 }
 
 /// No crossing, and wood everywhere between the surfaces.

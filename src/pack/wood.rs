@@ -196,7 +196,8 @@ pub(super) fn plan_marks(design: &Design, wing: &Wing, planform: &Planform) -> V
     if let (Some(line), Some(flap)) = (design.hinge_line(), design.flap_span()) {
         for at in flap.into_iter().chain([line.from, line.to]) {
             let (front, back) = planform.edges(at);
-            marks.push(PlanMark::plain(across(at, front + line.x_at(at, back - front), 0.0)));
+            let path = across(at, front + line.x_at(at, back - front), 0.0);
+            marks.push(PlanMark::new(path, String::new()));
         }
     }
     let levels = [("case ends", design.in_case.mm()), ("waterline", design.waterline.mm())];
@@ -205,7 +206,7 @@ pub(super) fn plan_marks(design: &Design, wing: &Wing, planform: &Planform) -> V
         if at > 0.0 && at < wing.reach() && (i == 0 || at > levels[0].1) {
             let path = across(at, planform.edges(at).0 - LEVEL_OVERRUN, LEVEL_OVERRUN);
             let words = format!("{name}, {} mm", crate::units::number(at, 1));
-            marks.push(PlanMark::behind(path, words));
+            marks.push(PlanMark::new(path, words));
         }
     }
     marks
@@ -214,22 +215,26 @@ pub(super) fn plan_marks(design: &Design, wing: &Wing, planform: &Planform) -> V
 /// How far a line across runs past the planform, mm.
 const LEVEL_OVERRUN: f64 = 12.0;
 
+/// The face that a cut-out opens, in words.
+pub(super) fn opens(cut: &Cut) -> &'static str {
+    match (cut.kind, cut.from_upper) {
+        (CutKind::Bore, _) => "inside",
+        (CutKind::Hole, _) if cut.depth.mm() <= 0.0 => "through",
+        (_, true) => "upper face",
+        (_, false) => "lower face",
+    }
+}
+
 fn cut_mark(cut: &Cut, wing: &Wing, planform: &Planform) -> PlanMark {
     let (from, to) = (cut.from.mm(), cut.to.mm());
-    let side = match (cut.kind, cut.from_upper) {
-        (CutKind::Bore, _) => String::new(),
-        (CutKind::Hole, _) if cut.depth.mm() <= 0.0 => ", through".to_owned(),
-        (_, true) => ", upper face".to_owned(),
-        (_, false) => ", lower face".to_owned(),
-    };
-    let words = format!("{}{side}", cut.purpose);
+    let words = format!("{}, {}", cut.purpose, opens(cut));
     if cut.kind == CutKind::Hole {
         let (middle, radius) = (0.5 * (from + to), 0.5 * cut.width.mm());
         let (front, back) = planform.edges(middle);
         let centre = Point::new(middle, front + cut.at * (back - front));
         let ends = [centre + Vec2::new(radius, 0.0), centre - Vec2::new(radius, 0.0)];
         let circle = ArcPath::new(ends.map(|point| ArcVertex { point, bulge: 1.0 }).to_vec(), true);
-        let mark = PlanMark::beside(circle, words);
+        let mark = PlanMark::new(circle, words);
         return if cut.depth.mm() <= 0.0 { mark.cut(Role::CutInside) } else { seen_from_above(cut, mark) };
     }
     let mut places = wing.even_places();
@@ -246,7 +251,7 @@ fn cut_mark(cut: &Cut, wing: &Wing, planform: &Planform) -> PlanMark {
     };
     let ahead = places.iter().map(|&at| edge(at, 0));
     let behind = places.iter().rev().map(|&at| edge(at, 1));
-    let mark = PlanMark::beside(ArcPath::polyline(ahead.chain(behind), true), words);
+    let mark = PlanMark::new(ArcPath::polyline(ahead.chain(behind), true), words);
     if cut.kind == CutKind::Bore { mark } else { seen_from_above(cut, mark) }
 }
 

@@ -37,19 +37,18 @@ impl<'a> Core<'a> {
     /// When the skins leave no wood, or the core folds.
     pub fn of(shape: &'a StationShape<'a>, laminate: &'a Laminate) -> Result<Self, PartError> {
         let mut core = Self { shape, laminate, tail: [-1.0, 1.0], nose: [0.0, 0.0] };
-        let crossings = core.crossings();
-        // Between the sides at a place both reach: wood where the upper one is above.
         let is_wood = |[upper, lower]: [f64; 2]| {
             let (a, b) = (core.inside(upper).point, core.inside(lower).point);
             a.y > b.y && core.stretch(upper) > 0.0 && core.stretch(lower) > 0.0
         };
-        match crossings[..] {
-            [] if is_wood([-0.5, 0.5]) => {}
-            [end] if is_wood([0.5 * end[0], 0.5 * end[1]]) => core.tail = end,
-            [front] if is_wood([0.5 * (front[0] - 1.0), 0.5 * (front[1] + 1.0)]) => core.nose = front,
-            [front, end] => (core.nose, core.tail) = (front, end),
-            _ => return Err(core.none()),
-        }
+        // Wood lies between two crossings of the inner faces, or one and an end, where the upper one is above.
+        let ends: Vec<[f64; 2]> =
+            std::iter::once([0.0; 2]).chain(core.crossings()).chain([[-1.0, 1.0]]).collect();
+        let stretches = ends.windows(2).map(|pair| [pair[0], pair[1]]);
+        let wooden = stretches.filter(|[a, b]| is_wood([0.5 * (a[0] + b[0]), 0.5 * (a[1] + b[1])]));
+        let widest = wooden.max_by(|[a, b], [c, d]| (b[1] - a[1]).total_cmp(&(d[1] - c[1])));
+        let Some([nose, tail]) = widest else { return Err(core.none()) };
+        (core.nose, core.tail) = (nose, tail);
         if core.nose == [0.0; 2] {
             core.nose = core.fold_at_nose().unwrap_or_default();
         }

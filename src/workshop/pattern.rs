@@ -112,13 +112,24 @@ pub fn planform_pattern(
     let mut drawing = Drawing::new(format!("{stamp}, planform"));
     drawing.add(Role::CutOutside, path);
 
+    // A picture of a wide pattern grows its letters to 1.2 % of its width.
+    let crowded = (1.2 * SMALL).max(0.015 * planform.span());
     let sides: &[f64] = if planform.is_mirrored() { &[1.0, -1.0] } else { &[1.0] };
     for &side in sides {
+        let mut labelled = f64::NEG_INFINITY;
         // The root's line is the same for both halves.
         for &at in stations.iter().filter(|&&at| side > 0.0 || at > 0.0) {
             let (front, back) = planform.edges(at);
             let place = |y: f64| Point::new(side * at, -y);
             drawing.add(Role::Reference, ArcPath::line(place(front - OVERRUN), place(back + OVERRUN)));
+            // Of words that would run into each other only the first is written, but always that of the end.
+            let is_last = stations.last() == Some(&at);
+            let room = |other: f64| (at - other).abs() >= crowded;
+            let is_free = is_last || room(labelled) && stations.last().is_some_and(|last| room(*last));
+            if !is_free {
+                continue;
+            }
+            labelled = at;
             // Upright, so that the words of near stations stay apart.
             drawing.labels.push(Label {
                 role: Role::Label,

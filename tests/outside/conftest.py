@@ -17,7 +17,9 @@ WOOD = ("core template", "main body template", "flap template")
 NOT_FINISHED = (*WOOD, "core mask half", "cradle", "end rail")
 SHEET = "sheet of stock"
 KINDS = ("main-foil", "elevator", "strut", "fin")
-FILES = sorted((ROOT / "demo-sections").glob("*.toml")) + sorted((Path(__file__).parent / "designs").glob("*.toml"))
+# The one that is there to show what breaks.
+BREAKS = ROOT / "demo-sections/strut-too-thin.toml"
+FILES = sorted(f for f in (ROOT / "demo-sections").glob("*.toml") if f != BREAKS) + sorted((Path(__file__).parent / "designs").glob("*.toml"))
 
 
 def binary() -> str:

@@ -12,8 +12,9 @@ from shapely import Polygon
 import curves
 from design_file import Design, quantity
 
-# A foil, tapered, twisted and swept, and two of its kind in two pieces; a template every 12.5 mm for the mesh.
-PLACES = ", ".join(f'"{at:g} mm"' for at in np.arange(0, 301, 12.5))
+# A foil, tapered, twisted and swept, and two of its kind in two pieces; a template every 12.5 mm for the mesh, and
+# closer where a tip is curved.
+PLACES = ", ".join(f'"{at:g} mm"' for at in [*np.arange(0, 250, 12.5), *np.arange(250, 301, 6.25)])
 FOIL = f"""
 name = "Trial"
 kind = "main-foil"

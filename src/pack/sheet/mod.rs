@@ -3,6 +3,7 @@
 //! A section of it stands in a file of its own.
 
 mod boat;
+mod cuts;
 mod ends;
 mod flow;
 mod shape;
@@ -22,13 +23,14 @@ use crate::units::knots;
 const MARGIN: f64 = 4.0;
 
 pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[PackFile]) -> String {
-    let Aids { planform, pattern, stations, flows, water, curves, duty, pieces, .. } = aids;
+    let Aids { planform, pattern, legend, stations, flows, water, curves, duty, pieces, .. } = aids;
     let mut body = String::new();
     heading(&mut body, design, checks);
     cautions(&mut body);
-    shape::shape(&mut body, design, planform, stations, pattern);
+    shape::shape(&mut body, design, planform, stations, (pattern, legend));
     ends::ends(&mut body, design, &aids.surface);
     shape::wood(&mut body, design, stations, pieces);
+    cuts::cuts(&mut body, &aids.wood.cuts);
     strength::strength(&mut body, design, &aids.strength);
     if let Some(foil) = duty {
         boat::under_the_boat(&mut body, design, foil);

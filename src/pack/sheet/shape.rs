@@ -18,13 +18,13 @@ pub(super) fn shape(
     design: &Design,
     planform: &Planform,
     stations: &[StationAids<'_>],
-    pattern: &Drawing,
+    (pattern, legend): (&Drawing, &[String]),
 ) {
     let _ = writeln!(
         body,
         "<h2>Shape</h2>\n<p>Seen from {}: span {:.1} mm, area {:.1} cm², aspect ratio {:.2}, mean chord {:.1} mm, taper {:.3}, mean \
          aerodynamic chord {:.1} mm, aerodynamic centre {:.1} mm aft of the root's quarter chord.</p>\n\
-         <figure>{}<figcaption>Planform, leading edge up; distances from the root in mm{}.</figcaption></figure>",
+         <figure>{}<figcaption>Planform, leading edge up; distances from the root in mm{}{}.</figcaption></figure>",
         if design.kind.mirrored() { "above" } else { "the side" },
         planform.span(),
         planform.area() / 100.0,
@@ -34,7 +34,8 @@ pub(super) fn shape(
         planform.aerodynamic_chord(),
         planform.aerodynamic_centre(),
         picture(&pattern.without_caption(), MARGIN),
-        hinge_words(design)
+        hinge_words(design),
+        legend.iter().map(|line| format!("; {}", escaped(line))).collect::<String>()
     );
     let root = stations.first().map_or(Point::ORIGIN, |station| station.shape.nose);
     let rows: Vec<[String; 7]> = stations
@@ -183,7 +184,7 @@ fn flap(body: &mut String, design: &Design, stations: &[StationAids<'_>]) {
                 body,
                 "<figure>{}<figcaption>Flap at station {} mm, with its laminate; broken lines: all the way up and \
                  down.</figcaption></figure>",
-                picture(&flap_picture(split, &hinge, split.axis), MARGIN),
+                picture(&flap_picture(split, &station.template, &hinge), MARGIN),
                 number(shape.at, 3),
             );
         }

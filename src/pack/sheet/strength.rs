@@ -99,8 +99,8 @@ fn weakest<'a>(part: &'a PartStrength<'_>) -> Option<&'a Outcome> {
 fn picture(design: &Design, part: &PartStrength<'_>) -> Chart {
     let asked = design.strength.reserve;
     let top = SHOWN * asked;
-    let line = |outcome: &Outcome| Series {
-        name: outcome.result.name.clone(),
+    let line = |(i, outcome): (usize, &Outcome)| Series {
+        name: format!("case {}", i + 1),
         points: outcome
             .result
             .stations
@@ -121,7 +121,7 @@ fn picture(design: &Design, part: &PartStrength<'_>) -> Chart {
         title: "Reserve along the span".to_owned(),
         across: "mm from the root".to_owned(),
         up: "strength over stress".to_owned(),
-        series: part.cases.iter().map(line).collect(),
+        series: part.cases.iter().enumerate().map(line).collect(),
         marks: vec![
             Mark { at: 1.0, name: "breaks".to_owned() },
             Mark { at: asked, name: format!("asked {}", number(asked, 2)) },
@@ -136,21 +136,17 @@ fn cases(body: &mut String, part: &PartStrength<'_>) {
     let rows: Vec<[String; 9]> = part
         .cases
         .iter()
-        .map(|outcome| {
+        .enumerate()
+        .map(|(i, outcome)| {
             let (root, least) = (outcome.result.beam.root(), outcome.result.least());
             [
-                outcome.result.name.clone(),
+                format!("{} {}", i + 1, outcome.result.name),
                 number(outcome.result.factor, 2),
                 format!("{:.0}", root.shear[0].hypot(root.shear[1])),
                 format!("{:.0}, {:.0}", root.moment[0] * 1e-3, root.moment[1] * 1e-3),
                 format!("{:.1}", root.torque * 1e-3),
                 format!("{:.2}", least.reserve.reserve.min(999.0)),
-                format!(
-                    "{} mm, {} side at {} mm",
-                    number(least.at + part.held, 0),
-                    side(least.reserve.side),
-                    number(least.reserve.x, 0)
-                ),
+                format!("{} mm, {} side", number(least.at + part.held, 0), side(least.reserve.side)),
                 least.reserve.mode.words().to_owned(),
                 format!("{:.1} mm, {:.2}°", outcome.deflection(), outcome.twist().to_degrees()),
             ]

@@ -5,7 +5,7 @@ use crate::export::ExportError;
 use crate::export::csv::csv;
 use crate::units::{fixed, number};
 
-/// Forces, moments and reserves have the load factor in them, and so have slope, deflection and twist.
+/// Pairs are across (lift, side force) and along the chord. Forces, moments and reserves have the load factor in them, and so have slope, deflection and twist.
 pub(in crate::pack) fn table(part: &PartStrength<'_>, fingerprint: &str) -> Result<Vec<u8>, ExportError> {
     let rows = part.cases.iter().flat_map(|outcome| {
         let result = &outcome.result;
@@ -16,6 +16,7 @@ pub(in crate::pack) fn table(part: &PartStrength<'_>, fingerprint: &str) -> Resu
                 result.name.clone(),
                 number(result.factor, 3),
                 number(station.at + part.held, 3),
+                fixed(section.mass, 5),
                 fixed(section.bending_across, 0),
                 fixed(section.bending_along, 0),
                 fixed(section.torsion, 0),
@@ -39,6 +40,7 @@ pub(in crate::pack) fn table(part: &PartStrength<'_>, fingerprint: &str) -> Resu
         "case",
         "load_factor",
         "station_mm",
+        "mass_kg_per_m",
         "EI_across_Nmm2",
         "EI_along_Nmm2",
         "GJ_Nmm2",

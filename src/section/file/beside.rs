@@ -118,6 +118,16 @@ impl<'a> Beside<'a> {
         Ok(Section::fitted(name, traced))
     }
 
+    /// The text of a file that is named, its path, and what lies beside it in turn.
+    pub(crate) fn text_of(
+        &self,
+        name: &str,
+        most: usize,
+    ) -> Result<(String, String, Self), SectionFileError> {
+        let (path, inner) = self.at(name)?;
+        Ok((self.text(&path, most)?, path, inner))
+    }
+
     /// The path of a named file, and what lies beside that file in turn.
     fn at(&self, name: &str) -> Result<(String, Self), SectionFileError> {
         let wrong = |why| Err(SectionFileError::Name { file: crate::units::clipped(name), why });

@@ -151,7 +151,7 @@ def test_tiles_put_together_match_the_contour(pack, pdf, measured):
         right = crosses if seams is None else crosses[crosses[:, 0] > middle] if middle else crosses[:0]
         if seams is None:
             # The first tile is laid by its outline; all others by the crosses alone.
-            [outline] = [s for s in strokes if abs(s.width - OUTLINE_PEN) < 0.01 and len(s.points) > 3]
+            outline = largest_outline(strokes)
             shift = outline.points.min(axis=0) - contour.min(axis=0)
         else:
             shift = shift + (left - seams).mean(axis=0)
@@ -201,7 +201,7 @@ def test_match_marks_lie_at_the_same_place_of_both_tiles(pack, pdf):
     """A cross in a seam is drawn on the two tiles that share it, so each must be found twice in the drawing's own frame."""
     by_drawing = {}
     for text, strokes in zip(pdf_reading.page_texts(pdf), pdf_reading.strokes(pdf), strict=True):
-        [outline] = [s for s in strokes if abs(s.width - OUTLINE_PEN) < 0.01]
+        outline = largest_outline(strokes)
         corner = outline.points.min(axis=0)
         middles = [s.points.mean(axis=0) - corner for s in strokes if is_mark(s)]
         by_drawing.setdefault(drawing_of(text), []).append(np.array(middles))
@@ -213,6 +213,12 @@ def test_match_marks_lie_at_the_same_place_of_both_tiles(pack, pdf):
         apart = np.hypot(*(marks[:, None] - marks).T)
         # Two arms of the cross on each of two tiles.
         assert ((apart < 0.01).sum(axis=1) == 4).all(), name
+
+
+def largest_outline(strokes):
+    """The contour of the piece; slots and pockets in it are drawn as heavy."""
+    heavy = [s for s in strokes if abs(s.width - OUTLINE_PEN) < 0.01]
+    return max(heavy, key=lambda s: np.ptp(s.points, axis=0).sum())
 
 
 def is_mark(stroke) -> bool:

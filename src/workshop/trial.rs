@@ -38,9 +38,16 @@ pub fn close_mask<'a, C: Curve + ?Sized>(
     let sides: Vec<[Point; 2]> = cuts.iter().flatten().copied().collect();
     let masks = Near::to(&sides);
     let mut fit = Fit { least: f64::INFINITY, greatest: 0.0 };
+    let mut least = f64::INFINITY;
     let mut note = |gap: f64| fit = Fit { least: fit.least.min(gap), greatest: fit.greatest.max(gap) };
     for &point in &outline {
-        note(masks.signed(point));
+        let gap = masks.signed(point);
+        // In a hollow corner an opening that keeps its distance lies further away; only where nothing is
+        // in reach does the mask not close.
+        if gap > reach {
+            note(gap);
+        }
+        least = least.min(gap);
     }
     // The other way round: no hollow in the opening that the part does not see. Parting faces touch the
     // next piece and are no opening.
@@ -63,7 +70,7 @@ pub fn close_mask<'a, C: Curve + ?Sized>(
             }
         }
     }
-    fit
+    Fit { least: fit.least.min(least), ..fit }
 }
 
 /// Lays a part into its cradle at one place of the span.

@@ -647,7 +647,7 @@ fn the_schema_names_every_key_with_its_bounds() {
     assert_eq!(hinge[0]["maximum"], 0.95);
     assert!(hinge[1]["pattern"].as_str().unwrap().contains("mm|cm|m|in"));
     assert_eq!(
-        schema["properties"]["paper"]["properties"]["size"]["enum"],
+        schema["properties"]["paper"]["properties"]["size"]["anyOf"][0]["enum"],
         serde_json::json!(["A4", "A3", "Letter"])
     );
     assert_eq!(schema["properties"]["lift"]["properties"]["design"]["default"], 0.4);

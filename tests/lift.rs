@@ -251,3 +251,23 @@ fn what_does_not_go_together_is_said() {
     }
     assert!(bench.listing().is_empty());
 }
+
+/// A table of coordinates leaves a hair open at a sharp edge: it is sharp all the same, and every point
+/// of its curve is found. The table is that of `tests/reference/measured_low_re.toml`.
+#[test]
+fn a_section_from_coordinates_has_a_curve() {
+    let bench = Bench::new();
+    let table: toml::Table = include_str!("reference/measured_low_re.toml").parse().expect("a table");
+    let mut text = String::from("cambered\n");
+    for point in table["section"]["points"].as_array().expect("points") {
+        text.push_str(&format!("{} {}\n", point[0], point[1]));
+    }
+    bench.file("cambered.txt", &text);
+    let json = lift(&bench, &["cambered.txt", "--re", "4.6e5", "--angles", "-2:6:2"]);
+    assert_eq!(json["curves"][0]["converged"], 5);
+    // Edges opened a little more are blunt, and have their curves too.
+    for edge in ["0.01 %", "0.1 %", "1 %"] {
+        let typed = ["cambered.txt", "--re", "4.6e5", "--angles", "0:4:2", "--trailing-edge", edge];
+        assert_eq!(lift(&bench, &typed)["curves"][0]["converged"], 3, "{edge}");
+    }
+}

@@ -23,8 +23,8 @@ mod wing;
 pub use crate::problems::{FileErrors as DesignErrors, Problem};
 pub use boat::{Boat, Role};
 pub use model::{
-    Cut, CutKind, Design, Duty, Flap, FlapKind, Hands, HingeFrom, Kind, Laminate, Lift, Masks, Paper,
-    PaperSize, Ply, PlySide, Printer, Router, Station, Stock, Tip, TipShape,
+    Cut, CutKind, Design, Duty, DxfRelease, Faces, Flap, FlapKind, Hands, HingeFrom, Kind, Laminate, Lift,
+    MaskShapes, Masks, Paper, PaperSize, Ply, PlySide, Printer, Router, Station, Stock, Tip, TipShape,
 };
 pub use page::key_tables;
 pub use schema::schema;

@@ -5,6 +5,7 @@ use super::strength::Strength;
 use crate::section::{Finish, Section};
 use crate::units::{Angle, Length};
 use crate::wing::{Law, TipForm};
+use crate::workshop::Corners;
 
 /// What is built.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
@@ -508,15 +509,79 @@ pub struct Duty {
     pub stall_margin: Angle,
 }
 
-/// The printed masks that guide the sanding.
+/// What masks are made for, where wood and finished surface differ.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum MaskShapes {
+    /// Wood and finished surface.
+    Both,
+    /// The wood before the laminate.
+    Core,
+    /// The finished surface.
+    Finished,
+}
+
+impl MaskShapes {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["both", "core", "finished"];
+
+    /// The choice of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        let all = [Self::Both, Self::Core, Self::Finished];
+        all.into_iter().zip(Self::WORDS).find(|(_, known)| **known == word).map(|(shapes, _)| shapes)
+    }
+}
+
+/// The faces that an aid is made for.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum Faces {
+    /// Neither.
+    None,
+    /// The lower one.
+    Lower,
+    /// The upper one.
+    Upper,
+    /// Each.
+    Both,
+}
+
+impl Faces {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["none", "lower", "upper", "both"];
+
+    /// The choice of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        let all = [Self::None, Self::Lower, Self::Upper, Self::Both];
+        all.into_iter().zip(Self::WORDS).find(|(_, known)| **known == word).map(|(faces, _)| faces)
+    }
+
+    /// Whether the lower and the upper one are among them.
+    #[must_use]
+    pub fn lower_and_upper(self) -> [bool; 2] {
+        [matches!(self, Self::Lower | Self::Both), matches!(self, Self::Upper | Self::Both)]
+    }
+}
+
+/// The printed masks, cradles and rails that guide the shaping.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Masks {
+    /// What they are made for.
+    pub shapes: MaskShapes,
     /// Gap between the finished skin and the mask, 0.05 to 5 mm.
     pub clearance: Length,
     /// Material around the section, 2 to 60 mm.
     pub wall: Length,
     /// Thickness along the span, 1 to 60 mm.
     pub thickness: Length,
+    /// Faces that cradles hold.
+    pub cradles: Faces,
+    /// Length of a cradle along the span, 10 to 500 mm.
+    pub cradle_length: Length,
+    /// Faces that rails guide a tool over.
+    pub rails: Faces,
+    /// How far rails stand proud of the wood, 0 to 100 mm.
+    pub rail_offset: Length,
 }
 
 /// The printer that makes the masks.
@@ -530,6 +595,14 @@ pub struct Printer {
     pub bed_z: Length,
     /// Kept free along every edge of the bed, 0 to 50 mm.
     pub margin: Length,
+}
+
+impl Printer {
+    /// The bed less its margins: width, depth.
+    #[must_use]
+    pub fn bed(&self) -> [Length; 2] {
+        [self.bed_x, self.bed_y].map(|side| Length::from_mm(side.mm() - 2.0 * self.margin.mm()))
+    }
 }
 
 /// A sheet of paper.
@@ -580,12 +653,25 @@ impl PaperSize {
 /// The paper that templates are printed on.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Paper {
-    /// The sheet.
+    /// The sheet, where it is no roll.
     pub size: PaperSize,
+    /// The width of a roll, 200 mm to 2 m.
+    pub roll: Option<Length>,
     /// What the printer leaves white along every edge, 5 to 40 mm.
     pub margin: Length,
     /// How much neighbouring sheets share, 0 to 40 mm.
     pub overlap: Length,
+}
+
+impl Paper {
+    /// Width and height, mm, upright; a roll has no end.
+    #[must_use]
+    pub fn dimensions(&self) -> [f64; 2] {
+        match (self.roll, self.size.dimensions()) {
+            (Some(width), _) => [width.mm(), f64::INFINITY],
+            (None, (width, height)) => [width.mm(), height.mm()],
+        }
+    }
 }
 
 /// The sheet that templates are routed from.
@@ -599,6 +685,33 @@ pub struct Stock {
     pub thickness: Length,
     /// Kept free along every edge, 0 to 100 mm.
     pub margin: Length,
+    /// Kept free between two pieces, at least the cutter, 0 to 100 mm.
+    pub spacing: Length,
+    /// Whether pieces may be turned by a quarter, across the grain.
+    pub may_turn: bool,
+}
+
+/// Which releases of DXF are written.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum DxfRelease {
+    /// Release 2000.
+    R2000,
+    /// R12, for the oldest readers.
+    R12,
+    /// Both.
+    Both,
+}
+
+impl DxfRelease {
+    /// The words of the design file for them.
+    pub const WORDS: &'static [&'static str] = &["2000", "R12", "both"];
+
+    /// The choice of a word of the design file.
+    #[must_use]
+    pub fn from_word(word: &str) -> Option<Self> {
+        let all = [Self::R2000, Self::R12, Self::Both];
+        all.into_iter().zip(Self::WORDS).find(|(_, known)| **known == word).map(|(release, _)| release)
+    }
 }
 
 /// The router.
@@ -606,4 +719,18 @@ pub struct Stock {
 pub struct Router {
     /// How far the cut line may stray from the section, 0.001 to 0.5 mm.
     pub tolerance: Length,
+    /// Diameter of the cutter, 0.5 to 50 mm.
+    pub cutter: Length,
+    /// Whether contours are the path of the cutter's middle instead of the line of the piece.
+    pub is_path: bool,
+    /// What is done about inner corners.
+    pub corners: Corners,
+    /// Holding tabs on each piece, 0 to 20.
+    pub tabs: usize,
+    /// Length of a tab, 1 to 50 mm.
+    pub tab_width: Length,
+    /// Whether curved contours are written as splines instead of arcs.
+    pub splines: bool,
+    /// Which releases of DXF are written.
+    pub release: DxfRelease,
 }

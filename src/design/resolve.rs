@@ -4,7 +4,10 @@ use std::ops::Range;
 
 use super::boat;
 use super::keys;
-use super::model::{Design, Hands, Kind, Lift, Masks, Paper, PaperSize, Printer, Router, Station, Stock};
+use super::model::{
+    Design, DxfRelease, Faces, Hands, Kind, Lift, MaskShapes, Masks, Paper, PaperSize, Printer, Router,
+    Station, Stock,
+};
 use super::reader::{Row, Sheet};
 use super::resolve_ends::{case_and_waterline, hands, tip};
 use super::resolve_wood::{cut, flap, laminate, place_hinge, ply, wood};
@@ -13,6 +16,7 @@ use crate::problems::{Problems, Wrong};
 use crate::section::{Beside, Finish, SectionFileError};
 use crate::units::{Angle, Length, clipped};
 use crate::wing::Law;
+use crate::workshop::Corners;
 
 /// Two places along the span nearer than this are one, millimetres.
 pub(super) const SAME: f64 = 0.001;
@@ -54,7 +58,10 @@ pub(super) fn design(
     let printer = printer(sheet.one(&keys::PRINTER)?, problems);
     let paper = paper(sheet.one(&keys::PAPER)?, problems);
     let stock = stock(sheet.one(&keys::STOCK)?, problems);
-    let router = router(sheet.one(&keys::ROUTER)?);
+    let router = router(sheet.one(&keys::ROUTER)?, problems);
+    if let (Some(stock), Some(router)) = (&stock, &router) {
+        cutter_between_pieces(sheet.one(&keys::STOCK)?, stock, router, problems);
+    }
 
     let fairing = sheet.one(&keys::TEMPLATES).and_then(|row| row.length("fairing"));
     let (stations, planform) = (stations?, planform?);
@@ -297,9 +304,14 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
 
 fn masks(row: &Row) -> Option<Masks> {
     Some(Masks {
+        shapes: row.text("for").and_then(MaskShapes::from_word)?,
         clearance: row.length("clearance")?,
         wall: row.length("wall")?,
         thickness: row.length("thickness")?,
+        cradles: row.text("cradles").and_then(Faces::from_word)?,
+        cradle_length: row.length("cradle-length")?,
+        rails: row.text("rails").and_then(Faces::from_word)?,
+        rail_offset: row.length("rail-offset")?,
     })
 }
 
@@ -329,11 +341,18 @@ fn printer(row: &Row, problems: &mut Problems) -> Option<Printer> {
 
 fn paper(row: &Row, problems: &mut Problems) -> Option<Paper> {
     let paper = Paper {
-        size: row.text("size").and_then(PaperSize::from_word)?,
+        size: match row.length("size") {
+            Some(_) => PaperSize::A4,
+            None => row.text("size").and_then(PaperSize::from_word)?,
+        },
+        roll: row.length("size"),
         margin: row.length("margin")?,
         overlap: row.length("overlap")?,
     };
-    let (width, height) = paper.size.dimensions();
+    let (width, height) = match paper.roll {
+        Some(width) => (width, width),
+        None => paper.size.dimensions(),
+    };
     let lost = Length::from_mm(2.0 * paper.margin.mm() + paper.overlap.mm());
     leaves_room(row, lost, &[("the paper's width", width), ("the paper's height", height)], problems);
     Some(paper)
@@ -345,12 +364,53 @@ fn stock(row: &Row, problems: &mut Problems) -> Option<Stock> {
         width: row.length("width")?,
         thickness: row.length("thickness")?,
         margin: row.length("margin")?,
+        spacing: row.length("spacing")?,
+        may_turn: row.text("grain")? == "any",
     };
     let lost = Length::from_mm(2.0 * stock.margin.mm());
     leaves_room(row, lost, &[("length", stock.length), ("width", stock.width)], problems);
     Some(stock)
 }
 
-fn router(row: &Row) -> Option<Router> {
-    Some(Router { tolerance: row.length("tolerance")? })
+/// Notes when the cutter does not go between two pieces.
+fn cutter_between_pieces(row: &Row, stock: &Stock, router: &Router, problems: &mut Problems) {
+    if stock.spacing.mm() < router.cutter.mm() {
+        let (spacing, cutter) = (stock.spacing, router.cutter);
+        let wrong = Wrong::new(format!(
+            "pieces lie {spacing} apart, and the cutter of {cutter} does not go between them"
+        ))
+        .help(format!("write spacing = \"{cutter}\" or more, or take a smaller cutter under [router]"));
+        problems.add(row.place("spacing"), wrong);
+    }
+}
+
+fn router(row: &Row, problems: &mut Problems) -> Option<Router> {
+    let tabs = row.number("tabs")?;
+    if tabs.fract() != 0.0 {
+        let wrong = Wrong::new(format!("tabs is {tabs}: there is no part of a tab"))
+            .help(format!("write tabs = {}", tabs.round()));
+        problems.add(row.place("tabs"), wrong);
+    }
+    let router = Router {
+        tolerance: row.length("tolerance")?,
+        cutter: row.length("cutter")?,
+        is_path: row.text("contour")? == "path",
+        corners: row.text("corners").and_then(Corners::from_word)?,
+        tabs: tabs as usize,
+        tab_width: row.length("tab-width")?,
+        splines: row.text("curves")? == "splines",
+        release: row.text("dxf").and_then(DxfRelease::from_word)?,
+    };
+    if router.is_path && router.corners != Corners::Sharp {
+        let wrong = Wrong::new(
+            "a relieved corner is as wide as the cutter, and leaves no path of its middle",
+        )
+        .help("write corners = \"sharp\", or contour = \"piece\" and let the machine set off the radius");
+        problems.add(row.place("corners"), wrong);
+    }
+    if router.splines && router.release != DxfRelease::R2000 {
+        let wrong = Wrong::new("R12 has no splines").help("write dxf = \"2000\", or curves = \"arcs\"");
+        problems.add(row.place("curves"), wrong);
+    }
+    Some(router)
 }

@@ -7,13 +7,15 @@ pub mod csv;
 mod dxf;
 pub mod html;
 mod pdf;
+mod solid_view;
 mod stl;
 mod svg;
 
-pub use dxf::dxf;
+pub use dxf::{Curves, Flavour, dxf};
 pub use pdf::pdf;
+pub use solid_view::solid_view;
 pub use stl::stl;
-pub use svg::{picture, svg_page};
+pub use svg::{numbered_picture, page_picture, picture, svg_page};
 
 /// Why a file cannot be made from what it was given.
 #[derive(Debug, Clone, PartialEq, Eq, thiserror::Error)]

@@ -102,7 +102,7 @@ impl Bucket {
     pub fn free_lift(&self, sigma: f64, margin: f64) -> Option<FreeLift> {
         let most = sigma / (1.0 + margin);
         let bottom = self.points.iter().position(|p| Some(p) == self.bottom())?;
-        if !(self.points[bottom].suction <= most) {
+        if most.is_nan() || self.points[bottom].suction > most {
             return None;
         }
         // Going from the bottom outwards, where the suction first passes the number.

@@ -17,8 +17,8 @@ const DEPTHS: f64 = 8.0;
 /// Lift against the cavitation number, of sections with their names: within the lines nothing
 /// boils.
 ///
-/// `depth` in m adds the speeds that the numbers stand for; `margin` is the share by which the number
-/// is to stay above the suction.
+/// `depth` in m adds the speeds that the numbers stand for, and marks those of `speeds`, in m/s, with
+/// their names; `margin` is the share by which the number is to stay above the suction.
 #[must_use]
 pub fn bucket_chart(
     title: String,
@@ -26,6 +26,7 @@ pub fn bucket_chart(
     water: &Water,
     depth: Option<f64>,
     margin: f64,
+    speeds: &[(String, f64)],
 ) -> Chart {
     let bottoms = || buckets.iter().filter_map(|(_, bucket)| bucket.bottom());
     let deepest = bottoms().map(|bottom| bottom.suction).fold(0.0, f64::max);
@@ -37,18 +38,28 @@ pub fn bucket_chart(
     };
     let to_spare =
         if margin > 0.0 { format!(", {} % to spare", number(100.0 * margin, 1)) } else { String::new() };
-    let speeds = depth.map(|depth| SecondScale {
+    let scale = depth.map(|depth| SecondScale {
         name: format!("speed at {} mm depth, kn", number(1e3 * depth, 1)),
         // σ goes with one over the square of the speed.
         rule: Rule::OverRoot(knots(water.cavitation_number(depth, 1.0).sqrt())),
     });
+    let mut series: Vec<Series> = buckets.iter().map(line).collect();
+    let points = || series.iter().flat_map(|line| line.points.iter());
+    let (least, most) = points().fold((f64::NAN, f64::NAN), |(a, b), p| (a.min(p.1), b.max(p.1)));
+    let farthest = points().map(|p| p.0).fold(0.0, f64::max);
+    let at_speed = |(name, speed): &(String, f64)| {
+        let sigma = water.cavitation_number(depth?, *speed);
+        let points = vec![(sigma, most), (sigma, least)];
+        (sigma <= farthest).then(|| Series { name: name.clone(), points })
+    };
+    series.extend(speeds.iter().filter_map(at_speed).collect::<Vec<_>>());
     let word = bottoms().next().map(|bottom| (0.72 * widest, bottom.cl, "no cavitation".to_owned()));
     Chart {
         title: title + &to_spare,
         across: "cavitation number".to_owned(),
-        across_too: speeds,
+        across_too: scale,
         up: "lift coefficient".to_owned(),
-        series: buckets.iter().map(line).collect(),
+        series,
         words: word.into_iter().collect(),
         ..Chart::default()
     }
@@ -75,20 +86,8 @@ pub(super) fn charts(design: &Design, water: &Water, curves: &[StationCurves<'_>
         };
         let buckets: Vec<(String, Bucket)> = stations.iter().flat_map(of_station).collect();
         let title = format!("{}: lift without cavitation", stations[0].section.name());
-        let mut chart = bucket_chart(title, &buckets, water, Some(depth), range.cavitation_margin);
-        if let Some(speed) = range.top_speed {
-            let sigma = water.cavitation_number(depth, speed);
-            let lifts = || chart.series.iter().flat_map(|line| line.points.iter()).map(|point| point.1);
-            let (least, most) = (lifts().fold(f64::NAN, f64::min), lifts().fold(f64::NAN, f64::max));
-            let widest = chart.series.iter().flat_map(|line| line.points.iter()).map(|p| p.0);
-            if sigma <= widest.fold(0.0, f64::max) {
-                chart.series.push(Series {
-                    name: format!("top speed {:.1} kn", knots(speed)),
-                    points: vec![(sigma, most), (sigma, least)],
-                });
-            }
-        }
-        chart
+        let top = range.top_speed.map(|speed| (format!("top speed {:.1} kn", knots(speed)), speed));
+        bucket_chart(title, &buckets, water, Some(depth), range.cavitation_margin, top.as_slice())
     };
     sections.into_iter().map(chart).collect()
 }

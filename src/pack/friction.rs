@@ -4,7 +4,8 @@
 use super::PackError;
 use crate::design::Design;
 use crate::flow::{
-    Conditions, LiftCurve, NoseFinish, Panelling, Salinity, Viscous, ViscousSolution, Water, side_by_side,
+    Bucket, Conditions, LiftCurve, NoseFinish, Panelling, Salinity, Viscous, ViscousSolution, Water,
+    side_by_side,
 };
 use crate::section::Section;
 
@@ -28,7 +29,16 @@ pub(super) struct AtLift {
     pub(super) incidence: f64,
     pub(super) cd: f64,
     pub(super) cm: f64,
-    pub(super) cp_min: f64,
+}
+
+/// Where the water starts to boil.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct Inception {
+    pub(super) finish: NoseFinish,
+    /// Greatest suction −cp.
+    pub(super) suction: f64,
+    /// With the margin asked, m/s.
+    pub(super) speed: f64,
 }
 
 /// Panels: half of what a single curve takes, for less than a hundredth of its lift.
@@ -100,6 +110,21 @@ impl<'a> StationCurves<'a> {
         }
     }
 
+    /// Where the water boils first at the design lift, of the smooth and the rough nose; `None` where
+    /// neither reaches that lift.
+    pub(super) fn cavitates(&self, design: &Design, water: &Water) -> Option<Inception> {
+        let range = &design.lift;
+        let depth = range.depth.mm() * 1e-3;
+        let of = |finish, curve| {
+            let suction = Bucket::of(curve).suction_at(range.design)?;
+            let speed = water.inception_speed(depth, -suction * (1.0 + range.cavitation_margin))?;
+            Some(Inception { finish, suction, speed })
+        };
+        let both = [(NoseFinish::Smooth, &self.smooth), (NoseFinish::Rough, &self.rough)];
+        let found = both.into_iter().filter_map(|(finish, curve)| of(finish, curve));
+        found.min_by(|a, b| a.speed.total_cmp(&b.speed))
+    }
+
     /// What it does at a lift coefficient, on the branch below the greatest lift.
     pub(super) fn at_lift(curve: &LiftCurve, cl: f64) -> Option<AtLift> {
         let found: Vec<&ViscousSolution> = curve.solutions().collect();
@@ -108,12 +133,7 @@ impl<'a> StationCurves<'a> {
             let mix = |value: fn(&ViscousSolution) -> f64| {
                 value(pair[0]) + share * (value(pair[1]) - value(pair[0]))
             };
-            AtLift {
-                incidence: mix(|s| s.incidence),
-                cd: mix(|s| s.cd),
-                cm: mix(|s| s.cm),
-                cp_min: mix(|s| s.cp_min),
-            }
+            AtLift { incidence: mix(|s| s.incidence), cd: mix(|s| s.cd), cm: mix(|s| s.cm) }
         })
     }
 }

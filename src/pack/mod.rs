@@ -5,15 +5,18 @@ mod bucket;
 mod checks;
 mod checks_wood;
 mod contents;
+mod cut_pieces;
 mod duty;
 mod error;
 mod friction;
 mod manifest;
+mod printed;
 mod sheet;
 mod strength;
 mod surface;
 mod tables;
 mod wood;
+mod workshop_checks;
 mod write;
 
 pub use bucket::bucket_chart;

@@ -6,7 +6,7 @@ use crate::design::{Cut, CutKind, Design};
 use crate::geometry::{ArcPath, ArcVertex, Point, Vec2};
 use crate::parts::{Core, CutShape, HingeAxis, split};
 use crate::wing::{Planform, StationShape, Wing};
-use crate::workshop::PlanMark;
+use crate::workshop::{PlanMark, Role};
 
 /// All of it.
 pub(super) struct WoodFigures<'a> {
@@ -197,7 +197,7 @@ pub(super) fn plan_marks(design: &Design, wing: &Wing, planform: &Planform) -> V
         for at in flap.into_iter().chain([line.from, line.to]) {
             let (front, back) = planform.edges(at);
             let path = across(at, front + line.x_at(at, back - front), 0.0);
-            marks.push(PlanMark { path, words: String::new() });
+            marks.push(PlanMark::new(path, String::new()));
         }
     }
     let levels = [("case ends", design.in_case.mm()), ("waterline", design.waterline.mm())];
@@ -206,7 +206,7 @@ pub(super) fn plan_marks(design: &Design, wing: &Wing, planform: &Planform) -> V
         if at > 0.0 && at < wing.reach() && (i == 0 || at > levels[0].1) {
             let path = across(at, planform.edges(at).0 - LEVEL_OVERRUN, LEVEL_OVERRUN);
             let words = format!("{name}, {} mm", crate::units::number(at, 1));
-            marks.push(PlanMark { path, words });
+            marks.push(PlanMark::new(path, words));
         }
     }
     marks
@@ -234,7 +234,8 @@ fn cut_mark(cut: &Cut, wing: &Wing, planform: &Planform) -> PlanMark {
         let centre = Point::new(middle, front + cut.at * (back - front));
         let ends = [centre + Vec2::new(radius, 0.0), centre - Vec2::new(radius, 0.0)];
         let circle = ArcPath::new(ends.map(|point| ArcVertex { point, bulge: 1.0 }).to_vec(), true);
-        return PlanMark { path: circle, words };
+        let mark = PlanMark::new(circle, words);
+        return if cut.depth.mm() <= 0.0 { mark.cut(Role::CutInside) } else { seen_from_above(cut, mark) };
     }
     let mut places = wing.even_places();
     places.retain(|at| from < *at && *at < to);
@@ -250,5 +251,11 @@ fn cut_mark(cut: &Cut, wing: &Wing, planform: &Planform) -> PlanMark {
     };
     let ahead = places.iter().map(|&at| edge(at, 0));
     let behind = places.iter().rev().map(|&at| edge(at, 1));
-    PlanMark { path: ArcPath::polyline(ahead.chain(behind), true), words }
+    let mark = PlanMark::new(ArcPath::polyline(ahead.chain(behind), true), words);
+    if cut.kind == CutKind::Bore { mark } else { seen_from_above(cut, mark) }
+}
+
+/// A pocket of its depth where it is sunk from above; what is sunk from below is marked alone.
+fn seen_from_above(cut: &Cut, mark: PlanMark) -> PlanMark {
+    if cut.from_upper { mark.cut(Role::pocket(cut.depth.mm())) } else { mark }
 }

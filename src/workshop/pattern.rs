@@ -1,7 +1,7 @@
 //! Templates of the stations and the pattern of the planform.
 
 use super::{Drawing, Label, Role, Stamp};
-use crate::geometry::{ArcPath, GeometryError, Point, follow_with_arcs, polygon};
+use crate::geometry::{ArcPath, Point, polygon};
 use crate::parts::HingeLine;
 use crate::units::number;
 use crate::wing::{Planform, StationShape};
@@ -22,23 +22,19 @@ const OVERRUN: f64 = 5.0;
 /// The template of one station: its outline, chord line, hinge line and what it is.
 /// Nose at the origin, trailing edge along x.
 ///
+/// `outline`: the finished surface, followed with arcs.
 /// `level`: whether the foil lies level; an upright one is seen from above.
-/// `tolerance`: greatest distance of the contour from the exact outline, mm.
-///
-/// # Errors
-/// When the outline cannot be followed within the tolerance, or crosses itself.
+#[must_use]
 pub fn station_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
+    outline: &ArcPath,
     hinge: Option<&HingeLine>,
     level: bool,
-    tolerance: f64,
-) -> Result<Drawing, GeometryError> {
-    let outline = follow_with_arcs(shape, tolerance)?;
-    outline.refuse_crossings(tolerance)?;
+) -> Drawing {
     let bounds = outline.bounds();
     let mut drawing = Drawing::new(format!("{stamp}, station {} mm", number(shape.at, 2)));
-    drawing.add(Role::CutOutside, outline);
+    drawing.add(Role::CutOutside, outline.clone());
     let chord_line = ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0));
     drawing.add(Role::Reference, chord_line);
 
@@ -57,13 +53,16 @@ pub fn station_template(
         stamp.to_string(),
         format!("station {} mm from the root", number(shape.at, 2)),
         format!("{}, chord {:.2} mm, twist {}", shape.section_name(), shape.chord, turn(shape.twist)),
-        // With x aft and the span's axis away from the eye, what stands upright in the drawing is
-        // the boat's up for a level foil and its starboard side for an upright one.
-        if level { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
-            .to_owned(),
+        seen(level).to_owned(),
     ];
     write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
-    Ok(drawing)
+    drawing
+}
+
+/// Which side is up. With x aft and the span's axis away from the eye, what stands upright in the
+/// drawing is the boat's up for a level foil and its starboard side for an upright one.
+fn seen(level: bool) -> &'static str {
+    if level { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
 }
 
 /// The template of a part at one station: its own contour to cut, the finished outline for reference,
@@ -73,8 +72,8 @@ pub fn part_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
     finished: &ArcPath,
-    name: &str,
-    part: &ArcPath,
+    level: bool,
+    (name, part): (&str, &ArcPath),
     words: &[String],
 ) -> Drawing {
     let mut drawing = Drawing::new(format!("{stamp}, station {} mm, {name}", number(shape.at, 2)));
@@ -85,8 +84,9 @@ pub fn part_template(
         ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0)),
     );
     let mut lines = vec![stamp.to_string(), format!("station {} mm from the root", number(shape.at, 2))];
-    lines.push(format!("{name}: the wood under the laminate"));
+    lines.push(format!("{name}: the wood under the laminate, its grain along the span, out of this sheet"));
     lines.extend(words.iter().cloned());
+    lines.push(seen(level).to_owned());
     lines.push("cut the full line; the broken one is the finished surface".to_owned());
     write_block(&mut drawing, Point::new(0.0, finished.bounds().y0 - OVERRUN - GAP), &lines);
     drawing
@@ -149,9 +149,10 @@ pub fn planform_pattern(
             drawing.add(Role::Reference, ArcPath::polyline(line, false));
         }
     }
+    grain_arrow(&mut drawing, planform);
     let words = [
         stamp.to_string(),
-        format!("planform, span {} mm, leading edge up", number(planform.span(), 2)),
+        format!("planform, span {} mm, leading edge up, seen from above", number(planform.span(), 2)),
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
             let (from, to) = (number(hinge.from, 2), number(hinge.to, 2));
@@ -160,6 +161,20 @@ pub fn planform_pattern(
     ];
     write_block(&mut drawing, Point::new(bounds.x0, bounds.y0 - OVERRUN - GAP), &words);
     drawing
+}
+
+/// An arrow along the span, which is where the grain runs.
+fn grain_arrow(drawing: &mut Drawing, planform: &Planform) {
+    let reach = planform.leading.last().map_or(0.0, |corner| corner.x);
+    let (from, to) = (0.12 * reach, 0.12 * reach + (0.2 * reach).min(80.0));
+    let (front, back) = planform.edges(to);
+    let y = -(front + 0.88 * (back - front));
+    let (start, tip) = (Point::new(from, y), Point::new(to, y));
+    let barb = 0.08 * (to - from);
+    drawing.add(Role::Reference, ArcPath::line(start, tip));
+    let barbs = [Point::new(to - 2.0 * barb, y + barb), tip, Point::new(to - 2.0 * barb, y - barb)];
+    drawing.add(Role::Reference, ArcPath::polyline(barbs, false));
+    drawing.write(Role::Label, Point::new(from, y + 1.5), SMALL, "grain");
 }
 
 fn write_block(drawing: &mut Drawing, top: Point, words: &[String]) {

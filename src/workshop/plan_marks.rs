@@ -17,10 +17,26 @@ const PICTURE: f64 = 240.0;
 /// A line on the planform; x along the span, y aft of the root's quarter chord, mm.
 #[derive(Debug, Clone, PartialEq)]
 pub struct PlanMark {
+    /// A line to mark, unless it is to be cut.
+    pub role: Role,
     /// Where it runs.
     pub path: ArcPath,
     /// What it is; empty where it needs no word.
     pub words: String,
+}
+
+impl PlanMark {
+    /// A line to mark.
+    #[must_use]
+    pub fn new(path: ArcPath, words: String) -> Self {
+        Self { role: Role::Reference, path, words }
+    }
+
+    /// The same as a contour to be cut.
+    #[must_use]
+    pub fn cut(self, role: Role) -> Self {
+        Self { role, ..self }
+    }
 }
 
 /// Draws marks on a pattern of the planform, on both halves of a mirrored foil, each with a letter in a row
@@ -28,9 +44,9 @@ pub struct PlanMark {
 pub fn mark_on_plan(drawing: &mut Drawing, planform: &Planform, marks: &[PlanMark]) -> Vec<String> {
     let flip = Affine::FLIP_Y;
     for mark in marks {
-        drawing.add(Role::Reference, mark.path.transformed(flip));
+        drawing.add(mark.role, mark.path.transformed(flip).anticlockwise());
         if planform.is_mirrored() {
-            drawing.add(Role::Reference, mark.path.transformed(flip * Affine::FLIP_X));
+            drawing.add(mark.role, mark.path.transformed(flip * Affine::FLIP_X).anticlockwise());
         }
     }
     let mut named: Vec<&PlanMark> = marks.iter().filter(|mark| !mark.words.is_empty()).collect();

@@ -28,6 +28,17 @@ def quantity(text: str) -> float:
     return float(number) * UNITS[unit]
 
 
+STOCK = {"length": "1200 mm", "width": "600 mm", "margin": "10 mm", "spacing": "12 mm"}
+
+
+@dataclass(frozen=True)
+class Stock:
+    length: float
+    width: float
+    margin: float
+    spacing: float
+
+
 @dataclass(frozen=True)
 class Station:
     at: float
@@ -117,13 +128,19 @@ class Design:
         # Defaults as the starter designs print them.
         masks, printer, paper = data.get("masks", {}), data.get("printer", {}), data.get("paper", {})
         self.clearance = quantity(masks.get("clearance", "0.3 mm"))
+        self.rail_offset = quantity(masks.get("rail-offset", "0 mm"))
         self.mask_thickness = quantity(masks.get("thickness", "6 mm"))
         self.bed = [quantity(printer.get(f"bed-{axis}", size)) for axis, size in zip("xyz", ("220 mm", "220 mm", "250 mm"))]
         self.bed_margin = quantity(printer.get("margin", "5 mm"))
-        self.paper = PAPER[paper.get("size", "A4")]
+        size = paper.get("size", "A4")
+        self.roll = None if size in PAPER else quantity(size)
+        self.paper = PAPER.get(size)
         self.paper_margin = quantity(paper.get("margin", "10 mm"))
         self.overlap = quantity(paper.get("overlap", "10 mm"))
         self.tolerance = quantity(data.get("router", {}).get("tolerance", "0.01 mm"))
+        stock = data.get("stock", {})
+        sizes = (quantity(stock.get(key, size)) for key, size in STOCK.items())
+        self.stock = Stock(*sizes)
         self.design_lift = float(data.get("lift", {}).get("design", 0.4))
 
     def shape(self, at: float) -> Shape:

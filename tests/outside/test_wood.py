@@ -62,7 +62,8 @@ def contour(path):
 
 @pytest.fixture
 def wood(pack):
-    found = [f for f in pack.manifest["files"] if f["kind"] == "dxf" and f["role"] in WOOD]
+    found = [f for f in pack.manifest["files"]
+             if f["kind"] == "dxf" and f["role"] in WOOD and not f["path"].endswith("-r12.dxf")]
     skin = Skin(pack.design.path)
     assert found
     return skin, [(pack.design.shape(f["station_mm"]), pack.folder / f["path"], f["role"]) for f in found]
@@ -106,6 +107,33 @@ def test_two_pieces_keep_apart(wood):
             gap = pieces["main body template"].distance(pieces["flap template"])
             assert gap > 0.3, f"station {at}: {gap}"
             assert pieces["main body template"].centroid.x < pieces["flap template"].centroid.x
+
+
+@LAMINATED
+def test_masks_close_on_the_wood(wood, pack, measured):
+    """The opening of a mask for the wood lies inside of the finished surface by the skin less the clearance."""
+    import test_masks
+
+    skin, _ = wood
+    halves = {}
+    for at, path in pack.with_role("core mask half"):
+        halves.setdefault(at, []).append(test_masks.face(path, 0.5 * pack.design.mask_thickness))
+    assert halves.keys() == set(pack.design.templates)
+    for at, plates in halves.items():
+        shape = pack.design.shape(at)
+        opening = max(shapely.union_all(plates).interiors, key=lambda ring: Polygon(ring).area)
+        finished = Polygon(shape.ring)
+        for x, y in shapely.get_coordinates(shapely.segmentize(opening, 0.5)):
+            distances = np.hypot(*(shape.outline - [x, y]).T)
+            nearest = int(np.argmin(distances))
+            foot = shape.outline[nearest]
+            if not 0.02 * shape.chord < foot[0] < 0.9 * shape.chord:
+                continue
+            inside = 1 if finished.contains(Point(x, y)) else -1
+            depth = skin.thickness(nearest < len(shape.outline) // 2, at, foot[0], shape.chord)
+            off = inside * distances[nearest] - (depth - pack.design.clearance)
+            measured("opening of a mask for the wood from the skin, mm", off)
+            assert abs(off) < test_masks.CLOSES_WITHIN, f"station {at} at {x:.2f}, {y:.2f}: {off:.3f} mm"
 
 
 FLAPPED = pytest.mark.parametrize("pack", [p for p in FILES if "[flap]" in p.read_text(encoding="utf-8")], indirect=True)

@@ -1,7 +1,7 @@
 //! The answer as pictures: what a boatbuilder reads off before cutting.
 
 use plankform::export::chart::{Band as Shade, Chart, Rule, SecondScale, Series, stacked};
-use plankform::flow::ViscousSolution;
+use plankform::flow::{NoseFinish, ViscousSolution};
 use plankform::pack::bucket_chart;
 use plankform::units::number;
 
@@ -120,8 +120,14 @@ fn turbulent(answer: &Answer) -> Chart {
 fn bucket(answer: &Answer) -> Chart {
     let Surroundings { water, depth, margin, .. } = &answer.surroundings;
     let buckets: Vec<_> = answer.curves.iter().map(|curve| (name(answer, curve), curve.bucket())).collect();
+    let mut speeds: Vec<(String, f64)> = Vec::new();
+    for speed in answer.curves.iter().filter_map(|curve| curve.running.speed) {
+        if speeds.iter().all(|known| known.1 != speed) {
+            speeds.push((format!("at {}", in_knots(speed)), speed));
+        }
+    }
     let title = format!("{}: lift without cavitation", answer.section);
-    Chart { subtitle: common(answer), ..bucket_chart(title, &buckets, water, *depth, *margin) }
+    Chart { subtitle: common(answer), ..bucket_chart(title, &buckets, water, *depth, *margin, &speeds) }
 }
 
 /// The points of a curve, with gaps where no flow was found.
@@ -160,7 +166,11 @@ fn traits(curve: &Curve) -> [Option<String>; 4] {
         curve.axis.map(|_| format!("flap {}°", curve.flap)),
         speed.or(reynolds),
         curve.finish.map(|finish| finish.word().to_owned()),
-        curve.viscous().map(|viscous| format!("N {}", viscous.conditions.amplification)),
+        // A rough nose leaves nothing to amplify.
+        curve
+            .viscous()
+            .filter(|_| curve.finish == Some(NoseFinish::Smooth))
+            .map(|viscous| format!("N {}", viscous.conditions.amplification)),
     ]
 }
 

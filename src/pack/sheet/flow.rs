@@ -15,7 +15,6 @@ use crate::units::number;
 /// Lift and drag with friction, what to expect at the design lift, and cavitation.
 pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves: &[StationCurves<'_>]) {
     let range = &design.lift;
-    let depth = range.depth.mm() * 1e-3;
     let _ = writeln!(
         body,
         "<h2>Lift and drag at {:.1} kn</h2>\n<p>{} water of {} °C, N = {} (how far waves in the boundary layer grow before it turns \
@@ -38,8 +37,7 @@ pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves
                 if is_peak { format!("{cl:.2}") } else { format!("over {cl:.2}") }
             };
             let or_dash = |value: Option<String>| value.unwrap_or("–".to_owned());
-            let inception =
-                wanted.and_then(|w| water.inception_speed(depth, w.cp_min * (1.0 + range.cavitation_margin)));
+            let inception = station.cavitates(design, water);
             [
                 at(&station.stations),
                 escaped(station.section.name()),
@@ -48,7 +46,7 @@ pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves
                 or_dash(wanted.map(|w| format!("{:.4}", w.cd))),
                 or_dash(rough.map(|w| format!("{:.4}", w.cd))),
                 format!("{}, rough {}", greatest(&station.smooth), greatest(&station.rough)),
-                or_dash(inception.map(|speed| format!("{:.1} kn", knots(speed)))),
+                or_dash(inception.map(|inception| format!("{:.1} kn", knots(inception.speed)))),
             ]
         })
         .collect();

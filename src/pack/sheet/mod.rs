@@ -9,6 +9,7 @@ mod flow;
 mod shape;
 mod strength;
 mod work;
+mod workshop;
 
 use std::fmt::Write as _;
 
@@ -38,6 +39,7 @@ pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[
     flow::cavitation(&mut body, design, water, curves);
     flow::lift(&mut body, design, flows);
     work::steps(&mut body, design, files);
+    workshop::pieces_and_pages(&mut body, design, aids, files);
     work::check_table(&mut body, checks);
     work::file_table(&mut body, files);
     document(&format!("{} {}", design.name, design.fingerprint()), &body)

@@ -2,7 +2,7 @@
 
 use super::PackError;
 use super::cut_pieces::{self, CutPiece};
-use super::duty::FoilDuty;
+use super::duty::{FoilDuty, strut_case};
 use super::friction::{StationCurves, water};
 use super::printed::{self, Bench, StationMask};
 use super::strength::{self, PartStrength};
@@ -58,11 +58,11 @@ impl<'a> Aids<'a> {
             wood::turn_about_the_line(design, &hinge.axis, &mut stations);
         }
         let (pattern, legend) = pattern(design, wing, &planform);
-        let duty = FoilDuty::of(design, wing, &water, &curves)?;
+        let duty = FoilDuty::of(design, wing, &water)?;
         let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
         let cut = cut_pieces::cut_pieces(design, &stations, &pattern)?;
         Ok(Self {
-            strength: strength::of(design, wing, &flight, Vec::new())?,
+            strength: strength::of(design, wing, &flight, strut_case(design))?,
             duty,
             layout: cut_pieces::layout(design, &cut),
             bench: printed::bench(design, wing, &stamp(design))?,

@@ -5,7 +5,6 @@ use serde::Serialize;
 use super::PackError;
 use super::aids::{Aids, SectionFlow, StationAids};
 use super::checks_wood;
-use super::duty::FoilDuty;
 use super::friction::{Inception, StationCurves};
 use super::surface::FAIRING;
 use crate::design::Design;
@@ -59,7 +58,7 @@ pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
     checks.extend(curves.iter().flat_map(|curves| stall(design, curves)));
     checks.extend(curves.iter().flat_map(|curves| cavitation(design, water, curves)));
-    checks.extend(duty.as_ref().map(carries));
+    checks.extend(duty.iter().flat_map(|foil| super::duty::checks(design, foil)));
     checks.extend(aids.strength.iter().flat_map(|part| super::strength::checks(design, part)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
     checks.extend(aids.surface.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
@@ -200,36 +199,6 @@ fn cavitation<'a>(
         passed: value >= limit,
         why: why.clone(),
     })
-}
-
-/// The foil must carry its load at the take-off speed.
-fn carries(foil: &FoilDuty) -> Check {
-    // Lift goes with the square of the speed.
-    let (value, why) = match &foil.take_off {
-        Ok(take_off) => {
-            let value = foil.load * (foil.duty.take_off / take_off.speed).powi(2);
-            let advice = if value >= foil.load { "" } else { ": take more area, more camber or less load" };
-            let why = format!(
-                "lift at take-off speed with {:.0} % of the greatest; the load is carried from {:.2} m/s on, at {:.1}° of incidence with {:.0} N of drag and {:.0} W{advice}",
-                100.0 * foil.duty.share,
-                take_off.speed,
-                take_off.loading.state.incidence.to_degrees(),
-                take_off.loading.drag(),
-                take_off.loading.power(),
-            );
-            (value, why)
-        }
-        Err(error) => (0.0, error.to_string()),
-    };
-    Check {
-        name: "the foil carries its load at take-off".to_owned(),
-        place: "the whole foil".to_owned(),
-        value,
-        limit: foil.load,
-        unit: "N".to_owned(),
-        passed: value >= foil.load,
-        why,
-    }
 }
 
 /// No crossing, and wood everywhere between the surfaces.

@@ -8,6 +8,7 @@ use crate::flow::{FlowError, ViscousError};
 use crate::geometry::GeometryError;
 use crate::loading::LoadingError;
 use crate::parts::PartError;
+use crate::section::SectionError;
 use crate::strength::StrengthError;
 use crate::wing::WingError;
 
@@ -38,6 +39,9 @@ pub enum PackError {
     /// The foil under its boat cannot be worked out.
     #[error("the foil under its boat: {0}")]
     Loading(#[from] LoadingError),
+    /// A section's flap cannot be turned.
+    #[error(transparent)]
+    Section(#[from] SectionError),
     /// The strength cannot be worked out.
     #[error("strength: {0}")]
     Strength(#[from] StrengthError),

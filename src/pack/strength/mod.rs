@@ -74,7 +74,7 @@ pub(super) fn of<'a>(
     design: &'a Design,
     wing: &Wing,
     flight: &[(String, &Loading)],
-    more: Vec<LoadCase>,
+    more: Option<LoadCase>,
 ) -> Result<Result<PartStrength<'a>, String>, PackError> {
     if let Some(why) = missing(design) {
         return Ok(Err(why.to_owned()));

@@ -237,8 +237,11 @@ impl Chart {
             // Names stand at the line's end, moved down where one stands already.
             let last = series.points.iter().rev().find(|p| p.0.is_finite() && p.1.is_finite());
             let mut at = last.map_or(TOP, |p| y(p.1) + 5.0).clamp(TOP, HEIGHT - BOTTOM);
-            while ends.iter().any(|end: &f64| (end - at).abs() < 17.0) {
-                at += 17.0;
+            let is_taken = |at: f64| ends.iter().any(|end: &f64| (end - at).abs() < 17.0);
+            // Down as a rule, and up from where the chart ends.
+            let step = if at > HEIGHT - BOTTOM - 40.0 { -17.0 } else { 17.0 };
+            while is_taken(at) {
+                at += step;
             }
             ends.push(at);
             let _ = writeln!(

@@ -161,7 +161,7 @@ impl Files {
     fn add_tables(
         &mut self,
         design: &Design,
-        Aids { stations, flows, curves, strength, .. }: &Aids<'_>,
+        Aids { stations, flows, curves, duty, strength, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let fingerprint = design.fingerprint();
         let text = tables::stations(stations, &fingerprint)?;
@@ -178,6 +178,12 @@ impl Files {
             None,
             text,
         );
+        if let Some(foil) = duty {
+            let text = super::duty::speeds(foil, &fingerprint)?;
+            self.add("tables/flight.csv".to_owned(), "csv", "the foil at each speed", None, text);
+            let text = super::duty::span(foil, &fingerprint)?;
+            self.add("tables/span-load.csv".to_owned(), "csv", "lift along the span", None, text);
+        }
         if let Ok(part) = strength {
             let text = super::strength::table(part, &fingerprint)?;
             self.add("tables/strength.csv".to_owned(), "csv", "strength along the span", None, text);

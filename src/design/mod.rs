@@ -12,6 +12,8 @@ mod page;
 mod parts;
 mod reader;
 mod resolve;
+mod resolve_ends;
+mod resolve_wood;
 mod schema;
 mod starter;
 mod strength;
@@ -21,17 +23,16 @@ mod wing;
 pub use crate::problems::{FileErrors as DesignErrors, Problem};
 pub use boat::{Boat, Role};
 pub use model::{
-    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
-    Printer, Router, Station, Stock,
+    Cut, CutKind, Design, Duty, DxfRelease, Faces, Flap, FlapKind, Hands, HingeFrom, Kind, Laminate, Lift,
+    MaskShapes, Masks, Paper, PaperSize, Ply, PlySide, Printer, Router, Station, Stock, Tip, TipShape,
 };
 pub use page::key_tables;
 pub use schema::schema;
-pub use starter::starter;
+pub use starter::{SCHEMA_FILE, starter};
 pub use strength::{Case, CaseLoad, Form, Joint, Material, Strength};
 
 use crate::problems::{Problems, Wrong};
 use crate::section::Beside;
-use toml::de::DeTable;
 
 /// The largest design file that is read, in bytes.
 pub const LARGEST_FILE: usize = 1_000_000;
@@ -76,15 +77,7 @@ fn read(text: &str, beside: &Beside<'_>, follow: bool, problems: &mut Problems) 
         problems.add(0..0, Wrong::new(message));
         return None;
     }
-    let root = match DeTable::parse(text) {
-        Ok(root) => root,
-        Err(error) => {
-            let place = error.span().unwrap_or(0..0);
-            let message = format!("this is not TOML, the form of a design file: {}", error.message());
-            problems.add(place, Wrong::new(message));
-            return None;
-        }
-    };
+    let root = problems.toml(text, "a design file")?;
     if root.get_ref().is_empty() {
         let wrong = Wrong::new("the file holds no design: there is not one key in it")
             .help("`plankform new FILE` writes a design to start from");

@@ -190,6 +190,16 @@ impl Row {
         self.values.get(key).map_or_else(|| self.header.clone(), |(span, _)| span.clone())
     }
 
+    /// Where the table is opened.
+    pub(super) fn header(&self) -> Range<usize> {
+        self.header.clone()
+    }
+
+    /// Whether the file itself gives the key, rather than its default.
+    pub(super) fn gives(&self, key: &str) -> bool {
+        self.values.get(key).is_some_and(|(span, _)| *span != self.header)
+    }
+
     fn value(&self, key: &str) -> Option<&Value> {
         self.values.get(key).map(|(_, value)| value)
     }

@@ -180,8 +180,11 @@ pub(super) fn strength(
     problems: &mut Problems,
 ) -> Option<Strength> {
     let row = sheet.one(&keys::STRENGTH)?;
-    let held_to = row.length("held-to");
-    if let (Some(reach), Some(held)) = (reach, held_to)
+    // What stands in a case leaves the hull where that ends.
+    let in_case = || sheet.one(&keys::PLANFORM).and_then(|planform| planform.length("in-case"));
+    let named = row.length("held-to");
+    let held_to = named.or_else(in_case);
+    if let (Some(reach), Some(held)) = (reach, named)
         && held.mm() > reach.to.mm() - 1.0
     {
         let wrong = Wrong::new(format!("held-to is {held}, and {}: nothing is left free", reach.because))

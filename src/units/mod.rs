@@ -15,7 +15,7 @@ pub use number::{fixed, number};
 pub use quantity::{
     ANGLE, AREAL_WEIGHT, DENSITY, FORCE, LENGTH, MASS, MOMENT, Quantity, SPEED, STRESS, TEMPERATURE, Unit,
 };
-pub use values::{Angle, Length};
+pub use values::{Angle, Length, knots};
 
 pub(crate) use number::plain;
 pub(crate) use spelling::{clipped, harmless, nearest};

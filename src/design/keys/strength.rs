@@ -103,7 +103,7 @@ pub(in crate::design) static STRENGTH: Table = Table {
         key(
             "held-to",
             Length(0.0, LONGEST),
-            Default("0 mm"),
+            Left("in-case of [planform]"),
             "How far from the root it is held fast: a strut up to where it leaves the hull, a foil up to the edge of its fitting.",
             "300 mm",
         ),

@@ -8,13 +8,13 @@ use crate::export::chart::{Chart, Mark, Series};
 use crate::export::html::{escaped, table};
 use crate::flow::{CurvePoint, LiftCurve, PressurePoint, ViscousSolution, Water};
 use crate::pack::aids::SectionFlow;
+use crate::pack::bucket;
 use crate::pack::friction::StationCurves;
 use crate::units::number;
 
 /// Lift and drag with friction, what to expect at the design lift, and cavitation.
 pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves: &[StationCurves<'_>]) {
     let range = &design.lift;
-    let depth = range.depth.mm() * 1e-3;
     let _ = writeln!(
         body,
         "<h2>Lift and drag at {:.1} kn</h2>\n<p>{} water of {} °C, N = {} (how far waves in the boundary layer grow before it turns \
@@ -37,7 +37,7 @@ pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves
                 if is_peak { format!("{cl:.2}") } else { format!("over {cl:.2}") }
             };
             let or_dash = |value: Option<String>| value.unwrap_or("–".to_owned());
-            let inception = wanted.and_then(|w| water.inception_speed(depth, w.cp_min));
+            let inception = station.cavitates(design, water);
             [
                 at(&station.stations),
                 escaped(station.section.name()),
@@ -46,7 +46,7 @@ pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves
                 or_dash(wanted.map(|w| format!("{:.4}", w.cd))),
                 or_dash(rough.map(|w| format!("{:.4}", w.cd))),
                 format!("{}, rough {}", greatest(&station.smooth), greatest(&station.rough)),
-                or_dash(inception.map(|speed| format!("{:.1} kn", knots(speed)))),
+                or_dash(inception.map(|inception| format!("{:.1} kn", knots(inception.speed)))),
             ]
         })
         .collect();
@@ -91,6 +91,20 @@ pub(super) fn friction(body: &mut String, design: &Design, water: &Water, curves
         },
     ];
     for chart in charts {
+        let _ = writeln!(body, "<figure>{}</figure>", chart.to_svg());
+    }
+}
+
+/// Up to which speed which lift is free of cavitation.
+pub(super) fn cavitation(body: &mut String, design: &Design, water: &Water, curves: &[StationCurves<'_>]) {
+    let depth = number(design.lift.depth.mm(), 0);
+    let _ = writeln!(
+        body,
+        "<h2>Cavitation</h2>\n<p>Where the suction on the foil reaches the pressure of the water above it, the water boils: lift \
+         falls, drag grows, and the surface wears. Right of a line nothing boils at {depth} mm depth; faster boats move to the left along \
+         the scale above. Air that is drawn down from the surface (ventilation) comes earlier and is not in it.</p>"
+    );
+    for chart in bucket::charts(design, water, curves) {
         let _ = writeln!(body, "<figure>{}</figure>", chart.to_svg());
     }
 }

@@ -3,10 +3,13 @@
 //! A section of it stands in a file of its own.
 
 mod boat;
+mod cuts;
+mod ends;
 mod flow;
 mod shape;
 mod strength;
 mod work;
+mod workshop;
 
 use std::fmt::Write as _;
 
@@ -14,24 +17,29 @@ use super::aids::Aids;
 use super::{Check, PackFile};
 use crate::design::Design;
 use crate::export::html::{document, escaped};
+use crate::units::knots;
 
 /// White round a picture, mm.
 const MARGIN: f64 = 4.0;
 
 pub(super) fn html(design: &Design, aids: &Aids<'_>, checks: &[Check], files: &[PackFile]) -> String {
-    let Aids { planform, pattern, stations, flows, water, curves, duty, pieces, .. } = aids;
+    let Aids { planform, pattern, legend, stations, flows, water, curves, duty, pieces, .. } = aids;
     let mut body = String::new();
     heading(&mut body, design, checks);
     cautions(&mut body);
-    shape::shape(&mut body, design, planform, stations, pattern);
+    shape::shape(&mut body, design, planform, stations, (pattern, legend));
+    ends::ends(&mut body, design, &aids.surface);
     shape::wood(&mut body, design, stations, pieces);
+    cuts::cuts(&mut body, &aids.wood.cuts);
     strength::strength(&mut body, design, &aids.strength);
     if let Some(foil) = duty {
         boat::under_the_boat(&mut body, design, foil);
     }
     flow::friction(&mut body, design, water, curves);
+    flow::cavitation(&mut body, design, water, curves);
     flow::lift(&mut body, design, flows);
     work::steps(&mut body, design, files);
+    workshop::pieces_and_pages(&mut body, design, aids, files);
     work::check_table(&mut body, checks);
     work::file_table(&mut body, files);
     document(&format!("{} {}", design.name, design.fingerprint()), &body)
@@ -68,9 +76,4 @@ fn cautions(body: &mut String) {
          is said here of lift, drag, cavitation and strength is computed: nothing of ventilation, waves, debris, impact or fatigue \
          is in it, and it is no certificate: local rules and qualified advice come first.</div>\n",
     );
-}
-
-/// A speed in m/s in knots.
-fn knots(speed: f64) -> f64 {
-    speed * 3600.0 / 1852.0
 }

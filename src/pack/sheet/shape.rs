@@ -11,21 +11,21 @@ use crate::pack::aids::StationAids;
 use crate::parts::WoodPiece;
 use crate::units::number;
 use crate::wing::Planform;
-use crate::workshop::{Drawing, turn};
+use crate::workshop::{Drawing, flap_picture, turn};
 
 pub(super) fn shape(
     body: &mut String,
     design: &Design,
     planform: &Planform,
     stations: &[StationAids<'_>],
-    pattern: &Drawing,
+    (pattern, legend): (&Drawing, &[String]),
 ) {
     let _ = writeln!(
         body,
         "<h2>Shape</h2>\n<p>Seen from {}: span {:.1} mm, area {:.1} cm², aspect ratio {:.2}, mean chord {:.1} mm, taper {:.3}, mean \
          aerodynamic chord {:.1} mm, aerodynamic centre {:.1} mm aft of the root's quarter chord.</p>\n\
-         <figure>{}<figcaption>Planform, leading edge up; distances from the root in mm{}.</figcaption></figure>",
-        if planform.is_mirrored() { "above" } else { "the side" },
+         <figure>{}<figcaption>Planform, leading edge up; distances from the root in mm{}{}.</figcaption></figure>",
+        if design.kind.mirrored() { "above" } else { "the side" },
         planform.span(),
         planform.area() / 100.0,
         planform.aspect_ratio(),
@@ -34,10 +34,8 @@ pub(super) fn shape(
         planform.aerodynamic_chord(),
         planform.aerodynamic_centre(),
         picture(&pattern.without_caption(), MARGIN),
-        design.flap.map_or(String::new(), |flap| format!(
-            "; hinge line at {} % of chord",
-            number(100.0 * flap.hinge, 1)
-        ))
+        hinge_words(design),
+        legend.iter().map(|line| format!("; {}", escaped(line))).collect::<String>()
     );
     let root = stations.first().map_or(Point::ORIGIN, |station| station.shape.nose);
     let rows: Vec<[String; 7]> = stations
@@ -75,6 +73,10 @@ pub(super) fn shape(
             escaped(&station.shape.section_name())
         );
     }
+}
+
+fn hinge_words(design: &Design) -> String {
+    design.hinge_line().map_or(String::new(), |line| format!("; hinge line at {}", line.words()))
 }
 
 /// What is cut before anything is laid over it: plies, where the wood ends, the gap of the flap.
@@ -126,7 +128,8 @@ pub(super) fn wood(body: &mut String, design: &Design, stations: &[StationAids<'
                 mm(wood.thin_behind),
                 split.map_or("–".to_owned(), |s| format!("{:.2}, {:.2}", s.axis.x, s.axis.y)),
                 split.map_or("–".to_owned(), |s| {
-                    format!("{:.2} at rest, {:.2} least", s.gap_at_rest, s.least_gap)
+                    let [up, down] = s.gap_at_full;
+                    format!("{:.2}, {up:.2}, {down:.2}; {:.2}", s.gap_at_rest, s.least_gap)
                 }),
                 split
                     .and_then(|s| s.spacer)
@@ -139,7 +142,7 @@ pub(super) fn wood(body: &mut String, design: &Design, stations: &[StationAids<'
         "wood ends, mm from nose",
         "wood thinner than your least behind, mm",
         "hinge axis, mm",
-        "gap at the flap, mm",
+        "gap at rest, full up, full down; least, mm",
         "spacer for the gap, mm",
     ];
     body.push_str(&table(heading, &rows, |_| false));
@@ -147,6 +150,7 @@ pub(super) fn wood(body: &mut String, design: &Design, stations: &[StationAids<'
         "<p>Behind where the wood ends the trailing edge is laminate alone. The spacer is laid into the gap while the hinge's \
          skin cures, narrow side to the hinge.</p>\n",
     );
+    flap(body, design, stations);
     for station in stations {
         for (role, _, drawing) in &station.wood.templates {
             let _ = writeln!(
@@ -154,6 +158,34 @@ pub(super) fn wood(body: &mut String, design: &Design, stations: &[StationAids<'
                 "<figure>{}<figcaption>Station {} mm from the root, {role}.</figcaption></figure>",
                 picture(&drawing.without_caption(), MARGIN),
                 number(station.shape.at, 3),
+            );
+        }
+    }
+}
+
+/// The flap at its first and its last station, turned through its travel.
+fn flap(body: &mut String, design: &Design, stations: &[StationAids<'_>]) {
+    let (Some(flap), Some([from, to])) = (design.flap, design.flap_span()) else { return };
+    let _ = writeln!(
+        body,
+        "<p>The flap runs from {} to {} mm: at each end that stands beside wood it is {} shorter than where the foil is parted, so \
+         that it turns freely.</p>",
+        number(from, 2),
+        number(to, 2),
+        flap.clearance
+    );
+    let parted: Vec<_> = stations.iter().filter(|station| station.wood.split.is_some()).collect();
+    let ends = [parted.first(), parted.last().filter(|_| parted.len() > 1)];
+    for station in ends.into_iter().flatten() {
+        let shape = &station.shape;
+        let hinge = design.hinge_at(shape.at, shape.chord);
+        if let (Some(split), Some(hinge)) = (&station.wood.split, hinge) {
+            let _ = writeln!(
+                body,
+                "<figure>{}<figcaption>Flap at station {} mm, with its laminate; broken lines: all the way up and \
+                 down.</figcaption></figure>",
+                picture(&flap_picture(split, &station.template, &hinge), MARGIN),
+                number(shape.at, 3),
             );
         }
     }
@@ -173,7 +205,7 @@ fn pieces_table(body: &mut String, design: &Design, pieces: &[WoodPiece]) {
                 format!("{:.1}", piece.volume / 1000.0),
                 // mm³ times kg/m³ is a millionth of a gram.
                 format!("{:.0}", piece.volume * design.wood.density * 1e-6),
-                "along the length".to_owned(),
+                piece.grain.to_owned(),
             ]
         })
         .collect();

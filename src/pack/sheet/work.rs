@@ -26,8 +26,9 @@ pub(super) fn steps(body: &mut String, design: &Design, files: &[PackFile]) {
     }
     if routed > 0 {
         steps.push(format!(
-            "Send the {routed} router files in <code>cut/</code> to the router. They are in millimetres. Cut outside the \
-             lines of layer CUT_OUTSIDE; the other layers are never cut."
+            "Send the sheets in <code>cut/</code> to the router, or the pieces one by one: {routed} files, in millimetres, each of \
+             which says whether the cutter's radius is still to be set off. Layers are named for what is done to them: CUT_OUTSIDE, \
+             CUT_INSIDE, POCKET with its depth, DRILL, ENGRAVE; the others are never cut."
         ));
     }
     if plates > 0 {

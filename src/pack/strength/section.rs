@@ -3,9 +3,9 @@
 use std::f64::consts::FRAC_PI_4;
 
 use crate::design::Design;
-use crate::geometry::{Affine, ArcPath, Curve, Point, follow_with_arcs};
+use crate::geometry::{ArcPath, Curve, Point, follow_with_arcs};
 use crate::pack::PackError;
-use crate::parts::{Core, CutOut, CutShape, Laminate, PlyMaterial};
+use crate::parts::{Core, Laminate, PlyMaterial};
 use crate::section::Side;
 use crate::strength::{
     CoreElastic, FlapCut, Layer, Layup, Member, MemberStation, PlyElastic, SectionBuild, SkinPly, SkinSides,
@@ -79,8 +79,10 @@ fn build(design: &Design, wing: &Wing, at: f64) -> Result<SectionBuild, PackErro
     let (skin, to_foil) = (design.skin(), shape.to_foil());
     let hinge = design.hinge_at(at, shape.chord);
     let wood = if design.cuts_at(at).next().is_some() { Some(Core::of(&shape, &skin)?) } else { None };
-    let cut_outs =
-        design.cuts_at(at).filter_map(|(_, cut)| Some(hole(&cut, &cut.of(wood.as_ref()?), to_foil)));
+    let cut_outs = design.cuts_at(at).filter_map(|(_, cut)| {
+        let taken = cut.of(wood.as_ref()?).taken;
+        Some(taken.into_iter().map(|corner| to_foil * corner).collect::<Vec<_>>())
+    });
     let laid = design.plies.iter().zip(&skin.plies).filter(|(_, laid)| laid.span.contains(&at));
     let plies = laid.map(|(ply, laid)| {
         Ok(SkinPly {
@@ -150,18 +152,4 @@ fn web(design: &Design, core: &CoreElastic, skin: f64, height: f64, face: f64) -
     let material = material.and_then(|i| design.strength.materials.get(i)).filter(|_| face > 0.0);
     let plies = material.map(|m| Layer { material: m.elastic.clone(), angle: FRAC_PI_4, thickness: face });
     std::iter::once(Layer { material: wood, angle: 0.0, thickness: strip }).chain(plies).collect()
-}
-
-/// The corners of a cut-out; a slot only as deep as it goes into the wood.
-fn hole(cut: &CutOut, shape: &CutShape, to_foil: Affine) -> Vec<Point> {
-    let mut corners = shape.outline.flattened(TOLERANCE);
-    if let (CutOut::Slot { depth, .. }, [a, b, c, d, ..]) = (cut, corners.as_mut_slice()) {
-        // Its outline stands proud of the face, so that the cutter runs free.
-        let inside = |proud: Point, bottom: Point| {
-            let length = proud.distance(bottom);
-            bottom.lerp(proud, (depth / length).min(1.0))
-        };
-        (*a, *b) = (inside(*a, *d), inside(*b, *c));
-    }
-    corners.into_iter().map(|corner| to_foil * corner).collect()
 }

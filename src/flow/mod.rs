@@ -1,5 +1,6 @@
 //! Two-dimensional flow about a section.
 
+mod dense;
 mod edge;
 mod error;
 mod far_field;

@@ -10,9 +10,7 @@ use std::path::Path;
 use common::{Bench, DESIGN};
 use plankform::design::{Design, LARGEST_FILE, Lift};
 use plankform::section::coordinates::{LARGEST_DRAWING, LARGEST_TABLE, from_dxf, from_table};
-use plankform::section::{
-    DEEPEST_EXPRESSION, Expression, LARGEST_SECTION_FILE, LONGEST_EXPRESSION, Section,
-};
+use plankform::section::{DEEPEST_EXPRESSION, Expression, LARGEST_SECTION_FILE, LONGEST_EXPRESSION, Section};
 
 struct Limit {
     what: &'static str,
@@ -50,7 +48,8 @@ fn stations(count: usize) -> Result<(), String> {
 }
 
 fn templates(count: usize) -> Result<(), String> {
-    let places: Vec<String> = (0..count).map(|i| format!("\"{} mm\"", 200.0 * i as f64 / count as f64)).collect();
+    let places: Vec<String> =
+        (0..count).map(|i| format!("\"{} mm\"", 200.0 * i as f64 / count as f64)).collect();
     design(&format!("{DESIGN}\n[templates]\nat = [{}]\n", places.join(", ")))
 }
 
@@ -71,24 +70,84 @@ fn points(count: usize) -> Result<(), String> {
 fn numbers(count: usize) -> Result<(), String> {
     let step = 20.0 / (count - 1) as f64;
     let answer = Bench::new().run(&[
-        "lift", "NACA 0012", "--inviscid", "--angles", &format!("-10:10:{step}"), "--format", "csv",
+        "lift",
+        "NACA 0012",
+        "--inviscid",
+        "--angles",
+        &format!("-10:10:{step}"),
+        "--format",
+        "csv",
     ]);
     if answer.status == 0 { Ok(()) } else { Err(answer.err) }
 }
 
 const LIMITS: &[Limit] = &[
-    Limit { what: "design file", most: LARGEST_FILE, unit: "bytes", answer: |n| design(&format!("{DESIGN}{}", "#".repeat(n - DESIGN.len()))) },
+    Limit {
+        what: "design file",
+        most: LARGEST_FILE,
+        unit: "bytes",
+        answer: |n| design(&format!("{DESIGN}{}", "#".repeat(n - DESIGN.len()))),
+    },
     Limit { what: "`[[station]]`", most: 100, unit: "in a design", answer: stations },
     Limit { what: "places of templates", most: 200, unit: "in a design", answer: templates },
-    Limit { what: "`[[ply]]`", most: 60, unit: "in a design", answer: |n| tables(n, "[[ply]]\ncloth = \"glass\"\nweight = \"20 g/m2\"\nfibre-density = \"2550 kg/m3\"\nthickness = \"0.001 mm\"\n") },
-    Limit { what: "`[[cut]]`", most: 40, unit: "in a design", answer: |n| tables(n, "[[cut]]\nfor = \"rod\"\nkind = \"bore\"\nat = 0.3\nwidth = \"1 mm\"\n") },
-    Limit { what: "angles of a design's lift curve", most: Lift::MOST_POINTS, unit: "values", answer: lift_points },
-    Limit { what: "section file", most: LARGEST_SECTION_FILE, unit: "bytes", answer: |n| section(&format!("basis = \"NACA 0012\"\n{}", "#".repeat(n - 20))) },
-    Limit { what: "expression", most: LONGEST_EXPRESSION, unit: "bytes", answer: |n| expression(&format!("x{}", " ".repeat(n - 1))) },
-    Limit { what: "brackets within brackets", most: DEEPEST_EXPRESSION, unit: "deep", answer: |n| expression(&format!("{}x{}", "(".repeat(n), ")".repeat(n))) },
-    Limit { what: "table of coordinates", most: LARGEST_TABLE, unit: "bytes", answer: |n| from_table(&"#".repeat(n), "table.txt", None).map(|_| ()).map_err(|errors| errors.to_string()) },
+    Limit {
+        what: "`[[ply]]`",
+        most: 60,
+        unit: "in a design",
+        answer: |n| {
+            tables(
+                n,
+                "[[ply]]\ncloth = \"glass\"\nweight = \"20 g/m2\"\nfibre-density = \"2550 kg/m3\"\nthickness = \"0.001 mm\"\n",
+            )
+        },
+    },
+    Limit {
+        what: "`[[cut]]`",
+        most: 40,
+        unit: "in a design",
+        answer: |n| tables(n, "[[cut]]\nfor = \"rod\"\nkind = \"bore\"\nat = 0.3\nwidth = \"1 mm\"\n"),
+    },
+    Limit {
+        what: "angles of a design's lift curve",
+        most: Lift::MOST_POINTS,
+        unit: "values",
+        answer: lift_points,
+    },
+    Limit {
+        what: "section file",
+        most: LARGEST_SECTION_FILE,
+        unit: "bytes",
+        answer: |n| section(&format!("basis = \"NACA 0012\"\n{}", "#".repeat(n - 20))),
+    },
+    Limit {
+        what: "expression",
+        most: LONGEST_EXPRESSION,
+        unit: "bytes",
+        answer: |n| expression(&format!("x{}", " ".repeat(n - 1))),
+    },
+    Limit {
+        what: "brackets within brackets",
+        most: DEEPEST_EXPRESSION,
+        unit: "deep",
+        answer: |n| expression(&format!("{}x{}", "(".repeat(n), ")".repeat(n))),
+    },
+    Limit {
+        what: "table of coordinates",
+        most: LARGEST_TABLE,
+        unit: "bytes",
+        answer: |n| {
+            from_table(&"#".repeat(n), "table.txt", None).map(|_| ()).map_err(|errors| errors.to_string())
+        },
+    },
     Limit { what: "points of a table", most: 20_000, unit: "points", answer: points },
-    Limit { what: "traced drawing", most: LARGEST_DRAWING, unit: "bytes", answer: |n| from_dxf(&vec![b' '; n], "drawing.dxf", None).map(|_| ()).map_err(|error| error.to_string()) },
+    Limit {
+        what: "traced drawing",
+        most: LARGEST_DRAWING,
+        unit: "bytes",
+        answer: |n| {
+            from_dxf(&vec![b' '; n], "drawing.dxf", None).map(|_| ()).map_err(|error| error.to_string())
+        },
+    },
     Limit { what: "angles of `lift`", most: 2001, unit: "values", answer: numbers },
 ];
 
@@ -113,12 +172,17 @@ fn the_hand_book_lists_the_limits() {
     let mut table = String::from("| what | at most |\n| --- | --- |\n");
     for limit in LIMITS {
         let digits = limit.most.to_string();
-        let groups: Vec<&str> =
-            digits.as_bytes().rchunks(3).rev().map(|group| std::str::from_utf8(group).expect("digits")).collect();
+        let groups: Vec<&str> = digits
+            .as_bytes()
+            .rchunks(3)
+            .rev()
+            .map(|group| std::str::from_utf8(group).expect("digits"))
+            .collect();
         let _ = writeln!(table, "| {} | {} {} |", limit.what, groups.join(" "), limit.unit);
     }
     if std::env::var_os("PLANKFORM_HANDBOOK").is_some_and(|value| value == "write") {
-        std::fs::write(&path, format!("{}{table}{}", &page[..begin], &page[end..])).expect("the page is written");
+        std::fs::write(&path, format!("{}{table}{}", &page[..begin], &page[end..]))
+            .expect("the page is written");
     } else {
         assert_eq!(&page[begin..end], table, "write it anew with PLANKFORM_HANDBOOK=write");
     }

@@ -8,8 +8,10 @@ use plankform::geometry::{Point, polygon};
 use plankform::strength::{BeamNode, bond_shear};
 use std::f64::consts::{PI, TAU};
 
+/// A demo by itself, without the boat that another file describes.
 fn text_of(name: &str) -> String {
-    std::fs::read_to_string(demo(name)).expect("a demo")
+    let text = std::fs::read_to_string(demo(name)).expect("a demo");
+    text.replace("[boat]\ndescribed-in = \"main-foil.toml\"\n", "")
 }
 
 fn checks(bench: &Bench, text: &str) -> Vec<serde_json::Value> {

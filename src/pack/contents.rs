@@ -187,7 +187,7 @@ impl Files {
     fn add_tables(
         &mut self,
         design: &Design,
-        Aids { stations, flows, curves, pieces, water, strength, .. }: &Aids<'_>,
+        Aids { stations, flows, curves, pieces, water, duty, strength, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let fingerprint = design.fingerprint();
         let text = tables::stations(stations, &fingerprint)?;
@@ -206,6 +206,12 @@ impl Files {
             None,
             text,
         );
+        if let Some(foil) = duty {
+            let text = super::duty::speeds(foil, &fingerprint)?;
+            self.add("tables/flight.csv".to_owned(), "csv", "the foil at each speed", None, text);
+            let text = super::duty::span(foil, &fingerprint)?;
+            self.add("tables/span-load.csv".to_owned(), "csv", "lift along the span", None, text);
+        }
         let text = bucket::table(design, water, curves)?;
         self.add("tables/cavitation.csv".to_owned(), "csv", "speeds of cavitation", None, text);
         if let Ok(part) = strength {

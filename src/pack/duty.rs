@@ -3,10 +3,12 @@
 mod check;
 mod polars;
 mod sizing;
+mod table;
 mod window;
 
 pub(super) use check::checks;
 pub(super) use sizing::Size;
+pub(super) use table::{span, speeds};
 pub(super) use window::{Limits, works};
 
 use super::PackError;

@@ -7,17 +7,18 @@ use crate::design::{Design, FlapKind};
 use crate::flow::{Conditions, LiftCurve, Panelling, Viscous, Water, hinge_moment};
 use crate::geometry::Point;
 use crate::loading::{
-    CurvePoint, FlapCurve, LoadingError, SectionLift, SectionPoint, SectionTable, SpanTables,
+    CurvePoint, FlapCurve, GreatestLift, LoadingError, SectionLift, SectionPoint, SectionTable, SpanTables,
 };
 use crate::pack::PackError;
 use crate::section::{Flap, FlapSurface, HingeHeight, Section, Side};
 
 /// Panels, as for the curves of the stations.
 const PANELS: usize = 120;
-/// Incidences of the curves, degrees: finer where sections of this kind stall.
-const INCIDENCES: [f64; 13] = [-6.0, -4.0, -2.0, 0.0, 2.0, 4.0, 6.0, 8.0, 10.0, 11.5, 13.0, 14.5, 16.0];
+/// Incidences of the curves, degrees; with the flap turned no further than a foil goes that is held by it.
+const INCIDENCES: [f64; 11] = [-6.0, -3.0, 0.0, 2.0, 4.0, 6.0, 8.0, 10.0, 12.0, 14.0, 16.0];
+const FLAPPED: usize = 9;
 /// Greatest ratio of two neighbouring Reynolds numbers that are solved.
-const RATIO: f64 = 2.0;
+const RATIO: f64 = 3.0;
 
 /// A section at one incidence, flap angle and Reynolds number.
 #[derive(Debug, Clone, Copy)]
@@ -46,9 +47,28 @@ pub(super) struct Polars {
 /// The same at one speed.
 pub(super) struct AtSpeed {
     /// Lift, drag and moment.
-    pub(super) lift: SpanTables,
+    pub(super) lift: Curves,
     /// Least pressure in the place of lift, moment about the hinge in that of the moment.
     more: SpanTables,
+}
+
+/// Lift curves whose greatest lift is the most that is known of each: where a curve still rises at its end,
+/// there is more to come, and a margin to stall is at least what it is said to be.
+pub(super) struct Curves(SpanTables);
+
+impl SectionLift for Curves {
+    fn at(&self, along: f64, incidence: f64, flap: f64) -> SectionPoint {
+        self.0.at(along, incidence, flap)
+    }
+
+    fn greatest(&self, along: f64, flap: f64) -> Option<GreatestLift> {
+        // Straight between these incidences, a curve is highest at one of them.
+        let points = INCIDENCES.map(f64::to_radians).into_iter().filter_map(|incidence| {
+            let point = self.0.at(along, incidence, flap);
+            (!point.beyond).then_some(GreatestLift { incidence, cl: point.cl })
+        });
+        points.max_by(|a, b| a.cl.total_cmp(&b.cl))
+    }
 }
 
 impl AtSpeed {
@@ -125,7 +145,7 @@ impl Polars {
         places.sort_by(|a, b| a.0.total_cmp(&b.0));
         let lift = SpanTables::new(places.iter().map(|(at, lift, _)| (*at, lift.clone())).collect())?;
         let more = SpanTables::new(places.into_iter().map(|(at, _, more)| (at, more)).collect())?;
-        Ok(AtSpeed { lift, more })
+        Ok(AtSpeed { lift: Curves(lift), more })
     }
 }
 
@@ -149,7 +169,9 @@ fn solve(design: &Design, section: &Section, flap: f64, nodes: &[f64]) -> Result
     let viscous = Viscous::new(&Panelling::of(&shape, PANELS)?)?;
     let conditions: Vec<Conditions> =
         nodes.iter().map(|node| Conditions::free(node.exp(), design.lift.quietness)).collect();
-    let curves = LiftCurve::sweep_all(&viscous, &conditions, &INCIDENCES.map(f64::to_radians))?;
+    let count = if flap == 0.0 { INCIDENCES.len() } else { FLAPPED };
+    let incidences = INCIDENCES.map(f64::to_radians);
+    let curves = LiftCurve::sweep_all(&viscous, &conditions, &incidences[..count])?;
     let known = |curve: &LiftCurve| {
         let point = |s: &crate::flow::ViscousSolution| {
             let hinge = deflected.and_then(|(_, axis)| hinge_moment(&s.pressure, axis)).unwrap_or(0.0);

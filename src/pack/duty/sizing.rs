@@ -1,9 +1,8 @@
 //! What other areas and spans would carry the same load with the same margin.
 
+use super::polars::Curves;
 use super::{Foil, RANGE};
-use crate::loading::{
-    GreatestLift, LiftingLine, LoadingError, SectionLift, SectionPoint, Setting, SpanTables, State,
-};
+use crate::loading::{GreatestLift, LiftingLine, LoadingError, SectionLift, SectionPoint, Setting, State};
 use crate::wing::{Station, Wing};
 
 /// Spans that are tried, in spans of the design.
@@ -27,7 +26,7 @@ pub(in crate::pack) struct Size {
 
 /// The curves of a foil read on one of another span.
 struct Stretched<'a> {
-    tables: &'a SpanTables,
+    tables: &'a Curves,
     by: f64,
 }
 

@@ -205,7 +205,8 @@ fn window(body: &mut String, foil: &FoilDuty) {
     };
     let top = 3.0 * foil.load;
     let cut = |mut series: Series| {
-        series.points.iter_mut().filter(|p| p.1 > top).for_each(|p| p.1 = top);
+        // Below no lift at all the foil has no business.
+        series.points.iter_mut().for_each(|p| p.1 = if p.1 < 0.0 { f64::NAN } else { p.1.min(top) });
         series
     };
     let mut series = vec![

@@ -1,5 +1,6 @@
 //! Time of a converged viscous point against one LU factorisation of the size of the panel matrix
-//! by LAPACK, on one thread, in the same run; see `lapack`.
+//! by LAPACK, on one thread, in the same run; see `lapack`. And a map over sections, flap angles
+//! and Reynolds numbers on two threads against one.
 
 // Printing what was measured is part of the purpose here.
 #![allow(clippy::print_stdout)]
@@ -7,8 +8,8 @@
 use std::hint::black_box;
 use std::time::Instant;
 
-use plankform::flow::{Conditions, Panelling, Viscous};
-use plankform::section::{Section, TrailingEdge};
+use plankform::flow::{Conditions, LiftCurve, Panelling, Viscous};
+use plankform::section::{Flap, FlapSurface, HingeHeight, Section, TrailingEdge};
 
 mod lapack;
 
@@ -19,8 +20,53 @@ const ROUNDS: usize = 7;
 /// Repetitions in a round.
 const REPEATS: usize = 40;
 const PANELS: usize = 200;
+/// Maps on either number of threads.
+const MAP_ROUNDS: usize = 7;
 
 fn main() {
+    point();
+    map();
+}
+
+/// Sections, flap angles and Reynolds numbers on one thread and on two, by turns.
+fn map() {
+    let flap = |degrees: f64| Flap {
+        hinge: 0.7,
+        height: HingeHeight::Upper,
+        angle: degrees.to_radians(),
+        surface: FlapSurface::Broken,
+    };
+    let mut flows = Vec::new();
+    for name in ["NACA 4412", "NACA 0012"] {
+        let section = Section::from_designation(name, TrailingEdge::Closed).expect("a section");
+        for section in [section.clone(), section.flapped(flap(8.0)).expect("a flap")] {
+            let panelling = Panelling::of(&section, PANELS).expect("panels");
+            flows.push(Viscous::new(&panelling).expect("a flow"));
+        }
+    }
+    let conditions = [2e5, 5e5, 2e6].map(|reynolds| Conditions::free(reynolds, 9.0));
+    let angles: Vec<f64> = (-4..=10).map(|angle| f64::from(angle).to_radians()).collect();
+    let mut times = [Vec::new(), Vec::new()];
+    for _ in 0..MAP_ROUNDS {
+        for (threads, times) in [1, 2].into_iter().zip(&mut times) {
+            let start = Instant::now();
+            for flow in &flows {
+                black_box(LiftCurve::sweep_on(threads, flow, &conditions, &angles).expect("curves"));
+            }
+            times.push(start.elapsed().as_secs_f64());
+        }
+    }
+    let [[one, least_one], [two, least_two]] = times.map(summary);
+    println!(
+        "a map of {} curves: on one thread {one:.0} ms (least {least_one:.0}), on two {two:.0} ms (least {least_two:.0}), \
+         {:.2} times as fast (least {:.2})",
+        flows.len() * conditions.len(),
+        one / two,
+        least_one / least_two
+    );
+}
+
+fn point() {
     let section = Section::from_designation("NACA 4412", TrailingEdge::Closed).expect("a section");
     let panelling = Panelling::of(&section, PANELS).expect("panels");
     let flow = Viscous::new(&panelling).expect("a flow");

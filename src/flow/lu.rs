@@ -12,6 +12,8 @@ use faer::linalg::triangular_solve::{solve_unit_lower_triangular_in_place, solve
 use faer::{Accum, MatMut, MatRef, Par};
 use pulp::Simd;
 
+use super::dense::dot;
+
 /// Most columns that are eliminated one by one.
 const PANEL: usize = 8;
 
@@ -28,6 +30,30 @@ pub(super) fn solve_in_place(block: &mut [f64], stride: usize, size: usize) {
     let columns = right.len() / stride;
     let right = MatMut::from_column_major_slice_with_stride_mut(right, size, columns, stride);
     solve_upper_triangular_in_place(factors, right, Par::Seq);
+}
+
+/// Factors the columns of `block`, as many as there are rows in a square of `size`. Returns the
+/// rows that were exchanged with each diagonal in turn.
+pub(super) fn factor(block: &mut [f64], stride: usize, size: usize) -> Vec<usize> {
+    let mut pivots = vec![0; size];
+    eliminate(&mut block[..size * stride], stride, 0..size, &mut pivots);
+    pivots
+}
+
+/// Solves in place with the transpose of the matrix that was factored: for a matrix that stands in
+/// the block by rows. A singular matrix leaves something that is not finite.
+pub(super) fn solve_transposed(block: &[f64], stride: usize, pivots: &[usize], right: &mut [f64]) {
+    let column = |k: usize| &block[k * stride..][..pivots.len()];
+    for k in 0..pivots.len() {
+        let column = column(k);
+        right[k] = (right[k] - dot(&column[..k], &right[..k])) / column[k];
+    }
+    for k in (0..pivots.len()).rev() {
+        right[k] -= dot(&column(k)[k + 1..], &right[k + 1..]);
+    }
+    for (k, &pivot) in pivots.iter().enumerate().rev() {
+        right.swap(k, pivot);
+    }
 }
 
 /// Eliminates below the diagonal, among the `rows`, in as many columns of `block` as there are
@@ -227,6 +253,22 @@ mod tests {
                 .map(|i| (block[(size + i / size) * stride + i % size] - wanted[i]).abs())
                 .fold(0.0, f64::max);
             println!("{size} unknowns: greatest error {worst:.1e}");
+            assert!(worst < 1e-10, "{size}: {worst:e}");
+        }
+    }
+
+    #[test]
+    fn solves_by_rows_what_was_multiplied_out() {
+        for size in [1, 2, 9, 40, 101, 230] {
+            let stride = size + 3;
+            let mut block = scattered(size * stride);
+            let wanted = scattered(size);
+            let row = |i: usize| &block[i * stride..][..size];
+            let mut right: Vec<f64> = (0..size).map(|i| dot(row(i), &wanted)).collect();
+            let pivots = factor(&mut block, stride, size);
+            solve_transposed(&block, stride, &pivots, &mut right);
+            let worst = right.iter().zip(&wanted).map(|(a, b)| (a - b).abs()).fold(0.0, f64::max);
+            println!("{size} unknowns by rows: greatest error {worst:.1e}");
             assert!(worst < 1e-10, "{size}: {worst:e}");
         }
     }

@@ -1,6 +1,7 @@
 //! Two-dimensional flow about a section.
 
 mod bucket;
+mod dense;
 mod edge;
 mod error;
 mod far_field;

@@ -29,7 +29,7 @@ pub struct Tip {
 
 /// Straight pieces that stand for the tip's edges where these are wanted as polygons: their area is
 /// then short by less than 1e-5 of the tip's.
-const PIECES: usize = 96;
+const PIECES: usize = 128;
 
 impl Wing {
     /// The same foil with its end shaped.

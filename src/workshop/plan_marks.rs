@@ -72,7 +72,7 @@ pub fn mark_on_plan(drawing: &mut Drawing, planform: &Planform, marks: &[PlanMar
         let from = place(mark);
         let x = from.x.max(free);
         free = x + 1.5 * grown;
-        drawing.add(Role::Label, ArcPath::line(from, Point::new(x, row + 1.2 * grown)));
+        drawing.add(Role::Reference, ArcPath::line(from, Point::new(x, row + 1.2 * grown)));
         drawing.write(Role::Label, Point::new(x - 0.3 * grown, row), LETTERS, letter.to_string());
         let line = format!("{letter} {}", mark.words);
         next.y -= CAPTION_STEP;

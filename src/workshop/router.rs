@@ -44,7 +44,7 @@ impl Corners {
 
 /// Tabs take at most this share of a contour.
 const MOST_TABS: f64 = 0.25;
-/// How near chords lie to an outline to tell what lies within it, mm.
+/// How near chords lie to an outline to tell what lies within it, and how near two contours touch, mm.
 const FLAT: f64 = 0.01;
 /// A corner that turns less than this is a rounding of its neighbours, radians.
 const CORNER: f64 = 0.02;
@@ -56,12 +56,11 @@ const CORNER: f64 = 0.02;
 pub fn routed(drawing: &Drawing, settings: RouterSettings) -> Result<Drawing, GeometryError> {
     let radius = 0.5 * settings.cutter;
     let mut ready = Drawing { lines: Vec::new(), ..drawing.clone() };
-    let outside = drawing.lines.iter().find(|line| line.role == Role::CutOutside);
-    let outside = outside.map_or(Vec::new(), |line| line.path.flattened(FLAT));
+    let is_inner = |corner: Point, own: &ArcPath| inner_corner(drawing, corner, own);
     for Line { role, path } in &drawing.lines {
         let mut path = path.clone();
         if matches!(role, Role::CutInside | Role::Pocket(_)) {
-            path = relieved(&path, settings.corners, radius, &outside);
+            path = relieved(&path, settings.corners, radius, &is_inner);
         }
         if *role == Role::CutInside && is_drilled(&path, settings.cutter) {
             ready.add(Role::Drill, path);
@@ -97,9 +96,26 @@ fn round_hole(path: &ArcPath) -> Option<f64> {
     radii.all(|radius| radius.is_some_and(|r| (r - first).abs() < 1e-6)).then_some(first)
 }
 
-/// The contour of what is taken out, anticlockwise, with its corners between straight sides relieved;
-/// not those of a slot that stand proud of the piece, whose outline is `outside`.
-fn relieved(path: &ArcPath, corners: Corners, radius: f64, outside: &[Point]) -> ArcPath {
+/// Whether a corner of what is taken out lies in the piece: not where a slot stands proud of it or opens
+/// its edge, nor where one pocket runs on in another, as at the root of a mirrored foil.
+fn inner_corner(drawing: &Drawing, corner: Point, own: &ArcPath) -> bool {
+    let of = |line: &&Line| matches!(line.role, Role::CutInside | Role::Pocket(_)) && line.path != *own;
+    let runs_on = drawing.lines.iter().filter(of).any(|line| line.path.distance(corner) < FLAT);
+    let mut outside = drawing.lines.iter().filter(|line| line.role == Role::CutOutside);
+    let is_in = |line: &Line| {
+        polygon::contains(&line.path.flattened(FLAT), corner) && line.path.distance(corner) > 2.0 * FLAT
+    };
+    !runs_on && outside.any(is_in)
+}
+
+/// The contour of what is taken out, anticlockwise, with its inner corners between straight sides
+/// relieved.
+fn relieved(
+    path: &ArcPath,
+    corners: Corners,
+    radius: f64,
+    is_inner: &dyn Fn(Point, &ArcPath) -> bool,
+) -> ArcPath {
     if corners == Corners::Sharp {
         return path.clone();
     }
@@ -112,7 +128,7 @@ fn relieved(path: &ArcPath, corners: Corners, radius: f64, outside: &[Point]) ->
         let (arrives, leaves) = (vertex.point - before.point, after.point - vertex.point);
         let turn = arrives.cross(leaves).atan2(arrives.dot(leaves));
         let is_straight = before.bulge == 0.0 && vertex.bulge == 0.0;
-        if !is_straight || turn < CORNER || !polygon::contains(outside, vertex.point) {
+        if !is_straight || turn < CORNER || !is_inner(vertex.point, path) {
             relieved.push(*vertex);
             continue;
         }

@@ -86,9 +86,10 @@ def test_wood_lies_the_skin_inside(wood, pack, measured):
             upper = nearest < len(outline) // 2
             depth = skin.thickness(upper, shape.at, foot[0], shape.chord)
             off = distances[nearest] - depth
-            # A cut face lies deeper.
-            assert off > -(pack.design.tolerance + 0.004), f"{path.name} at {x:.2f}, {y:.2f}: {off:.4f}"
+            # A cut face lies deeper. In a tip the bend along the span is left out, as the hand-book says.
             in_tip = pack.design.tip is not None and shape.at > pack.design.tip.begins
+            short = 0.1 if in_tip else pack.design.tolerance + 0.004
+            assert off > -short, f"{path.name} at {x:.2f}, {y:.2f}: {off:.4f}"
             if role == "core template" and foot[0] < 0.93 * shape.chord and not in_tip:
                 measured("depth of the wood less the skin, mm", off)
                 assert off < pack.design.tolerance + 0.004 + 2e-3 * depth, f"{path.name} at {x:.2f}, {y:.2f}: {off:.4f}"

@@ -6,9 +6,9 @@
 //! thickness", Journal of Fluid Mechanics 4). Here they are even over each panel, so that each
 //! panel gives what the mass defect grows by between its nodes.
 
-use super::dense::dot;
 use super::sources::{mean_speed_in_line, surface_stream_function, velocities, wake_stream_functions};
 use super::wake::wake_line;
+use crate::flow::dense::dot;
 use crate::flow::edge::Base;
 use crate::flow::potential::surface_speeds;
 use crate::flow::{FlowError, Panelling};

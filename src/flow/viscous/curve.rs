@@ -45,33 +45,13 @@ impl LiftCurve {
         conditions: &Conditions,
         incidences: &[f64],
     ) -> Result<Self, ViscousError> {
-        conditions.check()?;
-        let mut sorted = incidences.to_vec();
-        if let Some(&bad) = sorted.iter().find(|angle| !angle.is_finite()) {
-            return Err(ViscousError::Incidence(bad));
-        }
-        sorted.sort_by(f64::total_cmp);
-        sorted.dedup();
-        let mut points: Vec<CurvePoint> =
-            sorted.into_iter().map(|incidence| CurvePoint { incidence, solution: None }).collect();
-        let easy = viscous.zero_lift();
-        let first = (0..points.len()).min_by(|&a, &b| {
-            (points[a].incidence - easy).abs().total_cmp(&(points[b].incidence - easy).abs())
-        });
-        if let Some(first) = first {
-            let up: Vec<usize> = (first..points.len()).collect();
-            let down: Vec<usize> = (0..=first).rev().collect();
-            carry(viscous, conditions, &mut points, &up);
-            carry(viscous, conditions, &mut points, &down);
-            // Gaps, from the side that was not tried.
-            let back: Vec<usize> = (0..points.len()).rev().collect();
-            carry(viscous, conditions, &mut points, &back);
-        }
-        Ok(Self { conditions: *conditions, panels: viscous.panelling().len(), points })
+        let mut curves = Self::sweep_all(viscous, std::slice::from_ref(conditions), incidences)?;
+        Ok(curves.remove(0))
     }
 
-    /// A curve for each of `conditions`, as many at a time as there are processors; in the same order,
-    /// and the same as one after the other.
+    /// A curve for each of `conditions`, in the same order. Both ways from zero lift of every curve
+    /// are gone side by side, as many at a time as there are processors; what comes out does not
+    /// depend on their number.
     ///
     /// # Errors
     /// As [`LiftCurve::sweep`], of the first that has one.
@@ -80,29 +60,67 @@ impl LiftCurve {
         conditions: &[Conditions],
         incidences: &[f64],
     ) -> Result<Vec<Self>, ViscousError> {
-        let workers = std::thread::available_parallelism().map_or(1, usize::from).min(conditions.len());
-        let next = AtomicUsize::new(0);
-        let work = || {
-            let mut done = Vec::new();
-            loop {
-                let i = next.fetch_add(1, Ordering::Relaxed);
-                match conditions.get(i) {
-                    Some(conditions) => done.push((i, Self::sweep(viscous, conditions, incidences))),
-                    None => return done,
-                }
-            }
-        };
-        let mut curves: Vec<(usize, Result<Self, ViscousError>)> = std::thread::scope(|scope| {
-            let threads: Vec<_> = (1..workers).map(|_| scope.spawn(work)).collect();
-            let mut done = work();
-            for thread in threads {
-                // A thread can only fail by a panic, which is passed on.
-                done.extend(thread.join().unwrap_or_else(|panic| std::panic::resume_unwind(panic)));
-            }
-            done
+        let processors = std::thread::available_parallelism().map_or(1, usize::from);
+        Self::sweep_on(processors, viscous, conditions, incidences)
+    }
+
+    /// As [`LiftCurve::sweep_all`], on so many threads.
+    ///
+    /// # Errors
+    /// As [`LiftCurve::sweep_all`].
+    pub fn sweep_on(
+        threads: usize,
+        viscous: &Viscous,
+        conditions: &[Conditions],
+        incidences: &[f64],
+    ) -> Result<Vec<Self>, ViscousError> {
+        conditions.iter().try_for_each(Conditions::check)?;
+        if let Some(&bad) = incidences.iter().find(|angle| !angle.is_finite()) {
+            return Err(ViscousError::Incidence(bad));
+        }
+        let mut sorted = incidences.to_vec();
+        sorted.sort_by(f64::total_cmp);
+        sorted.dedup();
+        let easy = viscous.zero_lift();
+        let first = (0..sorted.len())
+            .min_by(|&a, &b| (sorted[a] - easy).abs().total_cmp(&(sorted[b] - easy).abs()))
+            .unwrap_or(0);
+
+        // Slow water has the most trouble, and so goes first.
+        let mut order: Vec<usize> = (0..conditions.len()).collect();
+        order.sort_by(|&a, &b| conditions[a].reynolds.total_cmp(&conditions[b].reynolds));
+        let begun = side_by_side(threads, order.len(), |job| {
+            let start = sorted.get(first).map(|&at| viscous.at(at, &conditions[order[job]], None));
+            start.and_then(Result::ok)
         });
+        let ways = side_by_side(threads, 2 * order.len(), |job| {
+            let (curve, start) = (order[job / 2], begun[job / 2].clone());
+            let way = if job % 2 == 0 { &sorted[first..] } else { &sorted[..(first + 1).min(sorted.len())] };
+            let mut points = open(way);
+            if job % 2 == 1 {
+                points.reverse();
+            }
+            if let Some(point) = points.first_mut() {
+                point.solution = start;
+            }
+            carry(viscous, &conditions[curve], &mut points);
+            points
+        });
+        let closed = side_by_side(threads, order.len(), |job| {
+            let [up, down] = [&ways[2 * job], &ways[2 * job + 1]];
+            // Gaps, from the side that was not tried.
+            let mut points: Vec<CurvePoint> = up.iter().rev().chain(down.iter().skip(1)).cloned().collect();
+            carry(viscous, &conditions[order[job]], &mut points);
+            points.reverse();
+            points
+        });
+        let mut curves: Vec<(usize, Self)> = std::iter::zip(order, closed)
+            .map(|(i, points)| {
+                (i, Self { conditions: conditions[i], panels: viscous.panelling().len(), points })
+            })
+            .collect();
         curves.sort_by_key(|&(i, _)| i);
-        curves.into_iter().map(|(_, curve)| curve).collect()
+        Ok(curves.into_iter().map(|(_, curve)| curve).collect())
     }
 
     /// How many points converged.
@@ -160,26 +178,54 @@ impl LiftCurve {
     }
 }
 
-/// Solves what is still open along `order`, from neighbour to neighbour.
-fn carry(viscous: &Viscous, conditions: &Conditions, points: &mut [CurvePoint], order: &[usize]) {
-    let mut last: Option<(usize, ViscousSolution)> = None;
-    for &i in order {
-        if let Some(solution) = &points[i].solution {
-            last = Some((i, solution.clone()));
-            continue;
-        }
-        let target = points[i].incidence;
-        let found = match &last {
-            Some((near, solution)) if near.abs_diff(i) <= FAR => {
-                from_neighbour(viscous, conditions, solution, target)
+/// What `work` makes of the numbers from nought to `count`, in their order, on so many threads.
+fn side_by_side<T: Send>(threads: usize, count: usize, work: impl Fn(usize) -> T + Sync) -> Vec<T> {
+    let next = AtomicUsize::new(0);
+    let take = || {
+        let mut done = Vec::new();
+        loop {
+            let i = next.fetch_add(1, Ordering::Relaxed);
+            if i >= count {
+                return done;
             }
-            // Behind several gaps the neighbour leads nowhere as a rule.
-            Some(_) => viscous.attempt(target, conditions, None),
-            None => viscous.at(target, conditions, None).ok(),
-        };
-        if let Some(found) = found {
-            last = Some((i, found.clone()));
-            points[i].solution = Some(found);
+            done.push((i, work(i)));
+        }
+    };
+    let mut done: Vec<(usize, T)> = std::thread::scope(|scope| {
+        let others: Vec<_> = (1..threads.min(count)).map(|_| scope.spawn(take)).collect();
+        let mut done = take();
+        for thread in others {
+            // A thread can only fail by a panic, which is passed on.
+            done.extend(thread.join().unwrap_or_else(|panic| std::panic::resume_unwind(panic)));
+        }
+        done
+    });
+    done.sort_by_key(|&(i, _)| i);
+    done.into_iter().map(|(_, result)| result).collect()
+}
+
+fn open(incidences: &[f64]) -> Vec<CurvePoint> {
+    incidences.iter().map(|&incidence| CurvePoint { incidence, solution: None }).collect()
+}
+
+/// Solves what is still open, from neighbour to neighbour in the order of the points.
+fn carry(viscous: &Viscous, conditions: &Conditions, points: &mut [CurvePoint]) {
+    let mut last: Option<usize> = None;
+    for i in 0..points.len() {
+        let target = points[i].incidence;
+        if points[i].solution.is_none() {
+            let near = last.map(|near| (i - near, points[near].solution.as_ref()));
+            points[i].solution = match near {
+                Some((steps, Some(solution))) if steps <= FAR => {
+                    from_neighbour(viscous, conditions, solution, target)
+                }
+                // Behind several gaps the neighbour leads nowhere as a rule.
+                Some(_) => viscous.attempt(target, conditions, None),
+                None => viscous.at(target, conditions, None).ok(),
+            };
+        }
+        if points[i].solution.is_some() {
+            last = Some(i);
         }
     }
 }

@@ -5,7 +5,6 @@
 mod closure;
 mod coupling;
 mod curve;
-mod dense;
 mod dual;
 mod interval;
 mod layer;
@@ -25,7 +24,7 @@ pub use solution::{LayerPoint, SideFlow, ViscousSolution};
 
 use super::{FlowError, Panelling};
 use coupling::Coupling;
-use solve::{Convergence, converge, first_account};
+use solve::{Converged, Failed, converge, first_account};
 use state::{Problem, Unknowns};
 
 /// What the water and the surface are like.
@@ -150,13 +149,9 @@ impl Viscous {
             Some(Ok(solution)) => return Ok(solution),
             _ => self.solve(incidence, conditions, None),
         };
-        last.or_else(|convergence| {
+        last.or_else(|Failed { steps, change }| {
             let found = curve::by_detour(self, conditions, incidence);
-            found.ok_or(ViscousError::NotConverged {
-                incidence,
-                steps: convergence.steps,
-                change: convergence.change,
-            })
+            found.ok_or(ViscousError::NotConverged { incidence, steps, change })
         })
     }
 
@@ -179,25 +174,18 @@ impl Viscous {
         incidence: f64,
         conditions: &Conditions,
         start: Option<&ViscousState>,
-    ) -> Result<ViscousSolution, Convergence> {
+    ) -> Result<ViscousSolution, Failed> {
         let mut problem = Problem::new(&self.coupling, incidence, conditions);
         let fits = |state: &&ViscousState| state.unknowns.theta.len() == self.coupling.count();
         let unknowns = match start.filter(fits) {
             Some(state) => Some(state.unknowns.clone()),
             None => first_account(&problem, self.panelling.len() / 2),
         };
-        let nothing = Convergence { steps: 0, change: f64::INFINITY, converged: false };
-        let mut unknowns = unknowns.ok_or(nothing)?;
-        let (layers, convergence) = converge(&mut problem, &mut unknowns).ok_or(nothing)?;
-        let solution = ViscousSolution::of(
-            &self.panelling,
-            &problem,
-            conditions,
-            incidence,
-            &layers,
-            unknowns,
-            convergence,
-        );
-        if convergence.converged && solution.is_finite() { Ok(solution) } else { Err(convergence) }
+        let unknowns = unknowns.ok_or(Failed { steps: 0, change: f64::INFINITY })?;
+        let Converged { layers, unknowns, steps } = converge(&mut problem, unknowns)?;
+        let state = ViscousState { unknowns };
+        let solution =
+            ViscousSolution::of(&self.panelling, &problem, conditions, incidence, &layers, steps, state);
+        if solution.is_finite() { Ok(solution) } else { Err(Failed { steps, change: f64::NAN }) }
     }
 }

@@ -3,8 +3,7 @@
 use super::closure::{laminar_friction, turbulent_friction};
 use super::dual::Dual;
 use super::side::{Station, Transition};
-use super::solve::Convergence;
-use super::state::{Layers, Problem, Unknowns};
+use super::state::{Layers, Problem};
 use super::{Conditions, ViscousState};
 use crate::flow::loads::loads;
 use crate::flow::{Panelling, PressurePoint};
@@ -119,8 +118,8 @@ impl ViscousSolution {
         conditions: &Conditions,
         incidence: f64,
         layers: &Layers,
-        unknowns: Unknowns,
-        convergence: Convergence,
+        steps: usize,
+        state: ViscousState,
     ) -> Self {
         let points = &problem.coupling.points;
         let point = |station: &Station, wake: bool| {
@@ -154,13 +153,18 @@ impl ViscousSolution {
             upper,
             lower,
             wake,
-            steps: convergence.steps,
-            state: ViscousState { unknowns },
+            steps,
+            state,
         }
     }
 
     pub(super) fn is_finite(&self) -> bool {
-        [self.cl, self.cd, self.cd_friction, self.cm, self.cp_min].iter().all(|value| value.is_finite())
+        let coefficients = [self.cl, self.cd, self.cd_friction, self.cm, self.cp_min];
+        let layers = [&self.upper.layers, &self.lower.layers, &self.wake];
+        let of_layer = |layer: &LayerPoint| {
+            [layer.speed, layer.theta, layer.delta_star, layer.cf, layer.amplification, layer.shear]
+        };
+        coefficients.into_iter().chain(layers.into_iter().flatten().flat_map(of_layer)).all(f64::is_finite)
     }
 
     /// Difference of the speeds of both sides a fiftieth of the chord ahead of the trailing edge.

@@ -1,8 +1,8 @@
 //! From a first account to the converged flow at one incidence.
 
 use super::march::{adjust, march};
-use super::newton::{Step, Workspace, newton_step};
-use super::side::{Station, Transition};
+use super::newton::{Newton, Step};
+use super::side::Station;
 use super::state::{Layers, Problem, Unknowns, begin_wake};
 
 /// Newton steps before a point is given up.
@@ -25,13 +25,18 @@ const RELIEF: f64 = 0.05;
 /// Change of a step below which the bending of the wake is kept as it is.
 const SETTLED: f64 = 3e-3;
 
-/// How it went.
+/// Change of a step below which the next is made with its derivatives.
+const CHORD: f64 = 2e-3;
+
+/// Part of a step with old derivatives that the next may have, if they are to be kept.
+const GAIN: f64 = 0.3;
+
+/// How far it went without success.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub(super) struct Convergence {
+pub(super) struct Failed {
     pub(super) steps: usize,
     /// Relative change in the last step.
     pub(super) change: f64,
-    pub(super) converged: bool,
 }
 
 /// A first account by one march along the speeds without layers.
@@ -85,37 +90,67 @@ fn relieved(problem: &Problem) -> Vec<f64> {
     speed
 }
 
-/// Newton's method from `unknowns` on. Leaves the last layers whether or not it converged.
-pub(super) fn converge(problem: &mut Problem, unknowns: &mut Unknowns) -> Option<(Layers, Convergence)> {
-    let mut change = f64::INFINITY;
-    let mut workspace = Workspace::default();
-    problem.bend_wake(unknowns);
-    let mut layers = problem.layers(unknowns);
+/// Layers and outer flow that agree.
+pub(super) struct Converged {
+    pub(super) layers: Layers,
+    pub(super) unknowns: Unknowns,
+    pub(super) steps: usize,
+}
+
+/// Newton's method from `unknowns` on.
+pub(super) fn converge(problem: &mut Problem, mut unknowns: Unknowns) -> Result<Converged, Failed> {
+    let mut newton = Newton::default();
+    let mut factored: Option<Shape> = None;
+    let mut last = f64::INFINITY;
+    problem.bend_wake(&unknowns);
+    let mut layers = problem.layers(&mut unknowns);
     for steps in 1..=MOST_STEPS {
-        let step = newton_step(problem, &layers, &mut workspace)?;
+        let shape = Shape::of(&layers);
+        let chord = last < CHORD && factored == Some(shape);
+        let step = if chord { newton.chord_step(problem, &layers) } else { newton.step(problem, &layers) };
+        let failed = Failed { steps, change: last };
+        let step = step.ok_or(failed)?;
         let (part, size) = admissible(&layers, &step);
         if !size.is_finite() {
-            return None;
+            return Err(failed);
         }
-        apply(unknowns, &layers, &step, part);
+        apply(&mut unknowns, &layers, &step, part);
         problem.hold_transition(&layers);
-        change = size;
+        // A step with old derivatives leaves of its size what it has of that before.
+        let left = if chord { size * (size / last).max(size) } else { size * size };
         let held = layers.transitions.iter().flatten().any(|transition| transition.held);
-        if size < TOLERANCE && !held {
-            let layers = problem.layers(unknowns);
-            return Some((layers, Convergence { steps, change, converged: true }));
+        if size < TOLERANCE && left < TOLERANCE * TOLERANCE && !held {
+            let layers = problem.layers(&mut unknowns);
+            return Ok(Converged { layers, unknowns, steps });
         }
-        if change > SETTLED {
-            problem.bend_wake(unknowns);
+        factored = (!chord || size < GAIN * last).then_some(shape);
+        if size > SETTLED {
+            problem.bend_wake(&unknowns);
         }
-        layers = follow_transition(problem, unknowns, &layers);
+        layers = follow_transition(problem, &mut unknowns, shape);
+        last = size;
     }
-    Some((layers, Convergence { steps: MOST_STEPS, change, converged: false }))
+    Err(Failed { steps: MOST_STEPS, change: last })
+}
+
+/// What the equations are made up of: with another they have other derivatives.
+#[derive(Debug, Clone, Copy, PartialEq)]
+struct Shape {
+    node: usize,
+    turbulent_from: [Option<usize>; 2],
+}
+
+impl Shape {
+    fn of(layers: &Layers) -> Self {
+        let turbulent_from =
+            layers.transitions.map(|transition| transition.map(|transition| transition.behind));
+        Self { node: layers.node, turbulent_from }
+    }
 }
 
 /// Where transition has moved over stations, sets the layers about it anew: they are still those of
 /// the other regime, and would throw the next step off. Gives the layers as they are then.
-fn follow_transition(problem: &Problem, unknowns: &mut Unknowns, before: &Layers) -> Layers {
+fn follow_transition(problem: &Problem, unknowns: &mut Unknowns, before: Shape) -> Layers {
     let mut layers = problem.layers(unknowns);
     if layers.node != before.node {
         return layers;
@@ -124,8 +159,8 @@ fn follow_transition(problem: &Problem, unknowns: &mut Unknowns, before: &Layers
     let mut any = false;
     for side in [0, 1] {
         let count = sides[side].len();
-        let place = |transition: Option<Transition>| transition.map_or(count, |transition| transition.behind);
-        let (old, new) = (place(before.transitions[side]), place(layers.transitions[side]));
+        let new = layers.transitions[side].map_or(count, |transition| transition.behind);
+        let old = before.turbulent_from[side].unwrap_or(count);
         if old == new {
             continue;
         }

@@ -49,17 +49,3 @@ pub(super) fn combine(rows: [&mut [f64]; 3], weights: &[[f64; 4]; 3], others: [&
         },
     );
 }
-
-/// Writes rows that lie `width` apart as columns that lie `stride` apart.
-pub(super) fn transpose(rows: &[f64], width: usize, columns: &mut [f64], stride: usize, size: usize) {
-    const TILE: usize = 8;
-    for row in (0..size).step_by(TILE) {
-        for column in (0..width).step_by(TILE) {
-            for c in column..(column + TILE).min(width) {
-                for r in row..(row + TILE).min(size) {
-                    columns[c * stride + r] = rows[r * width + c];
-                }
-            }
-        }
-    }
-}

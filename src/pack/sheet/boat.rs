@@ -206,7 +206,14 @@ fn window(body: &mut String, foil: &FoilDuty) {
     let top = 3.0 * foil.load;
     let cut = |mut series: Series| {
         // Below no lift at all the foil has no business.
-        series.points.iter_mut().for_each(|p| p.1 = if p.1 < 0.0 { f64::NAN } else { p.1.min(top) });
+        for point in &mut series.points {
+            // What is no number stays a gap, which the lesser of it and the top would not.
+            if point.1 < 0.0 {
+                point.1 = f64::NAN;
+            } else if point.1 > top {
+                point.1 = top;
+            }
+        }
         series
     };
     let mut series = vec![

@@ -272,31 +272,56 @@ fn from_neighbour(
 /// Offsets, in degrees, at which a start is looked for when a point has none of its own.
 const DETOURS: [f64; 8] = [1.0, -1.0, 2.0, -2.0, 3.5, -3.5, 5.0, -5.0];
 
+/// Factors of the Reynolds number at which a start is looked for when none is found at its own.
+const OTHER_REYNOLDS: [f64; 6] = [2.0, 0.5, 5.0, 0.2, 20.0, 0.05];
+
 /// By way of a point nearby that can be started afresh.
 pub(super) fn by_detour(viscous: &Viscous, conditions: &Conditions, target: f64) -> Option<ViscousSolution> {
-    DETOURS.iter().find_map(|offset| {
+    let by_incidence = DETOURS.iter().find_map(|offset| {
         let near = viscous.attempt(target + offset.to_radians(), conditions, None)?;
         by_halves(viscous, conditions, &near, target)
+    });
+    by_incidence.or_else(|| by_other_reynolds(viscous, conditions, target))
+}
+
+/// By way of another Reynolds number at which the point can be started afresh.
+fn by_other_reynolds(viscous: &Viscous, conditions: &Conditions, target: f64) -> Option<ViscousSolution> {
+    OTHER_REYNOLDS.iter().find_map(|&factor| {
+        let between =
+            |part: f64| Conditions { reynolds: conditions.reynolds * factor.powf(1.0 - part), ..*conditions };
+        let near = viscous.attempt(target, &between(0.0), None)?;
+        walk(viscous, near, |part| (target, between(part)))
     })
 }
 
-/// From a neighbour in steps that are halved when one fails, and grow again when they do not.
+/// From a neighbour in smaller steps of incidence.
 fn by_halves(
     viscous: &Viscous,
     conditions: &Conditions,
     near: &ViscousSolution,
     target: f64,
 ) -> Option<ViscousSolution> {
-    let mut at = near.clone();
-    let mut step = 0.5 * (target - near.incidence);
+    let from = near.incidence;
+    let between = |part: f64| if part == 1.0 { target } else { from + part * (target - from) };
+    walk(viscous, near.clone(), |part| (between(part), *conditions))
+}
+
+/// From a point along a way that runs from nought to one, in steps that are halved when one fails,
+/// and grow again when they do not.
+fn walk(
+    viscous: &Viscous,
+    from: ViscousSolution,
+    way: impl Fn(f64) -> (f64, Conditions),
+) -> Option<ViscousSolution> {
+    let (mut at, mut gone, mut step) = (from, 0.0, 0.5);
     let mut halvings = 1;
     while halvings <= HALVINGS {
-        let next =
-            if (target - at.incidence).abs() <= step.abs() * 1.001 { target } else { at.incidence + step };
-        match viscous.attempt(next, conditions, Some(&at.state)) {
-            Some(found) if next == target => return Some(found),
+        let next = if gone + step > 0.999 { 1.0 } else { gone + step };
+        let (incidence, conditions) = way(next);
+        match viscous.attempt(incidence, &conditions, Some(&at.state)) {
+            Some(found) if next == 1.0 => return Some(found),
             Some(found) => {
-                at = found;
+                (at, gone) = (found, next);
                 step *= 1.5;
             }
             None => {

@@ -5,6 +5,8 @@ use std::ops::Range;
 
 use annotate_snippets::renderer::DecorStyle;
 use annotate_snippets::{AnnotationKind, Level, Origin, Renderer, Snippet};
+use toml::Spanned;
+use toml::de::DeTable;
 
 use crate::units::harmless;
 
@@ -103,6 +105,22 @@ impl FileErrors {
     }
 }
 
+/// The text that `bytes` are, of which no more were read than one past `most`.
+///
+/// # Errors
+/// The byte at which they stop being UTF-8 text. That the end of what was read goes through a
+/// character is none: such a text is too long, which its reader will say.
+pub fn text_of(bytes: Vec<u8>, most: usize) -> Result<String, usize> {
+    let cut = bytes.len() > most;
+    String::from_utf8(bytes).or_else(|error| {
+        let wrong = error.utf8_error();
+        if cut && wrong.error_len().is_none() {
+            return Ok(String::from_utf8_lossy(error.as_bytes()).into_owned());
+        }
+        Err(wrong.valid_up_to())
+    })
+}
+
 impl fmt::Display for FileErrors {
     fn fmt(&self, formatter: &mut fmt::Formatter<'_>) -> fmt::Result {
         formatter.write_str(&self.render(false))
@@ -141,6 +159,35 @@ impl Problems {
     pub(crate) fn add(&mut self, span: Range<usize>, wrong: Wrong) {
         // Room to sort in, since the file is not read in the order in which it is written.
         if self.found.len() < 100 * KEPT { self.found.push((span, wrong)) } else { self.dropped += 1 }
+    }
+
+    /// The tables of a TOML text; `None` when its form is wrong, every place of which is noted.
+    /// `what` is what the text should be, as "a design file".
+    pub(crate) fn toml<'a>(&mut self, text: &'a str, what: &str) -> Option<Spanned<DeTable<'a>>> {
+        let (table, mut errors) = DeTable::parse_recoverable(text);
+        let form_is_right = errors.is_empty();
+        errors.sort_by_key(|error| error.span().map(|span| span.start));
+        let mut last: Option<usize> = None;
+        for error in errors {
+            let span = error.span().unwrap_or(0..0);
+            // What follows on the same line is mostly the parser's confusion after the first.
+            let same_line = |last| text.get(last..span.start).is_some_and(|between| !between.contains('\n'));
+            if last.is_some_and(same_line) {
+                continue;
+            }
+            last = Some(span.start);
+            let says = error.message();
+            let wrong = Wrong::new(format!("this is not TOML, the form of {what}: {says}"));
+            let wrong = if says.contains("must be quoted") {
+                wrong.help("what is no plain number stands in quotes: \"140 mm\"")
+            } else if says.contains("duplicate key") {
+                wrong.help("it stands further up already: keep one of the two")
+            } else {
+                wrong
+            };
+            self.add(span, wrong);
+        }
+        form_is_right.then_some(table)
     }
 
     /// Whether nothing was wrong.

@@ -2,7 +2,7 @@
 
 use kurbo::{ParamCurve, ParamCurveArclen, Shape};
 use plankform::geometry::{
-    ArcPath, ArcVertex, Curve, GeometryError, Jet, Point, Solid, Vec2, follow_with_arcs,
+    ArcPath, ArcVertex, Curve, GeometryError, Jet, Point, Solid, Vec2, follow_with_arcs, polygon,
 };
 use plankform::section::{Section, TrailingEdge};
 use plankform::wing::{Station, Wing};
@@ -217,4 +217,43 @@ fn impossible_tolerances_and_rough_curves_are_refused() {
         }
     }
     assert!(matches!(follow_with_arcs(&Broken, 0.01), Err(GeometryError::CannotFollow { .. })));
+}
+
+/// Nearest places, distances and shared areas of squares and triangles, by hand.
+#[test]
+fn polygons_keep_their_distance_and_share_their_area() {
+    let p = Point::new;
+    assert_eq!(polygon::nearest_between(p(0.0, 0.0), p(4.0, 0.0), p(1.0, 3.0)), p(1.0, 0.0));
+    assert_eq!(polygon::nearest_between(p(0.0, 0.0), p(4.0, 0.0), p(7.0, 3.0)), p(4.0, 0.0));
+    assert_eq!(polygon::nearest_between(p(1.0, 1.0), p(1.0, 1.0), p(4.0, 5.0)), p(1.0, 1.0));
+    let square =
+        |x: f64, y: f64, side: f64| vec![p(x, y), p(x + side, y), p(x + side, y + side), p(x, y + side)];
+    let one = square(0.0, 0.0, 2.0);
+    for (other, distance, area) in [
+        (square(5.0, 0.0, 1.0), 3.0, 0.0),
+        (square(5.0, 6.0, 1.0), 5.0, 0.0),
+        (square(1.0, 1.0, 4.0), 0.0, 1.0),
+        (square(0.5, 0.5, 1.0), 0.5, 1.0),
+        (square(-1.0, -1.0, 4.0), 1.0, 4.0),
+    ] {
+        assert!((polygon::least_distance(&one, &other) - distance).abs() < 1e-12, "{other:?}");
+        assert!((polygon::shared_area(&one, &other) - area).abs() < 1e-12, "{other:?}");
+        let backwards: Vec<Point> = one.iter().rev().copied().collect();
+        assert!((polygon::shared_area(&backwards, &other) + area).abs() < 1e-12, "{other:?}");
+    }
+    // A hollow shape whose two arms a strip crosses: the strip's share of each.
+    let arms = [
+        p(0.0, 0.0),
+        p(6.0, 0.0),
+        p(6.0, 5.0),
+        p(4.0, 5.0),
+        p(4.0, 1.0),
+        p(2.0, 1.0),
+        p(2.0, 5.0),
+        p(0.0, 5.0),
+    ];
+    assert!(
+        (polygon::shared_area(&arms, &[p(-1.0, 2.0), p(7.0, 2.0), p(7.0, 3.0), p(-1.0, 3.0)]) - 4.0).abs()
+            < 1e-12
+    );
 }

@@ -38,23 +38,6 @@ fn every_example_is_a_section() {
     assert!(PAGE.contains(&said), "the page does not say {said}");
 }
 
-/// Whether two drawings are the same but for the rounding of other machines.
-fn alike(a: &str, b: &str) -> bool {
-    let split = |text: &str| -> Vec<String> {
-        text.split_inclusive(|c: char| !(c.is_ascii_digit() || c == '.')).map(str::to_owned).collect()
-    };
-    let (a, b) = (split(a), split(b));
-    a.len() == b.len()
-        && a.iter().zip(&b).all(|(a, b)| {
-            let number =
-                |text: &str| text.trim_end_matches(|c: char| !c.is_ascii_digit()).parse::<f64>().ok();
-            match (number(a), number(b)) {
-                (Some(a), Some(b)) => (a - b).abs() <= 0.002 + 0.01 * b.abs(),
-                _ => a == b,
-            }
-        })
-}
-
 #[test]
 fn pictures_are_what_the_tool_draws() {
     let bench = Bench::new();
@@ -87,6 +70,9 @@ fn pictures_are_what_the_tool_draws() {
             std::fs::write(&kept, &drawn).expect("a written picture");
         }
         let kept = std::fs::read_to_string(&kept).unwrap_or_default();
-        assert!(alike(&kept, &drawn), "{picture} is stale: draw it anew as the head of this file says");
+        assert!(
+            common::alike(&kept, &drawn),
+            "{picture} is stale: draw it anew as the head of this file says"
+        );
     }
 }

@@ -49,14 +49,18 @@ fn every_demo_builds_a_complete_pack() {
         }
         let count = |ending: &str| files.keys().filter(|f| f.ends_with(ending)).count();
         let wood = ["-core.dxf", "-main.dxf", "-flap.dxf"].into_iter().map(count).sum::<usize>();
-        let stations = count(".dxf") - 1 - wood;
+        let sheets_of_stock =
+            files.keys().filter(|f| f.contains("-sheet-") && !f.ends_with("-r12.dxf")).count();
+        assert!(sheets_of_stock >= 1, "{name}");
+        let stations = count(".dxf") - count("-r12.dxf") - 1 - wood - sheets_of_stock;
         assert!(stations >= 2, "{name}");
         let sheets = 1 + usize::from(wood > 0);
         assert_eq!(
             (count(".svg"), count(".pdf"), count(".stl")),
-            (stations + wood + 1, sheets, 2 * stations),
+            (stations + wood + 1, sheets, 2 * stations + count("-core-upper.stl") + count("-core-lower.stl")),
             "{name}"
         );
+        assert_eq!(count("-core-upper.stl"), count("-core-lower.stl"), "{name}");
         for file in ["sheet.html", "tables/offsets.csv", "pack.json"] {
             assert!(files.contains_key(file), "{file}");
         }

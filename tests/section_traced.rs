@@ -66,7 +66,7 @@ fn outlines_of_arcs_that_we_write_come_back() {
         let path = follow_with_arcs(&Sized(&section, 150.0), 2e-4).expect("arcs");
         let mut drawing = Drawing::new("outline");
         drawing.add(Role::CutOutside, path);
-        let found = traced(export::dxf(&drawing).as_bytes());
+        let found = traced(export::dxf(&drawing, export::Flavour::R2000, export::Curves::Arcs).as_bytes());
         let report = &found.report;
         assert_eq!(report.unit, ChordUnit::Named("millimetres", 1.0));
         assert!((report.chord_mm().expect("named") - 150.0).abs() < 0.1);

@@ -141,7 +141,7 @@ fn wrong_command_lines_say_what_would_be_right() {
 
 #[test]
 fn help_shows_an_example_that_runs() {
-    for verb in ["new", "section", "lift", "check", "build", "schema"] {
+    for verb in ["new", "section", "lift", "check", "build", "schema", "completions", "manual"] {
         let bench = Bench::new();
         let help = bench.run(&[verb, "--help"]);
         assert_eq!(help.status, 0);
@@ -223,8 +223,50 @@ fn new_writes_a_design_that_builds_and_overwrites_nothing() {
         assert_eq!(bench.run(&["build", "mine.toml"]).status, 0, "{kind}");
         let before = std::fs::read(bench.path().join("mine.toml")).expect("the design");
         assert_eq!(bench.run(&["new", "mine.toml"]).status, 2);
+        let text = String::from_utf8(before.clone()).expect("text");
+        let schema =
+            text.lines().next().and_then(|line| line.strip_prefix("#:schema ./")).expect("the schema line");
+        let schema = std::fs::read(bench.path().join(schema)).expect("the schema");
+        assert_eq!(schema, bench.run(&["schema"]).out.into_bytes());
         assert_eq!(std::fs::read(bench.path().join("mine.toml")).expect("the design"), before);
     }
+}
+
+#[test]
+fn new_brings_an_old_schema_up_to_date_and_leaves_what_is_none() {
+    let (name, title) = ("plankform-schema.json", "\"title\": \"Plankform design file\"");
+    let bench = Bench::new();
+    bench.file(name, &format!("{{ {title} }}"));
+    assert_eq!(bench.run(&["new", "a.toml"]).status, 0);
+    let now = std::fs::read_to_string(bench.path().join(name)).expect("the schema");
+    assert!(now.contains(title) && now.contains("twist-about"));
+    bench.file(name, "my own notes");
+    let answer = bench.run(&["new", "b.toml"]);
+    assert_eq!(answer.status, 0);
+    assert!(answer.err.contains(name), "{}", answer.err);
+    assert_eq!(std::fs::read_to_string(bench.path().join(name)).expect("the notes"), "my own notes");
+}
+
+#[test]
+fn completions_and_manual_pages_follow_the_help() {
+    let bench = Bench::new();
+    for shell in ["bash", "zsh", "fish", "powershell", "elvish"] {
+        let answer = bench.run(&["completions", shell]);
+        assert_eq!(answer.status, 0, "{}", answer.err);
+        for word in ["build", "amplification", "manual"] {
+            assert!(answer.out.contains(word), "{word} in {shell}");
+        }
+    }
+    let whole = bench.run(&["manual"]).out;
+    assert!(whole.starts_with(".ie") || whole.contains(".TH plankform 1"), "{whole}");
+    for verb in ["new", "section", "lift", "check", "build", "schema", "completions", "manual"] {
+        assert!(whole.contains(verb), "{verb}");
+        let page = bench.run(&["manual", verb]);
+        assert_eq!(page.status, 0, "{}", page.err);
+        assert!(page.out.contains(&format!(".TH plankform-{verb} 1")), "{}", page.out);
+        assert!(page.out.contains("Example"), "{verb}");
+    }
+    assert_eq!(bench.run(&["manual", "fly"]).status, 2);
 }
 
 #[test]

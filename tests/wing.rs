@@ -2,7 +2,7 @@
 
 use plankform::geometry::{Curve, Point};
 use plankform::section::{Section, TrailingEdge};
-use plankform::wing::{Law, Station, Wing, WingError, along};
+use plankform::wing::{Law, Station, Tip, TipForm, Wing, WingError, along};
 
 fn station(at: f64, chord: f64, twist_deg: f64, sweep: f64, name: &str) -> Station {
     let section = Section::from_designation(name, TrailingEdge::Published).expect("a section");
@@ -162,4 +162,128 @@ fn battens_and_the_fewest_templates() {
         assert!(places.len() < before);
         before = places.len();
     }
+}
+
+/// A rectangle whose ends are quarter ellipses, cut off where 40 % of the chord is left. In closed form,
+/// with L the length of the tip, q the chord left and L' = L/√(1 - q²): the area under the ellipse
+/// c √(1 - (y/L')²) from 0 to L is c/2 (L q + L' asin(L/L')); ∫ c² dy is c² (L - L³/(3 L'²)).
+#[test]
+fn a_rounded_tip_measures_as_its_ellipse() {
+    let (c, l, q, reach) = (100.0, 60.0, 0.4, 400.0);
+    let stations = vec![station(0.0, c, 0.0, 0.0, "NACA 0012"), station(reach, c, 0.0, 0.0, "NACA 0012")];
+    let wing = Wing::new(stations, true).expect("a foil");
+    for about in [0.0, 0.25, 0.5, 1.0] {
+        let tip = Tip { form: TipForm::Rounded, length: l, chord: q * c, about };
+        let wing = wing.clone().with_tip(tip).expect("a tip");
+        let whole: f64 = l / f64::sqrt(1.0 - q * q);
+        let half = (reach - l) * c + 0.5 * c * (l * q + whole * (l / whole).asin());
+        let planform = wing.planform();
+        assert!((planform.area() / (2.0 * half) - 1.0).abs() < 3e-5, "{} {half}", planform.area());
+        let square = (reach - l) * c * c + c * c * (l - l.powi(3) / (3.0 * whole * whole));
+        assert!((planform.aerodynamic_chord() / (square / half) - 1.0).abs() < 1e-4);
+        assert!((planform.aspect_ratio() / (4.0 * reach * reach / (2.0 * half)) - 1.0).abs() < 3e-5);
+        assert!((planform.mean_chord() / (half / reach) - 1.0).abs() < 3e-5);
+        // The quarter chord moves by (about - 1/4) of what the chord loses: the centre's moment is
+        // ∫ (a - 1/4)(c - c(y)) c(y) dy, which is (a - 1/4)(c ∫ c(y) dy - ∫ c(y)² dy) over the tip.
+        let moment = (about - 0.25) * (c * half - square);
+        assert!((planform.aerodynamic_centre() - moment / half).abs() < 1e-3, "{about}");
+        // Every outline in the tip is the section at its chord, and the place named stays.
+        for beyond in [0.0_f64, 20.0, 45.0, 60.0] {
+            let shape = wing.shape_at(reach - l + beyond).expect("a shape");
+            let chord = c * (1.0 - (beyond / whole).powi(2)).sqrt();
+            assert!((shape.chord - chord).abs() < 1e-9 && (wing.chord_at(shape.at) - chord).abs() < 1e-9);
+            assert!((shape.nose.x + about * chord - (about - 0.25) * c).abs() < 1e-9);
+            let thickest = wing.stations()[0].section.jet(-0.5).point.to_vec2() * chord;
+            assert!((shape.jet(-0.5).point.to_vec2() - thickest).hypot() < 1e-9);
+        }
+    }
+}
+
+/// A tapered foil cut across at its end: two trapezoids, whose edges are straight.
+#[test]
+fn a_cut_tip_measures_as_two_trapezoids() {
+    let stations =
+        vec![station(0.0, 140.0, 0.0, 0.0, "NACA 4412"), station(400.0, 80.0, 0.0, 30.0, "NACA 4412")];
+    let tip = Tip { form: TipForm::Cut, length: 50.0, chord: 20.0, about: 1.0 };
+    let wing = Wing::new(stations, true).expect("a foil").with_tip(tip).expect("a tip");
+    let at_tip = 140.0 - 60.0 * 350.0 / 400.0;
+    let half = 0.5 * (140.0 + at_tip) * 350.0 + 0.5 * (at_tip + 20.0) * 50.0;
+    let planform = wing.planform();
+    assert!((planform.area() - 2.0 * half).abs() < 1e-6, "{} {half}", planform.area());
+    let square = |a: f64, b: f64, l: f64| l * (a * a + a * b + b * b) / 3.0;
+    let chord = (square(140.0, at_tip, 350.0) + square(at_tip, 20.0, 50.0)) / half;
+    assert!((planform.aerodynamic_chord() - chord).abs() < 1e-9);
+    // The trailing edge runs on as if nothing were cut, and the leading edge is straight.
+    let trailing = |at: f64| 30.0 * at / 400.0 + 0.75 * (140.0 - 60.0 * at / 400.0);
+    for at in [350.0, 370.0, 400.0] {
+        let shape = wing.shape_at(at).expect("a shape");
+        assert!((shape.nose.x + shape.chord - trailing(at)).abs() < 1e-9, "{at}");
+        let straight = at_tip + (20.0 - at_tip) * (at - 350.0) / 50.0;
+        assert!((shape.chord - straight).abs() < 1e-9, "{at}");
+    }
+}
+
+/// How the outline moves along the span is what the skin's allowance leans by: against differences, in
+/// a swept, twisted, tapered foil with either tip.
+#[test]
+fn the_lean_in_a_tip_is_that_of_its_surface() {
+    for form in [TipForm::Rounded, TipForm::Cut] {
+        let stations =
+            vec![station(0.0, 140.0, 1.0, 0.0, "NACA 4412"), station(400.0, 80.0, -2.0, 30.0, "NACA 2410")];
+        let tip = Tip { form, length: 60.0, chord: 30.0, about: 0.4 };
+        let wing = Wing::new(stations, true).expect("a foil").with_tip(tip).expect("a tip");
+        for at in [200.0, 345.0, 370.0, 395.0] {
+            let shape = wing.shape_at(at).expect("a shape");
+            for t in [-0.9, -0.4, 0.0, 0.3, 1.0] {
+                let place = |at: f64| {
+                    let shape = wing.shape_at(at).expect("a shape");
+                    shape.to_foil() * shape.jet(t).point
+                };
+                let change = (place(at + 1e-4) - place(at - 1e-4)) / 2e-4;
+                let own = shape.to_foil() * shape.spread(t).to_point() - shape.to_foil() * Point::ORIGIN;
+                assert!((change - own).hypot() < 1e-6, "{form:?} {at} {t}: {change:?} {own:?}");
+            }
+        }
+        for bad in [
+            Tip { length: 400.0, ..tip },
+            Tip { length: f64::NAN, ..tip },
+            Tip { chord: 80.0, ..tip },
+            Tip { chord: 0.0, ..tip },
+            Tip { about: 1.5, ..tip },
+        ] {
+            let plain = Wing::new(wing.stations().to_vec(), true).expect("a foil");
+            let error = plain.with_tip(bad).expect_err("no tip");
+            assert!(matches!(error, WingError::TipLength { .. } | WingError::TipChord { .. }));
+        }
+    }
+}
+
+/// The skin of a prism is its outline's length times its span, with its blunt edge; that of a wedge
+/// like loft of one section is the outline's length by the mean chord, longer by how the surfaces lean.
+#[test]
+fn wetted_area_of_prism_and_taper() {
+    let length = |section: &Section, chord: f64| {
+        let points: Vec<Point> =
+            (0..=40_000).map(|i| section.jet(f64::from(i) / 20_000.0 - 1.0).point).collect();
+        let around: f64 = points.windows(2).map(|pair| pair[0].distance(pair[1])).sum();
+        chord * (around + points[0].distance(points[points.len() - 1]))
+    };
+    let prism = Wing::new(
+        vec![station(0.0, 110.0, 0.0, 0.0, "NACA 0015"), station(850.0, 110.0, 0.0, 0.0, "NACA 0015")],
+        false,
+    )
+    .expect("a strut");
+    let around = length(&prism.stations()[0].section, 110.0);
+    let area = prism.wetted_area(300.0, 850.0).expect("an area");
+    assert!((area / (around * 550.0) - 1.0).abs() < 1e-5, "{area} {}", around * 550.0);
+    let tapered = Wing::new(
+        vec![station(0.0, 150.0, 0.0, 0.0, "NACA 0002"), station(500.0, 50.0, 0.0, 0.0, "NACA 0002")],
+        false,
+    )
+    .expect("a fin");
+    // So thin that both sides are the flat trapezoid: 1 + (thickness slopes)² / 2 is below 1e-3 off.
+    let flat = 2.0 * 0.5 * (150.0 + 50.0) * 500.0;
+    let area = tapered.wetted_area(0.0, 500.0).expect("an area");
+    assert!(area > flat && area < 1.003 * flat, "{area} {flat}");
+    assert!(prism.wetted_area(-1.0, 20.0).is_err() && prism.wetted_area(0.0, 900.0).is_err());
 }

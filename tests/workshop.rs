@@ -38,10 +38,11 @@ proptest! {
         let edge = if closed { TrailingEdge::Closed } else { TrailingEdge::Published };
         let wing = foil(&format!("NACA {digits}{thickness:02}"), edge, chord);
         let shape = wing.shape_at(40.0).unwrap();
-        let settings = MaskSettings { clearance, wall: 8.0, thickness: 5.0, tolerance: 0.02 };
-        let mask = Mask::of(&shape, settings, MaskMarks { label: "", sights: &[] }).unwrap();
-
+        let settings = MaskSettings { clearance, wall: 8.0, thickness: 5.0, tolerance: 0.01, bed: [1000.0, 1000.0] };
         let outline = follow_with_arcs(&shape, 0.001).unwrap();
+        let mask = Mask::of(&outline, settings, MaskMarks { label: "", sights: &[] }).unwrap();
+        let [upper, lower] = [&mask.pieces[0].plate.solid, &mask.pieces[1].plate.solid];
+
         let length: f64 = outline.segments().map(|s| s.length()).sum();
         let opening = outline.area() + length * clearance + std::f64::consts::PI * clearance * clearance;
         let bounds = outline.bounds().inflate(clearance + 8.0, clearance + 8.0);
@@ -53,10 +54,10 @@ proptest! {
         };
         let expected = 5.0 * (bounds.area() - opening + 2.0 * (peg(0.0) - peg(0.15)));
         let engraved = |half: &str| 0.8 * engraved_area(half, 8.0, bounds.width());
-        let found = mask.upper.volume() + mask.lower.volume() + engraved("upper") + engraved("lower");
+        let found = upper.volume() + lower.volume() + engraved("upper") + engraved("lower");
         // The opening may stray by the tolerance all along.
         prop_assert!((found - expected).abs() < 5.0 * 0.02 * (length + 4.0), "{} for {}", found, expected);
-        for half in [&mask.upper, &mask.lower] {
+        for half in [upper, lower] {
             let [x, y, z] = half.size();
             prop_assert!((x - bounds.width()).abs() < 0.05 && y < bounds.height() && z == 5.0);
             prop_assert!(half.volume() > 0.0);
@@ -145,6 +146,17 @@ fn tiles_cover_the_drawing_and_join_at_their_marks() {
         }
     }
     assert_eq!(tiled(&drawing(20.0, 10.0), A4).len(), 1);
+    // A roll takes the planform in one piece, along the roll, and no more of it than that needs.
+    let roll = PaperSettings { width: 610.0, height: f64::INFINITY, ..A4 };
+    let [page] = tiled(&drawing(900.0, 140.0), roll).try_into().expect("one page");
+    assert!(
+        (page.width, page.height) == (934.0, 610.0) || page.width == 610.0 && page.height > 900.0,
+        "{page:?}"
+    );
+    assert!(page.window.width() >= 900.0);
+    // Two widths of it for what is wider, and each as long as it needs.
+    let pages = tiled(&drawing(900.0, 700.0), roll);
+    assert_eq!(pages.len(), 2);
     // An overlap that leaves no room gives no pages rather than endless ones.
     assert!(tiled(&drawing(20.0, 10.0), PaperSettings { overlap: 500.0, ..A4 }).is_empty());
 }

@@ -6,6 +6,7 @@ use clap::ValueEnum;
 use plankform::pack::{self, Kinds, Manifest};
 
 use super::failure::Failure;
+use super::progress::Progress;
 use super::{Outcome, ReportFormat, check, design_source, print, print_json};
 
 /// Build the pack of workshop files of a design
@@ -45,7 +46,10 @@ enum Kind {
 pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     let design = design_source::read(&arguments.design)?;
     let out = arguments.out.clone().unwrap_or_else(|| PathBuf::from(format!("pack-{}", design.slug())));
-    let pack = pack::build(&design, kinds(&arguments.only))?;
+    let pack = {
+        let progress = Progress::of("lift curves");
+        pack::build_telling(&design, kinds(&arguments.only), &|done, total| progress.show(done, total))?
+    };
     let replaced = pack::write(&pack, &out)?;
 
     match arguments.format {

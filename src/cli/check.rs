@@ -2,11 +2,12 @@
 
 use std::path::PathBuf;
 
-use plankform::pack::{Check, run_checks};
+use plankform::pack::{Check, run_checks_telling};
 use plankform::units::number;
 use serde_json::json;
 
 use super::failure::Failure;
+use super::progress::Progress;
 use super::{Outcome, ReportFormat, design_source, print, print_json};
 
 /// Check a design against its limits, without writing anything
@@ -23,7 +24,10 @@ pub(super) struct Arguments {
 
 pub(super) fn run(arguments: &Arguments) -> Result<Outcome, Failure> {
     let design = design_source::read(&arguments.design)?;
-    let checks = run_checks(&design)?;
+    let checks = {
+        let progress = Progress::of("lift curves");
+        run_checks_telling(&design, &|done, total| progress.show(done, total))?
+    };
     let passed = checks.iter().all(|check| check.passed);
     match arguments.format {
         ReportFormat::Text => {

@@ -4,6 +4,7 @@ use std::io::{self, Read};
 use std::path::Path;
 
 use plankform::design::{Design, LARGEST_FILE};
+use plankform::problems;
 use plankform::section::Beside;
 
 use super::failure::Failure;
@@ -22,17 +23,9 @@ pub(super) fn text_of(path: &Path, largest: usize, what: &str) -> Result<String,
     let file = std::fs::File::open(path).map_err(failed)?;
     let mut bytes = Vec::new();
     file.take(largest as u64 + 1).read_to_end(&mut bytes).map_err(failed)?;
-    let cut = bytes.len() > largest;
-    String::from_utf8(bytes).or_else(|e| {
-        let at = e.utf8_error().valid_up_to();
-        // The cut may have gone through a character.
-        if cut && e.utf8_error().error_len().is_none() {
-            return Ok(String::from_utf8_lossy(e.as_bytes()).into_owned());
-        }
-        Err(Failure::Input(format!(
-            "{}: byte {at} is not UTF-8 text: {what} is plain text in TOML",
-            path.display()
-        )))
+    problems::text_of(bytes, largest).map_err(|at| {
+        let path = path.display();
+        Failure::Input(format!("{path}: byte {at} is not UTF-8 text: {what} is plain text in TOML"))
     })
 }
 

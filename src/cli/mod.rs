@@ -2,15 +2,17 @@
 
 mod build;
 mod check;
+mod completions;
 mod design_source;
 mod failure;
 mod lift;
+mod manual;
 mod new;
 mod number_list;
+mod progress;
 mod schema;
 mod section;
 mod section_source;
-mod viscous_lift;
 
 use std::io::{self, Write};
 use std::process::ExitCode;
@@ -37,6 +39,8 @@ enum Verb {
     Check(check::Arguments),
     Build(build::Arguments),
     Schema(schema::Arguments),
+    Completions(completions::Arguments),
+    Manual(manual::Arguments),
 }
 
 /// How data is printed.
@@ -76,6 +80,8 @@ pub(crate) fn run() -> ExitCode {
         Verb::Check(a) => check::run(&a),
         Verb::Build(a) => build::run(&a),
         Verb::Schema(a) => schema::run(&a),
+        Verb::Completions(a) => completions::run(&a),
+        Verb::Manual(a) => manual::run(&a),
     };
     match outcome {
         Ok(Outcome::Passed) => ExitCode::SUCCESS,
@@ -99,8 +105,12 @@ fn print(text: &str) -> Result<(), Failure> {
 }
 
 fn print_json(value: &impl serde::Serialize) -> Result<(), Failure> {
+    print(&as_json(value)?)
+}
+
+fn as_json(value: &impl serde::Serialize) -> Result<String, Failure> {
     let text = serde_json::to_string_pretty(value).map_err(|e| Failure::writing("JSON", &e.into()))?;
-    print(&format!("{text}\n"))
+    Ok(format!("{text}\n"))
 }
 
 /// Says something to the person, on standard error.

@@ -5,7 +5,7 @@ use super::{Outcome, print_json};
 
 /// Print the JSON Schema of the design file
 #[derive(Debug, clap::Args)]
-#[command(after_help = "Example:\n  plankform schema > design.schema.json")]
+#[command(after_help = "Example:\n  plankform schema > plankform-schema.json")]
 pub(super) struct Arguments {}
 
 pub(super) fn run(_: &Arguments) -> Result<Outcome, Failure> {

@@ -36,7 +36,7 @@ pub(super) struct Arguments {
 /// Chord of the picture when none is given, mm.
 const PICTURE_CHORD: f64 = 200.0;
 
-fn chord(text: &str) -> Result<Length, String> {
+pub(super) fn chord(text: &str) -> Result<Length, String> {
     let length: Length = text.parse().map_err(|e: plankform::units::UnitError| e.to_string())?;
     let bounds = 1.0..=10_000.0;
     if bounds.contains(&length.mm()) {

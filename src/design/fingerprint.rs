@@ -4,7 +4,7 @@ use std::fmt::Write;
 
 use sha2::{Digest, Sha256};
 
-use super::model::{Cut, Design, Flap, Ply, Station};
+use super::model::{Cut, Design, Flap, Hands, Ply, Station};
 use crate::section::{Finish, names_a_file};
 use crate::units::{Angle, Length, fixed};
 
@@ -40,6 +40,17 @@ impl Design {
                 fixed(self.twist_about, PLACES)
             ),
         ];
+        // What is as it usually is says nothing, so that a design keeps its mark when such a key is new.
+        if self.kind.mirrored() == (self.hands == Hands::OneHanded) {
+            lines.push(format!("hands {:?}", self.hands));
+        }
+        lines.extend(self.tip.map(|tip| {
+            let lengths = [tip.length, tip.chord].map(mm);
+            format!("tip {:?} {} {}", tip.form, lengths.join(" "), fixed(tip.about, PLACES))
+        }));
+        if self.waterline.mm() > 0.0 {
+            lines.push(format!("case {} water {}", mm(self.in_case), mm(self.waterline)));
+        }
         lines.extend(self.stations.iter().map(|station| {
             format!(
                 "station {} chord {} section {} {} twist {} sweep {} rise {}",
@@ -104,13 +115,23 @@ fn flap(flap: &Flap) -> String {
     let numbers = [flap.hinge, flap.hinge_end, flap.axis].map(|v| fixed(v, PLACES));
     let travel = [flap.up, flap.down].map(degrees);
     let lengths = [flap.from, flap.to, flap.clearance, flap.face].map(mm);
-    format!("flap {} {} {} {}", flap.kind.word(), numbers.join(" "), travel.join(" "), lengths.join(" "))
+    let mut line =
+        format!("flap {} {} {} {}", flap.kind.word(), numbers.join(" "), travel.join(" "), lengths.join(" "));
+    if let Some((from, lengths)) = flap.hinge_lengths {
+        let _ = write!(line, " hinge from {from:?} {}", lengths.map(mm).join(" "));
+    }
+    line
 }
 
 fn cut(cut: &Cut) -> String {
     let lengths = [cut.width, cut.depth, cut.from, cut.to].map(mm);
     let numbers = [cut.at, cut.height].map(|v| fixed(v, PLACES));
-    format!("cut {:?} {} {} {}", cut.kind, cut.from_upper, numbers.join(" "), lengths.join(" "))
+    let mut line =
+        format!("cut {:?} {} {} {}", cut.kind, cut.from_upper, numbers.join(" "), lengths.join(" "));
+    if let Some(chord) = cut.chord {
+        let _ = write!(line, " chord {}", chord.map(|v| fixed(v, PLACES)).join(" "));
+    }
+    line
 }
 
 fn finish(finish: Finish) -> String {

@@ -4,9 +4,19 @@
 //! down. The reader, its messages, the schema for editors and the page of the hand-book all follow
 //! from them.
 
-use super::model::{CutKind, FlapKind, Kind, PaperSize, PlySide};
-use crate::units::{AREAL_WEIGHT, DENSITY, MASS, Quantity, SPEED, TEMPERATURE};
+mod boat;
+mod strength;
+
+pub(super) use boat::{BOAT, DUTY, WEIGHT};
+pub(super) use strength::{CASE, JOINT, MATERIAL, STRENGTH};
+
+use super::model::{
+    CutKind, DxfRelease, Faces, FlapKind, Hands, HingeFrom, Kind, MaskShapes, PaperSize, PlySide, TipShape,
+};
+use super::strength::SOURCES;
+use crate::units::{AREAL_WEIGHT, DENSITY, Quantity, SPEED, STRESS, TEMPERATURE};
 use crate::wing::Law;
+use crate::workshop::Corners;
 
 /// One table of the file.
 pub(super) struct Table {
@@ -57,6 +67,8 @@ pub(super) enum Takes {
     Word(&'static [&'static str]),
     /// One of these words, or a length within these, millimetres.
     WordOrLength(&'static [&'static str], f64, f64),
+    /// A number within the first two, or a length within the last two, millimetres.
+    NumberOrLength([f64; 2], [f64; 2]),
     /// A length within these, millimetres.
     Length(f64, f64),
     /// Up to so many lengths, each within these, millimetres.
@@ -80,7 +92,7 @@ pub(super) enum Otherwise {
 }
 
 use Otherwise::{Default, Left, Required};
-use Takes::{Amount, Angle, Length, Lengths, Name, Number, Text, Word, WordOrLength};
+use Takes::{Amount, Angle, Length, Lengths, Name, Number, NumberOrLength, Text, Word, WordOrLength};
 
 const fn key(
     name: &'static str,
@@ -156,6 +168,55 @@ pub(super) static PLANFORM: Table = Table {
             Default("0.25"),
             "Place on the chord about which twist turns, a fraction from the nose.",
             "0.25",
+        ),
+        key(
+            "tip",
+            Word(TipShape::WORDS),
+            Default("square"),
+            "How the far end is shaped: as the last station has it, both edges rounded as an ellipse, or cut across in straight lines.",
+            "rounded",
+        ),
+        key(
+            "tip-length",
+            Length(1.0, 2000.0),
+            Left("half the last station's chord"),
+            "Over how much of the span a rounded or cut tip is shaped.",
+            "40 mm",
+        ),
+        key(
+            "tip-chord",
+            Length(5.0, 2000.0),
+            Left("a third of the last station's chord"),
+            "Chord left at the very end of a rounded or cut tip.",
+            "25 mm",
+        ),
+        key(
+            "tip-about",
+            Number(0.0, 1.0),
+            Left("0.5 for a rounded tip, 1 for a cut one"),
+            "The place on the chord towards which the tip draws together, a fraction from the nose: 1 keeps the trailing edge straight.",
+            "0.6",
+        ),
+        key(
+            "hands",
+            Word(Hands::WORDS),
+            Left("mirrored for a main foil and an elevator, one-handed for a strut and a fin"),
+            "Two parts that mirror each other, or one. The span of a one-handed foil is measured from end to end; a strut or a fin that is mirrored is made twice, as a left and a right one.",
+            "one-handed",
+        ),
+        key(
+            "in-case",
+            Length(0.0, LONGEST),
+            Default("0 mm"),
+            "How much of a strut or a fin stays in its case in the hull, from the upper end.",
+            "300 mm",
+        ),
+        key(
+            "waterline",
+            Length(0.0, LONGEST),
+            Left("where the case ends"),
+            "Where the water's surface lies on a strut or a fin under way, from the upper end.",
+            "450 mm",
         ),
     ],
 };
@@ -287,8 +348,35 @@ pub(super) static WOOD: Table = Table {
             "Added to a blank on every side for holding and trimming.",
             "10 mm",
         ),
+        key("values", Word(SOURCES), Left(NO_STRENGTH), "Where the values below come from.", "tested"),
+        key(
+            "modulus",
+            Amount(&STRESS, 1.0, 1e5),
+            Left(NO_STRENGTH),
+            "Young's modulus along the span.",
+            "6 GPa",
+        ),
+        key(
+            "modulus-across",
+            Amount(&STRESS, 1.0, 1e5),
+            Left(NO_STRENGTH),
+            "The same square to the skin.",
+            "250 MPa",
+        ),
+        key("shear-modulus", Amount(&STRESS, 1.0, 1e5), Left(NO_STRENGTH), "Shear modulus.", "350 MPa"),
+        key("shear", Amount(&STRESS, 0.05, 1000.0), Left(NO_STRENGTH), "Shear strength.", "4 MPa"),
+        key(
+            "compression",
+            Amount(&STRESS, 0.05, 1000.0),
+            Left(NO_STRENGTH),
+            "Compressive strength square to the skin.",
+            "3 MPa",
+        ),
     ],
 };
+
+/// Words for a key without which strength is not looked at.
+const NO_STRENGTH: &str = "strength is not worked out";
 
 /// One ply.
 pub(super) static PLY: Table = Table {
@@ -337,6 +425,20 @@ pub(super) static PLY: Table = Table {
             "0.15",
         ),
         key("chord-to", Number(0.05, 1.0), Default("1"), "Where it ends along the chord.", "0.6"),
+        key(
+            "material",
+            Text(60),
+            Left(NO_STRENGTH),
+            "Name of the [[material]] that holds its values.",
+            "carbon, along the span",
+        ),
+        key(
+            "angle",
+            Angle(-90.0, 90.0),
+            Default("0 deg"),
+            "From the span to its fibre: 0 along the span or 0/90, 45 for woven cloth laid ±45.",
+            "45 deg",
+        ),
     ],
 };
 
@@ -348,17 +450,24 @@ pub(super) static FLAP: Table = Table {
     keys: &[
         key(
             "hinge",
-            Number(0.3, 0.95),
+            NumberOrLength([0.3, 0.95], [2.0, 2000.0]),
             Required,
-            "Where the hinge lies, as a fraction of the chord from the nose.",
+            "Where the hinge lies: a fraction of the chord from the nose, or a length along the chord.",
             "0.7",
         ),
         key(
             "hinge-end",
-            Number(0.3, 0.95),
+            NumberOrLength([0.3, 0.95], [2.0, 2000.0]),
             Left("as hinge"),
             "The same at the flap's outer end; between the two it changes evenly.",
             "0.72",
+        ),
+        key(
+            "hinge-from",
+            Word(HingeFrom::WORDS),
+            Default("nose"),
+            "Where a hinge that is given as a length is measured from.",
+            "trailing-edge",
         ),
         FROM,
         TO,
@@ -386,37 +495,14 @@ pub(super) static FLAP: Table = Table {
             "0.5 mm",
         ),
         key("face", Length(0.0, 5.0), Default("0 mm"), "Laminate on the cut faces.", "0.3 mm"),
-    ],
-};
-
-/// What the foil is asked to carry.
-pub(super) static DUTY: Table = Table {
-    name: "duty",
-    times: Times::Absent,
-    doc: "What a level foil carries under its boat, for a main foil or an elevator.",
-    keys: &[
         key(
-            "carries",
-            Amount(&MASS, 1.0, 5000.0),
-            Required,
-            "Mass that this foil carries in flight: its share of boat, crew and rig.",
-            "150 kg",
+            "face-material",
+            Text(60),
+            Left("the wood alone closes the section"),
+            "Name of the [[material]] of that laminate, laid on the bias (±45).",
+            "glass twill",
         ),
-        key("take-off", Amount(&SPEED, 0.5, 20.0), Required, "Speed at which it has to carry it.", "8 kn"),
-        key(
-            "cruise",
-            Amount(&SPEED, 0.5, 25.0),
-            Left("not shown"),
-            "Speed at which it usually runs.",
-            "12 kn",
-        ),
-        key(
-            "share",
-            Number(0.3, 1.0),
-            Default("0.85"),
-            "How much of its greatest lift it may use at take-off; the rest is the margin to stall.",
-            "0.85",
-        ),
+        boat::HORN,
     ],
 };
 
@@ -424,44 +510,66 @@ pub(super) static DUTY: Table = Table {
 pub(super) static CUT: Table = Table {
     name: "cut",
     times: Times::Many(0, 40),
-    doc: "A slot or a bore along the span, in the wood: for a control rod, a tube, a spar, the bolts of a joint.",
+    doc: "What is taken out of the wood: a slot for a control rod or a tube, a bore, a pocket for a spar, a reinforcement or a joint, a hole for a bolt.",
     keys: &[
         key("for", Text(60), Required, "What it is for.", "control rod"),
-        key("kind", Word(CutKind::WORDS), Required, "A slot sunk from a face, or a round bore.", "slot"),
+        key(
+            "kind",
+            Word(CutKind::WORDS),
+            Required,
+            "A slot sunk from a face, with a flat floor; a round bore along the span; a pocket whose floor follows the face; a round hole through the foil.",
+            "slot",
+        ),
+        key("along", Word(&["span", "chord"]), Default("span"), "Which way a slot runs.", "span"),
         key(
             "at",
             Number(0.02, 0.98),
-            Required,
+            Left("wanted of a bore, a hole, and a slot along the span"),
             "Its middle, as a fraction of the chord from the nose.",
             "0.3",
         ),
         key(
+            "span-at",
+            Length(0.0, LONGEST),
+            Left("wanted of a hole, and a slot along the chord"),
+            "Its middle along the span, from the root.",
+            "30 mm",
+        ),
+        key(
             "width",
             Length(0.5, 500.0),
-            Required,
-            "Width of a slot along the chord, diameter of a bore.",
+            Left("wanted of all but a pocket"),
+            "Width across a slot, diameter of a bore or a hole.",
             "8 mm",
         ),
         key(
             "depth",
             Length(0.0, 200.0),
             Default("0 mm"),
-            "Depth of a slot below the face of the wood.",
+            "Depth of a slot, a pocket or a hole below the face of the wood; a hole of no depth goes right through.",
             "6 mm",
         ),
-        key(
-            "face",
-            Word(&["upper", "lower"]),
-            Default("upper"),
-            "The face that a slot is sunk from.",
-            "upper",
-        ),
+        key("face", Word(&["upper", "lower"]), Default("upper"), "The face that it is sunk from.", "upper"),
         key(
             "height",
             Number(0.0, 1.0),
             Default("0.5"),
             "Centre of a bore between the lower (0) and the upper (1) face of the wood.",
             "0.5",
+        ),
+        key(
+            "chord-from",
+            Number(0.02, 0.98),
+            Left("wanted of a pocket, and a slot along the chord"),
+            "Where it begins along the chord, a fraction from the nose.",
+            "0.15",
+        ),
+        key(
+            "chord-to",
+            Number(0.02, 0.98),
+            Left("wanted of a pocket, and a slot along the chord"),
+            "Where it ends along the chord.",
+            "0.45",
         ),
         FROM,
         TO,
@@ -502,6 +610,13 @@ pub(super) static LIFT: Table = Table {
             "Speed up to which the sections may not cavitate at the design lift.",
             "18 kn",
         ),
+        key(
+            "cavitation-margin",
+            Number(0.0, 2.0),
+            Default("0"),
+            "By what share the cavitation number is to stay above the greatest suction: 0.2 keeps a fifth to spare for gusts and waves.",
+            "0.2",
+        ),
         key("water", Word(&["sea", "fresh"]), Default("sea"), "Sea water, or fresh.", "sea"),
         key("temperature", Amount(&TEMPERATURE, 0.0, 30.0), Default("15 °C"), "Of the water.", "15 °C"),
         key(
@@ -534,17 +649,58 @@ pub(super) static LIFT: Table = Table {
 pub(super) static MASKS: Table = Table {
     name: "masks",
     times: Times::AtMostOnce,
-    doc: "The printed masks that guide the sanding.",
+    doc: "The printed masks, cradles and rails that guide the shaping.",
     keys: &[
+        key(
+            "for",
+            Word(MaskShapes::WORDS),
+            Default("both"),
+            "The wood before the laminate, the finished surface, or both; without a laminate they are one.",
+            "core",
+        ),
         key(
             "clearance",
             Length(0.05, 5.0),
             Default("0.3 mm"),
-            "Gap between the finished skin and the mask.",
+            "Gap between the mask and what it closes on.",
             "0.3 mm",
         ),
         key("wall", Length(2.0, 60.0), Default("10 mm"), "Material around the section.", "10 mm"),
-        key("thickness", Length(1.0, 60.0), Default("6 mm"), "Thickness of a mask along the span.", "6 mm"),
+        key(
+            "thickness",
+            Length(1.0, 60.0),
+            Default("6 mm"),
+            "Thickness of a mask or a rail along the span.",
+            "6 mm",
+        ),
+        key(
+            "cradles",
+            Word(Faces::WORDS),
+            Default("none"),
+            "Cradles that hold the half-shaped wood by a face, one between each two templates.",
+            "lower",
+        ),
+        key(
+            "cradle-length",
+            Length(10.0, 500.0),
+            Default("60 mm"),
+            "Length of a cradle along the span; no more than lies between the templates.",
+            "60 mm",
+        ),
+        key(
+            "rails",
+            Word(Faces::WORDS),
+            Default("none"),
+            "Rails at the stations that guide a straight edge or a router sled over a face.",
+            "upper",
+        ),
+        key(
+            "rail-offset",
+            Length(0.0, 100.0),
+            Default("0 mm"),
+            "How far the rails stand proud of the wood, square to it: what a sled and its cutter need; nothing for a straight edge.",
+            "12 mm",
+        ),
     ],
 };
 
@@ -567,7 +723,13 @@ pub(super) static PAPER: Table = Table {
     times: Times::AtMostOnce,
     doc: "The paper that templates are printed on.",
     keys: &[
-        key("size", Word(PaperSize::WORDS), Default("A4"), "The sheet.", "A4"),
+        key(
+            "size",
+            WordOrLength(PaperSize::WORDS, 200.0, 2000.0),
+            Default("A4"),
+            "The sheet, or the width of a roll.",
+            "A4",
+        ),
         key(
             "margin",
             Length(5.0, 40.0),
@@ -595,6 +757,20 @@ pub(super) static STOCK: Table = Table {
             "Kept free along every edge of the sheet.",
             "10 mm",
         ),
+        key(
+            "spacing",
+            Length(0.5, 100.0),
+            Default("12 mm"),
+            "Kept free between two pieces: the cutter and what holds the sheet.",
+            "12 mm",
+        ),
+        key(
+            "grain",
+            Word(&["along", "any"]),
+            Default("along"),
+            "Whether every piece keeps its length along the sheet's, as its grain asks, or may be turned by a quarter.",
+            "along",
+        ),
     ],
 };
 
@@ -603,19 +779,58 @@ pub(super) static ROUTER: Table = Table {
     name: "router",
     times: Times::AtMostOnce,
     doc: "The router that cuts the templates.",
-    keys: &[key(
-        "tolerance",
-        Length(0.001, 0.5),
-        Default("0.01 mm"),
-        "How far the cut line may stray from the section.",
-        "0.01 mm",
-    )],
+    keys: &[
+        key(
+            "tolerance",
+            Length(0.001, 0.5),
+            Default("0.01 mm"),
+            "How far the cut line may stray from the section.",
+            "0.01 mm",
+        ),
+        key(
+            "cutter",
+            Length(0.5, 50.0),
+            Default("6 mm"),
+            "Diameter of the cutter; inside radii that it does not reach are told.",
+            "6 mm",
+        ),
+        key(
+            "contour",
+            Word(&["piece", "path"]),
+            Default("piece"),
+            "What a contour is: the line of the piece, for a machine that sets off the cutter's radius itself, or the path of the cutter's middle.",
+            "piece",
+        ),
+        key(
+            "corners",
+            Word(Corners::WORDS),
+            Default("sharp"),
+            "Inner corners of slots and pockets: left sharp for the chisel, or relieved by the cutter's radius, along the bisector or into the end wall.",
+            "dog-bone",
+        ),
+        key("tabs", Number(0.0, 20.0), Default("0"), "Holding tabs on each piece, a whole number.", "4"),
+        key("tab-width", Length(1.0, 50.0), Default("6 mm"), "Length of a tab along the contour.", "6 mm"),
+        key(
+            "curves",
+            Word(&["arcs", "splines"]),
+            Default("arcs"),
+            "How curved contours are written: as lines and arcs, or as splines (release 2000 alone).",
+            "arcs",
+        ),
+        key(
+            "dxf",
+            Word(DxfRelease::WORDS),
+            Default("2000"),
+            "Release of the router files: 2000, R12 for the oldest readers, or both.",
+            "both",
+        ),
+    ],
 };
 
 /// Every table, in the order of the hand-book.
-pub(super) static TABLES: [&Table; 16] = [
-    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &DUTY, &MASKS,
-    &PRINTER, &PAPER, &STOCK, &ROUTER,
+pub(super) static TABLES: [&Table; 22] = [
+    &ROOT, &PLANFORM, &STATION, &TEMPLATES, &WOOD, &LAMINATE, &PLY, &FLAP, &CUT, &LIFT, &DUTY, &BOAT,
+    &WEIGHT, &MATERIAL, &STRENGTH, &CASE, &JOINT, &MASKS, &PRINTER, &PAPER, &STOCK, &ROUTER,
 ];
 
 impl Table {
@@ -644,6 +859,7 @@ impl Key {
     pub(super) fn quoted(&self, value: &str) -> String {
         match self.takes {
             Number(..) => value.to_owned(),
+            NumberOrLength(..) if value.parse::<f64>().is_ok() => value.to_owned(),
             Lengths(..) => {
                 let each: Vec<String> = value.split(", ").map(|item| format!("\"{item}\"")).collect();
                 format!("[{}]", each.join(", "))
@@ -676,6 +892,13 @@ impl Takes {
                     round_length(most)
                 )
             }
+            NumberOrLength([least, most], [shortest, longest]) => format!(
+                "a number from {} to {}, or a length from {} to {}",
+                number(least),
+                number(most),
+                round_length(shortest),
+                round_length(longest)
+            ),
             Length(least, most) => format!("a length from {} to {}", round_length(least), round_length(most)),
             Lengths(count, least, most) => format!(
                 "a list of up to {count} lengths from {} to {}",

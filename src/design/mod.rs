@@ -4,6 +4,7 @@
 //! `keys`; `resolve` holds the values against each other and builds the sections; what any of them
 //! finds wrong is gathered in one [`DesignErrors`], so that a maker mends a file in one go.
 
+mod boat;
 mod fingerprint;
 mod keys;
 mod model;
@@ -11,23 +12,27 @@ mod page;
 mod parts;
 mod reader;
 mod resolve;
+mod resolve_ends;
+mod resolve_wood;
 mod schema;
 mod starter;
+mod strength;
 mod value;
 mod wing;
 
 pub use crate::problems::{FileErrors as DesignErrors, Problem};
+pub use boat::{Boat, Role};
 pub use model::{
-    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
-    Printer, Router, Station, Stock,
+    Cut, CutKind, Design, Duty, DxfRelease, Faces, Flap, FlapKind, Hands, HingeFrom, Kind, Laminate, Lift,
+    MaskShapes, Masks, Paper, PaperSize, Ply, PlySide, Printer, Router, Station, Stock, Tip, TipShape,
 };
 pub use page::key_tables;
 pub use schema::schema;
-pub use starter::starter;
+pub use starter::{SCHEMA_FILE, starter};
+pub use strength::{Case, CaseLoad, Form, Joint, Material, Strength};
 
 use crate::problems::{Problems, Wrong};
 use crate::section::Beside;
-use toml::de::DeTable;
 
 /// The largest design file that is read, in bytes.
 pub const LARGEST_FILE: usize = 1_000_000;
@@ -49,30 +54,30 @@ impl Design {
     /// # Errors
     /// As [`Design::parse`], and what is wrong with those files.
     pub fn parse_beside(text: &str, file_name: &str, beside: &Beside<'_>) -> Result<Self, DesignErrors> {
-        let mut problems = Problems::default();
-        let design = read(text, beside, &mut problems);
-        match design {
-            Some(design) if problems.is_empty() => Ok(design),
-            _ => Err(problems.report(text, file_name)),
-        }
+        read_all(text, file_name, beside, true)
     }
 }
 
-fn read(text: &str, beside: &Beside<'_>, problems: &mut Problems) -> Option<Design> {
+/// A design that another one names: the designs that it names in turn are not read.
+fn read_alone(text: &str, file_name: &str, beside: &Beside<'_>) -> Result<Design, DesignErrors> {
+    read_all(text, file_name, beside, false)
+}
+
+fn read_all(text: &str, file_name: &str, beside: &Beside<'_>, follow: bool) -> Result<Design, DesignErrors> {
+    let mut problems = Problems::default();
+    match read(text, beside, follow, &mut problems) {
+        Some(design) if problems.is_empty() => Ok(design),
+        _ => Err(problems.report(text, file_name)),
+    }
+}
+
+fn read(text: &str, beside: &Beside<'_>, follow: bool, problems: &mut Problems) -> Option<Design> {
     if text.len() > LARGEST_FILE {
         let message = format!("the file has too many bytes: a design has {LARGEST_FILE} at most");
         problems.add(0..0, Wrong::new(message));
         return None;
     }
-    let root = match DeTable::parse(text) {
-        Ok(root) => root,
-        Err(error) => {
-            let place = error.span().unwrap_or(0..0);
-            let message = format!("this is not TOML, the form of a design file: {}", error.message());
-            problems.add(place, Wrong::new(message));
-            return None;
-        }
-    };
+    let root = problems.toml(text, "a design file")?;
     if root.get_ref().is_empty() {
         let wrong = Wrong::new("the file holds no design: there is not one key in it")
             .help("`plankform new FILE` writes a design to start from");
@@ -80,5 +85,5 @@ fn read(text: &str, beside: &Beside<'_>, problems: &mut Problems) -> Option<Desi
         return None;
     }
     let sheet = reader::Sheet::read(root.get_ref(), problems);
-    resolve::design(&sheet, beside, problems)
+    resolve::design(&sheet, beside, follow, problems)
 }

@@ -175,9 +175,29 @@ impl Row {
         Self { header, values }
     }
 
+    /// Whether a key is there and right.
+    pub(super) fn given(&self, key: &str) -> bool {
+        self.value(key).is_some()
+    }
+
+    /// Where the table is opened.
+    pub(super) fn opening(&self) -> Range<usize> {
+        self.header.clone()
+    }
+
     /// Where a value stands; for a default, where its table is opened.
     pub(super) fn place(&self, key: &str) -> Range<usize> {
         self.values.get(key).map_or_else(|| self.header.clone(), |(span, _)| span.clone())
+    }
+
+    /// Where the table is opened.
+    pub(super) fn header(&self) -> Range<usize> {
+        self.header.clone()
+    }
+
+    /// Whether the file itself gives the key, rather than its default.
+    pub(super) fn gives(&self, key: &str) -> bool {
+        self.values.get(key).is_some_and(|(span, _)| *span != self.header)
     }
 
     fn value(&self, key: &str) -> Option<&Value> {

@@ -2,51 +2,71 @@
 
 use std::ops::Range;
 
+use super::boat;
 use super::keys;
 use super::model::{
-    Cut, CutKind, Design, Duty, Flap, FlapKind, Kind, Laminate, Lift, Masks, Paper, PaperSize, Ply, PlySide,
-    Printer, Router, Station, Stock, Wood,
+    Design, DxfRelease, Faces, Hands, Kind, Lift, MaskShapes, Masks, Paper, PaperSize, Printer, Router,
+    Station, Stock,
 };
 use super::reader::{Row, Sheet};
+use super::resolve_ends::{case_and_waterline, hands, tip};
+use super::resolve_wood::{cut, flap, laminate, place_hinge, ply, wood};
+use super::strength;
 use crate::problems::{Problems, Wrong};
 use crate::section::{Beside, Finish, SectionFileError};
 use crate::units::{Angle, Length, clipped};
 use crate::wing::Law;
+use crate::workshop::Corners;
 
 /// Two places along the span nearer than this are one, millimetres.
-const SAME: f64 = 0.001;
+pub(super) const SAME: f64 = 0.001;
 
 /// Builds the design, or notes why it cannot be.
 ///
 /// Every part is looked at before any is given up, so that one run reports them all.
-pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems) -> Option<Design> {
+pub(super) fn design(
+    sheet: &Sheet,
+    beside: &Beside<'_>,
+    follow: bool,
+    problems: &mut Problems,
+) -> Option<Design> {
     let root = sheet.one(&keys::ROOT)?;
     let kind = root.text("kind").and_then(Kind::from_word);
-    let span = sheet.one(&keys::PLANFORM).and_then(|row| row.length("span"));
-    let reach = match (kind, span) {
-        (Some(kind), Some(span)) => Some(Reach::new(kind, span)),
+    let planform = sheet.one(&keys::PLANFORM);
+    let span = planform.and_then(|row| row.length("span"));
+    let reach = match (kind, planform, span) {
+        (Some(kind), Some(row), Some(span)) => Some(Reach::new(kind, hands(row, kind), span)),
         _ => None,
     };
 
     let stations = stations(sheet.all(&keys::STATION), reach.as_ref(), beside, problems);
     let templates = templates(sheet.one(&keys::TEMPLATES), reach.as_ref(), problems);
-    let flap = sheet.one(&keys::FLAP).map(|row| flap(row, reach.as_ref(), problems));
+    let flap = sheet.one(&keys::FLAP).map(|row| flap(sheet, row, reach.as_ref(), problems));
     let wood = wood(sheet.one(&keys::WOOD)?);
     let laminate = laminate(sheet.one(&keys::LAMINATE)?);
-    let plies: Vec<_> = sheet.all(&keys::PLY).iter().map(|row| ply(row, reach.as_ref(), problems)).collect();
+    let plies: Vec<_> =
+        sheet.all(&keys::PLY).iter().map(|row| ply(sheet, row, reach.as_ref(), problems)).collect();
     let cuts: Vec<_> = sheet.all(&keys::CUT).iter().map(|row| cut(row, reach.as_ref(), problems)).collect();
+    let density = wood.as_ref().map(|wood| wood.density);
+    let strength = strength::strength(sheet, reach.as_ref(), density, problems);
+    strength::refuse_halves(sheet, strength.as_ref(), problems);
     let lift = lift(sheet.one(&keys::LIFT)?, problems);
-    let top_speed = lift.as_ref().and_then(|lift| lift.top_speed);
-    let duty = sheet.one(&keys::DUTY).map(|row| duty(row, kind, top_speed, problems));
+    let boat = boat::boat(sheet, kind, beside, follow, problems);
+    let facts = (lift.as_ref(), reach.as_ref().map(|reach| reach.to));
+    let duty = boat::duty(sheet.one(&keys::DUTY), kind, boat.as_ref(), facts, problems);
     let masks = masks(sheet.one(&keys::MASKS)?);
     let printer = printer(sheet.one(&keys::PRINTER)?, problems);
     let paper = paper(sheet.one(&keys::PAPER)?, problems);
     let stock = stock(sheet.one(&keys::STOCK)?, problems);
-    let router = router(sheet.one(&keys::ROUTER)?);
+    let router = router(sheet.one(&keys::ROUTER)?, problems);
+    if let (Some(stock), Some(router)) = (&stock, &router) {
+        cutter_between_pieces(sheet.one(&keys::STOCK)?, stock, router, problems);
+    }
 
     let fairing = sheet.one(&keys::TEMPLATES).and_then(|row| row.length("fairing"));
-    let stations = stations?;
-    let planform = sheet.one(&keys::PLANFORM)?;
+    let (stations, planform) = (stations?, planform?);
+    let shaped = stations.last().and_then(|last| tip(planform, last, reach.as_ref(), problems));
+    let depths = case_and_waterline(planform, kind?, reach.as_ref(), problems);
     let law = planform.text("law").and_then(Law::from_word)?;
     if law == Law::Elliptic && stations.len() != 2 {
         let message =
@@ -62,7 +82,11 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
         kind: kind?,
         notes: root.text("notes").map(str::to_owned),
         span: span?,
-        templates: with_stations(templates.unwrap_or_default(), &stations),
+        hands: hands(planform, kind?),
+        templates: with_stations(templates.unwrap_or_default(), &stations, shaped.map(|tip| tip.length)),
+        tip: shaped,
+        in_case: depths?[0],
+        waterline: depths?[1],
         stations,
         wood: wood?,
         laminate: laminate?,
@@ -72,17 +96,19 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
             Some(flap) => Some(flap?),
             None => None,
         },
+        strength: strength?,
         lift: lift?,
-        duty: match duty {
-            Some(duty) => Some(duty?),
-            None => None,
-        },
+        duty: duty?,
+        boat,
         masks: masks?,
         printer: printer?,
         paper: paper?,
         stock: stock?,
         router: router?,
     };
+    if let Some(row) = sheet.one(&keys::FLAP).filter(|_| problems.is_empty()) {
+        place_hinge(&mut design, row, problems);
+    }
     // What is wrong with the foil as a whole is found when it is made; here it only adds no places.
     if let Some(fairing) = fairing.filter(|_| design.law != Law::Straight)
         && problems.is_empty()
@@ -95,12 +121,14 @@ pub(super) fn design(sheet: &Sheet, beside: &Beside<'_>, problems: &mut Problems
     Some(design)
 }
 
-/// The places named and the stations, ascending: the foil bends at a station, and a batten laid past
-/// one without a template would cut the bend off.
-fn with_stations(mut places: Vec<Length>, stations: &[Station]) -> Vec<Length> {
-    for station in stations {
-        if places.iter().all(|place| (place.mm() - station.at.mm()).abs() > SAME) {
-            places.push(station.at);
+/// The places named, the stations, and where a tip of that length begins, ascending: the foil bends at
+/// these, and a batten laid past one without a template would cut the bend off.
+fn with_stations(mut places: Vec<Length>, stations: &[Station], tip: Option<Length>) -> Vec<Length> {
+    let end = stations.last().map_or(0.0, |last| last.at.mm());
+    let begins = tip.map(|length| Length::from_mm(end - length.mm())).filter(|at| at.mm() > SAME);
+    for at in stations.iter().map(|station| station.at).chain(begins) {
+        if places.iter().all(|place| (place.mm() - at.mm()).abs() > SAME) {
+            places.push(at);
         }
     }
     places.sort_by(|a, b| a.mm().total_cmp(&b.mm()));
@@ -108,14 +136,14 @@ fn with_stations(mut places: Vec<Length>, stations: &[Station]) -> Vec<Length> {
 }
 
 /// How far the built piece reaches, and how to say why.
-struct Reach {
-    to: Length,
-    because: String,
+pub(super) struct Reach {
+    pub(super) to: Length,
+    pub(super) because: String,
 }
 
 impl Reach {
-    fn new(kind: Kind, span: Length) -> Self {
-        if kind.mirrored() {
+    fn new(kind: Kind, hands: Hands, span: Length) -> Self {
+        if kind.mirrored() && hands == Hands::Mirrored {
             let to = Length::from_mm(span.mm() / 2.0);
             Self { to, because: format!("half the span of {span} is {to}") }
         } else {
@@ -124,7 +152,7 @@ impl Reach {
     }
 
     /// Notes when a place lies beyond the end.
-    fn holds(&self, what: &str, place: Length, span: Range<usize>, problems: &mut Problems) {
+    pub(super) fn holds(&self, what: &str, place: Length, span: Range<usize>, problems: &mut Problems) {
         if place.mm() > self.to.mm() + SAME {
             let wrong = Wrong::new(format!("{what} lies at {place}, but {}", self.because))
                 .help(format!("it lies at \"{}\" at most", self.to));
@@ -165,7 +193,8 @@ fn ascending(what: &str, places: &[(Length, Range<usize>)], problems: &mut Probl
         } else {
             format!("this {what} lies at {here}, the same place as the one before it")
         };
-        let help = format!("give each {what} a place of its own, from the root outwards");
+        let help =
+            format!("give each {what} a place of its own, from the root outwards: this one beyond {before}");
         problems.add(span.clone(), Wrong::new(message).help(help));
     }
     ordered
@@ -237,106 +266,6 @@ fn templates(row: Option<&Row>, reach: Option<&Reach>, problems: &mut Problems) 
     Some(places.iter().map(|(at, _)| *at).collect())
 }
 
-fn flap(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Flap> {
-    let (from, to) = stretch(row, "the flap", reach, problems)?;
-    let hinge = row.number("hinge")?;
-    Some(Flap {
-        hinge,
-        hinge_end: row.number("hinge-end").unwrap_or(hinge),
-        kind: row.text("kind").and_then(FlapKind::from_word)?,
-        axis: row.number("axis")?,
-        up: row.angle("up")?,
-        down: row.angle("down")?,
-        clearance: row.length("clearance")?,
-        face: row.length("face")?,
-        from,
-        to,
-    })
-}
-
-/// From where to where along the span something goes; to the far end where that is left out.
-fn stretch(
-    row: &Row,
-    what: &str,
-    reach: Option<&Reach>,
-    problems: &mut Problems,
-) -> Option<(Length, Length)> {
-    let from = row.length("from")?;
-    let to = row.length("to").or(reach.map(|reach| reach.to))?;
-    if let Some(reach) = reach {
-        reach.holds(&format!("{what}'s end"), to, row.place("to"), problems);
-    }
-    if to.mm() <= from.mm() + SAME {
-        let wrong = Wrong::new(format!("{what} runs from {from} to {to}, and leaves nothing between"))
-            .help("from lies nearer to the root than to");
-        problems.add(row.place("from"), wrong);
-    }
-    Some((from, to))
-}
-
-fn cut(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Cut> {
-    let (from, to) = stretch(row, "the cut", reach, problems)?;
-    let (kind, depth) = (row.text("kind").and_then(CutKind::from_word)?, row.length("depth")?);
-    if kind == CutKind::Slot && depth.mm() <= 0.0 {
-        let wrong = Wrong::new("a slot has a depth").help("write depth = \"6 mm\"");
-        problems.add(row.place("depth"), wrong);
-    }
-    Some(Cut {
-        purpose: row.text("for")?.to_owned(),
-        kind,
-        at: row.number("at")?,
-        width: row.length("width")?,
-        depth,
-        from_upper: row.text("face")? == "upper",
-        height: row.number("height")?,
-        from,
-        to,
-        least_left: row.length("least-left")?,
-    })
-}
-
-fn wood(row: &Row) -> Option<Wood> {
-    Some(Wood {
-        species: row.text("species")?.to_owned(),
-        density: row.number("density")?,
-        allowance: row.length("allowance")?,
-    })
-}
-
-fn laminate(row: &Row) -> Option<Laminate> {
-    Some(Laminate {
-        finish: row.length("finish")?,
-        rise: row.length("rise")?,
-        least_wood: row.length("least-wood")?,
-    })
-}
-
-fn ply(row: &Row, reach: Option<&Reach>, problems: &mut Problems) -> Option<Ply> {
-    let (from, to) = stretch(row, "the ply", reach, problems)?;
-    let (chord_from, chord_to) = (row.number("chord-from")?, row.number("chord-to")?);
-    if chord_to <= chord_from {
-        let message =
-            format!("the ply runs from {chord_from} to {chord_to} of the chord, and leaves nothing between");
-        problems.add(
-            row.place("chord-from"),
-            Wrong::new(message).help("chord-from lies nearer to the nose than chord-to"),
-        );
-    }
-    Some(Ply {
-        cloth: row.text("cloth")?.to_owned(),
-        weight: row.number("weight")?,
-        fibre_density: row.number("fibre-density")?,
-        resin_density: row.number("resin-density")?,
-        fibre_share: row.number("fibre-share")?,
-        thickness: row.length("thickness"),
-        on: row.text("on").and_then(PlySide::from_word)?,
-        from,
-        to,
-        chord_from,
-        chord_to,
-    })
-}
-
 fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
     let (from, to, step): (Angle, Angle, Angle) = (row.angle("from")?, row.angle("to")?, row.angle("step")?);
     let lift = Lift {
@@ -346,6 +275,7 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
         speed: row.number("speed")?,
         depth: row.length("depth")?,
         top_speed: row.number("top-speed"),
+        cavitation_margin: row.number("cavitation-margin")?,
         sea: row.text("water")? == "sea",
         temperature: row.number("temperature")?,
         quietness: row.number("quietness")?,
@@ -372,30 +302,16 @@ fn lift(row: &Row, problems: &mut Problems) -> Option<Lift> {
     Some(lift)
 }
 
-fn duty(row: &Row, kind: Option<Kind>, top: Option<f64>, problems: &mut Problems) -> Option<Duty> {
-    if kind.is_some_and(|kind| !kind.mirrored()) {
-        let wrong = Wrong::new("a duty is for a foil that lies level: a main foil or an elevator")
-            .help("leave [duty] out");
-        problems.add(row.place("carries"), wrong);
-    }
-    let (take_off, cruise) = (row.number("take-off")?, row.number("cruise"));
-    for (key, faster) in [("cruise", cruise), ("take-off", top)] {
-        if faster.is_some_and(|faster| faster <= take_off) {
-            let what = if key == "cruise" { "cruise" } else { "top-speed of [lift]" };
-            let wrong =
-                Wrong::new(format!("{what} does not lie above take-off: the speeds are out of order"))
-                    .help("take-off is the slowest of them");
-            problems.add(row.place(key), wrong);
-        }
-    }
-    Some(Duty { carries: row.number("carries")?, take_off, cruise, share: row.number("share")? })
-}
-
 fn masks(row: &Row) -> Option<Masks> {
     Some(Masks {
+        shapes: row.text("for").and_then(MaskShapes::from_word)?,
         clearance: row.length("clearance")?,
         wall: row.length("wall")?,
         thickness: row.length("thickness")?,
+        cradles: row.text("cradles").and_then(Faces::from_word)?,
+        cradle_length: row.length("cradle-length")?,
+        rails: row.text("rails").and_then(Faces::from_word)?,
+        rail_offset: row.length("rail-offset")?,
     })
 }
 
@@ -425,11 +341,18 @@ fn printer(row: &Row, problems: &mut Problems) -> Option<Printer> {
 
 fn paper(row: &Row, problems: &mut Problems) -> Option<Paper> {
     let paper = Paper {
-        size: row.text("size").and_then(PaperSize::from_word)?,
+        size: match row.length("size") {
+            Some(_) => PaperSize::A4,
+            None => row.text("size").and_then(PaperSize::from_word)?,
+        },
+        roll: row.length("size"),
         margin: row.length("margin")?,
         overlap: row.length("overlap")?,
     };
-    let (width, height) = paper.size.dimensions();
+    let (width, height) = match paper.roll {
+        Some(width) => (width, width),
+        None => paper.size.dimensions(),
+    };
     let lost = Length::from_mm(2.0 * paper.margin.mm() + paper.overlap.mm());
     leaves_room(row, lost, &[("the paper's width", width), ("the paper's height", height)], problems);
     Some(paper)
@@ -441,12 +364,53 @@ fn stock(row: &Row, problems: &mut Problems) -> Option<Stock> {
         width: row.length("width")?,
         thickness: row.length("thickness")?,
         margin: row.length("margin")?,
+        spacing: row.length("spacing")?,
+        may_turn: row.text("grain")? == "any",
     };
     let lost = Length::from_mm(2.0 * stock.margin.mm());
     leaves_room(row, lost, &[("length", stock.length), ("width", stock.width)], problems);
     Some(stock)
 }
 
-fn router(row: &Row) -> Option<Router> {
-    Some(Router { tolerance: row.length("tolerance")? })
+/// Notes when the cutter does not go between two pieces.
+fn cutter_between_pieces(row: &Row, stock: &Stock, router: &Router, problems: &mut Problems) {
+    if stock.spacing.mm() < router.cutter.mm() {
+        let (spacing, cutter) = (stock.spacing, router.cutter);
+        let wrong = Wrong::new(format!(
+            "pieces lie {spacing} apart, and the cutter of {cutter} does not go between them"
+        ))
+        .help(format!("write spacing = \"{cutter}\" or more, or take a smaller cutter under [router]"));
+        problems.add(row.place("spacing"), wrong);
+    }
+}
+
+fn router(row: &Row, problems: &mut Problems) -> Option<Router> {
+    let tabs = row.number("tabs")?;
+    if tabs.fract() != 0.0 {
+        let wrong = Wrong::new(format!("tabs is {tabs}: there is no part of a tab"))
+            .help(format!("write tabs = {}", tabs.round()));
+        problems.add(row.place("tabs"), wrong);
+    }
+    let router = Router {
+        tolerance: row.length("tolerance")?,
+        cutter: row.length("cutter")?,
+        is_path: row.text("contour")? == "path",
+        corners: row.text("corners").and_then(Corners::from_word)?,
+        tabs: tabs as usize,
+        tab_width: row.length("tab-width")?,
+        splines: row.text("curves")? == "splines",
+        release: row.text("dxf").and_then(DxfRelease::from_word)?,
+    };
+    if router.is_path && router.corners != Corners::Sharp {
+        let wrong = Wrong::new(
+            "a relieved corner is as wide as the cutter, and leaves no path of its middle",
+        )
+        .help("write corners = \"sharp\", or contour = \"piece\" and let the machine set off the radius");
+        problems.add(row.place("corners"), wrong);
+    }
+    if router.splines && router.release != DxfRelease::R2000 {
+        let wrong = Wrong::new("R12 has no splines").help("write dxf = \"2000\", or curves = \"arcs\"");
+        problems.add(row.place("curves"), wrong);
+    }
+    Some(router)
 }

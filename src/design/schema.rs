@@ -65,6 +65,10 @@ fn of_key(key: &Key) -> Map<String, Value> {
             { "type": "string", "enum": words },
             { "type": "string", "pattern": LENGTH.pattern() },
         ] }),
+        Takes::NumberOrLength([least, most], _) => json!({ "anyOf": [
+            { "type": "number", "minimum": least, "maximum": most },
+            { "type": "string", "pattern": LENGTH.pattern() },
+        ] }),
         Takes::Length(..) => json!({ "type": "string", "pattern": LENGTH.pattern() }),
         Takes::Amount(quantity, ..) => json!({ "type": "string", "pattern": quantity.pattern() }),
         Takes::Angle(..) => json!({ "type": "string", "pattern": ANGLE.pattern() }),
@@ -89,7 +93,9 @@ fn of_key(key: &Key) -> Map<String, Value> {
 /// A value of the registry as JSON writes it.
 fn as_json(key: &Key, text: &str) -> Value {
     match key.takes {
-        Takes::Number(..) => text.parse::<f64>().map_or(Value::Null, |number| json!(number)),
+        Takes::Number(..) | Takes::NumberOrLength(..) => {
+            text.parse::<f64>().map_or_else(|_| json!(text), |number| json!(number))
+        }
         Takes::Lengths(..) => text.split(", ").collect(),
         _ => json!(text),
     }

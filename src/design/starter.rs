@@ -5,11 +5,16 @@ use std::fmt::Write;
 use super::keys::{Otherwise, TABLES, Table, Times};
 use super::model::Kind;
 
+/// Name of the file beside a starter in which editors look for the schema.
+pub const SCHEMA_FILE: &str = "plankform-schema.json";
+
 /// A commented design of that kind: it is valid as it stands, and holds every default that may be
-/// changed, commented out.
+/// changed, commented out. Its first line names [`SCHEMA_FILE`], for editors that complete and check
+/// by it.
 #[must_use]
 pub fn starter(kind: Kind) -> String {
-    let mut text = String::from(match kind {
+    let mut text = format!("#:schema ./{SCHEMA_FILE}\n");
+    text.push_str(match kind {
         Kind::MainFoil => MAIN_FOIL,
         Kind::Elevator => ELEVATOR,
         Kind::Strut => STRUT,

@@ -63,7 +63,12 @@ fn single(key: &Key, raw: &DeValue<'_>) -> Result<Value, Wrong> {
             Err(Wrong::new(format!("{} is a number without a unit, and stands without quotes", key.name))
                 .help(format!("write {}", key.line())))
         }
+        (Takes::NumberOrLength(..), DeValue::String(text), _) if text.trim().parse::<f64>().is_ok() => {
+            Err(Wrong::new(format!("{}: a number without a unit stands without quotes", key.name))
+                .help(format!("write {} = {}, or a length with its unit", key.name, clipped(text.trim()))))
+        }
         (_, DeValue::String(text), _) => from_text(key, text),
+        (Takes::NumberOrLength([least, most], _), _, Some(digits)) => number(key, digits, [*least, *most]),
         (Takes::Number(..), _, Some(digits)) => from_text(key, digits),
         (Takes::Length(..) | Takes::Lengths(..) | Takes::WordOrLength(..), _, Some(digits)) => {
             Err(bare(key, &LENGTH, digits))
@@ -124,7 +129,11 @@ pub(super) fn from_text(key: &Key, text: &str) -> Result<Value, Wrong> {
                 })
             }
         },
-        Takes::Length(least, most) | Takes::Lengths(_, least, most) | Takes::WordOrLength(_, least, most) => {
+        // Text is the length; the number stands without quotes.
+        Takes::NumberOrLength(_, [least, most])
+        | Takes::Length(least, most)
+        | Takes::Lengths(_, least, most)
+        | Takes::WordOrLength(_, least, most) => {
             let length = quantity(key, &LENGTH, text)?;
             within(length, least, most)
                 .map(|mm| Value::Length(Length::from_mm(mm)))
@@ -142,15 +151,18 @@ pub(super) fn from_text(key: &Key, text: &str) -> Result<Value, Wrong> {
                 .map(Value::Number)
                 .ok_or_else(|| beyond(key, &format!("{} {}", plain(amount), kind.base())))
         }
-        Takes::Number(least, most) => {
-            let number = text.parse().unwrap_or(f64::NAN);
-            if !f64::is_finite(number) {
-                return Err(Wrong::new(format!("{} is {}, not a finite number", key.name, clipped(text)))
-                    .help(format!("it takes {}", key.takes.describe())));
-            }
-            within(number, least, most).map(Value::Number).ok_or_else(|| beyond(key, &plain(number)))
-        }
+        Takes::Number(least, most) => number(key, text, [least, most]),
     }
+}
+
+/// Reads a number without a unit.
+fn number(key: &Key, text: &str, [least, most]: [f64; 2]) -> Result<Value, Wrong> {
+    let number = text.parse().unwrap_or(f64::NAN);
+    if !f64::is_finite(number) {
+        return Err(Wrong::new(format!("{} is {}, not a finite number", key.name, clipped(text)))
+            .help(format!("it takes {}", key.takes.describe())));
+    }
+    within(number, least, most).map(Value::Number).ok_or_else(|| beyond(key, &plain(number)))
 }
 
 fn quantity(key: &Key, quantity: &'static Quantity, text: &str) -> Result<f64, Wrong> {

@@ -1,7 +1,7 @@
 //! From the design to the foil it describes.
 
-use super::Design;
-use crate::wing::{Station, Wing, WingError, along};
+use super::{Design, Tip};
+use crate::wing::{self, Station, Wing, WingError, along};
 
 impl Design {
     /// The foil that the design describes.
@@ -19,6 +19,12 @@ impl Design {
             rise: station.rise.mm(),
             twist_about: self.twist_about,
         });
-        Wing::new(along(self.law, stations.collect())?, self.kind.mirrored())
+        let wing = Wing::new(along(self.law, stations.collect())?, self.in_halves())?;
+        match self.tip {
+            Some(Tip { form, length, chord, about }) => {
+                wing.with_tip(wing::Tip { form, length: length.mm(), chord: chord.mm(), about })
+            }
+            None => Ok(wing),
+        }
     }
 }

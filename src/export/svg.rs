@@ -1,11 +1,11 @@
 //! Drawings for paper and screen: SVG in millimetres.
 
 use svg::Document;
-use svg::node::element::{ClipPath, Definitions, Group, Path, Rectangle, Text};
+use svg::node::element::{ClipPath, Definitions, Group, Path, Rectangle, SVG, Text};
 
 use crate::geometry::{ArcPath, Point, Segment};
 use crate::units::number;
-use crate::workshop::{Drawing, Label, Page};
+use crate::workshop::{Drawing, Label, Page, Role};
 
 /// Decimals of a coordinate, in mm.
 const PLACES: usize = 4;
@@ -45,7 +45,82 @@ pub fn picture(drawing: &Drawing, margin: f64) -> String {
     }
     let bounds = grown.bounds().inflate(margin * growth, margin * growth);
     let moved = grown.moved(kurbo::Affine::translate((-bounds.x0, -bounds.y0)));
-    document(bounds.width(), bounds.height()).add(group(&moved, bounds.height(), growth)).to_string()
+    // Read out by what reads pages to people.
+    let named =
+        document(bounds.width(), bounds.height()).set("role", "img").set("aria-label", &*drawing.title);
+    named.add(group(&moved, bounds.height(), growth)).to_string()
+}
+
+/// Width of a small picture of a sheet or a page, mm.
+const SHEET_WIDTH: f64 = 170.0;
+const PAGE_WIDTH: f64 = 48.0;
+
+/// The lines of a drawing, small, with a number at each of some places.
+#[must_use]
+pub fn numbered_picture(drawing: &Drawing, places: &[Point]) -> String {
+    let bounds = drawing.bounds();
+    let growth = (bounds.width() / SHEET_WIDTH).max(1.0);
+    let mut lines = drawing.without_words();
+    lines.lines.retain(|line| line.role != Role::Engrave);
+    let lines = lines.moved(kurbo::Affine::translate(-bounds.origin().to_vec2()));
+    let mut document =
+        sized(bounds.width(), bounds.height(), growth).add(group(&lines, bounds.height(), growth));
+    for (i, place) in places.iter().enumerate() {
+        let at = *place - bounds.origin().to_vec2();
+        let text = Text::new((i + 1).to_string())
+            .set("x", number(at.x, 1))
+            .set("y", number(bounds.height() - at.y, 1))
+            .set("font-family", "DejaVu Sans, Verdana, sans-serif")
+            .set("font-size", number(3.2 * growth, 2))
+            .set("text-anchor", "middle")
+            .set("dominant-baseline", "central")
+            .set("stroke", "white")
+            .set("stroke-width", number(growth, 2))
+            .set("paint-order", "stroke");
+        document = document.add(text);
+    }
+    document.to_string()
+}
+
+/// A page, small: its edge, what shows of the drawing, and what belongs to the page.
+#[must_use]
+pub fn page_picture(page: &Page) -> String {
+    let growth = page.width.max(page.height) / (2.0 * PAGE_WIDTH);
+    let window = page.window;
+    // A picture within a picture shows no more than its own size.
+    let inside = SVG::new()
+        .set("x", number(window.x0, 2))
+        .set("y", number(page.height - window.y1, 2))
+        .set("width", number(window.width(), 2))
+        .set("height", number(window.height(), 2))
+        .set(
+            "viewBox",
+            format!(
+                "{} {} {} {}",
+                number(window.x0, 2),
+                number(page.height - window.y1, 2),
+                number(window.width(), 2),
+                number(window.height(), 2)
+            ),
+        )
+        .add(group(&page.drawing, page.height, growth));
+    let edge = Rectangle::new()
+        .set("width", number(page.width, 2))
+        .set("height", number(page.height, 2))
+        .set("fill", "none")
+        .set("stroke", "black")
+        .set("stroke-width", number(0.3 * growth, 2));
+    sized(page.width, page.height, growth)
+        .add(edge)
+        .add(inside)
+        .add(group(&page.furniture, page.height, growth))
+        .to_string()
+}
+
+/// A document that shows so many millimetres in that many times less.
+fn sized(width: f64, height: f64, growth: f64) -> Document {
+    let shown = |v: f64| format!("{}mm", number(v / growth, 2));
+    document(width, height).set("width", shown(width)).set("height", shown(height))
 }
 
 fn document(width: f64, height: f64) -> Document {
@@ -61,7 +136,7 @@ fn group(drawing: &Drawing, height: f64, growth: f64) -> Group {
     for line in &drawing.lines {
         let (width, dashes) = line.role.stroke();
         let mut path = Path::new()
-            .set("class", line.role.layer())
+            .set("class", line.role.layer().into_owned())
             .set("stroke-width", number(width * growth, 3))
             .set("d", outline(&line.path, height));
         if !dashes.is_empty() {
@@ -104,7 +179,7 @@ fn piece(segment: &Segment, place: &impl Fn(Point) -> String) -> String {
 fn text(label: &Label, height: f64) -> Text {
     let (x, y) = (number(label.at.x, PLACES), number(height - label.at.y, PLACES));
     let mut text = Text::new(label.text.clone())
-        .set("class", label.role.layer())
+        .set("class", label.role.layer().into_owned())
         .set("x", x.clone())
         .set("y", y.clone())
         .set("fill", "black")

@@ -14,8 +14,11 @@ pub const LEAST_PANELS: usize = 10;
 /// Most panels that are accepted: the time grows with the cube of the number.
 pub const MOST_PANELS: usize = 2000;
 
-/// A trailing edge open by less than this, in chords, counts as sharp.
-const SHARP: f64 = 1e-9;
+/// Points nearer to each other than this, in chords, are one.
+const COINCIDENT: f64 = 1e-9;
+/// A trailing edge open by less than this, in chords, counts as sharp: far below the shortest panel,
+/// and what a fit through printed coordinates leaves open.
+const SHARP: f64 = 1e-6;
 
 /// Share of the nodes that goes where the outline turns, against those spread over its length.
 ///
@@ -104,7 +107,7 @@ impl Panelling {
         if let Some((index, point)) = nodes.iter().enumerate().find(|(_, point)| !point.is_finite()) {
             return Err(FlowError::NotFinite { index, x: point.x, y: point.y });
         }
-        if let Some(index) = nodes.windows(2).position(|pair| pair[0].distance(pair[1]) < SHARP) {
+        if let Some(index) = nodes.windows(2).position(|pair| pair[0].distance(pair[1]) < COINCIDENT) {
             return Err(FlowError::Coincident { index, x: nodes[index].x, y: nodes[index].y });
         }
         let origin = nodes[0];

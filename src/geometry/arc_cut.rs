@@ -51,6 +51,27 @@ impl ArcPath {
         }
     }
 
+    /// The stretch of a closed path between two lengths from its start, mm, as an open path; lengths
+    /// beyond the end go on from the start.
+    #[must_use]
+    pub fn part(&self, from: f64, to: f64) -> Self {
+        let whole: f64 = self.segments().map(|s| s.length()).sum();
+        let (from, length_of) = (from.rem_euclid(whole), (to - from).max(0.0));
+        let to = from + length_of.min(whole);
+        let mut at = 0.0;
+        let mut pieces = Vec::new();
+        for segment in self.segments().chain(self.segments()) {
+            let length = segment.length();
+            let share = |place: f64| ((place - at) / length).clamp(0.0, 1.0);
+            let (start, end) = (share(from), share(to));
+            if end - start > 1e-9 {
+                pieces.push(segment.piece(start, end));
+            }
+            at += length;
+        }
+        open(&pieces)
+    }
+
     /// An open path closed by an arc about `centre` from its end to its start, anticlockwise or
     /// clockwise. Both ends have to lie on one circle about it.
     #[must_use]

@@ -92,6 +92,20 @@ impl ArcPath {
         Self { vertices, closed: self.closed }
     }
 
+    /// The path walked anticlockwise, if it is closed.
+    #[must_use]
+    pub fn anticlockwise(self) -> Self {
+        if !self.closed || self.area() >= 0.0 {
+            return self;
+        }
+        // A segment's bulge goes with the vertex that it now leaves.
+        let backwards = self.vertices.iter().rev();
+        let leaving = backwards.clone().skip(1).chain(backwards.clone().take(1));
+        let vertices =
+            backwards.zip(leaving).map(|(v, next)| ArcVertex { point: v.point, bulge: -next.bulge });
+        Self { vertices: vertices.collect(), closed: true }
+    }
+
     /// Signed area of a closed path in mm², positive when it runs anticlockwise.
     #[must_use]
     pub fn area(&self) -> f64 {
@@ -269,12 +283,22 @@ impl Segment {
         self.arc().map_or_else(|| self.from.distance(self.to), |arc| arc.radius * arc.sweep.abs())
     }
 
-    pub(super) fn at(&self, fraction: f64) -> Point {
+    /// The place at a fraction of its length.
+    #[must_use]
+    pub fn at(&self, fraction: f64) -> Point {
         match self.arc() {
             Some(_) if fraction <= 0.0 => self.from,
             Some(arc) => arc.centre + arc.radius * Vec2::from_angle(arc.start_angle + fraction * arc.sweep),
             None => self.from.lerp(self.to, fraction),
         }
+    }
+
+    /// Unit direction at a fraction of its length.
+    #[must_use]
+    pub fn direction(&self, fraction: f64) -> Vec2 {
+        let chord = (self.to - self.from).angle();
+        // It turns by four times the arc tangent of the bulge, evenly about the chord.
+        Vec2::from_angle(chord + (4.0 * fraction - 2.0) * self.bulge.atan())
     }
 
     fn steps(&self, tolerance: f64) -> usize {
@@ -297,8 +321,6 @@ impl Segment {
             }
             return point.distance(self.from).min(point.distance(self.to));
         }
-        let chord = self.to - self.from;
-        let along = ((point - self.from).dot(chord) / chord.hypot2()).clamp(0.0, 1.0);
-        point.distance(self.from + along * chord)
+        point.distance(super::polygon::nearest_between(self.from, self.to, point))
     }
 }

@@ -71,6 +71,13 @@ impl Solid {
         Ok(solid)
     }
 
+    /// A solid of its parts, refused when it is not closed.
+    pub(super) fn checked(vertices: Vec<[f32; 3]>, facets: Vec<[usize; 3]>) -> Result<Self, GeometryError> {
+        let solid = Self { vertices, facets };
+        solid.refuse_leaks()?;
+        Ok(solid)
+    }
+
     /// Adds the corners of a polygon at a height; the index of the first.
     fn ring(&mut self, points: &[Point], z: f64) -> usize {
         let first = self.vertices.len();
@@ -91,6 +98,16 @@ impl Solid {
     /// The corners of each facet, anticlockwise seen from outside.
     pub fn triangles(&self) -> impl ExactSizeIterator<Item = [[f32; 3]; 3]> + '_ {
         self.facets.iter().map(|facet| facet.map(|i| self.vertices[i]))
+    }
+
+    /// The facets, each by the indices of its corners.
+    pub(super) fn facets(&self) -> &[[usize; 3]] {
+        &self.facets
+    }
+
+    /// A corner by its index.
+    pub(super) fn corner(&self, index: usize) -> [f64; 3] {
+        self.vertices[index].map(f64::from)
     }
 
     /// Volume in mm³, by the divergence theorem.

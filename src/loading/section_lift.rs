@@ -198,7 +198,8 @@ pub(super) fn mix(a: SectionPoint, b: SectionPoint, share: f64) -> SectionPoint 
         cl: between(a.cl, b.cl),
         cd: between(a.cd, b.cd),
         cm: between(a.cm, b.cm),
-        beyond: a.beyond || b.beyond,
+        // What has no share in it cannot be asked too much.
+        beyond: (a.beyond && share < 1.0) || (b.beyond && share > 0.0),
     }
 }
 

@@ -128,11 +128,11 @@ impl Strips {
                 }
             }
             let overlap = flap.1.min(outer[1]) - flap.0.max(inner[1]);
-            let (chord, twist) = line.chord_and_twist(at);
             strips.push(Strip {
                 middle,
-                chord,
-                twist,
+                // A shaped tip carries less, on the quarter chord of its stations.
+                chord: wing.chord_at(at),
+                twist: line.read(at, |s| s.twist),
                 width,
                 length,
                 along: [width / length, (outer[2] - inner[2]) / length],
@@ -177,9 +177,5 @@ impl Line<'_> {
     fn quarter(&self, at: f64) -> Place {
         let first = &self.stations[0];
         [self.read(at, |s| s.sweep - first.sweep), at, self.read(at, |s| s.rise - first.rise)]
-    }
-
-    fn chord_and_twist(&self, at: f64) -> (f64, f64) {
-        (self.read(at, |s| s.chord), self.read(at, |s| s.twist))
     }
 }

@@ -1,70 +1,119 @@
 //! Everything that a design's pack and its checks are made from, worked out once.
 
 use super::PackError;
-use super::duty::FoilDuty;
+use super::cut_pieces::{self, CutPiece};
+use super::duty::{FoilDuty, strut_case};
 use super::friction::{StationCurves, water};
+use super::printed::{self, Bench, StationMask};
+use super::strength::{self, PartStrength};
+use super::surface::Surface;
+use super::wood::{self, WoodFigures};
 use crate::design::{Cut, Design};
 use crate::flow::{DEFAULT_PANELS, Panelling, PotentialFlow, Solution, Water};
 use crate::geometry::{ArcPath, follow_with_arcs};
-use crate::parts::{Core, CutShape, Laminate, Split, WoodPiece, split};
+use crate::parts::{Core, CutShape, Split, WoodPiece, split};
 use crate::section::Section;
-use crate::wing::{Law, Planform, StationShape, Wing};
+use crate::wing::{Planform, StationShape, Wing};
 use crate::workshop::{
-    Drawing, HingeLine, Mask, MaskMarks, MaskSettings, Role, Stamp, part_template, planform_pattern,
-    station_template,
+    Drawing, Layout, Page, PaperSettings, Role, Stamp, mark_on_plan, part_template, planform_pattern,
+    station_template, tiled,
 };
-
-/// Greatest distance of a printed opening from its curve, mm: below what a printer resolves.
-const PRINT_TOLERANCE: f64 = 0.02;
 
 /// All of it.
 pub(super) struct Aids<'a> {
     pub(super) planform: Planform,
     pub(super) pattern: Drawing,
+    /// What the letters on the pattern stand for.
+    pub(super) legend: Vec<String>,
     pub(super) stations: Vec<StationAids<'a>>,
+    /// What the router is handed, piece by piece, and on sheets.
+    pub(super) cut: Vec<CutPiece>,
+    pub(super) layout: Layout,
+    pub(super) prints: Prints,
+    pub(super) bench: Bench,
     pub(super) flows: Vec<SectionFlow<'a>>,
     pub(super) water: Water,
     pub(super) curves: Vec<StationCurves<'a>>,
     pub(super) duty: Option<FoilDuty>,
+    /// Whether it breaks, or why nothing is said of it.
+    pub(super) strength: Result<PartStrength<'a>, String>,
     pub(super) pieces: Vec<WoodPiece>,
-    /// From one template to the next of a curved foil, and how far a batten between them is from it.
-    pub(super) battens: Vec<(f64, f64, f64)>,
+    pub(super) wood: WoodFigures<'a>,
+    pub(super) surface: Surface,
 }
 
 impl<'a> Aids<'a> {
-    /// Works out a design, whose own foil `wing` is.
-    pub(super) fn of(design: &'a Design, wing: &'a Wing) -> Result<Self, PackError> {
+    /// Works out a design, whose own foil `wing` is, telling how many of how many lift curves are done.
+    pub(super) fn of(
+        design: &'a Design,
+        wing: &'a Wing,
+        told: &(dyn Fn(usize, usize) + Sync),
+    ) -> Result<Self, PackError> {
         let planform = wing.planform();
         let water = water(design)?;
-        let curves = StationCurves::of(design, &water)?;
+        let curves = StationCurves::of(design, &water, told)?;
+        let wood = WoodFigures::of(design, wing)?;
+        let mut stations = station_aids(design, wing)?;
+        if let Some(hinge) = &wood.hinge {
+            wood::turn_about_the_line(design, &hinge.axis, &mut stations);
+        }
+        let (pattern, legend) = pattern(design, wing, &planform);
+        let duty = FoilDuty::of(design, wing, &water)?;
+        let flight = duty.as_ref().map_or(Vec::new(), FoilDuty::flight);
+        let cut = cut_pieces::cut_pieces(design, &stations, &pattern)?;
         Ok(Self {
-            duty: FoilDuty::of(design, wing, &water, &curves)?,
-            pattern: pattern(design, &planform),
+            strength: strength::of(design, wing, &flight, strut_case(design))?,
+            duty,
+            layout: cut_pieces::layout(design, &cut),
+            bench: printed::bench(design, wing, &stamp(design))?,
+            prints: Prints::of(design, &stations, &pattern),
+            cut,
+            pattern,
+            legend,
             planform,
-            stations: station_aids(design, wing)?,
+            stations,
+            wood,
             flows: section_flows(design)?,
             water,
             curves,
             pieces: design.pieces(wing)?,
-            battens: battens(design, wing)?,
+            surface: Surface::of(design, wing)?,
         })
     }
 }
 
-fn battens(design: &Design, wing: &Wing) -> Result<Vec<(f64, f64, f64)>, PackError> {
-    if design.law == Law::Straight {
-        return Ok(Vec::new());
+/// The pages of the paper templates.
+pub(super) struct Prints {
+    /// Planform and finished surface.
+    pub(super) finished: Vec<Page>,
+    /// The wood.
+    pub(super) wood: Vec<Page>,
+}
+
+impl Prints {
+    fn of(design: &Design, stations: &[StationAids<'_>], pattern: &Drawing) -> Self {
+        let [width, height] = design.paper.dimensions();
+        let paper = PaperSettings {
+            width,
+            height,
+            margin: design.paper.margin.mm(),
+            overlap: design.paper.overlap.mm(),
+        };
+        let finished = std::iter::once(pattern).chain(stations.iter().map(|station| &station.template));
+        let wood =
+            stations.iter().flat_map(|station| station.wood.templates.iter().map(|(_, _, drawing)| drawing));
+        Self {
+            finished: finished.flat_map(|drawing| tiled(drawing, paper)).collect(),
+            wood: wood.flat_map(|drawing| tiled(drawing, paper)).collect(),
+        }
     }
-    let places: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
-    let gap = |pair: &[f64]| Ok((pair[0], pair[1], wing.batten_gap(pair[0], pair[1])?));
-    places.windows(2).map(gap).collect()
 }
 
 /// The aids of one template station.
 pub(super) struct StationAids<'a> {
     pub(super) shape: StationShape<'a>,
     pub(super) template: Drawing,
-    pub(super) mask: Mask,
+    pub(super) masks: Vec<StationMask>,
     pub(super) wood: Wood<'a>,
 }
 
@@ -80,6 +129,13 @@ pub(super) struct Wood<'a> {
     pub(super) split: Option<Split>,
     /// Slots and bores: what the design says of each, and its shape.
     pub(super) cuts: Vec<(&'a Cut, CutShape)>,
+}
+
+impl Wood<'_> {
+    /// Where the finished surface itself is cut.
+    fn none() -> Self {
+        Self { templates: Vec::new(), ends_at: None, thin_behind: None, split: None, cuts: Vec::new() }
+    }
 }
 
 /// The flow about one of the design's sections, and the stations that use it.
@@ -106,63 +162,53 @@ pub(super) fn stamp(design: &Design) -> Stamp {
     Stamp { design: design.name.clone(), fingerprint: design.fingerprint() }
 }
 
-fn hinge(design: &Design) -> Option<HingeLine> {
-    let flap = design.flap?;
-    let chord_fractions = [flap.hinge, flap.hinge_end];
-    Some(HingeLine { chord_fractions, from: flap.from.mm(), to: flap.to.mm() })
-}
-
 /// Shapes, templates and masks of every template station.
 fn station_aids<'a>(design: &'a Design, wing: &'a Wing) -> Result<Vec<StationAids<'a>>, PackError> {
-    let (stamp, hinge) = (stamp(design), hinge(design));
-    let settings = MaskSettings {
-        clearance: design.masks.clearance.mm(),
-        wall: design.masks.wall.mm(),
-        thickness: design.masks.thickness.mm(),
-        tolerance: PRINT_TOLERANCE,
-    };
+    let (stamp, hinge) = (stamp(design), design.hinge_line());
     let skin = design.skin();
     let at_station = |at: f64| {
         let failed = |source| PackError::Shape { at, source };
         let shape = wing.shape_at(at)?;
         let tolerance = design.router.tolerance.mm();
-        let template = station_template(&stamp, &shape, hinge.as_ref(), wing.is_mirrored(), tolerance)
-            .map_err(failed)?;
-        let label = format!("{} {}", crate::units::number(at, 1), stamp.fingerprint);
-        let mut sights = vec![0.0, shape.chord];
-        sights.extend(design.hinge_at(at, shape.chord).map(|hinge| hinge.at));
-        let marks = MaskMarks { label: &label, sights: &sights };
-        let mask = Mask::of(&shape, settings, marks).map_err(failed)?;
-        let wood = wood(design, &skin, &stamp, &shape)?;
-        Ok(StationAids { shape, template, mask, wood })
+        let finished = follow_with_arcs(&shape, tolerance).map_err(failed)?;
+        finished.refuse_crossings(tolerance).map_err(failed)?;
+        let template = station_template(&stamp, &shape, &finished, hinge.as_ref(), design.kind.mirrored());
+        let is_cut_in_wood = design.has_skin()
+            || design.cuts_at(at).next().is_some()
+            || design.hinge_at(at, shape.chord).is_some();
+        let core = if is_cut_in_wood { Some(Core::of(&shape, &skin)?) } else { None };
+        let wood = core.as_ref().map_or(Ok(Wood::none()), |core| wood(design, core, &stamp, &finished))?;
+        let masks =
+            printed::station_masks(design, &stamp, &shape, &finished, core.as_ref()).map_err(failed)?;
+        Ok(StationAids { template, masks, wood, shape })
     };
     design.templates.iter().map(|at| at_station(at.mm())).collect()
 }
 
-/// The wood at a station and its templates; none where the finished surface itself is cut.
+/// The wood at a station and its templates.
 fn wood<'a>(
     design: &'a Design,
-    skin: &Laminate,
+    core: &Core<'_>,
     stamp: &Stamp,
-    shape: &StationShape<'_>,
+    finished: &ArcPath,
 ) -> Result<Wood<'a>, PackError> {
-    let mut wood =
-        Wood { templates: Vec::new(), ends_at: None, thin_behind: None, split: None, cuts: Vec::new() };
+    let shape = core.shape();
+    let mut wood = Wood::none();
     let hinge = design.hinge_at(shape.at, shape.chord);
-    if hinge.is_none() && !design.has_skin() && design.cuts_at(shape.at).next().is_none() {
-        return Ok(wood);
-    }
     let tolerance = design.router.tolerance.mm();
     let failed = |source| PackError::Shape { at: shape.at, source };
-    let finished = follow_with_arcs(shape, tolerance).map_err(failed)?;
-    let core = Core::of(shape, skin)?;
     wood.ends_at = core.ends_in_laminate().then(|| core.tail().x);
     wood.thin_behind = core.thin_behind(design.laminate.least_wood.mm());
-    wood.cuts = design.cuts_at(shape.at).map(|(cut, shape)| (cut, shape.of(&core))).collect();
+    wood.cuts = design.cuts_at(shape.at).map(|(cut, shape)| (cut, shape.of(core))).collect();
+    let ends: Vec<String> = wood
+        .ends_at
+        .iter()
+        .map(|x| format!("behind {x:.1} mm from the nose there is laminate alone"))
+        .collect();
     let cuts = &wood.cuts;
     let templates = &mut wood.templates;
     let mut add = |role, ending, name, path: &ArcPath, words: &[String]| {
-        let mut drawing = part_template(stamp, shape, &finished, name, path, words);
+        let mut drawing = part_template(stamp, shape, finished, design.kind.mirrored(), (name, path), words);
         // Each cut is drawn where its middle lies in this piece.
         let within = |cut: &CutShape| {
             let (middle, bounds) = (cut.outline.bounds().center(), path.bounds());
@@ -175,14 +221,14 @@ fn wood<'a>(
     };
     match hinge {
         None => {
-            let path = follow_with_arcs(&core, tolerance).map_err(failed)?;
-            add("core template", "core", "core", &path, &[]);
+            let path = follow_with_arcs(core, tolerance).map_err(failed)?;
+            add("core template", "core", "core", &path, &ends);
         }
         Some(hinge) => {
-            let split = split(&core, &hinge, tolerance)?;
+            let split = split(core, &hinge, tolerance)?;
             let Split { axis, .. } = split;
-            let words =
-                [format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y)];
+            let axis = format!("hinge axis {:.2} mm from the nose, {:.2} mm above the chord", axis.x, axis.y);
+            let words: Vec<String> = std::iter::once(axis).chain(ends).collect();
             add("main body template", "main", "main body", &split.main.core, &words);
             add("flap template", "flap", "flap", &split.flap.core, &words);
             wood.split = Some(split);
@@ -191,10 +237,12 @@ fn wood<'a>(
     Ok(wood)
 }
 
-/// The pattern of the planform.
-fn pattern(design: &Design, planform: &Planform) -> Drawing {
+/// The pattern of the planform, and what the letters on it stand for.
+fn pattern(design: &Design, wing: &Wing, planform: &Planform) -> (Drawing, Vec<String>) {
     let stations: Vec<f64> = design.templates.iter().map(|at| at.mm()).collect();
-    planform_pattern(&stamp(design), planform, &stations, hinge(design).as_ref())
+    let mut drawing = planform_pattern(&stamp(design), planform, &stations, design.hinge_line().as_ref());
+    let legend = mark_on_plan(&mut drawing, planform, &wood::plan_marks(design, wing, planform));
+    (drawing, legend)
 }
 
 /// The flow about each section that the design names, each once.

@@ -4,12 +4,13 @@ use serde::Serialize;
 
 use super::PackError;
 use super::aids::{Aids, SectionFlow, StationAids};
-use super::duty::FoilDuty;
-use super::friction::StationCurves;
+use super::checks_wood;
+use super::friction::{Inception, StationCurves};
+use super::surface::FAIRING;
 use crate::design::Design;
 use crate::flow::{LiftCurve, Water};
-use crate::geometry::{Rect, Solid};
-use crate::workshop::{Drawing, Half, Role};
+use crate::parts::GAP_SLACK;
+use crate::workshop::Role;
 
 /// One check: what was measured, where, and the limit it is held to.
 #[derive(Debug, Clone, PartialEq, Serialize)]
@@ -36,32 +37,38 @@ pub struct Check {
 /// # Errors
 /// When a shape cannot be made at all.
 pub fn run_checks(design: &Design) -> Result<Vec<Check>, PackError> {
-    let wing = design.wing()?;
-    Ok(all(design, &Aids::of(design, &wing)?))
+    run_checks_telling(design, &|_, _| ())
 }
 
-/// How near to a curved design a batten is to lie where the design does not say, mm: what filler
-/// makes up without being noticed. Common practice, no source.
-const FAIRING: f64 = 0.5;
+/// The same, telling how many of how many lift curves are done: they take the longest.
+///
+/// # Errors
+/// As [`run_checks`].
+pub fn run_checks_telling(
+    design: &Design,
+    told: &(dyn Fn(usize, usize) + Sync),
+) -> Result<Vec<Check>, PackError> {
+    let wing = design.wing()?;
+    Ok(all(design, &Aids::of(design, &wing, told)?))
+}
 
 pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
-    let Aids { stations, pattern, flows, water, curves, duty, .. } = aids;
+    let Aids { stations, flows, water, curves, duty, .. } = aids;
     let mut checks = Vec::new();
     checks.extend(flows.iter().flat_map(|flow| lift(design, flow)));
     checks.extend(curves.iter().flat_map(|curves| stall(design, curves)));
     checks.extend(curves.iter().flat_map(|curves| cavitation(design, water, curves)));
-    checks.extend(duty.as_ref().map(carries));
+    checks.extend(duty.iter().flat_map(|foil| super::duty::checks(design, foil)));
+    checks.extend(aids.strength.iter().flat_map(|part| super::strength::checks(design, part)));
     checks.extend(stations.iter().flat_map(|station| shape(design, station)));
-    checks.extend(aids.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
+    checks.extend(aids.surface.battens.iter().map(|&(from, to, gap)| batten(design, from, to, gap)));
     checks.extend(stations.iter().filter_map(|station| flap_gap(design, station)));
-    checks.extend(stations.iter().flat_map(cuts));
-    checks.extend(stations.iter().flat_map(|station| printer(design, station)));
-    checks.push(stock(design, "planform pattern", pattern));
-    checks.extend(stations.iter().map(|s| stock(design, &place(s.shape.at), &s.template)));
+    checks.extend(checks_wood::all(design, &aids.wood));
+    checks.extend(super::workshop_checks::all(design, aids));
     checks
 }
 
-fn place(at: f64) -> String {
+pub(super) fn place(at: f64) -> String {
     format!("station {} mm", crate::units::number(at, 3))
 }
 
@@ -161,25 +168,28 @@ fn cavitation<'a>(
     water: &Water,
     curves: &'a StationCurves<'_>,
 ) -> impl Iterator<Item = Check> + 'a {
-    let depth = design.lift.depth.mm() * 1e-3;
     let limit = design.lift.top_speed.unwrap_or(design.lift.speed);
-    let at = StationCurves::at_lift(&curves.smooth, design.lift.design);
-    let inception = at.and_then(|at| water.inception_speed(depth, at.cp_min));
     // Where the section does not reach that lift, the check of stall says so.
-    let found = at.zip(inception);
-    let why = found.map_or(String::new(), |(at, speed)| {
+    let found = curves.cavitates(design, water);
+    let why = found.map_or(String::new(), |Inception { finish, suction, speed }| {
         let depth = crate::units::number(design.lift.depth.mm(), 0);
+        let margin = design.lift.cavitation_margin;
+        let spare = if margin > 0.0 {
+            format!(", with {} % to spare", crate::units::number(100.0 * margin, 1))
+        } else {
+            String::new()
+        };
         let advice = if speed >= limit {
             ""
         } else {
             ": less lift on more area, a thinner nose or a flatter pressure raises it"
         };
         format!(
-            "speed at which the water boils at {depth} mm depth, at the design lift, where the least pressure coefficient is {:.2}{advice}",
-            at.cp_min
+            "speed at which the water boils at {depth} mm depth, at the design lift, where the greatest suction of the {} nose is {suction:.2}{spare}{advice}",
+            finish.word()
         )
     });
-    let stations = curves.stations.iter().filter_map(move |at| Some((at, found?.1)));
+    let stations = curves.stations.iter().filter_map(move |at| Some((at, found?.speed)));
     stations.map(move |(at, value)| Check {
         name: "the section does not cavitate".to_owned(),
         place: place(*at),
@@ -189,36 +199,6 @@ fn cavitation<'a>(
         passed: value >= limit,
         why: why.clone(),
     })
-}
-
-/// The foil must carry its load at the take-off speed.
-fn carries(foil: &FoilDuty) -> Check {
-    // Lift goes with the square of the speed.
-    let (value, why) = match &foil.take_off {
-        Ok(take_off) => {
-            let value = foil.load * (foil.duty.take_off / take_off.speed).powi(2);
-            let advice = if value >= foil.load { "" } else { ": take more area, more camber or less load" };
-            let why = format!(
-                "lift at take-off speed with {:.0} % of the greatest; the load is carried from {:.2} m/s on, at {:.1}° of incidence with {:.0} N of drag and {:.0} W{advice}",
-                100.0 * foil.duty.share,
-                take_off.speed,
-                take_off.loading.state.incidence.to_degrees(),
-                take_off.loading.drag(),
-                take_off.loading.power(),
-            );
-            (value, why)
-        }
-        Err(error) => (0.0, error.to_string()),
-    };
-    Check {
-        name: "the foil carries its load at take-off".to_owned(),
-        place: "the whole foil".to_owned(),
-        value,
-        limit: foil.load,
-        unit: "N".to_owned(),
-        passed: value >= foil.load,
-        why,
-    }
 }
 
 /// No crossing, and wood everywhere between the surfaces.
@@ -270,29 +250,6 @@ fn least_thickness(shape: &crate::wing::StationShape<'_>) -> f64 {
         .fold(f64::INFINITY, f64::min)
 }
 
-/// Wood must be left beside every slot and bore.
-fn cuts<'a>(station: &'a StationAids<'_>) -> impl Iterator<Item = Check> + 'a {
-    station.wood.cuts.iter().map(|(cut, shape)| {
-        let limit = cut.least_left.mm();
-        let passed = shape.wood_left >= limit;
-        Check {
-            name: "wood is left beside the cut".to_owned(),
-            place: format!("{}, {}", place(station.shape.at), cut.purpose),
-            value: shape.wood_left,
-            limit,
-            unit: "mm".to_owned(),
-            passed,
-            why: match (passed, shape.wood_left > 0.0) {
-                (true, _) => "least distance from it to another face of the wood".to_owned(),
-                (_, true) => {
-                    "make it shallower or narrower, or move it to where the section is thicker".to_owned()
-                }
-                (_, false) => "it goes through the other face: it is too deep or too wide there".to_owned(),
-            },
-        }
-    })
-}
-
 /// A batten from one template to the next must lie near a curved design.
 fn batten(design: &Design, from: f64, to: f64, gap: f64) -> Check {
     let limit = design.fairing.map_or(FAIRING, |fairing| fairing.mm());
@@ -314,9 +271,6 @@ fn batten(design: &Design, from: f64, to: f64, gap: f64) -> Check {
     }
 }
 
-/// What the outlines of flap and main body may take of the clearance, mm: each is followed with arcs.
-const GAP_SLACK: f64 = 0.03;
-
 /// The flap must keep clear of the main body throughout its travel.
 fn flap_gap(design: &Design, station: &StationAids<'_>) -> Option<Check> {
     let (split, flap) = (station.wood.split.as_ref()?, design.flap?);
@@ -334,100 +288,20 @@ fn flap_gap(design: &Design, station: &StationAids<'_>) -> Option<Check> {
             "turned from {} up to {} down, the pieces come nearest at {angle:+.1}°{}",
             flap.up,
             flap.down,
-            if passed { "" } else { ": ask for less travel, or move the axis towards the middle" }
+            if passed {
+                format!("; {:.2} mm at rest", split.gap_at_rest)
+            } else {
+                let [up, down] = split.free_travel.map(f64::to_degrees);
+                format!(
+                    ": {up:.1}° up and {down:.1}° down would keep clear, or move the axis towards the middle"
+                )
+            }
         ),
     })
-}
-
-/// Each plate of a mask must lie on the bed, turned as it may be, and not stand too high.
-fn printer(design: &Design, station: &StationAids<'_>) -> [Check; 2] {
-    let margin = 2.0 * design.printer.margin.mm();
-    let bed = [design.printer.bed_x, design.printer.bed_y].map(|side| side.mm() - margin);
-    let height = design.printer.bed_z.mm();
-    let plate = |half: Half, solid: &Solid| {
-        let [x, y, z] = solid.size();
-        let size = format!("{x:.2} by {y:.2} by {z:.2} mm");
-        let room = format!("{:.2} by {:.2} by {height:.2} mm, the bed less its margin", bed[0], bed[1]);
-        let flat = fits([x, y], bed);
-        let low = z <= height;
-        // What is told is what fails, and the length of the plate when nothing does.
-        let (value, limit) = if low { (x.max(y), bed[0].max(bed[1])) } else { (z, height) };
-        Check {
-            name: "mask fits the printer bed".to_owned(),
-            place: format!("{}, {} half", place(station.shape.at), half.word()),
-            value,
-            limit,
-            unit: "mm".to_owned(),
-            passed: flat && low,
-            why: match (low, flat) {
-                (true, true) => format!("{size} lies on {room}"),
-                (false, _) => format!("{size} is higher than {room}: make the masks thinner"),
-                (true, false) => format!(
-                    "{size} is larger than {room}, turned any way: take a larger bed, thinner walls or a shorter chord"
-                ),
-            },
-        }
-    };
-    [plate(Half::Upper, &station.mask.upper), plate(Half::Lower, &station.mask.lower)]
-}
-
-/// What is cut must lie on the stock sheet, either way round.
-fn stock(design: &Design, place: &str, drawing: &Drawing) -> Check {
-    let margin = 2.0 * design.stock.margin.mm();
-    let sheet = [design.stock.length, design.stock.width].map(|side| side.mm() - margin);
-    let cut = drawing.lines.iter().filter(|line| line.role == Role::CutOutside);
-    let size = cut.map(|line| line.path.bounds()).reduce(|a, b| a.union(b)).unwrap_or(Rect::ZERO).size();
-    let passed = fits([size.width, size.height], sheet);
-    Check {
-        name: "template fits the stock sheet".to_owned(),
-        place: place.to_owned(),
-        value: size.width.max(size.height),
-        limit: sheet[0].max(sheet[1]),
-        unit: "mm".to_owned(),
-        passed,
-        why: if passed {
-            format!("{:.1} by {:.1} mm lies within the sheet less its margin", size.width, size.height)
-        } else {
-            format!(
-                "{:.1} by {:.1} mm does not go on {:.0} by {:.0} mm: take a larger sheet or join two",
-                size.width, size.height, sheet[0], sheet[1]
-            )
-        },
-    }
-}
-
-/// Whether a rectangle lies within another, at any angle.
-///
-/// Source: W. B. Carver, solution to problem E 1225, American Mathematical Monthly 64 (1957); from
-/// memory.
-fn fits(piece: [f64; 2], room: [f64; 2]) -> bool {
-    let ([p, q], [a, b]) = (longer_first(piece), longer_first(room));
-    let diagonal = p * p + q * q;
-    (p <= a && q <= b)
-        || (p > a && b * diagonal >= 2.0 * p * q * a + (p * p - q * q) * (diagonal - a * a).sqrt())
-}
-
-fn longer_first([a, b]: [f64; 2]) -> [f64; 2] {
-    if a >= b { [a, b] } else { [b, a] }
 }
 
 /// The checks with those outside their limit first.
 pub(super) fn worst_first(checks: &[Check]) -> impl Iterator<Item = &Check> {
     let outside = checks.iter().filter(|check| !check.passed);
     outside.chain(checks.iter().filter(|check| check.passed))
-}
-
-#[cfg(test)]
-mod tests {
-    use super::fits;
-
-    #[test]
-    fn a_long_piece_may_lie_across_the_corners() {
-        // A thin rod goes as far as the diagonal, 311.1 for 220 square.
-        assert!(fits([311.0, 0.01], [220.0, 220.0]) && !fits([311.2, 0.01], [220.0, 220.0]));
-        // At 45 degrees a square of side s holds a piece whose sides add up to s times root two.
-        assert!(fits([250.0, 61.0], [220.0, 220.0]) && !fits([250.0, 62.0], [220.0, 220.0]));
-        assert!(fits([100.0, 220.0], [220.0, 100.0]) && !fits([100.0, 221.0], [220.0, 100.0]));
-        assert!(!fits([150.0, 150.0], [1000.0, 149.0]));
-    }
 }

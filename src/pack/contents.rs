@@ -1,11 +1,13 @@
 //! From a design to the files of its pack, in memory.
 
 use super::aids::{self, Aids, StationAids};
-use super::{Check, Entry, Manifest, Pack, PackError, PackFile, checks, sheet, tables};
-use crate::design::Design;
-use crate::export::{dxf, pdf, stl, svg_page};
+use super::cut_pieces::CutPiece;
+use super::printed::{Bench, Masked, StationMask};
+use super::{Check, Entry, Manifest, Pack, PackError, PackFile, bucket, checks, sheet, tables};
+use crate::design::{Design, DxfRelease};
+use crate::export::{Curves, Flavour, dxf, pdf, stl, svg_page};
 use crate::units::number;
-use crate::workshop::{Drawing, Half, Page, PaperSettings, single_page, tiled};
+use crate::workshop::{Drawing, Layout, single_page};
 
 /// Which kinds of files to make.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -33,19 +35,31 @@ impl Kinds {
 /// When a shape cannot be made or a format refuses it. A check outside its limit is no error: the
 /// pack says so.
 pub fn build(design: &Design, kinds: Kinds) -> Result<Pack, PackError> {
+    build_telling(design, kinds, &|_, _| ())
+}
+
+/// The same, telling how many of how many lift curves are done: they take the longest.
+///
+/// # Errors
+/// As [`build`].
+pub fn build_telling(
+    design: &Design,
+    kinds: Kinds,
+    told: &(dyn Fn(usize, usize) + Sync),
+) -> Result<Pack, PackError> {
     let wing = design.wing()?;
-    let aids = Aids::of(design, &wing)?;
+    let aids = Aids::of(design, &wing, told)?;
     let checks = checks::all(design, &aids);
 
     let mut files = Files { slug: design.slug(), files: Vec::new() };
     if kinds.cut {
-        files.add_cut(&aids.stations, &aids.pattern);
+        files.add_cut(design, &aids.cut, &aids.layout);
     }
     if kinds.print {
-        files.add_print(design, &aids.stations, &aids.pattern)?;
+        files.add_print(design, &aids)?;
     }
     if kinds.masks {
-        files.add_masks(design, &aids.stations)?;
+        files.add_masks(design, &aids.stations, &aids.bench)?;
     }
     if kinds.tables {
         files.add_tables(design, &aids)?;
@@ -90,24 +104,34 @@ impl Files {
         format!("{}-station-{}", self.slug, number(at, 3))
     }
 
-    fn add_cut(&mut self, stations: &[StationAids<'_>], pattern: &Drawing) {
-        for station in stations {
-            let (at, path) = (station.shape.at, format!("cut/{}.dxf", self.stem(station.shape.at)));
-            self.add(path, "dxf", "station template", Some(at), dxf(&station.template).into_bytes());
-            for (role, ending, drawing) in &station.wood.templates {
-                let path = format!("cut/{}-{ending}.dxf", self.stem(at));
-                self.add(path, "dxf", role, Some(at), dxf(drawing).into_bytes());
+    fn add_cut(&mut self, design: &Design, cut: &[CutPiece], layout: &Layout) {
+        let curves = if design.router.splines { Curves::Splines } else { Curves::Arcs };
+        let flavours: &[(Flavour, &str)] = match design.router.release {
+            DxfRelease::R2000 => &[(Flavour::R2000, "")],
+            DxfRelease::R12 => &[(Flavour::R12, "")],
+            DxfRelease::Both => &[(Flavour::R2000, ""), (Flavour::R12, "-r12")],
+        };
+        for (flavour, flavour_ending) in flavours {
+            for (i, sheet) in layout.sheets.iter().enumerate() {
+                let path = format!("cut/{}-sheet-{}{flavour_ending}.dxf", self.slug, i + 1);
+                let text = dxf(&sheet.drawing, *flavour, curves);
+                self.add(path, "dxf", "sheet of stock", None, text.into_bytes());
+            }
+            for piece in cut {
+                let stem = piece.station.map_or(self.slug.clone(), |at| self.stem(at));
+                let ending =
+                    if piece.ending.is_empty() { String::new() } else { format!("-{}", piece.ending) };
+                let path = format!("cut/{stem}{ending}{flavour_ending}.dxf");
+                let text = dxf(&piece.drawing, *flavour, curves);
+                self.add(path, "dxf", piece.role, piece.station, text.into_bytes());
             }
         }
-        let path = format!("cut/{}-planform.dxf", self.slug);
-        self.add(path, "dxf", "planform pattern", None, dxf(pattern).into_bytes());
     }
 
     fn add_print(
         &mut self,
         design: &Design,
-        stations: &[StationAids<'_>],
-        pattern: &Drawing,
+        Aids { stations, pattern, prints, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let sheet = |drawing: &Drawing| svg_page(&single_page(drawing)).into_bytes();
         for station in stations {
@@ -121,39 +145,41 @@ impl Files {
         let path = format!("print/{}-planform.svg", self.slug);
         self.add(path, "svg", "planform pattern", None, sheet(pattern));
 
-        let (width, height) = design.paper.size.dimensions();
-        let (width, height) = (width.mm(), height.mm());
-        let paper = PaperSettings {
-            width,
-            height,
-            margin: design.paper.margin.mm(),
-            overlap: design.paper.overlap.mm(),
-        };
         let title = aids::stamp(design).to_string();
-        let tiles = |drawings: Vec<&Drawing>| -> Vec<Page> {
-            drawings.into_iter().flat_map(|drawing| tiled(drawing, paper)).collect()
-        };
-        let finished = std::iter::once(pattern).chain(stations.iter().map(|s| &s.template));
-        let bytes = pdf(&title, &tiles(finished.collect()))?;
+        let bytes = pdf(&title, &prints.finished)?;
         self.add(format!("print/{}.pdf", self.slug), "pdf", "all templates, tiled", None, bytes);
-        let wood = stations.iter().flat_map(|s| s.wood.templates.iter().map(|(_, _, drawing)| drawing));
-        let pages = tiles(wood.collect());
-        if !pages.is_empty() {
-            let bytes = pdf(&title, &pages)?;
+        if !prints.wood.is_empty() {
+            let bytes = pdf(&title, &prints.wood)?;
             self.add(format!("print/{}-wood.pdf", self.slug), "pdf", "wood templates, tiled", None, bytes);
         }
         Ok(())
     }
 
-    fn add_masks(&mut self, design: &Design, stations: &[StationAids<'_>]) -> Result<(), PackError> {
+    fn add_masks(
+        &mut self,
+        design: &Design,
+        stations: &[StationAids<'_>],
+        bench: &Bench,
+    ) -> Result<(), PackError> {
         let stamp = aids::stamp(design);
         for station in stations {
             let at = station.shape.at;
-            for (half, solid) in [(Half::Upper, &station.mask.upper), (Half::Lower, &station.mask.lower)] {
-                let title = format!("{stamp} station {} mm {}", number(at, 3), half.word());
-                let path = format!("masks/{}-{}.stl", self.stem(at), half.word());
-                self.add(path, "stl", "mask half", Some(at), stl(solid, &title)?);
+            for StationMask { part, mask, .. } in &station.masks {
+                let (role, ending) = match part {
+                    Masked::Core => ("core mask half", "core-"),
+                    Masked::Finished => ("mask half", ""),
+                };
+                for piece in &mask.pieces {
+                    let name = piece.name();
+                    let title = format!("{stamp} station {} mm {ending}{name}", number(at, 3));
+                    let path = format!("masks/{}-{ending}{name}.stl", self.stem(at));
+                    self.add(path, "stl", role, Some(at), stl(&piece.plate.solid, &title)?);
+                }
             }
+        }
+        for (name, role, station, words, solid) in bench.pieces() {
+            let path = format!("masks/{}-{name}.stl", self.slug);
+            self.add(path, "stl", role, station, stl(solid, &format!("{stamp} {words}"))?);
         }
         Ok(())
     }
@@ -161,13 +187,15 @@ impl Files {
     fn add_tables(
         &mut self,
         design: &Design,
-        Aids { stations, flows, curves, .. }: &Aids<'_>,
+        Aids { stations, flows, curves, pieces, water, duty, strength, .. }: &Aids<'_>,
     ) -> Result<(), PackError> {
         let fingerprint = design.fingerprint();
         let text = tables::stations(stations, &fingerprint)?;
         self.add("tables/stations.csv".to_owned(), "csv", "where each station lies", None, text);
         let text = tables::offsets(stations, &fingerprint)?;
         self.add("tables/offsets.csv".to_owned(), "csv", "table of offsets", None, text);
+        let text = tables::pieces(design, pieces, &fingerprint)?;
+        self.add("tables/pieces.csv".to_owned(), "csv", "pieces of wood", None, text);
         let text = tables::lift(design, flows, &fingerprint)?;
         self.add("tables/lift.csv".to_owned(), "csv", "lift curves without friction", None, text);
         let text = tables::friction(curves, &fingerprint)?;
@@ -178,6 +206,18 @@ impl Files {
             None,
             text,
         );
+        if let Some(foil) = duty {
+            let text = super::duty::speeds(foil, &fingerprint)?;
+            self.add("tables/flight.csv".to_owned(), "csv", "the foil at each speed", None, text);
+            let text = super::duty::span(foil, &fingerprint)?;
+            self.add("tables/span-load.csv".to_owned(), "csv", "lift along the span", None, text);
+        }
+        let text = bucket::table(design, water, curves)?;
+        self.add("tables/cavitation.csv".to_owned(), "csv", "speeds of cavitation", None, text);
+        if let Ok(part) = strength {
+            let text = super::strength::table(part, &fingerprint)?;
+            self.add("tables/strength.csv".to_owned(), "csv", "strength along the span", None, text);
+        }
         let text = tables::pressure(design, flows, &fingerprint)?;
         let role = "pressure at the design lift, without friction";
         self.add("tables/pressure.csv".to_owned(), "csv", role, None, text);

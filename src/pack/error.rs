@@ -8,6 +8,8 @@ use crate::flow::{FlowError, ViscousError};
 use crate::geometry::GeometryError;
 use crate::loading::LoadingError;
 use crate::parts::PartError;
+use crate::section::SectionError;
+use crate::strength::StrengthError;
 use crate::wing::WingError;
 
 /// Why a pack is not made or not written. Nothing is half-written: the earlier pack, if any,
@@ -37,6 +39,15 @@ pub enum PackError {
     /// The foil under its boat cannot be worked out.
     #[error("the foil under its boat: {0}")]
     Loading(#[from] LoadingError),
+    /// A section's flap cannot be turned.
+    #[error(transparent)]
+    Section(#[from] SectionError),
+    /// The strength cannot be worked out.
+    #[error("strength: {0}")]
+    Strength(#[from] StrengthError),
+    /// A ply or the wood has no values to work out strength by.
+    #[error("strength: material values are missing")]
+    NoMaterials,
     /// A temperature at which the properties of water are not tabulated.
     #[error("water of {celsius} °C is not known: 0 to 30 °C")]
     Water {

@@ -3,7 +3,10 @@
 
 use super::PackError;
 use crate::design::Design;
-use crate::flow::{Conditions, LiftCurve, Panelling, Salinity, Viscous, ViscousSolution, Water};
+use crate::flow::{
+    Bucket, Conditions, LiftCurve, NoseFinish, Panelling, Salinity, Viscous, ViscousSolution, Water,
+    side_by_side,
+};
 use crate::section::Section;
 
 /// The curves of one section at one chord.
@@ -26,39 +29,71 @@ pub(super) struct AtLift {
     pub(super) incidence: f64,
     pub(super) cd: f64,
     pub(super) cm: f64,
-    pub(super) cp_min: f64,
+}
+
+/// Where the water starts to boil.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct Inception {
+    pub(super) finish: NoseFinish,
+    /// Greatest suction −cp.
+    pub(super) suction: f64,
+    /// With the margin asked, m/s.
+    pub(super) speed: f64,
 }
 
 /// Panels: half of what a single curve takes, for less than a hundredth of its lift.
 const PANELS: usize = 120;
-/// Where a rough nose makes the layer turbulent, a fraction of the chord.
-const ROUGH_FROM: f64 = 0.02;
 /// Incidence to which every curve goes, degrees.
 const STALLED: f64 = 16.0;
 /// Least step of incidence, degrees, and the most points of a curve.
 const LEAST_STEP: f64 = 1.0;
 const MOST_POINTS: usize = 25;
 
+/// Stations of one section at one chord.
+struct Alike<'a> {
+    stations: Vec<f64>,
+    chord: f64,
+    section: &'a Section,
+}
+
 impl<'a> StationCurves<'a> {
     /// The curves of every station, those alike once.
-    pub(super) fn of(design: &'a Design, water: &Water) -> Result<Vec<Self>, PackError> {
-        let mut all: Vec<Self> = Vec::new();
+    ///
+    /// Tells how many of how many are done.
+    pub(super) fn of(
+        design: &'a Design,
+        water: &Water,
+        told: &(dyn Fn(usize, usize) + Sync),
+    ) -> Result<Vec<Self>, PackError> {
+        let mut alike: Vec<Alike<'a>> = Vec::new();
         for station in &design.stations {
             let (at, chord) = (station.at.mm(), station.chord.mm());
-            let alike = |known: &&mut Self| known.chord == chord && *known.section == station.section;
-            if let Some(known) = all.iter_mut().find(alike) {
-                known.stations.push(at);
-                continue;
+            let known = alike.iter_mut().find(|a| a.chord == chord && *a.section == station.section);
+            match known {
+                Some(known) => known.stations.push(at),
+                None => alike.push(Alike { stations: vec![at], chord, section: &station.section }),
             }
-            let viscous = Viscous::new(&Panelling::of(&station.section, PANELS)?)?;
-            let reynolds = water.reynolds(chord * 1e-3, design.lift.speed);
-            let smooth = Conditions::free(reynolds, design.lift.quietness);
-            let curves =
-                LiftCurve::sweep_all(&viscous, &[smooth, smooth.tripped(ROUGH_FROM)], &incidences(design))?;
-            let [smooth, rough] = <[LiftCurve; 2]>::try_from(curves).map_err(|_| PackError::Curves)?;
-            all.push(Self { stations: vec![at], chord, section: &station.section, smooth, rough });
         }
-        Ok(all)
+        let flow = |alike: &Alike<'_>| -> Result<Viscous, PackError> {
+            Ok(Viscous::new(&Panelling::of(alike.section, PANELS)?)?)
+        };
+        let flows: Vec<Viscous> = side_by_side(&alike, flow, |_| ()).into_iter().collect::<Result<_, _>>()?;
+        let cases: Vec<(&Viscous, Conditions)> = std::iter::zip(&flows, &alike)
+            .flat_map(|(flow, alike)| {
+                let reynolds = water.reynolds(alike.chord * 1e-3, design.lift.speed);
+                let free = Conditions::free(reynolds, design.lift.quietness);
+                NoseFinish::BOTH.map(|finish| (flow, finish.on(free)))
+            })
+            .collect();
+        let incidences = incidences(design);
+        let sweep =
+            |(flow, conditions): &(&Viscous, Conditions)| LiftCurve::sweep(flow, conditions, &incidences);
+        let mut swept = side_by_side(&cases, sweep, |done| told(done, cases.len())).into_iter();
+        let mut next = || -> Result<LiftCurve, PackError> { Ok(swept.next().ok_or(PackError::Curves)??) };
+        let curves = |Alike { stations, chord, section }| {
+            Ok(Self { stations, chord, section, smooth: next()?, rough: next()? })
+        };
+        alike.into_iter().map(curves).collect()
     }
 
     /// By chord and speed.
@@ -75,6 +110,21 @@ impl<'a> StationCurves<'a> {
         }
     }
 
+    /// Where the water boils first at the design lift, of the smooth and the rough nose; `None` where
+    /// neither reaches that lift.
+    pub(super) fn cavitates(&self, design: &Design, water: &Water) -> Option<Inception> {
+        let range = &design.lift;
+        let depth = range.depth.mm() * 1e-3;
+        let of = |finish, curve| {
+            let suction = Bucket::of(curve).suction_at(range.design)?;
+            let speed = water.inception_speed(depth, -suction * (1.0 + range.cavitation_margin))?;
+            Some(Inception { finish, suction, speed })
+        };
+        let both = [(NoseFinish::Smooth, &self.smooth), (NoseFinish::Rough, &self.rough)];
+        let found = both.into_iter().filter_map(|(finish, curve)| of(finish, curve));
+        found.min_by(|a, b| a.speed.total_cmp(&b.speed))
+    }
+
     /// What it does at a lift coefficient, on the branch below the greatest lift.
     pub(super) fn at_lift(curve: &LiftCurve, cl: f64) -> Option<AtLift> {
         let found: Vec<&ViscousSolution> = curve.solutions().collect();
@@ -83,12 +133,7 @@ impl<'a> StationCurves<'a> {
             let mix = |value: fn(&ViscousSolution) -> f64| {
                 value(pair[0]) + share * (value(pair[1]) - value(pair[0]))
             };
-            AtLift {
-                incidence: mix(|s| s.incidence),
-                cd: mix(|s| s.cd),
-                cm: mix(|s| s.cm),
-                cp_min: mix(|s| s.cp_min),
-            }
+            AtLift { incidence: mix(|s| s.incidence), cd: mix(|s| s.cd), cm: mix(|s| s.cm) }
         })
     }
 }

@@ -1,18 +1,27 @@
 //! The pack: every workshop file of a design, checked, fingerprinted and written as one.
 
 mod aids;
+mod bucket;
 mod checks;
+mod checks_wood;
 mod contents;
+mod cut_pieces;
 mod duty;
 mod error;
 mod friction;
 mod manifest;
+mod printed;
 mod sheet;
+mod strength;
+mod surface;
 mod tables;
+mod wood;
+mod workshop_checks;
 mod write;
 
-pub use checks::{Check, run_checks};
-pub use contents::{Kinds, build};
+pub use bucket::bucket_chart;
+pub use checks::{Check, run_checks, run_checks_telling};
+pub use contents::{Kinds, build, build_telling};
 pub use error::PackError;
 pub use manifest::{Entry, Manifest};
 pub use write::write;

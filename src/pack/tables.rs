@@ -8,6 +8,7 @@ use crate::export::ExportError;
 use crate::export::csv::csv;
 use crate::flow::SideFlow;
 use crate::geometry::{Curve, Point, height_at};
+use crate::parts::WoodPiece;
 use crate::section::ORDINATE_STATIONS;
 use crate::units::{fixed, number};
 use crate::wing::StationShape;
@@ -47,6 +48,34 @@ pub(super) fn stations(stations: &[StationAids<'_>], fingerprint: &str) -> Resul
 fn overhang(shape: &StationShape<'_>) -> f64 {
     let foremost = (-200..=200).map(|i| shape.jet(f64::from(i) / 400.0).point.x).fold(0.0, f64::min);
     -foremost
+}
+
+/// The pieces of wood: how many, blank with its allowance, volume and weight of one.
+pub(super) fn pieces(
+    design: &Design,
+    pieces: &[WoodPiece],
+    fingerprint: &str,
+) -> Result<Vec<u8>, ExportError> {
+    let around = 2.0 * design.wood.allowance.mm();
+    let rows = pieces.iter().map(|piece| {
+        let [length, width, height] = piece.blank.map(|side| fixed(side + around, 1));
+        let volume = fixed(piece.volume / 1000.0, 3);
+        let weight = fixed(piece.volume * design.wood.density * 1e-6, 1);
+        let (name, count) = (piece.name.to_owned(), piece.count.to_string());
+        [name, count, length, width, height, volume, weight, piece.grain.to_owned(), fingerprint.to_owned()]
+    });
+    let heading = [
+        "piece",
+        "count",
+        "blank_length_mm",
+        "blank_width_mm",
+        "blank_height_mm",
+        "volume_cm3",
+        "weight_g",
+        "grain",
+        "fingerprint",
+    ];
+    csv(heading, rows).map(String::into_bytes)
 }
 
 /// Heights of both surfaces above the chord line. The first row of a station is the nose itself.

@@ -7,6 +7,8 @@ use std::fs;
 use std::io;
 use std::path::{Component, Path, PathBuf};
 
+use tempfile::TempDir;
+
 use super::error::Doing;
 use super::manifest::{FILE_NAME, Manifest, sha256};
 use super::{Pack, PackError};
@@ -18,14 +20,22 @@ use super::{Pack, PackError};
 /// When `out` is not a place for it, or the disk refuses. The folder is then as it was.
 pub fn write(pack: &Pack, out: &Path) -> Result<Option<Manifest>, PackError> {
     let place = Place::of(out)?;
+    match write_to(pack, &place) {
+        // Another run has put a pack where there was none a moment ago.
+        Err(PackError::Disk { source, .. }) if source.kind() == io::ErrorKind::DirectoryNotEmpty => {
+            write_to(pack, &place)
+        }
+        other => other,
+    }
+}
+
+fn write_to(pack: &Pack, place: &Place) -> Result<Option<Manifest>, PackError> {
     let earlier = place.earlier_pack(pack)?;
 
-    fs::create_dir_all(&place.parent).map_err(|e| disk(Doing::Writing, &place.parent, e))?;
-    // Removed again when it goes out of scope, whatever happens before.
-    let staging = tempfile::Builder::new()
-        .prefix(".plankform-")
-        .tempdir_in(&place.parent)
-        .map_err(|e| disk(Doing::Writing, &place.parent, e))?;
+    let in_parent = |e| disk(Doing::Writing, &place.parent, e);
+    fs::create_dir_all(&place.parent).map_err(in_parent)?;
+    remove_abandoned(&place.parent);
+    let (staging, _in_use) = staging(&place.parent).map_err(in_parent)?;
     let fresh = staging.path().join("pack");
     write_files(pack, &fresh)?;
     if let Some(earlier) = &earlier {
@@ -33,6 +43,42 @@ pub fn write(pack: &Pack, out: &Path) -> Result<Option<Manifest>, PackError> {
     }
     exchange(&fresh, &place.folder, staging.path()).map_err(|e| disk(Doing::Writing, &place.folder, e))?;
     Ok(earlier)
+}
+
+/// How the name of a folder begins in which a pack is made.
+const STAGING: &str = ".plankform-";
+/// Where in it the earlier pack lies while the two change places in two steps.
+const EARLIER: &str = "earlier";
+
+/// A folder to make a pack in. It is removed when it goes out of scope, whatever happens before, and
+/// locked for as long as the file beside it is open.
+fn staging(parent: &Path) -> io::Result<(TempDir, Option<fs::File>)> {
+    loop {
+        let folder = tempfile::Builder::new().prefix(STAGING).tempdir_in(parent)?;
+        // A file system without locks has no abandoned folders removed either.
+        let lock = fs::File::open(folder.path()).ok().filter(|file| file.lock().is_ok());
+        // Another run may have taken it for an abandoned one before it was locked.
+        if folder.path().exists() {
+            return Ok((folder, lock));
+        }
+    }
+}
+
+/// Removes the folders that runs have left which were killed: nobody locks them. Whatever goes wrong
+/// here concerns no pack.
+fn remove_abandoned(parent: &Path) {
+    let Ok(entries) = fs::read_dir(parent) else { return };
+    let ours = |entry: &fs::DirEntry| {
+        entry.file_name().to_string_lossy().starts_with(STAGING)
+            && entry.file_type().is_ok_and(|kind| kind.is_dir())
+    };
+    for entry in entries.flatten().filter(ours) {
+        let lock = fs::File::open(entry.path()).ok().filter(|folder| folder.try_lock().is_ok());
+        // The only copy of a pack may lie there when the two steps of `exchange` were cut short.
+        if lock.is_some() && !entry.path().join(EARLIER).exists() {
+            let _ = fs::remove_dir_all(entry.path());
+        }
+    }
 }
 
 fn disk(doing: Doing, path: &Path, source: io::Error) -> PackError {
@@ -182,7 +228,7 @@ fn exchange(fresh: &Path, folder: &Path, aside: &Path) -> io::Result<()> {
             Err(error) => return Err(error.into()),
         }
     }
-    let old = aside.join("earlier");
+    let old = aside.join(EARLIER);
     fs::rename(folder, &old)?;
     fs::rename(fresh, folder).inspect_err(|_| {
         // Best effort: without it the earlier pack would be lost with the staging folder.

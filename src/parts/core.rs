@@ -1,7 +1,7 @@
 //! The core: the finished section less its skin.
 
 use super::{Laminate, PartError};
-use crate::geometry::{Curve, Jet, Point, Vec2};
+use crate::geometry::{Curve, Jet, Point, Vec2, polygon};
 use crate::section::Side;
 use crate::wing::StationShape;
 
@@ -18,12 +18,15 @@ pub struct Core<'a> {
     laminate: &'a Laminate,
     /// Parameters of the finished outline at which the wood ends behind: upper, lower.
     tail: [f64; 2],
-    /// The same at the nose, both nought where the wood goes round it.
+    /// The same at the nose, both nought where the wood goes round it; both may lie on one side, where it
+    /// folds beside the nose.
     nose: [f64; 2],
 }
 
 /// Points along each side at which the skins are looked at.
 const LOOKS: usize = 600;
+/// Parameter from the nose up to which a fold about it is looked for: 20 % of the chord.
+const NOSE: f64 = 0.45;
 /// Share of the parameter by which derivatives of the spanwise lean are taken.
 const STEP: f64 = 1e-5;
 
@@ -34,19 +37,20 @@ impl<'a> Core<'a> {
     /// When the skins leave no wood, or the core folds.
     pub fn of(shape: &'a StationShape<'a>, laminate: &'a Laminate) -> Result<Self, PartError> {
         let mut core = Self { shape, laminate, tail: [-1.0, 1.0], nose: [0.0, 0.0] };
-        let crossings = core.crossings();
-        let none = PartError::NoCore { at: shape.at };
-        // Between the sides at a place both reach: wood where the upper one is above.
         let is_wood = |[upper, lower]: [f64; 2]| {
             let (a, b) = (core.inside(upper).point, core.inside(lower).point);
             a.y > b.y && core.stretch(upper) > 0.0 && core.stretch(lower) > 0.0
         };
-        match crossings[..] {
-            [] if is_wood([-0.5, 0.5]) => {}
-            [end] if is_wood([0.5 * end[0], 0.5 * end[1]]) => core.tail = end,
-            [front] if is_wood([0.5 * (front[0] - 1.0), 0.5 * (front[1] + 1.0)]) => core.nose = front,
-            [front, end] => (core.nose, core.tail) = (front, end),
-            _ => return Err(none),
+        // Wood lies between two crossings of the inner faces, or one and an end, where the upper one is above.
+        let ends: Vec<[f64; 2]> =
+            std::iter::once([0.0; 2]).chain(core.crossings()).chain([[-1.0, 1.0]]).collect();
+        let stretches = ends.windows(2).map(|pair| [pair[0], pair[1]]);
+        let wooden = stretches.filter(|[a, b]| is_wood([0.5 * (a[0] + b[0]), 0.5 * (a[1] + b[1])]));
+        let widest = wooden.max_by(|[a, b], [c, d]| (b[1] - a[1]).total_cmp(&(d[1] - c[1])));
+        let Some([nose, tail]) = widest else { return Err(core.none()) };
+        (core.nose, core.tail) = (nose, tail);
+        if core.nose == [0.0; 2] {
+            core.nose = core.fold_at_nose().unwrap_or_default();
         }
         core.refuse_folds()?;
         Ok(core)
@@ -102,6 +106,28 @@ impl<'a> Core<'a> {
             if thickness(middle).0 >= least { thick = middle } else { thin = middle }
         }
         Some(thickness(thin).1)
+    }
+
+    /// That there is no wood, with what the skins take up where the section is thickest.
+    fn none(&self) -> PartError {
+        let height = |share: f64| {
+            let [upper, lower] = [-share, share].map(|t| self.shape.jet(t).point);
+            upper.distance(lower)
+        };
+        let shares = (1..LOOKS).map(|i| i as f64 / LOOKS as f64);
+        let thickest = shares.max_by(|a, b| height(*a).total_cmp(&height(*b))).unwrap_or(0.5);
+        let skins = [-thickest, thickest].map(|t| self.skin(t)[0] * self.lean(t));
+        PartError::NoCore { at: self.shape.at, thickest: height(thickest), skins: skins[0] + skins[1] }
+    }
+
+    /// Greatest thickness of the wood, mm, between places of equal parameter.
+    #[must_use]
+    pub fn thickest(&self) -> f64 {
+        let thickness = |i: usize| {
+            let share = i as f64 / LOOKS as f64;
+            self.inside(self.outer(-share)).point.distance(self.inside(self.outer(share)).point)
+        };
+        (1..LOOKS).map(thickness).fold(0.0, f64::max)
     }
 
     /// Thickness of the skin in mm, square to the surface, at a parameter of the finished outline,
@@ -163,7 +189,7 @@ impl<'a> Core<'a> {
                 }
                 if let Some((u, v)) = crossing([a[0], a[1]], [b[0], b[1]]) {
                     let guess = [-(root(i) + u / LOOKS as f64), root(j) + v / LOOKS as f64];
-                    found.extend(self.met(guess));
+                    found.extend(self.met(guess, [[-1.0, 0.0], [0.0, 1.0]]));
                 }
             }
         }
@@ -172,8 +198,28 @@ impl<'a> Core<'a> {
         found
     }
 
-    /// Newton's method from near a crossing.
-    fn met(&self, guess: [f64; 2]) -> Option<[f64; 2]> {
+    /// Parameters between which the inner face runs back on itself about the nose, as where it bends there
+    /// more sharply than the skin is thick: the fold that is trimmed.
+    fn fold_at_nose(&self) -> Option<[f64; 2]> {
+        let step = NOSE / LOOKS as f64;
+        let at = |i: usize| step * (i as f64 - LOOKS as f64);
+        let folded: Vec<usize> = (0..=2 * LOOKS).filter(|&i| self.stretch(at(i)) <= 0.0).collect();
+        let (first, last) = (*folded.first()?, *folded.last()?);
+        let line: Vec<Point> = (0..=2 * LOOKS).map(|i| self.inside(at(i)).point).collect();
+        // The branch before the fold and the one after it, from the fold outwards.
+        for i in (0..first).rev() {
+            for j in last..2 * LOOKS {
+                if let Some((u, v)) = crossing([line[i], line[i + 1]], [line[j], line[j + 1]]) {
+                    let (a, b) = (at(first), at(last));
+                    return self.met([at(i) + u * step, at(j) + v * step], [[-NOSE, a], [b, NOSE]]);
+                }
+            }
+        }
+        None
+    }
+
+    /// Newton's method from near a crossing of two branches, each within its bounds.
+    fn met(&self, guess: [f64; 2], bounds: [[f64; 2]; 2]) -> Option<[f64; 2]> {
         let [mut upper, mut lower] = guess;
         for _ in 0..30 {
             let (a, b) = (self.inside(upper), self.inside(lower));
@@ -182,8 +228,8 @@ impl<'a> Core<'a> {
                 return Some([upper, lower]);
             }
             let det = a.first.cross(-b.first);
-            upper = (upper - gap.cross(-b.first) / det).clamp(-1.0, 0.0);
-            lower = (lower - a.first.cross(gap) / det).clamp(0.0, 1.0);
+            upper = (upper - gap.cross(-b.first) / det).clamp(bounds[0][0], bounds[0][1]);
+            lower = (lower - a.first.cross(gap) / det).clamp(bounds[1][0], bounds[1][1]);
             if !(upper.is_finite() && lower.is_finite()) {
                 return None;
             }
@@ -191,16 +237,27 @@ impl<'a> Core<'a> {
         None
     }
 
+    /// Refuses an inner face that runs back on itself elsewhere than at the nose. Where the skin's share
+    /// of the plane changes fast, as in a tip, it may bend in without doing so.
     fn refuse_folds(&self) -> Result<(), PartError> {
-        for [from, to] in [[self.tail[0], self.nose[0]], [self.nose[1], self.tail[1]]] {
-            for i in 1..LOOKS {
-                let t = from + (to - from) * i as f64 / LOOKS as f64;
-                if self.stretch(t) <= 0.0 {
-                    return Err(PartError::Folds { at: self.shape.at, x: self.shape.jet(t).point.x });
-                }
-            }
+        let sides = [[self.tail[0], self.nose[0]], [self.nose[1], self.tail[1]]];
+        let places =
+            |[from, to]: [f64; 2]| (0..=LOOKS).map(move |i| from + (to - from) * i as f64 / LOOKS as f64);
+        let Some(t) = sides.into_iter().flat_map(places).find(|&t| self.stretch(t) <= 0.0) else {
+            return Ok(());
+        };
+        let mut outline: Vec<Point> =
+            sides.into_iter().flat_map(places).map(|t| self.inside(t).point).collect();
+        // Ends that are one point are no crossing.
+        outline.dedup_by(|a, b| a.distance(*b) < 1e-9);
+        if outline.first().zip(outline.last()).is_some_and(|(a, b)| a.distance(*b) < 1e-9) {
+            outline.pop();
         }
-        Ok(())
+        polygon::refuse_crossings(&outline).map_err(|_| {
+            let jet = self.shape.jet(t);
+            let (skin, radius) = (self.skin(t)[0] * self.lean(t), 1.0 / jet.curvature());
+            PartError::Folds { at: self.shape.at, x: jet.point.x, skin, radius }
+        })
     }
 
     /// The parameter of the finished outline that belongs to one of the core: the nose that the wood
@@ -228,7 +285,8 @@ impl Curve for Core<'_> {
         let mut breaks: Vec<f64> = outer
             .into_iter()
             .filter_map(|t| {
-                let i = usize::from(t >= 0.0);
+                // What lies between the two ends at the nose is trimmed.
+                let i = usize::from(t > self.nose[0]);
                 let share = (t - self.nose[i]) / (self.tail[i] - self.nose[i]);
                 (share > 1e-9 && share < 1.0 - 1e-9).then(|| if i == 0 { -share } else { share })
             })

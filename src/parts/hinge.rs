@@ -1,7 +1,7 @@
 //! Parting a foil at the hinge of its flap.
 
 use super::{Core, Laminate, PartError};
-use crate::geometry::{Affine, ArcPath, ArcVertex, Curve, Point, Vec2, follow_with_arcs};
+use crate::geometry::{Affine, ArcPath, ArcVertex, Curve, Point, Vec2, follow_with_arcs, polygon};
 use crate::section::Side;
 use crate::wing::StationShape;
 
@@ -56,8 +56,15 @@ pub struct Split {
     pub flap: Piece,
     /// The axis about which the flap turns.
     pub axis: Point,
+    /// The cut faces of the wood ahead of the hinge and behind it, as lines of short chords.
+    pub faces: [Vec<Point>; 2],
     /// Least distance between the finished pieces with the flap straight, mm.
     pub gap_at_rest: f64,
+    /// The same with the flap all the way up and all the way down.
+    pub gap_at_full: [f64; 2],
+    /// How far the flap turns up and down before the gap is less than the clearance, radians; the travel
+    /// where it never is.
+    pub free_travel: [f64; 2],
     /// Least distance over the whole travel, mm.
     pub least_gap: f64,
     /// The deflection at which that is, radians, trailing edge down positive.
@@ -72,40 +79,133 @@ const STEPS: usize = 24;
 /// Distances are taken between chords that lie this near to the pieces, mm.
 const CHORDS: f64 = 0.004;
 
+/// What the outlines of flap and main body may take of the clearance, mm: each is followed with arcs.
+pub const GAP_SLACK: f64 = 0.03;
+
 /// Parts a station's wood, and the finished shape round it, at a hinge.
 ///
 /// `tolerance`: greatest distance of the outlines from the exact ones, mm.
 ///
 /// # Errors
-/// When there is no wood, or the hinge lies off it.
+/// When there is no wood, or the hinge lies off it; then with the nearest place at which it does not.
 pub fn split(core: &Core<'_>, hinge: &Hinge, tolerance: f64) -> Result<Split, PartError> {
-    let (shape, laminate) = (core.shape(), core.laminate());
     let wood = follow_with_arcs(core, tolerance)?;
-    let parting = match hinge.kind {
-        HingeKind::Laminate { side } => wedge(shape, laminate, hinge, side, &wood, tolerance)?,
-        HingeKind::Pin { height } => cove(shape, hinge, height, &wood, tolerance)?,
-    };
-    let Parting { main, flap, axis, spacer } = parting;
-    let fixed = main.finished.flattened(CHORDS);
-    let moving = flap.finished.flattened(CHORDS);
-    let gap = |angle: f64| {
-        // Trailing edge down is clockwise.
-        let turn = Affine::rotate_about(-angle, axis);
-        let turned: Vec<Point> = moving.iter().map(|p| turn * *p).collect();
-        least_distance(&fixed, &turned)
-    };
-    let gap_at_rest = gap(0.0);
-    let (mut least_gap, mut least_gap_at) = (gap_at_rest, 0.0);
-    for i in 1..=STEPS {
-        for end in [-hinge.up, hinge.down] {
-            let angle = end * i as f64 / STEPS as f64;
-            let here = gap(angle);
-            if here < least_gap {
-                (least_gap, least_gap_at) = (here, angle);
+    let Parting { main, flap, axis, spacer } =
+        part(core, &wood, hinge, tolerance).map_err(|error| match error {
+            PartError::OffTheWood { at, x, .. } => {
+                let works = nearest_that_works(core, &wood, hinge, tolerance);
+                PartError::OffTheWood { at, x, works }
             }
-        }
+            other => other,
+        })?;
+    let faces = [&main.core, &flap.core].map(|piece| cut_face(piece, &wood, tolerance));
+    let split = Split {
+        main,
+        flap,
+        axis,
+        faces,
+        gap_at_rest: 0.0,
+        gap_at_full: [0.0; 2],
+        free_travel: [0.0; 2],
+        least_gap: 0.0,
+        least_gap_at: 0.0,
+        spacer,
+    };
+    Ok(split.turned_about(axis, hinge))
+}
+
+/// The nearest place for a hinge, in steps of a hundredth of the chord, that leaves wood on both sides.
+fn nearest_that_works(core: &Core<'_>, wood: &ArcPath, hinge: &Hinge, tolerance: f64) -> Option<f64> {
+    let step = 0.01 * core.shape().chord;
+    let mut places = (1..=60).flat_map(|i| [-1.0, 1.0].map(|way| hinge.at + way * f64::from(i) * step));
+    places.find(|&at| {
+        (0.0..core.shape().chord).contains(&at)
+            && part(core, wood, &Hinge { at, ..*hinge }, tolerance).is_ok()
+    })
+}
+
+fn part(core: &Core<'_>, wood: &ArcPath, hinge: &Hinge, tolerance: f64) -> Result<Parting, PartError> {
+    let (shape, laminate) = (core.shape(), core.laminate());
+    match hinge.kind {
+        HingeKind::Laminate { side } => wedge(shape, laminate, hinge, side, wood, tolerance),
+        HingeKind::Pin { height } => cove(shape, hinge, height, wood, tolerance),
     }
-    Ok(Split { main, flap, axis, gap_at_rest, least_gap, least_gap_at, spacer })
+}
+
+/// The part of a piece's outline that does not lie on that of the whole.
+fn cut_face(piece: &ArcPath, whole: &ArcPath, tolerance: f64) -> Vec<Point> {
+    let vertices = piece.vertices();
+    let segment = |i: usize| {
+        let end = vertices[(i + 1) % vertices.len()].point;
+        ArcPath::new(vec![vertices[i], ArcVertex { point: end, bulge: 0.0 }], false).flattened(CHORDS)
+    };
+    let is_cut = |i: usize| {
+        let points = segment(i);
+        let middle = points[points.len() / 2].midpoint(points[(points.len() - 1) / 2]);
+        whole.distance(middle) > 2.0 * tolerance
+    };
+    (0..vertices.len()).filter(|&i| is_cut(i)).flat_map(segment).collect()
+}
+
+impl Split {
+    /// The same pieces, their gaps taken with the flap turning about `pivot`: where the line through the
+    /// axes at both ends of the flap passes this station.
+    #[must_use]
+    pub fn turned_about(mut self, pivot: Point, hinge: &Hinge) -> Self {
+        let fixed = self.main.finished.flattened(CHORDS);
+        let moving = self.flap.finished.flattened(CHORDS);
+        let gap = |angle: f64| {
+            // Trailing edge down is clockwise.
+            let turn = Affine::rotate_about(-angle, pivot);
+            let turned: Vec<Point> = moving.iter().map(|p| turn * *p).collect();
+            polygon::least_distance(&fixed, &turned)
+        };
+        self.gap_at_rest = gap(0.0);
+        (self.least_gap, self.least_gap_at) = (self.gap_at_rest, 0.0);
+        for (way, end) in [-hinge.up, hinge.down].into_iter().enumerate() {
+            let (mut free, mut is_free) = (0.0, self.gap_at_rest >= hinge.clearance - GAP_SLACK);
+            for i in 1..=STEPS {
+                let angle = end * i as f64 / STEPS as f64;
+                let here = gap(angle);
+                if here < self.least_gap {
+                    (self.least_gap, self.least_gap_at) = (here, angle);
+                }
+                is_free &= here >= hinge.clearance - GAP_SLACK;
+                if is_free {
+                    free = angle.abs();
+                }
+                self.gap_at_full[way] = here;
+            }
+            self.free_travel[way] = if end == 0.0 { 0.0 } else { free };
+        }
+        self
+    }
+}
+
+impl Hinge {
+    /// About how far from the nose along the chord the wood of the main body ends at half its height, mm:
+    /// for its stiffness, where [`split`] gives the exact outline.
+    #[must_use]
+    pub fn main_body_ends_at(&self, shape: &StationShape<'_>, laminate: &Laminate) -> f64 {
+        let [upper, lower] = shape.roots_at(self.at).map(|root| shape.jet(root).point);
+        let height = upper.distance(lower);
+        let ahead = match self.kind {
+            HingeKind::Laminate { side } => {
+                let skin = laminate.thickness(side, shape.at, self.at, shape.chord)[0];
+                let closing = if side == Side::Upper { self.down } else { self.up };
+                0.5 * self.gap(skin, closing) + 0.5 * height * (0.5 * closing).tan()
+            }
+            HingeKind::Pin { height: share } => share.max(1.0 - share) * height + self.clearance,
+        };
+        self.at - ahead
+    }
+
+    /// Width of a laminate hinge's gap at the skin, which is `skin` mm thick, for a travel towards the open
+    /// side.
+    fn gap(&self, skin: f64, closing: f64) -> f64 {
+        let (sin, cos) = (0.5 * closing).sin_cos();
+        (self.clearance + skin * sin) / cos
+    }
 }
 
 struct Parting {
@@ -129,16 +229,16 @@ fn wedge(
     let [upper, lower] = shape.roots_at(hinge.at);
     let (root, opposite) = if side == Side::Upper { (upper, lower) } else { (lower, upper) };
     let surface = shape.jet(root);
-    let along = surface.tangent().ok_or(PartError::OffTheWood { at: shape.at, x: hinge.at })?;
+    let along = surface.tangent().ok_or(PartError::OffTheWood { at: shape.at, x: hinge.at, works: None })?;
     let inwards = along.turn_90();
     // Both surfaces are met with the trailing edge aft.
     let aft = if side == Side::Upper { -along } else { along };
     let skin = laminate.thickness(side, shape.at, hinge.at, shape.chord)[0];
-    let axis = surface.point + 0.5 * skin * inwards;
+    let axis = hinge.axis(shape, laminate);
     let apex = surface.point + skin * inwards;
     let closing = if side == Side::Upper { hinge.down } else { hinge.up };
     let (sin, cos) = (0.5 * closing).sin_cos();
-    let gap = (hinge.clearance + skin * sin) / cos;
+    let gap = hinge.gap(skin, closing);
 
     // Square to the faces, away from the gap.
     let ahead = -cos * aft - sin * inwards;
@@ -147,7 +247,7 @@ fn wedge(
         let on = apex + 0.5 * gap * (if away.dot(aft) > 0.0 { aft } else { -aft });
         (on + distance * away, away)
     };
-    let off = |_| PartError::OffTheWood { at: shape.at, x: hinge.at };
+    let off = |_| PartError::OffTheWood { at: shape.at, x: hinge.at, works: None };
     let cut = |path: &ArcPath, away: Vec2, distance: f64| {
         let (on, inwards) = face(away, distance);
         path.cut_by_line(on, inwards).map_err(off)
@@ -179,7 +279,7 @@ fn cove(
     let axis = lower.lerp(upper, height);
     let nose = axis.distance(upper).max(axis.distance(lower));
     let outline = follow_with_arcs(shape, tolerance)?;
-    let off = || PartError::OffTheWood { at: shape.at, x: hinge.at };
+    let off = || PartError::OffTheWood { at: shape.at, x: hinge.at, works: None };
 
     // Ahead of a lip's end: above the axis the flap comes forward by the travel up, below it by the
     // travel down.
@@ -242,36 +342,4 @@ fn between(stretch: &ArcPath, corners: [Point; 2], axis: Point, radius: f64, ant
         vertices.insert(0, ArcVertex { point: corners[1], bulge: 0.0 });
     }
     ArcPath::new(vertices, false).closed_about(axis, anticlockwise)
-}
-
-/// Least distance between the sides of two polygons; nought where they cross.
-fn least_distance(a: &[Point], b: &[Point]) -> f64 {
-    let sides = |points: &[Point]| -> Vec<(Point, Point)> {
-        (0..points.len()).map(|i| (points[i], points[(i + 1) % points.len()])).collect()
-    };
-    let (a, b) = (sides(a), sides(b));
-    let mut least = f64::INFINITY;
-    for &(a0, a1) in &a {
-        for &(b0, b1) in &b {
-            // Far apart along the chord: no need to look closer.
-            if a0.x.min(a1.x) - b0.x.max(b1.x) > least || b0.x.min(b1.x) - a0.x.max(a1.x) > least {
-                continue;
-            }
-            least = least.min(between_sides(a0, a1, b0, b1));
-        }
-    }
-    least
-}
-
-fn between_sides(a0: Point, a1: Point, b0: Point, b1: Point) -> f64 {
-    let side = |p: Point, q: Point, r: Point| (q - p).cross(r - p);
-    if side(a0, a1, b0) * side(a0, a1, b1) < 0.0 && side(b0, b1, a0) * side(b0, b1, a1) < 0.0 {
-        return 0.0;
-    }
-    let to_side = |p: Point, from: Point, to: Point| {
-        let chord = to - from;
-        let share = ((p - from).dot(chord) / chord.hypot2().max(f64::MIN_POSITIVE)).clamp(0.0, 1.0);
-        p.distance(from + share * chord)
-    };
-    to_side(a0, b0, b1).min(to_side(a1, b0, b1)).min(to_side(b0, a0, a1)).min(to_side(b1, a0, a1))
 }

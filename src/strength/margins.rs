@@ -115,10 +115,11 @@ impl Reserve {
 /// Least reserves of a section: of the skin, against wrinkling and of the core.
 ///
 /// Skins: strain at the outer face from both bendings and the push, and shear flow of torque (Bredt) and
-/// of both shears (thin walls), against the first ply with the shear of either sign. Wrinkling: the
+/// of both shears (thin walls), against the first ply with the shear of either sign. Torque and shear across
+/// go to walls and core by their stiffness; the shear along counts in full in the walls. Wrinkling: the
 /// compressive stress of a skin against [`wrinkling_stress`] with the lesser of its modulus in stretching
-/// and in bending. Core: [`SectionStiffness::core_shear`] and its share of the torque. The shear across is
-/// so counted in the skins and in the core, as which of them takes it is not known: on the safe side.
+/// and in bending. Core: [`SectionStiffness::core_shear`] with the whole of the shear across, which is on the
+/// safe side, and its share of the torque.
 ///
 /// Not a certification: use tested material values; local codes and licensed practice come first.
 #[must_use]
@@ -136,10 +137,11 @@ pub fn reserves(section: &SectionStiffness, node: &BeamNode, criteria: Criteria)
         let strain = section.strain(place, curvatures, node.compression);
         let stretch = skin.constants().ex * strain * skin.thickness();
         let of_torque = match section.cell {
-            super::Cell::Closed => node.torque.abs() / (2.0 * section.cell_area),
+            super::Cell::Closed => section.wall_torsion * node.torque.abs() / (2.0 * section.cell_area),
             super::Cell::Open => twist_rate.abs() * skin.constants().gxy * skin.thickness().powi(2),
         };
         let [across, along] = section.wall_flow(i);
+        let across = section.wall_shear * across;
         let shear = of_torque + (node.shear[0] * across + node.shear[1] * along).abs();
         for flow in [shear, -shear] {
             let first = skin.first_ply([stretch, 0.0, flow], criteria.ply);

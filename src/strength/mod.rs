@@ -7,6 +7,7 @@
 //! licensed practice come first. `docs/strength.md` has the equations and what was measured.
 
 mod beam;
+mod bond;
 mod error;
 mod laminate_theory;
 mod loads;
@@ -18,6 +19,7 @@ mod shear_flow;
 mod walls;
 
 pub use beam::{BeamNode, BeamResult, BeamStation, Cantilever};
+pub use bond::{bond_reserve, bond_shear};
 pub use error::StrengthError;
 pub use laminate_theory::{Criterion, FirstPly, Layer, Layup, PlyMode, SkinConstants, UNLOADED};
 pub use loads::{GRAVITY, LineLoad, LoadCase, PointLoad};

@@ -38,6 +38,11 @@ pub struct SectionStiffness {
     pub principal_angle: f64,
     /// GJ, N·mm².
     pub torsion: f64,
+    /// Share of a torque that the walls take: theirs of GJ, as walls and core twist alike.
+    pub wall_torsion: f64,
+    /// Share of a shear across that the walls take by their stiffness: cut level with the centre of stiffness,
+    /// walls (G t sin θ, θ their angle to the chord) and core (G by its width) shear by the same angle.
+    pub wall_shear: f64,
     /// Area inside of the skin's middle line, mm².
     pub cell_area: f64,
     /// How the walls close.
@@ -115,6 +120,8 @@ impl SectionStiffness {
             principal: [middle + half, middle - half],
             principal_angle: 0.5 * (2.0 * product).atan2(along - across),
             torsion,
+            wall_torsion: of_skin / torsion,
+            wall_shear: wall_shear(&walls, build, centroid.y),
             cell_area,
             cell,
             shear_centre,
@@ -201,6 +208,30 @@ impl SectionStiffness {
             });
         (high - low).max(0.0)
     }
+}
+
+/// What of the stiffness against shear across, level with `height`, is that of the walls.
+fn wall_shear(walls: &Walls, build: &SectionBuild, height: f64) -> f64 {
+    let of_wall = |wall: &Wall| {
+        let [a, b] = wall.middle_line();
+        let crosses = (a.y <= height) != (b.y <= height);
+        let skin = walls.skin(wall).filter(|_| crosses);
+        skin.map_or(0.0, |skin| skin.constants().gxy * skin.thickness() * (b.y - a.y).abs() / a.distance(b))
+    };
+    let of_walls: f64 = walls.walls.iter().map(of_wall).sum();
+    let holes: f64 = build.cut_outs.iter().map(|hole| width_at(hole, height)).sum();
+    let of_core = build.core.g * (width_at(&walls.core(), height) - holes).max(0.0);
+    if of_walls > 0.0 { of_walls / (of_walls + of_core) } else { 1.0 }
+}
+
+/// How wide a polygon is along x at a height.
+fn width_at(points: &[Point], height: f64) -> f64 {
+    let mut crossings: Vec<f64> = polygon::sides(points)
+        .filter(|(a, b)| (a.y <= height) != (b.y <= height))
+        .map(|(a, b)| a.x + (height - a.y) / (b.y - a.y) * (b.x - a.x))
+        .collect();
+    crossings.sort_by(f64::total_cmp);
+    crossings.chunks_exact(2).map(|pair| pair[1] - pair[0]).sum()
 }
 
 /// Σ G l t³/3 of thin open walls.

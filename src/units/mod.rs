@@ -12,8 +12,10 @@ mod values;
 
 pub use error::UnitError;
 pub use number::{fixed, number};
-pub use quantity::{ANGLE, AREAL_WEIGHT, DENSITY, LENGTH, MASS, Quantity, SPEED, TEMPERATURE, Unit};
-pub use values::{Angle, Length};
+pub use quantity::{
+    ANGLE, AREAL_WEIGHT, DENSITY, FORCE, LENGTH, MASS, MOMENT, Quantity, SPEED, STRESS, TEMPERATURE, Unit,
+};
+pub use values::{Angle, Length, knots};
 
 pub(crate) use number::plain;
 pub(crate) use spelling::{clipped, harmless, nearest};

@@ -90,6 +90,30 @@ pub static AREAL_WEIGHT: Quantity = Quantity {
     ],
 };
 
+/// Stresses, strengths and moduli; the base unit is the megapascal, which is a newton on each square millimetre.
+pub static STRESS: Quantity = Quantity {
+    name: "a stress",
+    units: &[
+        Unit { symbol: "MPa", also: &["N/mm2", "N/mm²"], factor: Factor::Tenths(10) },
+        Unit { symbol: "GPa", also: &[], factor: Factor::Tenths(10_000) },
+    ],
+};
+
+/// Forces; the base unit is the newton.
+pub static FORCE: Quantity = Quantity {
+    name: "a force",
+    units: &[
+        Unit { symbol: "N", also: &[], factor: Factor::Tenths(10) },
+        Unit { symbol: "kN", also: &[], factor: Factor::Tenths(10_000) },
+    ],
+};
+
+/// Moments; the base unit is the newton metre.
+pub static MOMENT: Quantity = Quantity {
+    name: "a moment",
+    units: &[Unit { symbol: "N m", also: &["Nm", "N·m"], factor: Factor::Tenths(10) }],
+};
+
 /// Densities; the base unit is the kilogram for each cubic metre.
 pub static DENSITY: Quantity = Quantity {
     name: "a density",

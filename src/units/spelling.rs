@@ -4,7 +4,7 @@
 const SHOWN: usize = 40;
 
 /// The word of `known` that is spelt most like `word`, if any is near enough to be a likely slip.
-pub(crate) fn nearest(word: &str, known: impl Iterator<Item = &'static str>) -> Option<&'static str> {
+pub(crate) fn nearest<'a>(word: &str, known: impl Iterator<Item = &'a str>) -> Option<&'a str> {
     // Likeness costs the product of the lengths, and nobody mistypes a word into a page.
     if word.chars().count() > SHOWN {
         return None;

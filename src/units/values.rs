@@ -42,6 +42,12 @@ impl fmt::Display for Length {
     }
 }
 
+/// A speed in m/s in knots: 1852 metres an hour.
+#[must_use]
+pub fn knots(speed: f64) -> f64 {
+    speed * 3600.0 / 1852.0
+}
+
 /// An angle. Held in degrees, so that what was written in degrees comes back exactly.
 #[derive(Debug, Clone, Copy, PartialEq, PartialOrd, Default)]
 pub struct Angle {

@@ -43,6 +43,26 @@ pub enum WingError {
         /// How many there are.
         count: usize,
     },
+    /// A tip that takes up the whole foil.
+    #[error(
+        "a tip over {length} mm of the span does not go on a foil of {reach} mm from root to tip: take less"
+    )]
+    TipLength {
+        /// What was asked, mm.
+        length: f64,
+        /// Root to tip, mm.
+        reach: f64,
+    },
+    /// A tip whose end is no narrower than it was.
+    #[error(
+        "a tip that leaves a chord of {chord} mm does not draw the last station's {last} mm together: take less, but more than nothing"
+    )]
+    TipChord {
+        /// What was asked, mm.
+        chord: f64,
+        /// That of the last station, mm.
+        last: f64,
+    },
     /// A section between two stations that cannot be made.
     #[error("between two stations: {why}")]
     Section {

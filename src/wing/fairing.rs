@@ -42,12 +42,13 @@ impl Wing {
 
     /// The fewest places, root and tip among them, such that a batten from one to the next lies within
     /// `fairing` mm of the design; to within a 400th of the span. From each place the next one is as far
-    /// off as it can be.
+    /// off as it can be. A shaped tip is left out, as it is worked to the planform: the last place but the
+    /// end is where it begins.
     ///
     /// # Errors
     /// As [`Wing::batten_gap`].
     pub fn fewest_templates(&self, fairing: f64) -> Result<Vec<f64>, WingError> {
-        let place = |step: usize| self.reach() * step as f64 / STEPS as f64;
+        let place = |step: usize| self.tip_from() * step as f64 / STEPS as f64;
         let (mut places, mut here) = (vec![0.0], 0);
         while here < STEPS {
             let fits = |to: usize| Ok::<_, WingError>(self.batten_gap(place(here), place(to))? <= fairing);
@@ -63,6 +64,7 @@ impl Wing {
             here = good.min(STEPS);
             places.push(place(here));
         }
+        places.extend(self.tip().map(|_| self.reach()));
         Ok(places)
     }
 }

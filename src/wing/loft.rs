@@ -1,4 +1,5 @@
-//! The surface between the stations: straight lines from one station's outline to the next.
+//! The surface between the stations: straight lines from one station's outline to the next, drawn together
+//! towards a shaped tip.
 
 use super::{Station, Wing, WingError};
 use crate::geometry::{Affine, Curve, Jet, Point, Vec2, parameter_at};
@@ -19,8 +20,21 @@ pub struct StationShape<'a> {
     outer: &'a Station,
     /// Share of the outer station.
     weight: f64,
+    /// How the tip draws it together.
+    tip: Option<Drawn>,
     /// From the foil's axes to the chord's own.
     to_chord: Affine,
+}
+
+/// How an outline in the tip is drawn together.
+#[derive(Debug, Clone, Copy)]
+struct Drawn {
+    /// The place that stays, in the foil's axes, and its way for each mm along the span.
+    about: Point,
+    about_rate: Vec2,
+    /// Share of its size that it keeps, and the change of that for each mm.
+    share: f64,
+    rate: f64,
 }
 
 impl Wing {
@@ -43,8 +57,23 @@ impl Wing {
             inner,
             outer,
             weight,
+            tip: None,
             to_chord: Affine::IDENTITY,
         };
+        let [share, rate] = self.drawn_together(at, self.chord_by_stations(at));
+        if let Some(tip) = self.tip().filter(|_| share != 1.0 || rate != 0.0) {
+            let place = |station: &Station| {
+                let tail = placed(station, -1.0).point.midpoint(placed(station, 1.0).point);
+                placed(station, 0.0).point.lerp(tail, tip.about)
+            };
+            let (inner_place, outer_place) = (place(inner), place(outer));
+            shape.tip = Some(Drawn {
+                about: inner_place.lerp(outer_place, weight),
+                about_rate: (outer_place - inner_place) / (outer.at - inner.at),
+                share,
+                rate,
+            });
+        }
         let nose = shape.lofted(0.0).point;
         let tail = shape.lofted(-1.0).point.midpoint(shape.lofted(1.0).point);
         let chord = tail - nose;
@@ -94,8 +123,12 @@ impl StationShape<'_> {
     /// fast, in the shape's own frame.
     #[must_use]
     pub fn spread(&self, t: f64) -> Vec2 {
-        let change = placed(self.outer, t).point - placed(self.inner, t).point;
-        let per_mm = change / (self.outer.at - self.inner.at);
+        let (inner, outer) = (placed(self.inner, t).point, placed(self.outer, t).point);
+        let mut per_mm = (outer - inner) / (self.outer.at - self.inner.at);
+        if let Some(tip) = &self.tip {
+            let full = inner.lerp(outer, self.weight) - tip.about;
+            per_mm = tip.about_rate + tip.rate * full + tip.share * (per_mm - tip.about_rate);
+        }
         (Affine::rotate(self.twist) * per_mm.to_point()).to_vec2()
     }
 
@@ -109,11 +142,16 @@ impl StationShape<'_> {
     fn lofted(&self, t: f64) -> Jet {
         let (a, b) = (placed(self.inner, t), placed(self.outer, t));
         let mix = |p: Vec2, q: Vec2| p * (1.0 - self.weight) + q * self.weight;
-        Jet {
+        let full = Jet {
             point: mix(a.point.to_vec2(), b.point.to_vec2()).to_point(),
             first: mix(a.first, b.first),
             second: mix(a.second, b.second),
-        }
+        };
+        self.tip.map_or(full, |tip| Jet {
+            point: tip.about + tip.share * (full.point - tip.about),
+            first: tip.share * full.first,
+            second: tip.share * full.second,
+        })
     }
 }
 

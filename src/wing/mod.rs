@@ -7,11 +7,14 @@ mod fairing;
 mod law;
 mod loft;
 mod planform;
+mod tip;
+mod wetted;
 
 pub use error::WingError;
 pub use law::{Law, along};
 pub use loft::StationShape;
 pub use planform::Planform;
+pub use tip::{Tip, TipForm};
 
 use crate::section::Section;
 
@@ -34,11 +37,12 @@ pub struct Station {
     pub twist_about: f64,
 }
 
-/// A foil, lofted in straight lines between its stations as a batten fairs it.
+/// A foil, lofted in straight lines between its stations as a batten fairs it; its end may be shaped.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Wing {
     stations: Vec<Station>,
     mirrored: bool,
+    tip: Option<Tip>,
 }
 
 impl Wing {
@@ -67,7 +71,7 @@ impl Wing {
                 return Err(WingError::Station { at: station.at });
             }
         }
-        Ok(Self { stations, mirrored })
+        Ok(Self { stations, mirrored, tip: None })
     }
 
     /// The stations from root to tip.

@@ -16,7 +16,7 @@ pub struct Planform {
 
 impl Wing {
     /// The planform. Leading and trailing edges are the lofted noses and trailing edges, straight
-    /// from station to station.
+    /// from station to station; those of a rounded tip in short straight pieces.
     #[must_use]
     pub fn planform(&self) -> Planform {
         let edges = |at: f64| {
@@ -25,7 +25,7 @@ impl Wing {
                 (Point::new(at, shape.nose.x), Point::new(at, aft))
             })
         };
-        let (leading, trailing) = self.stations().iter().filter_map(|s| edges(s.at)).unzip();
+        let (leading, trailing) = self.even_places().into_iter().filter_map(edges).unzip();
         Planform { leading, trailing, mirrored: self.is_mirrored() }
     }
 }
@@ -68,6 +68,21 @@ impl Planform {
     #[must_use]
     pub fn area(&self) -> f64 {
         polygon::area(&self.outline()).abs()
+    }
+
+    /// Area in mm² of one half, or of a foil that is all of a piece, from `from` to `to` mm along the
+    /// span.
+    #[must_use]
+    pub fn area_between(&self, from: f64, to: f64) -> f64 {
+        let mut places: Vec<f64> =
+            self.leading.iter().map(|p| p.x).filter(|at| from < *at && *at < to).collect();
+        places.insert(0, from);
+        places.push(to);
+        let chord = |at: f64| {
+            let (front, back) = self.edges(at);
+            back - front
+        };
+        places.windows(2).map(|pair| 0.5 * (pair[1] - pair[0]) * (chord(pair[0]) + chord(pair[1]))).sum()
     }
 
     /// Tip to tip, mm.

@@ -1,8 +1,11 @@
 //! A drawing at true size: what every plane file format writes. Millimetres, y upwards.
 
+use std::borrow::Cow;
+
 use kurbo::Affine;
 
 use crate::geometry::{ArcPath, Point, Rect};
+use crate::units::number;
 
 /// What a line or a label is for: its layer in a router file, its line type on paper.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
@@ -11,6 +14,14 @@ pub enum Role {
     CutOutside,
     /// A contour whose inside is taken out: a slot, a bore.
     CutInside,
+    /// A contour whose inside is taken out so deep, in hundredths of a mm.
+    Pocket(u32),
+    /// A round hole that a drill of its size makes.
+    Drill,
+    /// A line to engrave.
+    Engrave,
+    /// A stretch of a contour that stays, to hold the piece in its sheet.
+    Tab,
     /// A line to measure from: chord line, root line, hinge line. Never cut.
     Reference,
     /// Words beside a line. Never cut.
@@ -22,9 +33,11 @@ pub enum Role {
 }
 
 impl Role {
-    /// One role for each layer, in the order in which files list them.
-    pub const LAYERS: [Self; 5] =
-        [Self::CutOutside, Self::CutInside, Self::Reference, Self::Label, Self::Check];
+    /// The pocket of a depth in mm.
+    #[must_use]
+    pub fn pocket(depth: f64) -> Self {
+        Self::Pocket((100.0 * depth).round() as u32)
+    }
 
     /// How it is drawn on paper: width of the line and lengths of dashes and gaps, mm. The types
     /// differ in pattern, not only in weight, so that they survive a photocopier.
@@ -32,22 +45,32 @@ impl Role {
     pub fn stroke(self) -> (f64, &'static [f64]) {
         match self {
             Self::CutOutside => (0.35, &[]),
-            Self::CutInside => (0.35, &[3.0, 1.2]),
+            Self::CutInside | Self::Drill => (0.35, &[3.0, 1.2]),
+            Self::Pocket(_) => (0.35, &[1.2, 0.8]),
+            Self::Tab => (1.0, &[]),
             Self::Reference => (0.2, &[6.0, 1.5, 1.0, 1.5]),
-            Self::Label | Self::Caption | Self::Check => (0.2, &[]),
+            Self::Engrave | Self::Label | Self::Caption | Self::Check => (0.2, &[]),
         }
     }
 
-    /// Name of its layer.
+    /// Name of its layer; that of a pocket holds its depth, as `POCKET_6_5MM` for 6.5 mm.
     #[must_use]
-    pub fn layer(self) -> &'static str {
-        match self {
+    pub fn layer(self) -> Cow<'static, str> {
+        let name = match self {
             Self::CutOutside => "CUT_OUTSIDE",
             Self::CutInside => "CUT_INSIDE",
+            Self::Pocket(hundredths) => {
+                let depth = number(f64::from(hundredths) / 100.0, 2).replace('.', "_");
+                return Cow::Owned(format!("POCKET_{depth}MM"));
+            }
+            Self::Drill => "DRILL",
+            Self::Engrave => "ENGRAVE",
+            Self::Tab => "TAB",
             Self::Reference => "REFERENCE",
             Self::Label | Self::Caption => "LABEL",
             Self::Check => "CHECK",
-        }
+        };
+        Cow::Borrowed(name)
     }
 }
 
@@ -104,11 +127,25 @@ impl Drawing {
         self.labels.push(Label { role, at, height, turn: 0.0, text });
     }
 
+    /// Adds a line to its caption.
+    pub fn caption(&mut self, text: impl Into<String>) {
+        let captions = self.labels.iter().filter(|label| label.role == Role::Caption);
+        let Some(last) = captions.min_by(|a, b| a.at.y.total_cmp(&b.at.y)) else { return };
+        let (at, height) = (last.at - kurbo::Vec2::new(0.0, 1.75 * last.height), last.height);
+        self.write(Role::Caption, at, height, text);
+    }
+
     /// The drawing without its caption, for where that stands beside it.
     #[must_use]
     pub fn without_caption(&self) -> Self {
         let labels = self.labels.iter().filter(|label| label.role != Role::Caption).cloned().collect();
         Self { labels, ..self.clone() }
+    }
+
+    /// Its lines alone.
+    #[must_use]
+    pub fn without_words(&self) -> Self {
+        Self { labels: Vec::new(), ..self.clone() }
     }
 
     /// The smallest upright rectangle round all lines and, by estimate, the labels.

@@ -13,6 +13,8 @@ const STRIP: f64 = 12.0;
 const TITLE: f64 = 9.0;
 /// Height of capitals on the page's own texts, mm.
 const LETTERS: f64 = 2.6;
+/// Width and height of the map of the pages, mm.
+const MAP: (f64, f64) = (26.0, 7.0);
 /// Half the size of a match mark, mm.
 const MARK: f64 = 4.0;
 
@@ -21,7 +23,7 @@ const MARK: f64 = 4.0;
 pub struct PaperSettings {
     /// Shorter side.
     pub width: f64,
-    /// Longer side.
+    /// Longer side; infinite for a roll, whose pages are as long as the drawing needs.
     pub height: f64,
     /// Edge that the printer cannot reach, all round.
     pub margin: f64,
@@ -72,8 +74,11 @@ pub fn tiled(drawing: &Drawing, paper: PaperSettings) -> Vec<Page> {
     let on_its_side = Tiling::new(drawing, paper.height, paper.width, paper);
     match (upright, on_its_side) {
         (Some(a), Some(b)) => {
-            let better = if b.count() < a.count() { b } else { a };
-            better.pages(drawing)
+            // Of a roll also the shorter piece.
+            let cost = |tiling: &Tiling| (tiling.count(), tiling.page.area());
+            let (upright, lying) = (cost(&a), cost(&b));
+            let better = lying.0 < upright.0 || lying.0 == upright.0 && lying.1 < upright.1;
+            if better { b.pages(drawing) } else { a.pages(drawing) }
         }
         (Some(a), None) | (None, Some(a)) => a.pages(drawing),
         (None, None) => Vec::new(),
@@ -93,6 +98,14 @@ struct Tiling {
 
 impl Tiling {
     fn new(drawing: &Drawing, width: f64, height: f64, paper: PaperSettings) -> Option<Self> {
+        let bounds = drawing.bounds();
+        // The end of a roll is where the drawing ends, and the check line beside it.
+        let ended = |side: f64, drawn: f64, strip: f64| {
+            let needed = (drawn + 2.0).max(CHECK_LENGTH + 10.0) + 2.0 * paper.margin + strip;
+            if side.is_finite() { side } else { needed }
+        };
+        let width = ended(width, bounds.width(), STRIP);
+        let height = ended(height, bounds.height(), STRIP + TITLE);
         let window = Rect::new(
             paper.margin + STRIP,
             paper.margin + STRIP,
@@ -103,7 +116,6 @@ impl Tiling {
         if step.x < CHECK_LENGTH / 2.0 || step.y < CHECK_LENGTH / 2.0 {
             return None;
         }
-        let bounds = drawing.bounds();
         let tiles = |length: f64, step: f64| (((length - paper.overlap) / step).ceil() as usize).max(1);
         let (columns, rows) = (tiles(bounds.width(), step.x), tiles(bounds.height(), step.y));
         // Centred, so that the spare paper is shared by both ends.
@@ -134,6 +146,7 @@ impl Tiling {
         let mut furniture = Drawing::new(&drawing.title);
         add_check_lines(&mut furniture, self.window);
         self.add_match_marks(&mut furniture, column, row);
+        self.add_map(&mut furniture, column, row);
         let place = if self.count() == 1 {
             String::new()
         } else {
@@ -149,6 +162,26 @@ impl Tiling {
             drawing: drawing.moved(Affine::translate(shift)),
             furniture,
         }
+    }
+
+    /// A small map of all tiles beside the title, this one crossed out.
+    fn add_map(&self, furniture: &mut Drawing, column: usize, row: usize) {
+        if self.count() == 1 {
+            return;
+        }
+        let (columns, rows) = (self.columns as f64, self.rows as f64);
+        let cell = Vec2::new((MAP.0 / columns).min(6.0), (MAP.1 / rows).min(4.0));
+        let corner = Point::new(self.window.x1 - columns * cell.x, self.window.y1 + 1.0);
+        let at = |i: f64, j: f64| corner + Vec2::new(i * cell.x, j * cell.y);
+        for i in 0..=self.columns {
+            furniture.add(Role::Check, ArcPath::line(at(i as f64, 0.0), at(i as f64, rows)));
+        }
+        for j in 0..=self.rows {
+            furniture.add(Role::Check, ArcPath::line(at(0.0, j as f64), at(columns, j as f64)));
+        }
+        let (i, j) = (column as f64, row as f64);
+        furniture.add(Role::Check, ArcPath::line(at(i, j), at(i + 1.0, j + 1.0)));
+        furniture.add(Role::Check, ArcPath::line(at(i, j + 1.0), at(i + 1.0, j)));
     }
 
     /// Crosses in the middle of each overlap, at the same place of the drawing on both tiles.

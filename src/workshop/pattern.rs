@@ -1,7 +1,8 @@
 //! Templates of the stations and the pattern of the planform.
 
 use super::{Drawing, Label, Role, Stamp};
-use crate::geometry::{ArcPath, GeometryError, Point, follow_with_arcs, polygon};
+use crate::geometry::{ArcPath, Point, polygon};
+use crate::parts::HingeLine;
 use crate::units::number;
 use crate::wing::{Planform, StationShape};
 
@@ -18,54 +19,22 @@ const GAP: f64 = 6.0;
 /// How far a reference line runs past the shape, mm.
 const OVERRUN: f64 = 5.0;
 
-/// Where a flap is parted from the main body.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct HingeLine {
-    /// Fractions of the chord from the nose at the flap's inner and outer end; between them it
-    /// changes evenly.
-    pub chord_fractions: [f64; 2],
-    /// Where the flap begins, mm from the root.
-    pub from: f64,
-    /// Where it ends, mm from the root.
-    pub to: f64,
-}
-
-impl HingeLine {
-    /// Fraction of the chord at `at` mm from the root.
-    #[must_use]
-    pub fn fraction_at(&self, at: f64) -> f64 {
-        let share = ((at - self.from) / (self.to - self.from)).clamp(0.0, 1.0);
-        let [inner, outer] = self.chord_fractions;
-        inner + share * (outer - inner)
-    }
-
-    /// Whether the flap reaches the station at `at` mm from the root.
-    #[must_use]
-    pub fn reaches(&self, at: f64) -> bool {
-        (self.from..=self.to).contains(&at)
-    }
-}
-
 /// The template of one station: its outline, chord line, hinge line and what it is.
 /// Nose at the origin, trailing edge along x.
 ///
-/// `mirrored`: whether the foil lies level, in two halves; an upright one is seen from above.
-/// `tolerance`: greatest distance of the contour from the exact outline, mm.
-///
-/// # Errors
-/// When the outline cannot be followed within the tolerance, or crosses itself.
+/// `outline`: the finished surface, followed with arcs.
+/// `level`: whether the foil lies level; an upright one is seen from above.
+#[must_use]
 pub fn station_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
+    outline: &ArcPath,
     hinge: Option<&HingeLine>,
-    mirrored: bool,
-    tolerance: f64,
-) -> Result<Drawing, GeometryError> {
-    let outline = follow_with_arcs(shape, tolerance)?;
-    outline.refuse_crossings(tolerance)?;
+    level: bool,
+) -> Drawing {
     let bounds = outline.bounds();
     let mut drawing = Drawing::new(format!("{stamp}, station {} mm", number(shape.at, 2)));
-    drawing.add(Role::CutOutside, outline);
+    drawing.add(Role::CutOutside, outline.clone());
     let chord_line = ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0));
     drawing.add(Role::Reference, chord_line);
 
@@ -76,7 +45,7 @@ pub fn station_template(
         drawing.write(Role::Label, Point::new(back.x + 1.0, back.y - 0.5 * SMALL), SMALL, "level");
     }
     if let Some(hinge) = hinge.filter(|hinge| hinge.reaches(shape.at)) {
-        let x = hinge.fraction_at(shape.at) * shape.chord;
+        let x = hinge.x_at(shape.at, shape.chord);
         drawing.add(Role::Reference, ArcPath::line(Point::new(x, low), Point::new(x, high)));
         drawing.write(Role::Label, Point::new(x + 1.0, high + 1.0), SMALL, "hinge line");
     }
@@ -84,13 +53,16 @@ pub fn station_template(
         stamp.to_string(),
         format!("station {} mm from the root", number(shape.at, 2)),
         format!("{}, chord {:.2} mm, twist {}", shape.section_name(), shape.chord, turn(shape.twist)),
-        // With x aft and the span's axis away from the eye, what stands upright in the drawing is
-        // the boat's up for a level foil and its starboard side for an upright one.
-        if mirrored { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
-            .to_owned(),
+        seen(level).to_owned(),
     ];
     write_block(&mut drawing, Point::new(0.0, low - GAP), &words);
-    Ok(drawing)
+    drawing
+}
+
+/// Which side is up. With x aft and the span's axis away from the eye, what stands upright in the
+/// drawing is the boat's up for a level foil and its starboard side for an upright one.
+fn seen(level: bool) -> &'static str {
+    if level { "seen facing starboard: upper side up" } else { "seen from above: starboard side up" }
 }
 
 /// The template of a part at one station: its own contour to cut, the finished outline for reference,
@@ -100,8 +72,8 @@ pub fn part_template(
     stamp: &Stamp,
     shape: &StationShape<'_>,
     finished: &ArcPath,
-    name: &str,
-    part: &ArcPath,
+    level: bool,
+    (name, part): (&str, &ArcPath),
     words: &[String],
 ) -> Drawing {
     let mut drawing = Drawing::new(format!("{stamp}, station {} mm, {name}", number(shape.at, 2)));
@@ -112,8 +84,9 @@ pub fn part_template(
         ArcPath::line(Point::new(-OVERRUN, 0.0), Point::new(shape.chord + OVERRUN, 0.0)),
     );
     let mut lines = vec![stamp.to_string(), format!("station {} mm from the root", number(shape.at, 2))];
-    lines.push(format!("{name}: the wood under the laminate"));
+    lines.push(format!("{name}: the wood under the laminate, its grain along the span, out of this sheet"));
     lines.extend(words.iter().cloned());
+    lines.push(seen(level).to_owned());
     lines.push("cut the full line; the broken one is the finished surface".to_owned());
     write_block(&mut drawing, Point::new(0.0, finished.bounds().y0 - OVERRUN - GAP), &lines);
     drawing
@@ -139,13 +112,24 @@ pub fn planform_pattern(
     let mut drawing = Drawing::new(format!("{stamp}, planform"));
     drawing.add(Role::CutOutside, path);
 
+    // A picture of a wide pattern grows its letters to 1.2 % of its width.
+    let crowded = (1.2 * SMALL).max(0.015 * planform.span());
     let sides: &[f64] = if planform.is_mirrored() { &[1.0, -1.0] } else { &[1.0] };
     for &side in sides {
+        let mut labelled = f64::NEG_INFINITY;
         // The root's line is the same for both halves.
         for &at in stations.iter().filter(|&&at| side > 0.0 || at > 0.0) {
             let (front, back) = planform.edges(at);
             let place = |y: f64| Point::new(side * at, -y);
             drawing.add(Role::Reference, ArcPath::line(place(front - OVERRUN), place(back + OVERRUN)));
+            // Of words that would run into each other only the first is written, but always that of the end.
+            let is_last = stations.last() == Some(&at);
+            let room = |other: f64| (at - other).abs() >= crowded;
+            let is_free = is_last || room(labelled) && stations.last().is_some_and(|last| room(*last));
+            if !is_free {
+                continue;
+            }
+            labelled = at;
             // Upright, so that the words of near stations stay apart.
             drawing.labels.push(Label {
                 role: Role::Label,
@@ -160,24 +144,37 @@ pub fn planform_pattern(
             let bends = corners.filter(|&at| hinge.from < at && at < hinge.to);
             let line = std::iter::once(hinge.from).chain(bends).chain([hinge.to]).map(|at| {
                 let (front, back) = planform.edges(at);
-                Point::new(side * at, -(front + hinge.fraction_at(at) * (back - front)))
+                Point::new(side * at, -(front + hinge.x_at(at, back - front)))
             });
             drawing.add(Role::Reference, ArcPath::polyline(line, false));
         }
     }
+    grain_arrow(&mut drawing, planform);
     let words = [
         stamp.to_string(),
-        format!("planform, span {} mm, leading edge up", number(planform.span(), 2)),
+        format!("planform, span {} mm, leading edge up, seen from above", number(planform.span(), 2)),
         format!("area {:.1} cm²; distances from the root in mm", planform.area() / 100.0),
         hinge.map_or(String::new(), |hinge| {
             let (from, to) = (number(hinge.from, 2), number(hinge.to, 2));
-            let [inner, outer] = hinge.chord_fractions.map(|share| number(100.0 * share, 1));
-            let along = if inner == outer { inner } else { format!("{inner} to {outer}") };
-            format!("hinge line at {along} % of chord, {from} to {to} mm")
+            format!("hinge line at {}, {from} to {to} mm", hinge.words())
         }),
     ];
     write_block(&mut drawing, Point::new(bounds.x0, bounds.y0 - OVERRUN - GAP), &words);
     drawing
+}
+
+/// An arrow along the span, which is where the grain runs.
+fn grain_arrow(drawing: &mut Drawing, planform: &Planform) {
+    let reach = planform.leading.last().map_or(0.0, |corner| corner.x);
+    let (from, to) = (0.12 * reach, 0.12 * reach + (0.2 * reach).min(80.0));
+    let (front, back) = planform.edges(to);
+    let y = -(front + 0.88 * (back - front));
+    let (start, tip) = (Point::new(from, y), Point::new(to, y));
+    let barb = 0.08 * (to - from);
+    drawing.add(Role::Reference, ArcPath::line(start, tip));
+    let barbs = [Point::new(to - 2.0 * barb, y + barb), tip, Point::new(to - 2.0 * barb, y - barb)];
+    drawing.add(Role::Reference, ArcPath::polyline(barbs, false));
+    drawing.write(Role::Label, Point::new(from, y + 1.5), SMALL, "grain");
 }
 
 fn write_block(drawing: &mut Drawing, top: Point, words: &[String]) {

@@ -12,7 +12,7 @@ const STEP: f64 = 0.9;
 const SLANT: f64 = 1.0;
 
 /// The strokes: from where to where, in half widths and half heights of a letter.
-const STROKES: [(char, [i8; 4]); 12] = [
+const STROKES: [(char, [i8; 4]); 14] = [
     ('a', [0, 2, 2, 2]),
     ('b', [2, 2, 2, 1]),
     ('c', [2, 1, 2, 0]),
@@ -24,12 +24,14 @@ const STROKES: [(char, [i8; 4]); 12] = [
     ('j', [1, 2, 1, 1]),
     ('m', [1, 1, 1, 0]),
     ('n', [1, 1, 2, 0]),
+    ('k', [1, 1, 0, 2]),
+    ('l', [1, 1, 2, 2]),
     ('.', [1, 0, 1, 0]),
 ];
 
 /// The strokes of each letter that a label has: figures, the sixteenth figures of a fingerprint, and
-/// those of "upper" and "lower".
-const LETTERS: [(char, &str); 23] = [
+/// those of the halves of masks and the pieces of wood.
+const LETTERS: [(char, &str); 24] = [
     ('0', "abcdef"),
     ('1', "bc"),
     ('2', "abghed"),
@@ -46,6 +48,7 @@ const LETTERS: [(char, &str); 23] = [
     ('D', "abcdjm"),
     ('E', "adefg"),
     ('F', "aefg"),
+    ('I', "jm"),
     ('L', "def"),
     ('O', "abcdef"),
     ('P', "abefgh"),
@@ -54,6 +57,9 @@ const LETTERS: [(char, &str); 23] = [
     ('W', "bcdefm"),
     ('-', "gh"),
 ];
+
+/// Letters whose strokes would touch when they have a width: for middle lines alone.
+const NARROW_LETTERS: [(char, &str); 2] = [('M', "bcefkl"), ('N', "bcefkn")];
 
 /// Width of a text of letters so high.
 pub(super) fn width(text: &str, height: f64) -> f64 {
@@ -66,17 +72,39 @@ pub(super) fn width(text: &str, height: f64) -> f64 {
 pub(super) fn strokes(text: &str, at: Point, height: f64) -> Vec<Vec<Point>> {
     let mut outlines = Vec::new();
     for (i, character) in text.chars().enumerate() {
-        let upper = character.to_ascii_uppercase();
-        let letter = match LETTERS.iter().find(|(known, _)| *known == upper) {
-            Some((_, letter)) => letter,
-            None if upper == '.' => ".",
-            None => continue,
-        };
+        let Some(letter) = letter(character) else { continue };
         let origin = at + Vec2::new((i as f64 * STEP + 0.5 * STROKE) * height, 0.5 * STROKE * height);
         let used = STROKES.iter().filter(|(name, _)| letter.contains(*name));
         outlines.extend(used.map(|(_, ends)| stroke(origin, *ends, height)));
     }
     outlines
+}
+
+/// The middle lines of the strokes of a text, to be engraved with a point. `at`: as for [`strokes`].
+pub(super) fn middle_lines(text: &str, at: Point, height: f64) -> Vec<[Point; 2]> {
+    let mut lines = Vec::new();
+    for (i, character) in text.chars().enumerate() {
+        let Some(letter) = letter(character).or_else(|| known(&NARROW_LETTERS, character)) else { continue };
+        let origin = at + Vec2::new(i as f64 * STEP * height, 0.0);
+        let node = |x: i8, y: i8| origin + height * Vec2::new(0.5 * WIDTH * f64::from(x), 0.5 * f64::from(y));
+        let used = STROKES.iter().filter(|(name, _)| letter.contains(*name));
+        lines.extend(used.map(|(_, [x0, y0, x1, y1])| {
+            let (from, to) = (node(*x0, *y0), node(*x1, *y1));
+            // A point is a short stroke.
+            if from == to { [from, from + Vec2::new(0.0, 0.1 * height)] } else { [from, to] }
+        }));
+    }
+    lines
+}
+
+/// The strokes that a character has, if it has any.
+fn letter(character: char) -> Option<&'static str> {
+    known(&LETTERS, character).or((character == '.').then_some("."))
+}
+
+fn known(letters: &[(char, &'static str)], character: char) -> Option<&'static str> {
+    let upper = character.to_ascii_uppercase();
+    letters.iter().find(|(known, _)| *known == upper).map(|(_, letter)| *letter)
 }
 
 fn stroke(origin: Point, ends: [i8; 4], height: f64) -> Vec<Point> {

@@ -101,3 +101,20 @@ chord = "70 mm"
 section = "NACA 2412"
 twist = "-1 deg"
 "#;
+
+/// Whether two drawings are the same but for the rounding of other machines.
+pub(crate) fn alike(a: &str, b: &str) -> bool {
+    let split = |text: &str| -> Vec<String> {
+        text.split_inclusive(|c: char| !(c.is_ascii_digit() || c == '.')).map(str::to_owned).collect()
+    };
+    let (a, b) = (split(a), split(b));
+    a.len() == b.len()
+        && a.iter().zip(&b).all(|(a, b)| {
+            let number =
+                |text: &str| text.trim_end_matches(|c: char| !c.is_ascii_digit()).parse::<f64>().ok();
+            match (number(a), number(b)) {
+                (Some(a), Some(b)) => (a - b).abs() <= 0.002 + 0.01 * b.abs(),
+                _ => a == b,
+            }
+        })
+}

@@ -13,8 +13,13 @@ from design_file import Design
 ROOT = Path(__file__).resolve().parents[2]
 # Roles of what is cut before the laminate; everything else at a station is the finished surface.
 WOOD = ("core template", "main body template", "flap template")
+# Printed pieces that do not close on the finished surface.
+NOT_FINISHED = (*WOOD, "core mask half", "cradle", "end rail")
+SHEET = "sheet of stock"
 KINDS = ("main-foil", "elevator", "strut", "fin")
-FILES = sorted((ROOT / "demo-sections").glob("*.toml")) + sorted((Path(__file__).parent / "designs").glob("*.toml"))
+# The one that is there to show what breaks.
+BREAKS = ROOT / "demo-sections/strut-too-thin.toml"
+FILES = sorted(f for f in (ROOT / "demo-sections").glob("*.toml") if f != BREAKS) + sorted((Path(__file__).parent / "designs").glob("*.toml"))
 
 
 def binary() -> str:
@@ -49,14 +54,33 @@ class Pack:
         self.fingerprint = self.manifest["fingerprint"]
 
     def paths(self, kind: str) -> list[Path]:
-        found = [self.folder / f["path"] for f in self.manifest["files"] if f["kind"] == kind]
+        """Of router files those of single pieces in release 2000; the others have lists of their own."""
+        found = [self.folder / f["path"] for f in self.manifest["files"]
+                 if f["kind"] == kind and f["role"] != SHEET and not f["path"].endswith("-r12.dxf")]
         assert found, f"the pack has no {kind}"
         return found
+
+    def plates(self) -> list[Path]:
+        """Printed pieces that are flat plates."""
+        return [path for path in self.paths("stl") if "-cradle-" not in path.name]
+
+    def sheets(self) -> list[Path]:
+        found = [self.folder / f["path"] for f in self.manifest["files"] if f["role"] == SHEET]
+        assert found, "the pack has no sheet of stock"
+        return [path for path in found if not path.name.endswith("-r12.dxf")]
+
+    def r12(self) -> list[Path]:
+        return [self.folder / f["path"] for f in self.manifest["files"] if f["path"].endswith("-r12.dxf")]
+
+    def with_role(self, role: str) -> list[tuple[float, Path]]:
+        """Station and file of each with that role."""
+        return [(f["station_mm"], self.folder / f["path"]) for f in self.manifest["files"] if f["role"] == role]
 
     def at_stations(self, kind: str) -> list[tuple]:
         """Exact shape and file of each station, in the order of the design; every station must have one."""
         files = [f for f in self.manifest["files"]
-                 if f["kind"] == kind and f["station_mm"] is not None and f["role"] not in WOOD]
+                 if f["kind"] == kind and f["station_mm"] is not None and f["role"] not in NOT_FINISHED
+                 and not f["path"].endswith("-r12.dxf")]
         pairs = [(shape, [self.folder / f["path"] for f in files if abs(f["station_mm"] - shape.at) < 1e-6])
                  for shape in self.design.shapes]
         assert all(found for _, found in pairs), f"a station without a {kind}"
@@ -65,7 +89,7 @@ class Pack:
 
     def planform(self, kind: str) -> Path:
         [path] = [self.folder / f["path"] for f in self.manifest["files"]
-                  if f["kind"] == kind and f["role"] == "planform pattern"]
+                  if f["kind"] == kind and f["role"] == "planform pattern" and not f["path"].endswith("-r12.dxf")]
         return path
 
 

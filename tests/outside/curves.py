@@ -47,9 +47,13 @@ def straight(start, end) -> np.ndarray:
 
 
 def polyline_segments(polyline):
-    """Start, end and bulge of each segment of an LWPOLYLINE, as ezdxf reads it."""
-    corners = polyline.get_points("xyb")
-    ends = corners[1:] + (corners[:1] if polyline.closed else [])
+    """Start, end and bulge of each segment of an LWPOLYLINE or a POLYLINE, as ezdxf reads it."""
+    if polyline.dxftype() == "POLYLINE":
+        corners = [(*v.dxf.location.vec2, v.dxf.bulge) for v in polyline.vertices]
+        closed = polyline.is_closed
+    else:
+        corners, closed = polyline.get_points("xyb"), polyline.closed
+    ends = corners[1:] + (corners[:1] if closed else [])
     return [(a[:2], b[:2], a[2]) for a, b in zip(corners, ends)]
 
 

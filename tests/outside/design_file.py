@@ -1,7 +1,8 @@
 """A design file read a second time, and the exact shape that it asks for at a station.
 
 The rule of the loft (common practice in the shop, no source): between two stations the surface is straight from each
-point of one outline to the point of the other with the same parameter, as a batten lies.
+point of one outline to the point of the other with the same parameter, as a batten lies. In a tip that is rounded or cut
+every outline is drawn together about one place of its chord.
 """
 
 import math
@@ -27,29 +28,51 @@ def quantity(text: str) -> float:
     return float(number) * UNITS[unit]
 
 
+STOCK = {"length": "1200 mm", "width": "600 mm", "margin": "10 mm", "spacing": "12 mm"}
+
+
+@dataclass(frozen=True)
+class Stock:
+    length: float
+    width: float
+    margin: float
+    spacing: float
+
+
 @dataclass(frozen=True)
 class Station:
     at: float
     chord: float
     twist: float
     sweep: float
+    rise: float
     section: Section
 
     def placed(self, r) -> np.ndarray:
         """In the foil's axes: x aft of the root's quarter chord, z up; the twist is nose up about the quarter chord."""
         x, z = ((self.section.outline(r) - [0.25, 0.0]) * self.chord).T
         cos, sin = math.cos(self.twist), math.sin(self.twist)
-        return np.stack([cos * x + sin * z + self.sweep, cos * z - sin * x], axis=-1)
+        return np.stack([cos * x + sin * z + self.sweep, cos * z - sin * x + self.rise], axis=-1)
 
 
 class Shape:
     """The exact outline at a station in the frame of its own chord: nose at the origin, trailing edge along x."""
 
-    def __init__(self, at: float, inner: Station, outer: Station):
+    def __init__(self, at: float, inner: Station, outer: Station, tip: "Tip | None" = None):
         share = (at - inner.at) / (outer.at - inner.at)
 
-        def lofted(r):
+        def by_stations(r):
             return (1 - share) * inner.placed(r) + share * outer.placed(r)
+
+        if tip is None or at <= tip.begins:
+            lofted = by_stations
+        else:
+            nose, tail = by_stations(0.0), by_stations(np.array([-1.0, 1.0])).mean(axis=0)
+            kept = nose + tip.about * (tail - nose)
+            drawn = tip.share(at, (1 - share) * inner.chord + share * outer.chord)
+
+            def lofted(r):
+                return kept + drawn * (by_stations(r) - kept)
 
         self.at = at
         self.nose = lofted(0.0)
@@ -64,6 +87,27 @@ class Shape:
         self.ring = np.vstack([self.outline, base]) if self.base > 1e-9 else self.outline[:-1]
 
 
+@dataclass(frozen=True)
+class Tip:
+    """Rounded: the chord falls as an ellipse's, cut off where so much of the last station's is left. Cut: evenly."""
+
+    form: str
+    begins: float
+    length: float
+    left: float
+    about: float
+    last_chord: float
+    chord_where_it_begins: float
+
+    def share(self, at: float, chord: float) -> float:
+        beyond = at - self.begins
+        if self.form == "rounded":
+            half_axis = self.length / math.sqrt(1 - (self.left / self.last_chord) ** 2)
+            return math.sqrt(1 - (beyond / half_axis) ** 2)
+        even = self.chord_where_it_begins + (self.left - self.chord_where_it_begins) * beyond / self.length
+        return even / chord
+
+
 class Design:
     def __init__(self, path: Path):
         data = tomllib.loads(path.read_text(encoding="utf-8"))
@@ -72,27 +116,45 @@ class Design:
         self.stations = [
             Station(
                 quantity(s["at"]), quantity(s["chord"]), quantity(s.get("twist", "0 deg")), quantity(s.get("sweep", "0 mm")),
+                quantity(s.get("rise", "0 mm")),
                 Section(s["section"], s.get("trailing-edge", "published")),
             )
             for s in data["station"]
         ]
+        self.data = data
+        self.tip = self.read_tip(data["planform"])
         places = data.get("templates", {}).get("at")
         self.templates = [quantity(t) for t in places] if places else [s.at for s in self.stations]
         # Defaults as the starter designs print them.
         masks, printer, paper = data.get("masks", {}), data.get("printer", {}), data.get("paper", {})
         self.clearance = quantity(masks.get("clearance", "0.3 mm"))
+        self.rail_offset = quantity(masks.get("rail-offset", "0 mm"))
         self.mask_thickness = quantity(masks.get("thickness", "6 mm"))
         self.bed = [quantity(printer.get(f"bed-{axis}", size)) for axis, size in zip("xyz", ("220 mm", "220 mm", "250 mm"))]
         self.bed_margin = quantity(printer.get("margin", "5 mm"))
-        self.paper = PAPER[paper.get("size", "A4")]
+        size = paper.get("size", "A4")
+        self.roll = None if size in PAPER else quantity(size)
+        self.paper = PAPER.get(size)
         self.paper_margin = quantity(paper.get("margin", "10 mm"))
         self.overlap = quantity(paper.get("overlap", "10 mm"))
         self.tolerance = quantity(data.get("router", {}).get("tolerance", "0.01 mm"))
+        stock = data.get("stock", {})
+        sizes = (quantity(stock.get(key, size)) for key, size in STOCK.items())
+        self.stock = Stock(*sizes)
         self.design_lift = float(data.get("lift", {}).get("design", 0.4))
 
     def shape(self, at: float) -> Shape:
         pair = next(p for p in zip(self.stations, self.stations[1:]) if p[0].at <= at <= p[1].at)
-        return Shape(at, *pair)
+        return Shape(at, *pair, self.tip)
+
+    def read_tip(self, planform: dict) -> Tip | None:
+        form, end, last = planform.get("tip", "square"), self.stations[-1].at, self.stations[-1].chord
+        if form == "square":
+            return None
+        length, left = quantity(planform["tip-length"]), quantity(planform["tip-chord"])
+        chord = float(np.interp(end - length, [s.at for s in self.stations], [s.chord for s in self.stations]))
+        about = planform.get("tip-about", 0.5 if form == "rounded" else 1.0)
+        return Tip(form, end - length, length, left, about, last, chord)
 
     @cached_property
     def shapes(self) -> list[Shape]:
@@ -100,7 +162,10 @@ class Design:
 
     @cached_property
     def planform_area(self) -> float:
-        """Trapezoids between the stations, seen along z."""
-        edges = [self.shape(s.at) for s in self.stations]
+        """Trapezoids between the stations, and many in a shaped tip, seen along z."""
+        places = {s.at for s in self.stations}
+        if self.tip:
+            places |= set(np.linspace(self.tip.begins, self.stations[-1].at, 2001))
+        edges = [self.shape(at) for at in sorted(places)]
         chords, places = [e.tail[0] - e.nose[0] for e in edges], [e.at for e in edges]
         return float(np.trapezoid(chords, places)) * (2 if self.mirrored else 1)

@@ -1,17 +1,24 @@
 """Router files, read and audited by ezdxf."""
 
 import itertools
+import re
 
 import ezdxf
 import numpy as np
+import pytest
+import shapely
 from ezdxf import recover
 
 import curves
 
 # Layers and their colour numbers, as docs/pack.md tells the maker.
-LAYERS = {"CUT_OUTSIDE": 1, "CUT_INSIDE": 2, "REFERENCE": 5, "LABEL": 3, "CHECK": 8}
+LAYERS = {"CUT_OUTSIDE": 1, "CUT_INSIDE": 2, "DRILL": 6, "ENGRAVE": 30, "TAB": 7, "REFERENCE": 5, "LABEL": 3, "CHECK": 8}
+# A layer for each depth of a pocket comes with the pocket.
+POCKET = re.compile(r"POCKET_(\d+)(?:_(\d+))?MM")
 # Lines are cut or measured from; words are on a layer of their own, and no check line is in a router file.
 KINDS = {("CUT_OUTSIDE", "LWPOLYLINE"), ("REFERENCE", "LWPOLYLINE"), ("LABEL", "TEXT")}
+# What only some pieces have.
+MORE = {("CUT_INSIDE", "LWPOLYLINE"), ("DRILL", "LWPOLYLINE"), ("ENGRAVE", "LWPOLYLINE"), ("TAB", "LWPOLYLINE")}
 # A decimal of the router's tolerance for the spacing of the points compared and the rounding of the file, mm.
 ROUNDING = 0.001
 # Shortest segment that a router's controller takes without a dwell, mm: common practice, no source.
@@ -23,7 +30,7 @@ def modelspace(path):
 
 
 def test_audit_finds_nothing_to_repair(pack):
-    for path in pack.paths("dxf"):
+    for path in [*pack.paths("dxf"), *pack.sheets(), *pack.r12()]:
         audit = ezdxf.readfile(path).audit()
         assert (audit.errors, audit.fixes) == ([], []), path.name
         _, audit = recover.readfile(path)
@@ -32,7 +39,7 @@ def test_audit_finds_nothing_to_repair(pack):
 
 def test_release_and_units(pack):
     # DXF reference, header variables: AC1015 is release 2000, $INSUNITS 4 millimetres, $MEASUREMENT 1 metric.
-    for path in pack.paths("dxf"):
+    for path in [*pack.paths("dxf"), *pack.sheets()]:
         document = ezdxf.readfile(path)
         found = document.dxfversion, document.header["$INSUNITS"], document.header["$MEASUREMENT"]
         assert found == ("AC1015", 4, 1), path.name
@@ -43,15 +50,16 @@ def test_layers_are_those_of_the_hand_book(pack):
         document = ezdxf.readfile(path)
         # Layer 0 is in every drawing; ezdxf adds Defpoints when it reads one.
         layers = {layer.dxf.name: layer.color for layer in document.layers if layer.dxf.name not in ("0", "Defpoints")}
+        pockets = {name for name in layers if POCKET.fullmatch(name)}
+        assert all(layers.pop(name) == 4 for name in pockets), path.name
         assert layers == LAYERS, path.name
 
 
 def test_each_layer_holds_what_it_is_for(pack):
     for path in pack.paths("dxf"):
         kinds = {(entity.dxf.layer, entity.dxftype()) for entity in modelspace(path)}
-        # Slots and bores are in the wood alone.
-        if path.stem.endswith(("-core", "-main", "-flap")):
-            kinds -= {("CUT_INSIDE", "LWPOLYLINE")}
+        pockets = {kind for kind in kinds if POCKET.fullmatch(kind[0]) and kind[1] == "LWPOLYLINE"}
+        kinds -= MORE | pockets
         assert kinds == KINDS, f"{path.name}: {sorted(kinds ^ KINDS)}"
 
 
@@ -77,7 +85,7 @@ def test_nothing_is_drawn_twice(pack):
         # A line drawn backwards is the same line.
         drawn = [e for e in modelspace(path) if e.dxftype() != "TEXT"]
         lines = [np.round(curves.along_polyline(e), 4) if e.dxftype() == "LWPOLYLINE"
-                 else np.round([e.dxf.start[:2], e.dxf.end[:2]], 4) for e in drawn]
+                 else np.round([e.dxf.start[:2], e.dxf.end[:2]], 4) for e in drawn if e.dxf.layer != "TAB"]
         for one, other in itertools.combinations(lines, 2):
             same = one.shape == other.shape and (np.array_equal(one, other) or np.array_equal(one, other[::-1]))
             assert not same, path.name
@@ -140,12 +148,58 @@ def test_reference_lines_lie_where_the_label_says(pack):
 
 
 def test_planform_corners_are_the_lofted_edges(pack):
+    """Every corner is the nose or the trailing edge at its place, and no station or beginning of a tip is without one."""
     design = pack.design
     [contour] = modelspace(pack.planform("dxf")).query("*[layer=='CUT_OUTSIDE']")
     corners = np.array(contour.get_points("xy"))
-    expected = []
-    for shape in (design.shape(s.at) for s in design.stations):
+    for x, y in corners:
+        shape = design.shape(min(abs(x), design.stations[-1].at))
+        assert min(abs(-y - shape.nose[0]), abs(-y - shape.tail[0])) < 1e-4, f"corner at {x}, {y}"
+    places = [s.at for s in design.stations] + ([design.tip.begins] if design.tip else [])
+    for shape in map(design.shape, places):
         for x in (shape.nose[0], shape.tail[0]):
-            expected += [(side * shape.at, -x) for side in ((1, -1) if design.mirrored else (1,))]
-    far = np.hypot(*(np.array(expected)[:, None] - corners).T).min(axis=0)
-    assert far.max() < 1e-4, f"{far.max()} mm from a corner"
+            for side in (1, -1) if design.mirrored else (1,):
+                assert np.hypot(*(corners - [side * shape.at, -x]).T).min() < 1e-4, f"no corner at {side * shape.at}"
+
+
+def closed_rings(path) -> dict[str, list]:
+    """Closed contours of a file by layer, as closely spaced points, in either release."""
+    rings = {}
+    for entity in modelspace(path).query("LWPOLYLINE POLYLINE"):
+        closed = entity.closed if entity.dxftype() == "LWPOLYLINE" else entity.is_closed
+        if closed:
+            rings.setdefault(entity.dxf.layer, []).append(curves.along_polyline(entity))
+    return rings
+
+
+def test_sheets_hold_every_piece_and_nothing_beyond_their_edge(pack, measured):
+    stock = pack.design.stock
+    pieces = sorted(shapely.Polygon(closed_rings(path)["CUT_OUTSIDE"][0]).area for path in pack.paths("dxf"))
+    laid = []
+    for path in pack.sheets():
+        rings = closed_rings(path)
+        [edge] = rings.pop("REFERENCE", [])[:1]
+        assert (edge.min(axis=0), edge.max(axis=0)) == (pytest.approx([0, 0]), pytest.approx([stock.length, stock.width])), path.name
+        for entity in modelspace(path).query("LWPOLYLINE"):
+            points = curves.along_polyline(entity)
+            assert (points >= -1e-6).all() and (points <= np.array([stock.length, stock.width]) + 1e-6).all(), path.name
+        cut = [shapely.Polygon(ring) for ring in rings["CUT_OUTSIDE"]]
+        inside = shapely.box(stock.margin, stock.margin, stock.length - stock.margin, stock.width - stock.margin)
+        assert all(inside.buffer(1e-6).contains(piece) for piece in cut), path.name
+        gaps = [one.distance(other) for one, other in itertools.combinations(cut, 2)]
+        assert min(gaps, default=99) >= stock.spacing - 1e-6, f"{path.name}: {min(gaps)} mm between two pieces"
+        measured("gap between pieces on a sheet, mm", min(gaps, default=99))
+        laid += [piece.area for piece in cut]
+    assert sorted(laid) == pytest.approx(pieces, rel=1e-6)
+
+
+def test_r12_says_the_same_as_release_2000(pack):
+    for path in pack.r12():
+        document = ezdxf.readfile(path)
+        assert document.dxfversion == "AC1009", path.name
+        newer = path.with_name(path.name.replace("-r12.dxf", ".dxf"))
+        one, other = closed_rings(path), closed_rings(newer)
+        assert one.keys() == other.keys(), path.name
+        for layer, rings in one.items():
+            for a, b in zip(rings, other[layer], strict=True):
+                assert curves.apart(a, b) < 1e-4, f"{path.name}, {layer}"

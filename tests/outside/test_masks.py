@@ -1,12 +1,18 @@
 """Printable masks, read by trimesh; their openings measured with shapely."""
 
+import re
+
 import numpy as np
 import pytest
+import scipy.optimize
 import shapely
+import shapely.affinity
 import trimesh
-from shapely import Polygon
+from shapely import Point, Polygon
 
 import curves
+import test_wood
+from conftest import FILES
 
 # How true a pair closes round the section: the promise of the pack, mm.
 CLOSES_WITHIN = 0.05
@@ -59,14 +65,27 @@ def test_header_is_that_of_the_binary_form(pack):
         assert not path.read_bytes()[:80].lstrip().lower().startswith(b"solid"), path.name
 
 
-def test_plates_lie_on_the_bed_and_fit_it(pack):
+def test_pieces_lie_on_the_bed_and_fit_it(pack):
     design = pack.design
-    room = sorted(size - 2 * design.bed_margin for size in design.bed[:2])
+    room = [size - 2 * design.bed_margin for size in design.bed[:2]]
     for path in pack.paths("stl"):
         low, high = load(path).bounds
-        assert (low[2], high[2]) == pytest.approx((0, design.mask_thickness), abs=1e-5), path.name
+        assert low[2] == pytest.approx(0, abs=1e-5), path.name
+        if path in pack.plates():
+            assert high[2] == pytest.approx(design.mask_thickness, abs=1e-5), path.name
         assert high[2] <= design.bed[2]
-        assert all(size <= space for size, space in zip(sorted((high - low)[:2]), room, strict=True)), path.name
+        sides = sorted((high - low)[:2])
+        assert all(size <= space for size, space in zip(sides, sorted(room), strict=True)), path.name
+
+
+def test_nothing_hangs_over(pack, measured):
+    """No facet but those on the bed looks down: printed as it lies, nothing needs support."""
+    for path in pack.paths("stl"):
+        mesh = load(path)
+        lies = mesh.triangles[:, :, 2].max(axis=1) < 1e-4
+        lowest = mesh.face_normals[~lies, 2].min()
+        measured("steepest overhang, sine", lowest)
+        assert lowest > -1e-3, path.name
 
 
 # Depth of the engraved letters, mm.
@@ -83,7 +102,7 @@ def letters(path, pack) -> list[Polygon]:
 
 
 def test_volume_is_face_times_thickness_less_the_letters(pack):
-    for path in pack.paths("stl"):
+    for path in pack.plates():
         depth = min(ENGRAVED, 0.35 * pack.design.mask_thickness)
         taken = depth * sum(letter.area for letter in letters(path, pack))
         expected = face(path, 0.4 * pack.design.mask_thickness).area * pack.design.mask_thickness - taken
@@ -92,7 +111,7 @@ def test_volume_is_face_times_thickness_less_the_letters(pack):
 
 def test_strokes_keep_apart_and_leave_a_rim(pack):
     """A nozzle of 0.4 mm needs a gap between strokes, and wood is read by what stands round a letter."""
-    for path in pack.paths("stl"):
+    for path in pack.plates():
         strokes = letters(path, pack)
         assert len(strokes) > 20, f"{path.name}: {len(strokes)} strokes"
         for i, one in enumerate(strokes):
@@ -104,9 +123,10 @@ def test_strokes_keep_apart_and_leave_a_rim(pack):
 
 def pairs(pack):
     for shape, paths in pack.at_stations("stl"):
-        [upper] = [p for p in paths if "upper" in p.name]
-        [lower] = [p for p in paths if "lower" in p.name]
-        yield shape, [face(path, 0.5 * pack.design.mask_thickness) for path in (upper, lower)]
+        # A half that is longer than the bed comes in several pieces.
+        halves = [[face(path, 0.5 * pack.design.mask_thickness) for path in paths if word in path.name]
+                  for word in ("upper", "lower")]
+        yield shape, [shapely.union_all(pieces, grid_size=1e-4) for pieces in halves]
 
 
 def test_halves_close_to_one_opening(pack):
@@ -148,3 +168,88 @@ def test_halves_can_be_taken_off(pack):
             for step in np.linspace(0, 1.5 * height, 31):
                 moved = shapely.affinity.translate(half, 0, way * step)
                 assert not moved.intersects(section), f"station {shape.at}: stuck after {step:.2f} mm"
+
+
+def cradles(pack):
+    """Span and face of each cradle, with its blocks put together."""
+    found = {}
+    for _, path in pack.with_role("cradle"):
+        start, end, face_name = re.search(r"cradle-([\d.]+)-to-([\d.]+)-(lower|upper)", path.name).groups()
+        found.setdefault((float(start), float(end), face_name), []).append(load(path))
+    return found
+
+
+SHOP = pytest.mark.parametrize("pack", [p for p in FILES if "cradles" in p.read_text(encoding="utf-8")], indirect=True)
+
+
+@SHOP
+def test_the_wood_lies_in_its_cradles(pack, measured):
+    """The core, from the exact finished outline and its even skin, laid into the cradle at a place between its ends: all of
+    the face lies the clearance away. The board's height is common to all: found once, from the first."""
+    skin = test_wood.Skin(pack.design.path)
+    assert len(cradles(pack)) == 2 * (len(pack.design.templates) - 1)
+    heights = {}
+    for (start, end, face_name), blocks in cradles(pack).items():
+        for share in (0.15, 0.5, 0.9):
+            at = start + share * (end - start)
+            shape = pack.design.shape(at)
+            depth = skin.thickness(True, at, 0.5 * shape.chord, shape.chord)
+            core = Polygon(shape.ring).buffer(-depth, quad_segs=64)
+            along = shape.tail - shape.nose
+            turn = np.degrees(np.arctan2(along[1], along[0]))
+            core = shapely.affinity.translate(shapely.affinity.rotate(core, turn, origin=(0, 0)), *shape.nose)
+            sign = 1 if face_name == "lower" else -1
+            points = shapely.get_coordinates(shapely.segmentize(core.exterior, 0.2)) * [1, sign]
+            cuts = [block.section(plane_origin=[0, sign * at, 0], plane_normal=[0, 1, 0]) for block in blocks]
+            block = shapely.union_all([Polygon(cut.discrete[0][:, [0, 2]]) for cut in cuts], grid_size=1e-4)
+            inner = points[(points[:, 0] > points[:, 0].min() + 3) & (points[:, 0] < points[:, 0].max() - 3)]
+            lower = inner[inner[:, 1] < np.interp(inner[:, 0], *middle_line(points))]
+            top = block.boundary
+            # Let down until the mean gap is the clearance: the same height for every cradle of a face.
+            height = heights.get(face_name)
+            if height is None:
+                height = scipy.optimize.brentq(
+                    lambda h: np.mean([top.distance(Point(x, y + h)) for x, y in lower[::9]]) - pack.design.clearance, 5, 80)
+                heights[face_name] = height
+            gaps = np.array([top.distance(Point(x, y + height)) for x, y in lower])
+            assert not any(block.contains(Point(x, y + height)) for x, y in lower)
+            measured("gap between wood and cradle less the clearance, mm", gaps.min() - pack.design.clearance)
+            measured("gap between wood and cradle less the clearance, mm", gaps.max() - pack.design.clearance)
+            assert abs(gaps - pack.design.clearance).max() < CLOSES_WITHIN, f"{at} {face_name}: {gaps.min():.3f} {gaps.max():.3f}"
+
+
+def middle_line(points):
+    """Half way between the lowest and the highest point of each stretch along the chord."""
+    places = np.linspace(points[:, 0].min(), points[:, 0].max(), 60)
+    near = [points[abs(points[:, 0] - x) < 1.0, 1] for x in places]
+    return places, [0.5 * (ys.min() + ys.max()) for ys in near]
+
+
+@SHOP
+def test_rails_stand_proud_of_the_wood_by_what_was_asked(pack, measured):
+    skin = test_wood.Skin(pack.design.path)
+    by_place = {}
+    for at, path in pack.with_role("end rail"):
+        by_place.setdefault((at, "upper" if "-upper" in path.name else "lower"), []).append(face(path, 0.3 * pack.design.mask_thickness))
+    assert len(by_place) == 2 * len(pack.design.stations)
+    heights = {}
+    for (at, face_name), plates in by_place.items():
+        shape = pack.design.shape(at)
+        depth = skin.thickness(True, at, 0.5 * shape.chord, shape.chord)
+        core = Polygon(shape.ring).buffer(-depth, quad_segs=64)
+        along = shape.tail - shape.nose
+        core = shapely.affinity.rotate(core, np.degrees(np.arctan2(along[1], along[0])), origin=(0, 0))
+        core = shapely.affinity.translate(core, *shape.nose)
+        proud = core.buffer(pack.design.rail_offset, quad_segs=64)
+        sign = 1 if face_name == "upper" else -1
+        proud = shapely.affinity.scale(proud, 1, sign, origin=(0, 0))
+        plate = shapely.union_all(plates, grid_size=1e-4)
+        left, _, right, _ = core.bounds
+        for x in np.linspace(left + 2, right - 2, 25):
+            upright = shapely.LineString([(x, -200), (x, 200)])
+            edge = plate.intersection(upright).bounds[3]
+            wanted = proud.intersection(upright).bounds[3]
+            # Rails of one face stand on one board.
+            height = heights.setdefault(face_name, edge - wanted)
+            measured("edge of a rail from the wood moved out, mm", edge - wanted - height)
+            assert abs(edge - wanted - height) < CLOSES_WITHIN, f"{at} {face_name} at {x:.1f}"

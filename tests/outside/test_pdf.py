@@ -1,6 +1,7 @@
 """Paper templates as PDF, read by poppler and pypdf: is the print true to size, whole and legible everywhere?"""
 
 import re
+import xml.etree.ElementTree as ElementTree
 
 import ezdxf
 import numpy as np
@@ -25,6 +26,9 @@ def pdf(pack):
 
 def test_pages_have_the_size_of_the_paper(pack, pdf):
     for number, size in enumerate(pdf_reading.page_sizes(pdf), 1):
+        if pack.design.roll:
+            assert min(abs(side - pack.design.roll) for side in size) < 0.1, f"page {number}"
+            continue
         assert sorted(size) == pytest.approx(sorted(pack.design.paper), abs=0.1), f"page {number}"
 
 
@@ -56,14 +60,20 @@ def drawing_of(page_text: str) -> str:
 
 def test_as_many_pages_as_the_drawings_need(pack, pdf):
     shown = [drawing_of(text) for text in pdf_reading.page_texts(pdf)]
-    for path in pack.paths("dxf"):
-        header = ezdxf.readfile(path).header
-        extent = np.subtract(header["$EXTMAX"], header["$EXTMIN"])[:2]
-        needed = tiles_needed(extent, pack.design.paper, pack.design.paper_margin, pack.design.overlap)
-        name = re.search(r"(planform|station)-?([\d.]+)?\.dxf$", path.name)
+    for path in pack.paths("svg"):
+        # The single page of a drawing is larger by these; a small drawing has a page of 110 mm of its own, and one tile.
+        size = ElementTree.parse(path).getroot().get("viewBox").split()[2:]
+        extent = np.array(size, dtype=float) - [34, 43]
+        if pack.design.roll:
+            # Both ways round; the end of a roll is where the drawing ends.
+            room = pack.design.roll - 2 * pack.design.paper_margin - STRIP
+            needed = 1 if (extent <= [room, room - TITLE]).any() else 2
+        else:
+            needed = tiles_needed(extent, pack.design.paper, pack.design.paper_margin, pack.design.overlap)
+        name = re.search(r"(planform|station)-?([\d.]+)?\.svg$", path.name)
         if not name:
             # Wood has a file of pages of its own.
-            assert re.search(r"-(core|main|flap)\.dxf$", path.name)
+            assert re.search(r"-(core|main|flap)\.svg$", path.name)
             continue
         title = "planform" if name[1] == "planform" else f"station {name[2]} mm"
         assert shown.count(title) == needed, f"{title}: {shown.count(title)} pages, {needed} needed"
@@ -96,11 +106,7 @@ def test_check_lines_are_drawn_100_mm_long(pack, pdf):
 
 
 def printed_check_line(page: np.ndarray, dots: int, side: int) -> float:
-    """Length of the level check line between the middles of its two end ticks, mm; side 1: measured below it, -1: above.
-
-    Error: pdftoppm draws a thin line on whole dots, so that the middle of a tick is off by up to half a dot at each end:
-    together at most one dot, 0.042 mm at 600 dots an inch and 0.021 mm at 1200.
-    """
+    """Length of the level check line between the middles of its two end ticks, mm; side 1: measured below it, -1: above."""
     per_mm = dots / 25.4
     dark = page > 0.5
     # The line is the row with most ink in the strip along the lower edge (the picture holds no other long level line there).
@@ -109,7 +115,7 @@ def printed_check_line(page: np.ndarray, dots: int, side: int) -> float:
     # Ticks stand 2 mm out on both sides; words stand on one of them.
     first, last = sorted(row + side * int(out * per_mm) for out in (0.7, 1.6))
     beside = page[first:last, : int(140 * per_mm)].mean(axis=0)
-    inked = np.flatnonzero(beside > 0.05)
+    inked = np.flatnonzero(beside > 0.02)
     ticks = np.split(inked, np.flatnonzero(np.diff(inked) > per_mm) + 1)
     assert len(ticks) == 2, f"{len(ticks)} ticks"
     middles = [np.average(tick, weights=beside[tick]) for tick in ticks]
@@ -124,17 +130,55 @@ def test_printed_check_lines_at_600_dots(pdf, measured):
     for name, view, side in (("level", page, 1), ("upright", mirrored, -1)):
         length = printed_check_line(view, 600, side)
         measured(f"printed check line, {name}, 600 dots an inch, mm", length)
-        assert length == pytest.approx(CHECK_LENGTH, abs=0.05), name
+        assert length == pytest.approx(CHECK_LENGTH, abs=0.02), name
 
 
-def test_printed_check_line_at_1200_dots(pdf, measured):
-    _, height = pdf_reading.page_sizes(pdf)[0]
-    per_mm = 1200 / 25.4
-    top = int((height - 30) * per_mm)
-    crop = ("-x", 0, "-y", top, "-W", int(145 * per_mm), "-H", int(30 * per_mm))
-    length = printed_check_line(pdf_reading.picture(pdf, 1, 1200, *crop), 1200, 1)
-    measured("printed check line, level, 1200 dots an inch, mm", length)
-    assert length == pytest.approx(CHECK_LENGTH, abs=0.02)
+def test_tiles_put_together_match_the_contour(pack, pdf, measured):
+    """The planform's pages printed, laid cross on cross from left to right, against the corners of the router file: ink must
+    lie where the contour does."""
+    tiles = [(number, strokes) for number, (text, strokes) in
+             enumerate(zip(pdf_reading.page_texts(pdf), pdf_reading.strokes(pdf), strict=True), 1)
+             if drawing_of(text) == "planform" and "row 1 of 1" in text]
+    if len(tiles) < 2:
+        pytest.skip("the planform is on one tile, or on several rows of them")
+    [contour] = ezdxf.readfile(pack.planform("dxf")).modelspace().query("*[layer=='CUT_OUTSIDE']")
+    contour = np.array(contour.get_points("xy"))
+    seams, shift, checked = None, np.zeros(2), 0
+    for number, strokes in tiles:
+        crosses = np.array(sorted({tuple(np.round(s.points.mean(axis=0), 3)) for s in strokes if is_mark(s)}))
+        middle = crosses[:, 0].mean() if seams is not None and number != tiles[-1][0] else None
+        left = crosses if number == tiles[-1][0] else crosses[crosses[:, 0] < middle] if middle else crosses[:0]
+        right = crosses if seams is None else crosses[crosses[:, 0] > middle] if middle else crosses[:0]
+        if seams is None:
+            # The first tile is laid by its outline; all others by the crosses alone.
+            [outline] = [s for s in strokes if abs(s.width - OUTLINE_PEN) < 0.01 and len(s.points) > 3]
+            shift = outline.points.min(axis=0) - contour.min(axis=0)
+        else:
+            shift = shift + (left - seams).mean(axis=0)
+        seams = right
+        page = pdf_reading.picture(pdf, number, 600)
+        per_mm = 600 / 25.4
+        for start, end in zip(contour, np.roll(contour, -1, axis=0)):
+            along = (end - start) / np.hypot(*(end - start))
+            across = np.array([-along[1], along[0]])
+            for share in np.linspace(0.03, 0.97, 40):
+                place = start + share * (end - start) + shift
+                # Well inside of the window of this tile.
+                width, height = page.shape[1] / per_mm, page.shape[0] / per_mm
+                if not (30 < place[0] < width - 15 and 30 < place[1] < height - 25):
+                    continue
+                steps = np.arange(-0.6, 0.6, 0.02)
+                dots = place + steps[:, None] * across
+                ink = page[(page.shape[0] - dots[:, 1] * per_mm).astype(int), (dots[:, 0] * per_mm).astype(int)]
+                if abs(ink.sum() * 0.02 - OUTLINE_PEN) > 0.06:
+                    # A station line crosses here.
+                    assert ink.sum() > 0, f"page {number}: no ink on the contour"
+                    continue
+                off = np.average(steps, weights=ink)
+                measured("printed and joined contour from the router file, mm", off)
+                assert abs(off) < 0.1, f"page {number}: {off:.3f} mm"
+                checked += 1
+    assert checked > 40
 
 
 def test_printed_outlines_follow_the_equations(pack, pdf, measured):

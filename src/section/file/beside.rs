@@ -3,7 +3,7 @@
 use std::fmt;
 use std::io;
 
-use crate::problems::FileErrors;
+use crate::problems::{FileErrors, text_of};
 use crate::section::coordinates::{self, LARGEST_DRAWING, LARGEST_TABLE};
 use crate::section::{Finish, LARGEST_SECTION_FILE, Section, SectionError};
 
@@ -118,6 +118,16 @@ impl<'a> Beside<'a> {
         Ok(Section::fitted(name, traced))
     }
 
+    /// The text of a file that is named, its path, and what lies beside it in turn.
+    pub(crate) fn text_of(
+        &self,
+        name: &str,
+        most: usize,
+    ) -> Result<(String, String, Self), SectionFileError> {
+        let (path, inner) = self.at(name)?;
+        Ok((self.text(&path, most)?, path, inner))
+    }
+
     /// The path of a named file, and what lies beside that file in turn.
     fn at(&self, name: &str) -> Result<(String, Self), SectionFileError> {
         let wrong = |why| Err(SectionFileError::Name { file: crate::units::clipped(name), why });
@@ -145,15 +155,7 @@ impl<'a> Beside<'a> {
 
     fn text(&self, path: &str, most: usize) -> Result<String, SectionFileError> {
         let bytes = self.bytes(path, most)?;
-        let cut = bytes.len() > most;
-        String::from_utf8(bytes).or_else(|error| {
-            let (at, broken) = (error.utf8_error().valid_up_to(), error.utf8_error().error_len());
-            // The cut may have gone through a character; the parser then says that it is too large.
-            if cut && broken.is_none() {
-                return Ok(String::from_utf8_lossy(error.as_bytes()).into_owned());
-            }
-            Err(SectionFileError::NotText { file: path.to_owned(), at })
-        })
+        text_of(bytes, most).map_err(|at| SectionFileError::NotText { file: path.to_owned(), at })
     }
 }
 

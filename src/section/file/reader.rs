@@ -35,12 +35,7 @@ impl<'a> Reader<'a> {
             self.wrong(0..0, message, "points stand in a file of their own, which [coordinates] names");
             return None;
         }
-        DeTable::parse(self.text)
-            .map_err(|error| {
-                let message = format!("this is not TOML, the form of a section file: {}", error.message());
-                self.problems.add(error.span().unwrap_or(0..0), Wrong::new(message));
-            })
-            .ok()
+        self.problems.toml(self.text, "a section file")
     }
 
     pub(super) fn refuse_unknown(

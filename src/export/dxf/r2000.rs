@@ -1,33 +1,16 @@
-//! Drawings for routers: DXF of release AC1015 (2000), in millimetres.
-//!
-//! Written by hand and not by a library, because the group codes in use are few, every handle is
-//! the same from run to run, and other people's audits find nothing to repair. Group codes are
-//! those of the published DXF reference.
+//! Release AC1015 (2000).
 
-use crate::geometry::ArcPath;
+use super::{Curves, Flavour, Pairs, escaped, layers};
+use crate::geometry::{ArcPath, Point};
 use crate::workshop::{Drawing, Label, Role};
 
-/// Decimals of a coordinate: a tenth of a micrometre.
-const PLACES: usize = 7;
+/// How far a spline may lie from the arcs that it stands for, mm.
+const SPLINE_TOLERANCE: f64 = 1e-4;
 
-/// The drawing as a DXF file. One layer for each role; closed contours are closed light-weight
-/// polylines with arcs as bulges; labels are text.
-#[must_use]
-pub fn dxf(drawing: &Drawing) -> String {
-    let mut file = Writer::default();
+pub(super) fn dxf(drawing: &Drawing, curves: Curves) -> String {
+    let mut file = Writer { pairs: Pairs::default(), next_handle: handle::FIRST_FREE, curves };
     file.document(drawing);
-    file.text
-}
-
-/// Colour number of a role's layer.
-fn colour(role: Role) -> u8 {
-    match role {
-        Role::CutOutside => 1,
-        Role::CutInside => 2,
-        Role::Reference => 5,
-        Role::Label | Role::Caption => 3,
-        Role::Check => 8,
-    }
+    file.pairs.text
 }
 
 /// Handles of the objects that others point to. Those handed out in passing follow them.
@@ -43,32 +26,22 @@ mod handle {
 }
 
 struct Writer {
-    text: String,
+    pairs: Pairs,
     next_handle: u32,
-}
-
-impl Default for Writer {
-    fn default() -> Self {
-        Self { text: String::new(), next_handle: handle::FIRST_FREE }
-    }
+    curves: Curves,
 }
 
 impl Writer {
     fn pair(&mut self, code: u16, value: impl std::fmt::Display) {
-        self.text.push_str(&format!("{code}\n{value}\n"));
+        self.pairs.pair(code, value);
     }
 
     fn pairs(&mut self, pairs: &[(u16, &str)]) {
-        for (code, value) in pairs {
-            self.pair(*code, value);
-        }
+        self.pairs.pairs(pairs);
     }
 
     fn real(&mut self, code: u16, value: f64) {
-        // A real needs its decimal point to be read as one by strict readers.
-        let short = crate::units::number(value, PLACES);
-        let text = if short.contains('.') { short } else { format!("{short}.0") };
-        self.pair(code, text);
+        self.pairs.real(code, value);
     }
 
     fn hex(&mut self, code: u16, value: u32) {
@@ -82,14 +55,14 @@ impl Writer {
 
     fn document(&mut self, drawing: &Drawing) {
         // The header names the first handle that is free, which only the body knows.
-        self.tables();
+        self.tables(drawing);
         self.blocks();
         self.entities(drawing);
         self.objects();
         self.pair(0, "EOF");
-        let body = std::mem::take(&mut self.text);
+        let body = std::mem::take(&mut self.pairs.text);
         self.header(drawing);
-        self.text.push_str(&body);
+        self.pairs.text.push_str(&body);
     }
 
     fn header(&mut self, drawing: &Drawing) {
@@ -108,7 +81,8 @@ impl Writer {
         self.pair(0, "ENDSEC");
     }
 
-    fn tables(&mut self) {
+    fn tables(&mut self, drawing: &Drawing) {
+        let layers = layers(drawing);
         self.pairs(&[(0, "SECTION"), (2, "TABLES")]);
         self.table("VPORT", 0, |_, _| {});
         self.table("LTYPE", 3, |file, table| {
@@ -118,11 +92,10 @@ impl Writer {
                 file.real(40, 0.0);
             }
         });
-        self.table("LAYER", Role::LAYERS.len() + 1, |file, table| {
-            let roles = Role::LAYERS.map(|role| (role.layer(), colour(role)));
-            for (name, colour) in std::iter::once(("0", 7)).chain(roles) {
+        self.table("LAYER", layers.len(), |file, table| {
+            for (name, colour) in layers {
                 file.record("LAYER", table, "AcDbLayerTableRecord");
-                file.pairs(&[(2, name), (70, "0")]);
+                file.pairs(&[(2, &name), (70, "0")]);
                 file.pair(62, colour);
                 file.pair(6, "Continuous");
             }
@@ -197,7 +170,12 @@ impl Writer {
     fn entities(&mut self, drawing: &Drawing) {
         self.pairs(&[(0, "SECTION"), (2, "ENTITIES")]);
         for line in &drawing.lines {
-            self.polyline(line.role, &line.path);
+            let is_curved = line.path.segments().any(|segment| segment.radius().is_some());
+            if is_curved && self.curves == Curves::Splines {
+                self.spline(line.role, &line.path);
+            } else {
+                self.polyline(line.role, &line.path);
+            }
         }
         for label in &drawing.labels {
             self.label(label);
@@ -206,26 +184,48 @@ impl Writer {
     }
 
     fn polyline(&mut self, role: Role, path: &ArcPath) {
-        self.entity("LWPOLYLINE", handle::MODEL_SPACE, role.layer(), "AcDbPolyline");
+        self.entity("LWPOLYLINE", handle::MODEL_SPACE, &role.layer(), "AcDbPolyline");
         self.pair(90, path.vertices().len());
         self.pair(70, u8::from(path.is_closed()));
         for vertex in path.vertices() {
             self.real(10, vertex.point.x);
             self.real(20, vertex.point.y);
-            if vertex.bulge != 0.0 {
-                // Bulges multiply lengths, so they need decimals of their own.
-                self.pair(42, format_args!("{:.12}", vertex.bulge));
+            self.pairs.bulge(vertex.bulge);
+        }
+    }
+
+    /// The path as one cubic spline: each knot where two cubics meet counts three times.
+    fn spline(&mut self, role: Role, path: &ArcPath) {
+        let controls = controls(path);
+        let cubics = (controls.len() - 1) / 3;
+        self.entity("SPLINE", handle::MODEL_SPACE, &role.layer(), "AcDbSpline");
+        // Bits: 1 closed, 8 in a plane.
+        self.pair(70, 8 + u8::from(path.is_closed()));
+        self.pair(71, 3);
+        self.pair(72, controls.len() + 4);
+        self.pair(73, controls.len());
+        self.pair(74, 0);
+        self.real(40, 0.0);
+        for knot in 0..=cubics {
+            for _ in 0..3 {
+                self.real(40, knot as f64);
             }
+        }
+        self.real(40, cubics as f64);
+        for Point { x, y } in controls {
+            self.real(10, x);
+            self.real(20, y);
+            self.real(30, 0.0);
         }
     }
 
     fn label(&mut self, label: &Label) {
-        self.entity("TEXT", handle::MODEL_SPACE, label.role.layer(), "AcDbText");
+        self.entity("TEXT", handle::MODEL_SPACE, &label.role.layer(), "AcDbText");
         self.real(10, label.at.x);
         self.real(20, label.at.y);
         self.real(30, 0.0);
         self.real(40, label.height);
-        self.pair(1, escaped(&label.text));
+        self.pair(1, escaped(&label.text, Flavour::R2000));
         self.real(50, label.turn.to_degrees());
         self.pair(100, "AcDbText");
     }
@@ -272,15 +272,31 @@ impl Writer {
     }
 }
 
-/// Text in plain ASCII, as every reader takes it: other characters by their number.
-fn escaped(text: &str) -> String {
-    text.chars()
-        .map(|c| match c {
-            '°' => "%%d".to_owned(),
-            '²' => "2".to_owned(),
-            ' '..='~' => c.to_string(),
-            c if c.is_control() => " ".to_owned(),
-            c => format!("\\U+{:04X}", u32::from(c)),
-        })
-        .collect()
+/// Control points of a path's cubics, those that two share once.
+fn controls(path: &ArcPath) -> Vec<Point> {
+    use kurbo::PathEl;
+    let mut controls: Vec<Point> = Vec::new();
+    let line = |controls: &mut Vec<Point>, to: Point| {
+        let from = controls.last().copied().unwrap_or(to);
+        controls.extend([from.lerp(to, 1.0 / 3.0), from.lerp(to, 2.0 / 3.0), to]);
+    };
+    for element in path.to_bezier(SPLINE_TOLERANCE).elements() {
+        match *element {
+            PathEl::MoveTo(p) => controls.push(p),
+            PathEl::LineTo(p) => line(&mut controls, p),
+            PathEl::QuadTo(q, p) => {
+                let from = controls.last().copied().unwrap_or(p);
+                controls.extend([from.lerp(q, 2.0 / 3.0), p.lerp(q, 2.0 / 3.0), p]);
+            }
+            PathEl::CurveTo(a, b, p) => controls.extend([a, b, p]),
+            PathEl::ClosePath => {
+                if let (Some(&first), Some(&last)) = (controls.first(), controls.last())
+                    && first.distance(last) > 1e-9
+                {
+                    line(&mut controls, first);
+                }
+            }
+        }
+    }
+    controls
 }

@@ -1,8 +1,7 @@
 //! Viscous flow over a range of incidence.
 
-use std::sync::atomic::{AtomicUsize, Ordering};
-
 use super::{Conditions, Viscous, ViscousError, ViscousSolution};
+use crate::flow::side_by_side::{processors, side_by_side_on};
 
 /// Points from which a neighbour is still started from, over gaps.
 const FAR: usize = 3;
@@ -45,7 +44,7 @@ impl LiftCurve {
         conditions: &Conditions,
         incidences: &[f64],
     ) -> Result<Self, ViscousError> {
-        let mut curves = Self::sweep_all(viscous, std::slice::from_ref(conditions), incidences)?;
+        let mut curves = Self::sweep_on(1, viscous, std::slice::from_ref(conditions), incidences)?;
         Ok(curves.remove(0))
     }
 
@@ -60,8 +59,7 @@ impl LiftCurve {
         conditions: &[Conditions],
         incidences: &[f64],
     ) -> Result<Vec<Self>, ViscousError> {
-        let processors = std::thread::available_parallelism().map_or(1, usize::from);
-        Self::sweep_on(processors, viscous, conditions, incidences)
+        Self::sweep_on(processors(), viscous, conditions, incidences)
     }
 
     /// As [`LiftCurve::sweep_all`], on so many threads.
@@ -89,11 +87,14 @@ impl LiftCurve {
         // Slow water has the most trouble, and so goes first.
         let mut order: Vec<usize> = (0..conditions.len()).collect();
         order.sort_by(|&a, &b| conditions[a].reynolds.total_cmp(&conditions[b].reynolds));
-        let begun = side_by_side(threads, order.len(), |job| {
+        let jobs: Vec<usize> = (0..2 * order.len()).collect();
+        let quiet = |_| ();
+        let begin = |&job: &usize| {
             let start = sorted.get(first).map(|&at| viscous.at(at, &conditions[order[job]], None));
             start.and_then(Result::ok)
-        });
-        let ways = side_by_side(threads, 2 * order.len(), |job| {
+        };
+        let begun = side_by_side_on(threads, &jobs[..order.len()], begin, quiet);
+        let go = |&job: &usize| {
             let (curve, start) = (order[job / 2], begun[job / 2].clone());
             let way = if job % 2 == 0 { &sorted[first..] } else { &sorted[..(first + 1).min(sorted.len())] };
             let mut points = open(way);
@@ -105,15 +106,17 @@ impl LiftCurve {
             }
             carry(viscous, &conditions[curve], &mut points);
             points
-        });
-        let closed = side_by_side(threads, order.len(), |job| {
+        };
+        let ways = side_by_side_on(threads, &jobs, go, quiet);
+        let close = |&job: &usize| {
             let [up, down] = [&ways[2 * job], &ways[2 * job + 1]];
             // Gaps, from the side that was not tried.
             let mut points: Vec<CurvePoint> = up.iter().rev().chain(down.iter().skip(1)).cloned().collect();
             carry(viscous, &conditions[order[job]], &mut points);
             points.reverse();
             points
-        });
+        };
+        let closed = side_by_side_on(threads, &jobs[..order.len()], close, quiet);
         let mut curves: Vec<(usize, Self)> = std::iter::zip(order, closed)
             .map(|(i, points)| {
                 (i, Self { conditions: conditions[i], panels: viscous.panelling().len(), points })
@@ -176,32 +179,6 @@ impl LiftCurve {
     pub fn least_drag(&self) -> Option<&ViscousSolution> {
         self.solutions().min_by(|a, b| a.cd.total_cmp(&b.cd))
     }
-}
-
-/// What `work` makes of the numbers from nought to `count`, in their order, on so many threads.
-fn side_by_side<T: Send>(threads: usize, count: usize, work: impl Fn(usize) -> T + Sync) -> Vec<T> {
-    let next = AtomicUsize::new(0);
-    let take = || {
-        let mut done = Vec::new();
-        loop {
-            let i = next.fetch_add(1, Ordering::Relaxed);
-            if i >= count {
-                return done;
-            }
-            done.push((i, work(i)));
-        }
-    };
-    let mut done: Vec<(usize, T)> = std::thread::scope(|scope| {
-        let others: Vec<_> = (1..threads.min(count)).map(|_| scope.spawn(take)).collect();
-        let mut done = take();
-        for thread in others {
-            // A thread can only fail by a panic, which is passed on.
-            done.extend(thread.join().unwrap_or_else(|panic| std::panic::resume_unwind(panic)));
-        }
-        done
-    });
-    done.sort_by_key(|&(i, _)| i);
-    done.into_iter().map(|(_, result)| result).collect()
 }
 
 fn open(incidences: &[f64]) -> Vec<CurvePoint> {

@@ -9,7 +9,21 @@ pub fn side_by_side<T: Sync, R: Send>(
     work: impl Fn(&T) -> R + Sync,
     done: impl Fn(usize) + Sync,
 ) -> Vec<R> {
-    let workers = std::thread::available_parallelism().map_or(1, usize::from).min(items.len());
+    side_by_side_on(processors(), items, work, done)
+}
+
+pub(super) fn processors() -> usize {
+    std::thread::available_parallelism().map_or(1, usize::from)
+}
+
+/// As [`side_by_side`], on so many threads.
+pub(super) fn side_by_side_on<T: Sync, R: Send>(
+    threads: usize,
+    items: &[T],
+    work: impl Fn(&T) -> R + Sync,
+    done: impl Fn(usize) + Sync,
+) -> Vec<R> {
+    let workers = threads.min(items.len());
     let (next, finished) = (AtomicUsize::new(0), AtomicUsize::new(0));
     let part = || {
         let mut made = Vec::new();

@@ -1,8 +1,7 @@
 //! Viscous flow over a range of incidence.
 
-use std::sync::atomic::{AtomicUsize, Ordering};
-
 use super::{Conditions, Viscous, ViscousError, ViscousSolution};
+use crate::flow::side_by_side::{processors, side_by_side_on};
 
 /// Points from which a neighbour is still started from, over gaps.
 const FAR: usize = 3;
@@ -45,7 +44,7 @@ impl LiftCurve {
         conditions: &Conditions,
         incidences: &[f64],
     ) -> Result<Self, ViscousError> {
-        let mut curves = Self::sweep_all(viscous, std::slice::from_ref(conditions), incidences)?;
+        let mut curves = Self::sweep_on(1, viscous, std::slice::from_ref(conditions), incidences)?;
         Ok(curves.remove(0))
     }
 
@@ -60,8 +59,7 @@ impl LiftCurve {
         conditions: &[Conditions],
         incidences: &[f64],
     ) -> Result<Vec<Self>, ViscousError> {
-        let processors = std::thread::available_parallelism().map_or(1, usize::from);
-        Self::sweep_on(processors, viscous, conditions, incidences)
+        Self::sweep_on(processors(), viscous, conditions, incidences)
     }
 
     /// As [`LiftCurve::sweep_all`], on so many threads.
@@ -89,11 +87,14 @@ impl LiftCurve {
         // Slow water has the most trouble, and so goes first.
         let mut order: Vec<usize> = (0..conditions.len()).collect();
         order.sort_by(|&a, &b| conditions[a].reynolds.total_cmp(&conditions[b].reynolds));
-        let begun = side_by_side(threads, order.len(), |job| {
+        let jobs: Vec<usize> = (0..2 * order.len()).collect();
+        let quiet = |_| ();
+        let begin = |&job: &usize| {
             let start = sorted.get(first).map(|&at| viscous.at(at, &conditions[order[job]], None));
             start.and_then(Result::ok)
-        });
-        let ways = side_by_side(threads, 2 * order.len(), |job| {
+        };
+        let begun = side_by_side_on(threads, &jobs[..order.len()], begin, quiet);
+        let go = |&job: &usize| {
             let (curve, start) = (order[job / 2], begun[job / 2].clone());
             let way = if job % 2 == 0 { &sorted[first..] } else { &sorted[..(first + 1).min(sorted.len())] };
             let mut points = open(way);
@@ -105,15 +106,17 @@ impl LiftCurve {
             }
             carry(viscous, &conditions[curve], &mut points);
             points
-        });
-        let closed = side_by_side(threads, order.len(), |job| {
+        };
+        let ways = side_by_side_on(threads, &jobs, go, quiet);
+        let close = |&job: &usize| {
             let [up, down] = [&ways[2 * job], &ways[2 * job + 1]];
             // Gaps, from the side that was not tried.
             let mut points: Vec<CurvePoint> = up.iter().rev().chain(down.iter().skip(1)).cloned().collect();
             carry(viscous, &conditions[order[job]], &mut points);
             points.reverse();
             points
-        });
+        };
+        let closed = side_by_side_on(threads, &jobs[..order.len()], close, quiet);
         let mut curves: Vec<(usize, Self)> = std::iter::zip(order, closed)
             .map(|(i, points)| {
                 (i, Self { conditions: conditions[i], panels: viscous.panelling().len(), points })
@@ -176,32 +179,6 @@ impl LiftCurve {
     pub fn least_drag(&self) -> Option<&ViscousSolution> {
         self.solutions().min_by(|a, b| a.cd.total_cmp(&b.cd))
     }
-}
-
-/// What `work` makes of the numbers from nought to `count`, in their order, on so many threads.
-fn side_by_side<T: Send>(threads: usize, count: usize, work: impl Fn(usize) -> T + Sync) -> Vec<T> {
-    let next = AtomicUsize::new(0);
-    let take = || {
-        let mut done = Vec::new();
-        loop {
-            let i = next.fetch_add(1, Ordering::Relaxed);
-            if i >= count {
-                return done;
-            }
-            done.push((i, work(i)));
-        }
-    };
-    let mut done: Vec<(usize, T)> = std::thread::scope(|scope| {
-        let others: Vec<_> = (1..threads.min(count)).map(|_| scope.spawn(take)).collect();
-        let mut done = take();
-        for thread in others {
-            // A thread can only fail by a panic, which is passed on.
-            done.extend(thread.join().unwrap_or_else(|panic| std::panic::resume_unwind(panic)));
-        }
-        done
-    });
-    done.sort_by_key(|&(i, _)| i);
-    done.into_iter().map(|(_, result)| result).collect()
 }
 
 fn open(incidences: &[f64]) -> Vec<CurvePoint> {
@@ -272,31 +249,56 @@ fn from_neighbour(
 /// Offsets, in degrees, at which a start is looked for when a point has none of its own.
 const DETOURS: [f64; 8] = [1.0, -1.0, 2.0, -2.0, 3.5, -3.5, 5.0, -5.0];
 
+/// Factors of the Reynolds number at which a start is looked for when none is found at its own.
+const OTHER_REYNOLDS: [f64; 6] = [2.0, 0.5, 5.0, 0.2, 20.0, 0.05];
+
 /// By way of a point nearby that can be started afresh.
 pub(super) fn by_detour(viscous: &Viscous, conditions: &Conditions, target: f64) -> Option<ViscousSolution> {
-    DETOURS.iter().find_map(|offset| {
+    let by_incidence = DETOURS.iter().find_map(|offset| {
         let near = viscous.attempt(target + offset.to_radians(), conditions, None)?;
         by_halves(viscous, conditions, &near, target)
+    });
+    by_incidence.or_else(|| by_other_reynolds(viscous, conditions, target))
+}
+
+/// By way of another Reynolds number at which the point can be started afresh.
+fn by_other_reynolds(viscous: &Viscous, conditions: &Conditions, target: f64) -> Option<ViscousSolution> {
+    OTHER_REYNOLDS.iter().find_map(|&factor| {
+        let between =
+            |part: f64| Conditions { reynolds: conditions.reynolds * factor.powf(1.0 - part), ..*conditions };
+        let near = viscous.attempt(target, &between(0.0), None)?;
+        walk(viscous, near, |part| (target, between(part)))
     })
 }
 
-/// From a neighbour in steps that are halved when one fails, and grow again when they do not.
+/// From a neighbour in smaller steps of incidence.
 fn by_halves(
     viscous: &Viscous,
     conditions: &Conditions,
     near: &ViscousSolution,
     target: f64,
 ) -> Option<ViscousSolution> {
-    let mut at = near.clone();
-    let mut step = 0.5 * (target - near.incidence);
+    let from = near.incidence;
+    let between = |part: f64| if part == 1.0 { target } else { from + part * (target - from) };
+    walk(viscous, near.clone(), |part| (between(part), *conditions))
+}
+
+/// From a point along a way that runs from nought to one, in steps that are halved when one fails,
+/// and grow again when they do not.
+fn walk(
+    viscous: &Viscous,
+    from: ViscousSolution,
+    way: impl Fn(f64) -> (f64, Conditions),
+) -> Option<ViscousSolution> {
+    let (mut at, mut gone, mut step) = (from, 0.0, 0.5);
     let mut halvings = 1;
     while halvings <= HALVINGS {
-        let next =
-            if (target - at.incidence).abs() <= step.abs() * 1.001 { target } else { at.incidence + step };
-        match viscous.attempt(next, conditions, Some(&at.state)) {
-            Some(found) if next == target => return Some(found),
+        let next = if gone + step > 0.999 { 1.0 } else { gone + step };
+        let (incidence, conditions) = way(next);
+        match viscous.attempt(incidence, &conditions, Some(&at.state)) {
+            Some(found) if next == 1.0 => return Some(found),
             Some(found) => {
-                at = found;
+                (at, gone) = (found, next);
                 step *= 1.5;
             }
             None => {

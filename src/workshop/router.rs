@@ -168,7 +168,7 @@ fn tabs(path: &ArcPath, settings: RouterSettings) -> Vec<ArcPath> {
     let length: f64 = path.segments().map(|segment| segment.length()).sum();
     let most = (MOST_TABS * length / settings.tab_width) as usize;
     let count = settings.tabs.min(most);
-    let first = if count % 2 == 0 { 0.5 } else { 0.25 };
+    let first = if count.is_multiple_of(2) { 0.5 } else { 0.25 };
     let middle = |i: usize| length * (i as f64 + first) / count as f64;
     (0..count)
         .map(|i| path.part(middle(i) - 0.5 * settings.tab_width, middle(i) + 0.5 * settings.tab_width))

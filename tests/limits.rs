@@ -126,10 +126,11 @@ const LIMITS: &[Limit] = &[
         answer: |n| expression(&format!("x{}", " ".repeat(n - 1))),
     },
     Limit {
-        what: "brackets within brackets",
+        what: "expressions in brackets within expressions",
         most: DEEPEST_EXPRESSION,
         unit: "deep",
-        answer: |n| expression(&format!("{}x{}", "(".repeat(n), ")".repeat(n))),
+        // The whole is the first of them.
+        answer: |n| expression(&format!("{}x{}", "(".repeat(n - 1), ")".repeat(n - 1))),
     },
     Limit {
         what: "table of coordinates",

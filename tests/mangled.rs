@@ -4,15 +4,12 @@
 //! The changes are the same in every run. `PLANKFORM_MANGLED=100000 cargo test --release --test mangled` tries that many of each
 //! kind, further than the short run goes. An input that fails is put into `tests/corpus/`.
 
-mod common;
-
 use std::collections::BTreeMap;
 use std::fs;
 use std::io;
 use std::path::{Path, PathBuf};
 
-use common::demo;
-use plankform::design::Design;
+use plankform::design::{Design, Kind, starter};
 use plankform::geometry::Curve;
 use plankform::section::coordinates::{from_dxf, from_table};
 use plankform::section::{Beside, Expression, Section};
@@ -230,8 +227,7 @@ fn tables_of_coordinates_are_read_or_refused() {
 
 #[test]
 fn drawings_are_read_or_refused() {
-    let text = fs::read_to_string(demo("strut.toml")).expect("the demo");
-    let design = Design::parse(&text, "strut.toml").expect("the demo");
+    let design = Design::parse(&starter(Kind::Fin), "fin.toml").expect("a starter");
     let kinds = plankform::pack::Kinds {
         print: false,
         masks: false,

@@ -89,7 +89,7 @@ fn half_of_the_values_is_refused_with_what_is_missing() {
         &strut.replace("off = \"25 deg\"", "off = \"25 deg\"\nmass = \"3 kg\""),
         "a case of tow takes no mass",
     );
-    problem(&strut.replace("held-to = \"300 mm\"", "held-to = \"850 mm\""), "nothing is left free");
+    problem(&strut.replace("[strength]\n", "[strength]\nheld-to = \"850 mm\"\n"), "nothing is left free");
     problem(&strut.replace("at = \"800 mm\"", "at = \"200 mm\""), "it is held");
     problem(&strut.replace("to = \"810 mm\"", "to = \"900 mm\""), "lies at 900 mm");
     problem(&strut.replace("contraction", "").replace("modulus = \"52 GPa\"", "modulus = \"52\""), "unit");
@@ -107,7 +107,7 @@ fn sections_weigh_as_much_as_wood_and_laminate() {
         format!("{head}{to}{}", rest.split_once(to).expect("there").1)
     };
     let text = cut(&text, "# The rod that works", "# INVENTED values");
-    let text = text.replace("held-to = \"300 mm\"", "held-to = \"0 mm\"");
+    let text = text.replace("[strength]\n", "[strength]\nheld-to = \"0 mm\"\n");
     bench.file("design.toml", &text);
     let answer = bench.run(&["build", "design.toml", "--out", "pack", "--only", "tables"]);
     assert!(answer.status < 2, "{}", answer.err);

@@ -182,8 +182,7 @@ fn checks_outside_their_limit_are_told_and_change_the_exit_status() {
         ("[lift]\ndesign = 2.5\n", &["greatest lift in the range of incidence", STALLS][..]),
         ("[lift]\ndesign = -1.5\n", &["least lift in the range of incidence", STALLS]),
         ("[lift]\ndesign = 0.8\ntop-speed = \"40 kn\"\n", &["the section does not cavitate"]),
-        ("[printer]\nbed-x = \"80 mm\"\nbed-y = \"80 mm\"\n", &["mask fits the printer bed"]),
-        ("[printer]\nbed-z = \"50 mm\"\n[masks]\nthickness = \"55 mm\"\n", &["mask fits the printer bed"]),
+        ("[printer]\nbed-z = \"50 mm\"\n[masks]\nthickness = \"55 mm\"\n", &["printed piece fits the bed"]),
         ("[stock]\nlength = \"300 mm\"\nwidth = \"300 mm\"\n", &["template fits the stock sheet"]),
         ("[duty]\ncarries = \"40 kg\"\ntake-off = \"4 kn\"\n", &["the foil carries its load at take-off"]),
         (

@@ -111,8 +111,11 @@ pub(super) fn from_text(key: &Key, text: &str) -> Result<Value, Wrong> {
         // No length begins with a letter: a word was meant.
         Takes::WordOrLength(words, ..) if text.starts_with(|c: char| c.is_alphabetic()) => {
             let message = format!("{} is '{}': it takes {}", key.name, clipped(text), key.takes.describe());
-            let near = nearest(text, words.iter().copied()).unwrap_or(key.example);
-            Err(Wrong::new(message).help(format!("for example \"{near}\"")))
+            let help = match nearest(text, words.iter().copied()) {
+                Some(near) => format!("did you mean \"{near}\"?"),
+                None => format!("for example \"{}\"", key.example),
+            };
+            Err(Wrong::new(message).help(help))
         }
         Takes::Word(words) => match words.contains(&text) {
             true => Ok(Value::Text(text.to_owned())),

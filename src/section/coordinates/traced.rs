@@ -12,6 +12,8 @@ use crate::units::clipped;
 
 /// What the outline is followed within where the user says nothing, in chords.
 pub(super) const DRAWN: f64 = 1e-5;
+/// What is smaller than this share of the drawing is no section but a letter or a mark.
+const MARK: f64 = 0.15;
 /// Shares of the size of the drawing: ends that are nearer than the first are joined.
 const JOIN: f64 = 1e-4;
 const SAG: f64 = 1e-6;
@@ -42,6 +44,22 @@ struct Chain {
     points: Vec<Point>,
     layer: String,
     handle: String,
+}
+
+impl Chain {
+    /// The longer side of the box round it.
+    fn extent(&self) -> f64 {
+        let [x, y]: [fn(&Point) -> f64; 2] = [|p| p.x, |p| p.y];
+        let over = |of: fn(&Point) -> f64| {
+            let (low, high) = self
+                .points
+                .iter()
+                .map(of)
+                .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), v| (low.min(v), high.max(v)));
+            high - low
+        };
+        over(x).max(over(y))
+    }
 }
 
 pub(super) fn read(bytes: &[u8]) -> Result<Outline, CoordinateError> {
@@ -81,6 +99,12 @@ pub(super) fn read(bytes: &[u8]) -> Result<Outline, CoordinateError> {
         }
     }
     let mut chains = join(pieces, JOIN * size);
+    let all = chains.len();
+    // Letters and marks beside an outline.
+    if chains.iter().any(|chain| chain.extent() > MARK * size) {
+        chains.retain(|chain| chain.extent() > MARK * size);
+    }
+    let marks = all - chains.len();
     let mut lines = 0;
     if chains.iter().filter(|chain| meets(chain, JOIN * size)).count() == 1 {
         // Chord lines and the like do not close; an outline beside them does.
@@ -108,6 +132,9 @@ pub(super) fn read(bytes: &[u8]) -> Result<Outline, CoordinateError> {
         let kinds: Vec<String> = passed_over.iter().map(|(kind, count)| format!("{count} {kind}")).collect();
         vec![format!("Passed over in the drawing, since they are no outline: {}.", kinds.join(", "))]
     };
+    if marks > 0 {
+        notes.push(format!("Passed over in the drawing beside the outline: {marks} small marks."));
+    }
     if lines > 0 {
         notes.push(format!("Passed over in the drawing beside the one closed outline: {lines} open lines."));
     }

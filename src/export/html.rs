@@ -40,11 +40,11 @@ h1 { margin-bottom: 0 } h2 { margin-top: 2.5rem; border-bottom: 2px solid #111 }
 table { border-collapse: collapse; margin: 1rem 0; display: block; overflow-x: auto } th, td { border: 1px solid #777; padding: .3rem .6rem; text-align: left }
 th { background: #eee } .good::before { content: '\\2714  ' } .bad { font-weight: bold } .bad::before { content: '\\2718  ' }
 .caution { border: 3px solid #111; padding: .5rem 1rem } figure { margin: 1.5rem 0 } figcaption { font-size: 14px }
-code { font-size: 15px } .small { display: flex; flex-wrap: wrap; gap: 1rem } .small figure { margin: 0 } svg { max-width: 100%; height: auto } tr.marked { background: #ddd; font-weight: bold }
+code { font-size: 15px } .small { display: flex; flex-wrap: wrap; gap: 1rem } .small figure { margin: 0; width: 15rem } svg { max-width: 100%; height: auto } tr.marked { background: #ddd; font-weight: bold }
 @media print {
   body { margin: 0; padding: 0; font-size: 11pt } h2 { break-after: avoid } figure, tr { break-inside: avoid }
   table { display: table; width: 100%; font-size: 8.5pt; overflow-wrap: break-word } th, td { padding: .15rem .3rem }
-  svg { max-height: 22cm }
+  svg { max-height: 22cm } .small figure { width: 57mm }
 }
 ";
     format!(

@@ -22,9 +22,9 @@ fn length(edge: &[[f64; 3]]) -> f64 {
     edge.iter().zip(edge.iter().cycle().skip(1)).map(|(&a, &b)| apart(a, b)).sum()
 }
 
-/// The solid as an SVG picture. Faces further away are drawn first, the uppermost level ones last.
+/// The solid as an SVG picture, which is read out as `name`. Faces further away are drawn first, the uppermost level ones last.
 #[must_use]
-pub fn solid_view(solid: &Solid) -> String {
+pub fn solid_view(solid: &Solid, name: &str) -> String {
     let (turn_sin, turn_cos) = TURN.sin_cos();
     let (eye_sin, eye_cos) = EYE.sin_cos();
     // Across and up on the picture, and towards the eye.
@@ -59,9 +59,10 @@ pub fn solid_view(solid: &Solid) -> String {
     let scale = (SIZE[0] / (right - left)).min(SIZE[1] / (high - low)).min(1.0);
     let (width, height) = (scale * (right - left) + 2.0, scale * (high - low) + 2.0);
     let mut svg = format!(
-        "<svg xmlns=\"http://www.w3.org/2000/svg\" width=\"{0}mm\" height=\"{1}mm\" viewBox=\"0 0 {0} {1}\">",
+        "<svg xmlns=\"http://www.w3.org/2000/svg\" role=\"img\" aria-label=\"{2}\" width=\"{0}mm\" height=\"{1}mm\" viewBox=\"0 0 {0} {1}\">",
         number(width, 2),
-        number(height, 2)
+        number(height, 2),
+        super::html::escaped(name)
     );
     for (is_top, _, face) in drawn {
         if face.edges.iter().all(|edge| length(edge) < LEAST_FACE) {

@@ -63,8 +63,11 @@ pub fn numbered_picture(drawing: &Drawing, places: &[Point]) -> String {
     let mut lines = drawing.without_words();
     lines.lines.retain(|line| line.role != Role::Engrave);
     let lines = lines.moved(kurbo::Affine::translate(-bounds.origin().to_vec2()));
-    let mut document =
-        sized(bounds.width(), bounds.height(), growth).add(group(&lines, bounds.height(), growth));
+    let mut document = sized(bounds.width(), bounds.height(), growth, &drawing.title).add(group(
+        &lines,
+        bounds.height(),
+        growth,
+    ));
     for (i, place) in places.iter().enumerate() {
         let at = *place - bounds.origin().to_vec2();
         let text = Text::new((i + 1).to_string())
@@ -110,17 +113,21 @@ pub fn page_picture(page: &Page) -> String {
         .set("fill", "none")
         .set("stroke", "black")
         .set("stroke-width", number(0.3 * growth, 2));
-    sized(page.width, page.height, growth)
+    sized(page.width, page.height, growth, &page.drawing.title)
         .add(edge)
         .add(inside)
         .add(group(&page.furniture, page.height, growth))
         .to_string()
 }
 
-/// A document that shows so many millimetres in that many times less.
-fn sized(width: f64, height: f64, growth: f64) -> Document {
+/// A document that shows so many millimetres in that many times less, and is read out by its name.
+fn sized(width: f64, height: f64, growth: f64, name: &str) -> Document {
     let shown = |v: f64| format!("{}mm", number(v / growth, 2));
-    document(width, height).set("width", shown(width)).set("height", shown(height))
+    document(width, height)
+        .set("width", shown(width))
+        .set("height", shown(height))
+        .set("role", "img")
+        .set("aria-label", name)
 }
 
 fn document(width: f64, height: f64) -> Document {

@@ -1,5 +1,6 @@
 """Builds each design once with the binary under test and hands its pack to the checks."""
 
+import itertools
 import json
 import os
 import subprocess
@@ -105,16 +106,19 @@ def pack(request, run, tmp_path_factory) -> Pack:
     return Pack(Design(path), folder / "pack", answer)
 
 
-WORST: dict[str, list[float]] = {}
-
-
-@pytest.fixture(scope="session")
-def measured():
+@pytest.fixture
+def measured(request):
     """Notes a figure, so that the summary can tell how far from its limit a check passed."""
-    return lambda name, value: WORST.setdefault(name, []).append(float(value))
+    return lambda name, value: request.node.user_properties.append((name, float(value)))
 
 
 def pytest_terminal_summary(terminalreporter):
+    # The figures come with the reports, so that they also come from other processes.
+    found = {}
+    for report in itertools.chain(*terminalreporter.stats.values()):
+        if getattr(report, "when", None) == "call":
+            for name, value in report.user_properties:
+                found.setdefault(name, []).append(value)
     terminalreporter.section("figures measured, least to greatest")
-    for name, values in WORST.items():
+    for name, values in sorted(found.items()):
         terminalreporter.write_line(f"{name}: {min(values):.6g} to {max(values):.6g}")

@@ -13,7 +13,7 @@ import pytest
 
 from conftest import ROOT, binary
 
-DESIGN = (ROOT / "demo-sections/strut.toml").read_text(encoding="utf-8")
+DESIGN = (ROOT / "tests/outside/designs/large-fin.toml").read_text(encoding="utf-8")
 
 
 def build(folder, *arguments):

@@ -4,7 +4,7 @@
 //! everything goes in straight lines over the logarithm of the Reynolds number.
 
 use crate::design::{Design, FlapKind};
-use crate::flow::{Conditions, LiftCurve, Panelling, Viscous, Water, hinge_moment};
+use crate::flow::{Conditions, LiftCurve, Panelling, Viscous, Water, hinge_moment, side_by_side};
 use crate::geometry::Point;
 use crate::loading::{
     CurvePoint, FlapCurve, GreatestLift, LoadingError, SectionLift, SectionPoint, SectionTable, SpanTables,
@@ -95,18 +95,30 @@ impl Polars {
                 None => sections.push((&station.section, vec![place])),
             }
         }
-        let solved = sections.into_iter().map(|(section, stations)| {
+        let nodes = |stations: &[(f64, f64)]| -> Vec<f64> {
             let chord = |pick: fn(f64, f64) -> f64| stations.iter().map(|s| s.1).reduce(pick).unwrap_or(1.0);
             let least = water.reynolds(1e-3 * chord(f64::min), speeds[0]).ln();
             let greatest = water.reynolds(1e-3 * chord(f64::max), speeds[1]).ln();
             let gaps = ((greatest - least) / RATIO.ln()).ceil().max(1.0);
-            let nodes: Vec<f64> =
-                (0..=gaps as usize).map(|i| least + (greatest - least) * i as f64 / gaps).collect();
-            let curves = flaps.iter().map(|&flap| solve(design, section, flap, &nodes));
-            let curves = curves.collect::<Result<_, PackError>>()?;
+            (0..=gaps as usize).map(|i| least + (greatest - least) * i as f64 / gaps).collect()
+        };
+        // All together, so that no processor waits for the slowest curve of a section.
+        let nodes: Vec<Vec<f64>> = sections.iter().map(|(_, stations)| nodes(stations)).collect();
+        let wanted: Vec<(&Section, f64, &[f64])> = sections
+            .iter()
+            .zip(&nodes)
+            .flat_map(|((section, _), nodes)| flaps.iter().map(|&flap| (*section, flap, nodes.as_slice())))
+            .collect();
+        let solved =
+            side_by_side(&wanted, |&(section, flap, nodes)| solve(design, section, flap, nodes), |_| ());
+        let mut solved = solved.into_iter();
+        let mut of_section = |(stations, nodes)| {
+            let curves = solved.by_ref().take(flaps.len()).collect::<Result<_, PackError>>()?;
             Ok(OfSection { stations, nodes, curves })
-        });
-        Ok(Self { sections: solved.collect::<Result<_, PackError>>()?, flaps })
+        };
+        let stations = sections.into_iter().map(|(_, stations)| stations);
+        let sections = stations.zip(nodes.clone()).map(&mut of_section).collect::<Result<_, PackError>>()?;
+        Ok(Self { sections, flaps })
     }
 
     /// Flap angles, radians, in rising order.
@@ -171,7 +183,7 @@ fn solve(design: &Design, section: &Section, flap: f64, nodes: &[f64]) -> Result
         nodes.iter().map(|node| Conditions::free(node.exp(), design.lift.quietness)).collect();
     let count = if flap == 0.0 { INCIDENCES.len() } else { FLAPPED };
     let incidences = INCIDENCES.map(f64::to_radians);
-    let curves = LiftCurve::sweep_all(&viscous, &conditions, &incidences[..count])?;
+    let curves = LiftCurve::sweep_on(1, &viscous, &conditions, &incidences[..count])?;
     let known = |curve: &LiftCurve| {
         let point = |s: &crate::flow::ViscousSolution| {
             let hinge = deflected.and_then(|(_, axis)| hinge_moment(&s.pressure, axis)).unwrap_or(0.0);

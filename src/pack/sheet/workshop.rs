@@ -157,20 +157,16 @@ fn masks(body: &mut String, design: &Design, aids: &Aids<'_>) {
     for (station, mask) in all() {
         let part = if mask.part == Masked::Core { "core" } else { "finished" };
         for piece in &mask.mask.pieces {
-            let _ = writeln!(
-                body,
-                "<figure>{}<figcaption>{} {part}, {}</figcaption></figure>",
-                solid_view(&piece.plate.solid),
-                number(station.shape.at, 3),
-                piece.name()
-            );
+            let words = format!("{} {part}, {}", number(station.shape.at, 3), piece.name());
+            let view = solid_view(&piece.plate.solid, &words);
+            let _ = writeln!(body, "<figure>{view}<figcaption>{words}</figcaption></figure>");
         }
     }
     for (_, _, _, words, solid) in aids.bench.pieces() {
         let _ = writeln!(
             body,
             "<figure>{}<figcaption>{}</figcaption></figure>",
-            solid_view(solid),
+            solid_view(solid, &words),
             escaped(&words)
         );
     }

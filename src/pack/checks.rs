@@ -3,9 +3,10 @@
 use serde::Serialize;
 
 use super::PackError;
-use super::aids::{Aids, SectionFlow, StationAids};
+use super::aids::{Aids, SectionFlow};
 use super::checks_wood;
 use super::friction::{Inception, StationCurves};
+use super::station::{StationAids, place};
 use super::surface::FAIRING;
 use crate::design::Design;
 use crate::flow::{LiftCurve, Water};
@@ -66,10 +67,6 @@ pub(super) fn all(design: &Design, aids: &Aids<'_>) -> Vec<Check> {
     checks.extend(checks_wood::all(design, &aids.wood));
     checks.extend(super::workshop_checks::all(design, aids));
     checks
-}
-
-pub(super) fn place(at: f64) -> String {
-    format!("station {} mm", crate::units::number(at, 3))
 }
 
 /// The design lift must lie within the range of incidence asked.

@@ -1,8 +1,9 @@
 //! From a design to the files of its pack, in memory.
 
-use super::aids::{self, Aids, StationAids};
+use super::aids::Aids;
 use super::cut_pieces::CutPiece;
 use super::printed::{Bench, Masked, StationMask};
+use super::station::{StationAids, stamp};
 use super::{Check, Entry, Manifest, Pack, PackError, PackFile, bucket, checks, sheet, tables};
 use crate::design::{Design, DxfRelease};
 use crate::export::{Curves, Flavour, dxf, pdf, stl, svg_page};
@@ -145,7 +146,7 @@ impl Files {
         let path = format!("print/{}-planform.svg", self.slug);
         self.add(path, "svg", "planform pattern", None, sheet(pattern));
 
-        let title = aids::stamp(design).to_string();
+        let title = stamp(design).to_string();
         let bytes = pdf(&title, &prints.finished)?;
         self.add(format!("print/{}.pdf", self.slug), "pdf", "all templates, tiled", None, bytes);
         if !prints.wood.is_empty() {
@@ -161,7 +162,7 @@ impl Files {
         stations: &[StationAids<'_>],
         bench: &Bench,
     ) -> Result<(), PackError> {
-        let stamp = aids::stamp(design);
+        let stamp = stamp(design);
         for station in stations {
             let at = station.shape.at;
             for StationMask { part, mask, .. } in &station.masks {

@@ -1,7 +1,7 @@
 //! What the router is handed: each piece as it is to be cut, and the sheets of stock they come from.
 
 use super::PackError;
-use super::aids::{StationAids, stamp};
+use super::station::{StationAids, stamp};
 use crate::design::Design;
 use crate::units::number;
 use crate::workshop::{

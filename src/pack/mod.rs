@@ -12,6 +12,7 @@ mod friction;
 mod manifest;
 mod printed;
 mod sheet;
+mod station;
 mod strength;
 mod surface;
 mod tables;

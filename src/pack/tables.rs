@@ -1,8 +1,9 @@
 //! The tables of a pack. Each row carries the fingerprint, so that a printed table of one revision is
 //! not taken for that of another.
 
-use super::aids::{SectionFlow, StationAids};
+use super::aids::SectionFlow;
 use super::friction::StationCurves;
+use super::station::StationAids;
 use crate::design::Design;
 use crate::export::ExportError;
 use crate::export::csv::csv;

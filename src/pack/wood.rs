@@ -1,7 +1,7 @@
 //! What the wood is held to besides its templates: cut-outs all along, the hinge's line, fairness.
 
 use super::PackError;
-use super::aids::StationAids;
+use super::station::StationAids;
 use crate::design::{Cut, CutKind, Design};
 use crate::geometry::{ArcPath, ArcVertex, Point, Vec2};
 use crate::parts::{Core, CutShape, HingeAxis, split};

@@ -1,10 +1,10 @@
 //! Checks of what the workshop is handed: masks that close and print, pieces that lie on the stock.
 
 use super::Check;
-use super::aids::{Aids, StationAids};
-use super::checks::place;
+use super::aids::Aids;
 use super::cut_pieces::CutPiece;
 use super::printed::{Bench, StationMask};
+use super::station::{StationAids, place};
 use crate::design::{CutKind, Design};
 use crate::geometry::{Rect, Solid, rectangle_fits};
 use crate::workshop::{Drawing, Fit, Layout, Role, tightest_inside};

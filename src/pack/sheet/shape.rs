@@ -7,7 +7,7 @@ use crate::design::Design;
 use crate::export::html::{escaped, table};
 use crate::export::picture;
 use crate::geometry::Point;
-use crate::pack::aids::StationAids;
+use crate::pack::station::StationAids;
 use crate::parts::WoodPiece;
 use crate::units::number;
 use crate::wing::Planform;

@@ -6,6 +6,10 @@
 // Printing what was measured is part of the purpose here.
 #![allow(clippy::print_stdout)]
 
+#[path = "common/air.rs"]
+mod air;
+
+use air::air;
 use plankform::geometry::Point;
 use plankform::section::{Section, Side, TrailingEdge};
 use plankform::strength::material::demo;
@@ -45,20 +49,6 @@ fn sheet(modulus: f64, contraction: f64) -> PlyElastic {
 
 fn layer(material: PlyElastic, angle: f64, thickness: f64) -> Layer {
     Layer { material, angle, thickness }
-}
-
-/// A core that weighs and carries next to nothing.
-fn air() -> CoreElastic {
-    CoreElastic {
-        name: "air".to_owned(),
-        provenance: Provenance::Tested,
-        along_span: 1e-9,
-        across: 1e-9,
-        g: 1e-9,
-        shear: 1.0,
-        compression: 1.0,
-        density: 1e-9,
-    }
 }
 
 /// A core of one material, and a skin that adds next to nothing.

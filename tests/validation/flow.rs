@@ -1,61 +1,12 @@
 //! Flow without friction, cavitation, and layers by themselves.
 
+use super::karman_trefftz::KarmanTrefftz;
 use super::page::{Part, Unit, row};
 use super::{greatest, number, numbers, parsed};
 use plankform::flow::{
     Conditions, DEFAULT_PANELS, LayerPoint, Panelling, PotentialFlow, Salinity, Viscous, Water, layer_along,
 };
-use plankform::geometry::Point;
 use plankform::section::{Section, TrailingEdge};
-use std::f64::consts::TAU;
-
-/// A section of von Kármán and Trefftz, as the reference describes it.
-struct KarmanTrefftz {
-    mu: [f64; 2],
-    power: f64,
-    nose: f64,
-    chord: f64,
-}
-
-impl KarmanTrefftz {
-    fn radius(&self) -> f64 {
-        (1.0 - self.mu[0]).hypot(self.mu[1])
-    }
-
-    fn beta(&self) -> f64 {
-        (self.mu[1] / self.radius()).asin()
-    }
-
-    /// Point of the section and dz/dζ at an angle on the circle.
-    fn map(&self, theta: f64) -> (Point, f64) {
-        let (re, im) = (self.mu[0] + self.radius() * theta.cos(), self.mu[1] + self.radius() * theta.sin());
-        let modulus = (re - 1.0).hypot(im) / (re + 1.0).hypot(im);
-        let argument = im.atan2(re - 1.0) - im.atan2(re + 1.0);
-        let (size, angle) = (modulus.powf(self.power), self.power * argument);
-        let (a, b) = (size * angle.cos(), size * angle.sin());
-        let below = (1.0 - a).powi(2) + b * b;
-        let z = Point::new(self.power * (1.0 - a * a - b * b) / below, self.power * 2.0 * b / below);
-        let slope = 4.0 * self.power.powi(2) * modulus.powf(self.power - 1.0)
-            / (below * ((re + 1.0).powi(2) + im * im));
-        (Point::new((z.x - self.nose) / self.chord, z.y / self.chord), slope)
-    }
-
-    fn cp(&self, theta: f64, incidence: f64) -> f64 {
-        let circulation = 2.0 * (incidence + self.beta()).sin();
-        1.0 - ((2.0 * (theta - incidence).sin() + circulation) / self.map(theta).1).powi(2)
-    }
-
-    fn angle(&self, i: usize, panels: usize) -> f64 {
-        TAU * i as f64 / panels as f64 - self.beta()
-    }
-
-    fn flow(&self, panels: usize) -> PotentialFlow {
-        let mut points: Vec<Point> = (0..=panels).map(|i| self.map(self.angle(i, panels)).0).collect();
-        let edge = Point::new((self.power - self.nose) / self.chord, 0.0);
-        (points[0], points[panels]) = (edge, edge);
-        PotentialFlow::new(&Panelling::from_points(points).expect("panels")).expect("a flow")
-    }
-}
 
 pub(crate) fn exact_sections() -> Part {
     let theory = parsed(include_str!("../reference/theory.toml"));
@@ -69,7 +20,7 @@ pub(crate) fn exact_sections() -> Part {
             chord: number(&entry["chord"]),
         };
         let off = [100, 200].map(|panels| {
-            let flow = exact.flow(panels);
+            let flow = PotentialFlow::new(&exact.panelling(panels)).expect("a flow");
             let mut off = [0.0_f64; 3];
             for degrees in [0.0_f64, 4.0, 10.0] {
                 let solution = flow.at(degrees.to_radians());

@@ -6,7 +6,11 @@
 // Printing what was measured is part of the purpose here.
 #![allow(clippy::print_stdout)]
 
+#[path = "../common/air.rs"]
+mod air;
 mod flow;
+#[path = "../common/karman_trefftz.rs"]
+mod karman_trefftz;
 mod measured;
 mod page;
 mod pressure;

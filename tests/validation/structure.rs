@@ -1,5 +1,6 @@
 //! The whole foil as a lifting line, and its strength.
 
+use super::air::air;
 use super::page::{Part, Unit, row};
 use super::{greatest, number, numbers, parsed};
 use plankform::geometry::Point;
@@ -7,8 +8,8 @@ use plankform::loading::{LiftingLine, Loading, Setting, State, ThinSection};
 use plankform::section::{Section, TrailingEdge};
 use plankform::strength::material::demo;
 use plankform::strength::{
-    BeamStation, Cantilever, CoreElastic, Layer, Layup, LineLoad, LoadCase, PlyElastic, PointLoad,
-    Provenance, SectionBuild, SectionStiffness, SkinPly, WRINKLING_FOR_DESIGN, wrinkling_stress,
+    BeamStation, Cantilever, Layer, Layup, LineLoad, LoadCase, PlyElastic, PointLoad, Provenance,
+    SectionBuild, SectionStiffness, SkinPly, WRINKLING_FOR_DESIGN, wrinkling_stress,
 };
 use plankform::wing::{Law, Station, Wing, along};
 use std::f64::consts::{FRAC_PI_2, PI, TAU};
@@ -90,20 +91,6 @@ pub(crate) fn lifting_line() -> Part {
             row("lift of a section under the surface, ¼ to 2 chords deep", 0.01, under, Unit::Percent(2)),
         ],
         pictures: Vec::new(),
-    }
-}
-
-/// A core that weighs and carries next to nothing.
-fn air() -> CoreElastic {
-    CoreElastic {
-        name: "air".to_owned(),
-        provenance: Provenance::Tested,
-        along_span: 1e-9,
-        across: 1e-9,
-        g: 1e-9,
-        shear: 1.0,
-        compression: 1.0,
-        density: 1e-9,
     }
 }
 

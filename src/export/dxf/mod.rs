@@ -106,6 +106,17 @@ impl Pairs {
         self.pair(code, text);
     }
 
+    /// What the drawing reaches over, for the header.
+    fn extents(&mut self, drawing: &Drawing) {
+        let bounds = drawing.bounds();
+        for (name, x, y) in [("$EXTMIN", bounds.x0, bounds.y0), ("$EXTMAX", bounds.x1, bounds.y1)] {
+            self.pair(9, name);
+            self.real(10, x);
+            self.real(20, y);
+            self.real(30, 0.0);
+        }
+    }
+
     fn bulge(&mut self, bulge: f64) {
         if bulge != 0.0 {
             // Bulges multiply lengths, so they need decimals of their own.

@@ -23,13 +23,7 @@ pub(super) fn dxf(drawing: &Drawing) -> String {
 
 fn header(file: &mut Pairs, drawing: &Drawing) {
     file.pairs(&[(0, "SECTION"), (2, "HEADER"), (9, "$ACADVER"), (1, "AC1009")]);
-    let bounds = drawing.bounds();
-    for (name, x, y) in [("$EXTMIN", bounds.x0, bounds.y0), ("$EXTMAX", bounds.x1, bounds.y1)] {
-        file.pair(9, name);
-        file.real(10, x);
-        file.real(20, y);
-        file.real(30, 0.0);
-    }
+    file.extents(drawing);
     file.pair(0, "ENDSEC");
 }
 

@@ -71,13 +71,7 @@ impl Writer {
         self.pair(9, "$HANDSEED");
         self.hex(5, self.next_handle);
         self.pairs(&[(9, "$INSUNITS"), (70, "4"), (9, "$MEASUREMENT"), (70, "1")]);
-        let bounds = drawing.bounds();
-        for (name, x, y) in [("$EXTMIN", bounds.x0, bounds.y0), ("$EXTMAX", bounds.x1, bounds.y1)] {
-            self.pair(9, name);
-            self.real(10, x);
-            self.real(20, y);
-            self.real(30, 0.0);
-        }
+        self.pairs.extents(drawing);
         self.pair(0, "ENDSEC");
     }
 

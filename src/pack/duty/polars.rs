@@ -117,7 +117,7 @@ impl Polars {
             Ok(OfSection { stations, nodes, curves })
         };
         let stations = sections.into_iter().map(|(_, stations)| stations);
-        let sections = stations.zip(nodes.clone()).map(&mut of_section).collect::<Result<_, PackError>>()?;
+        let sections = stations.zip(nodes).map(&mut of_section).collect::<Result<_, PackError>>()?;
         Ok(Self { sections, flaps })
     }
 

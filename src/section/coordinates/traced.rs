@@ -46,20 +46,12 @@ struct Chain {
     handle: String,
 }
 
-impl Chain {
-    /// The longer side of the box round it.
-    fn extent(&self) -> f64 {
-        let [x, y]: [fn(&Point) -> f64; 2] = [|p| p.x, |p| p.y];
-        let over = |of: fn(&Point) -> f64| {
-            let (low, high) = self
-                .points
-                .iter()
-                .map(of)
-                .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), v| (low.min(v), high.max(v)));
-            high - low
-        };
-        over(x).max(over(y))
-    }
+/// The longer side of the box round some points; 0 where there are none.
+fn extent(points: impl Iterator<Item = Point>) -> f64 {
+    let around = |bounds: Option<Rect>, point| {
+        Some(bounds.map_or(Rect::from_points(point, point), |bounds| bounds.union_pt(point)))
+    };
+    points.fold(None, around).map_or(0.0, |bounds| bounds.width().max(bounds.height()))
 }
 
 pub(super) fn read(bytes: &[u8]) -> Result<Outline, CoordinateError> {
@@ -74,11 +66,7 @@ pub(super) fn read(bytes: &[u8]) -> Result<Outline, CoordinateError> {
         let none = "the drawing holds no polyline, spline, line or arc; an outline within a block has to be exploded";
         return Err(CoordinateError::Form { why: if curves.is_empty() { none } else { many }.to_owned() });
     }
-    let mut bounds: Option<Rect> = None;
-    for point in curves.iter().flat_map(|named| named.curve.corners()) {
-        bounds = Some(bounds.map_or(Rect::from_points(point, point), |bounds| bounds.union_pt(point)));
-    }
-    let size = bounds.map_or(0.0, |bounds| bounds.width().max(bounds.height()));
+    let size = extent(curves.iter().flat_map(|named| named.curve.corners()));
     let sized = size > 0.0 && size.is_finite();
     if !sized {
         return Err(CoordinateError::Flat);
@@ -101,8 +89,9 @@ pub(super) fn read(bytes: &[u8]) -> Result<Outline, CoordinateError> {
     let mut chains = join(pieces, JOIN * size);
     let all = chains.len();
     // Letters and marks beside an outline.
-    if chains.iter().any(|chain| chain.extent() > MARK * size) {
-        chains.retain(|chain| chain.extent() > MARK * size);
+    let is_large = |chain: &Chain| extent(chain.points.iter().copied()) > MARK * size;
+    if chains.iter().any(is_large) {
+        chains.retain(is_large);
     }
     let marks = all - chains.len();
     let mut lines = 0;
